@@ -19,6 +19,8 @@ export interface Reading {
   controls: ControlLine[];
   /** pauses anywhere in the file, in file order */
   pauses: PauseLine[];
+  /** how the file addresses its outputs, for the check that a command lands where it should */
+  outputs: OutputUse;
   findings: Finding[];
   /** set when the file was tuned by us before: its provenance line, parsed, and that line's number */
   provenance?: { line: number; text: string; data: unknown };
@@ -128,6 +130,16 @@ export interface ControlLine {
   duty: number;
   /** a line of ours, from an earlier tuning: `plan`, or `restore` after a kept raise */
   ours: false | "plan" | "restore";
+}
+
+/** First lines of each kind, where there is one; our own lines don't count. */
+export interface OutputUse {
+  /** a named command of a firmware family that ignores the P of M106 */
+  namedCommand?: { name: string; line: number };
+  /** M106 or M107 with a P above 0 */
+  indexedFanLine?: number;
+  /** M106 or M107 without P */
+  bareFanLine?: number;
 }
 
 export interface PauseLine {

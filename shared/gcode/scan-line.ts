@@ -1,0 +1,303 @@
+/**
+ * The byte scanner: one line of G-code to numbers, without making a string.
+ *
+ * A line is `[N…] words [*checksum] [comment]`, a named command (`NAME KEY=value …`), a message command whose rest is
+ * text, or something that cannot be read. Words are a letter and a number (RS274/NGC, NISTIR 6556, section 3.3):
+ * either case, blanks anywhere outside comments, a sign, an optional point, no exponent (an `E` starts a word).
+ * Numbers are gathered as one integer and divided once by a power of ten: both are exact below 2^53, so the quotient
+ * is the correctly rounded value of the decimal.
+ */
+
+/** What a line turned out to be. */
+export const LineKind = { blank: 0, words: 1, named: 2, text: 3, unreadable: 4 } as const;
+
+/** Bit of a letter in `LineScan.mask`; `A` is bit 0. */
+export const bit = (letter: string): number => 1 << (letter.charCodeAt(0) - 65);
+
+/** The result of one scan; the same object is filled again for every line. */
+export class LineScan {
+  /** one of LineKind */
+  kind = 0;
+  /** letters present, one bit each */
+  mask = 0;
+  /** letters that stood without a number, e.g. the X of `G28 X` */
+  bare = 0;
+  /** letters that stood more than once; the last number is kept */
+  repeated = 0;
+  /** number of G and M words; more than one means several commands on a line */
+  commands = 0;
+  /** first byte of the first word or name, and the byte after the last of them (comment and checksum excluded) */
+  codeStart = 0;
+  codeEnd = 0;
+  /** inside of the first comment, delimiters excluded; -1 when there is none */
+  commentStart = -1;
+  commentEnd = -1;
+  /** checksum behind `*`, or -1; and where the star stands */
+  checksum = -1;
+  starAt = -1;
+  /** end of the line without and with its terminator */
+  textEnd = 0;
+  next = 0;
+  /** value of each letter; meaningful only where its bit is set in `mask` and clear in `bare` */
+  readonly value = new Float64Array(26);
+  /** the G words of a line that has several, in order */
+  readonly gWords: number[] = [];
+}
+
+const LF = 10;
+const CR = 13;
+const TAB = 9;
+const SPACE = 32;
+const NOT_A_LETTER = 255;
+
+const LETTER = new Uint8Array(256).fill(NOT_A_LETTER);
+for (let k = 0; k < 26; k++) {
+  LETTER[65 + k] = k;
+  LETTER[97 + k] = k;
+}
+const POW10 = Float64Array.from({ length: 23 }, (_, k) => 10 ** k);
+const G = 6;
+const M = 12;
+const N = 13;
+
+/** M commands whose rest of line is a message or a file name. */
+const TEXT_COMMANDS = new Set([0, 1, 16, 23, 28, 30, 32, 36, 38, 98, 117, 118, 486, 550, 551, 552, 587, 928]);
+
+/**
+ * Scans the line that starts at `start`. The buffer must hold a line feed or carriage return at or after `start`, and
+ * one more byte behind a final carriage return.
+ *
+ * @returns offset of the next line
+ */
+export function scanLine(buf: Uint8Array, start: number, out: LineScan): number {
+  const value = out.value;
+  let p = start;
+  let mask = 0;
+  out.bare = 0;
+  out.repeated = 0;
+  out.commands = 0;
+  out.commentStart = -1;
+  out.starAt = -1;
+  out.checksum = -1;
+  out.codeStart = start;
+  out.codeEnd = start;
+  out.kind = LineKind.words;
+
+  for (;;) {
+    let c = buf[p];
+    while (c === SPACE || c === TAB) c = buf[++p];
+    const letter = LETTER[c];
+
+    if (letter === NOT_A_LETTER) {
+      if (c === LF || c === CR) break;
+      p = scanOther(buf, p, out, mask);
+      if (out.kind !== LineKind.words) break;
+      continue;
+    }
+
+    if (mask === 0) out.codeStart = p;
+    const wordStart = p;
+    c = buf[++p];
+    while (c === SPACE || c === TAB) c = buf[++p];
+    let negative = false;
+    if (c === 45) {
+      negative = true;
+      c = buf[++p];
+    } else if (c === 43) c = buf[++p];
+    const digits = p;
+    let whole = 0;
+    let d = c - 48;
+    while (d >= 0 && d <= 9) {
+      whole = (Math.imul(whole, 10) + d) | 0;
+      c = buf[++p];
+      d = c - 48;
+    }
+    let read = p - digits;
+    let number = whole;
+    if (c === 46) {
+      const fraction = p + 1;
+      c = buf[++p];
+      d = c - 48;
+      while (d >= 0 && d <= 9) {
+        whole = (Math.imul(whole, 10) + d) | 0;
+        c = buf[++p];
+        d = c - 48;
+      }
+      read += p - fraction;
+      number = whole / POW10[(p - fraction) & 15];
+    }
+    // Nine digits fit an int32; more, or a blank inside the number, take the careful way.
+    if (read > 9 || ((c === SPACE || c === TAB) && buf[p + 1] < 65 && read > 0 && continuesNumber(buf, p))) {
+      p = scanLongNumber(buf, digits, out);
+      number = longNumber;
+      read = longDigits;
+    }
+
+    const wordBit = 1 << letter;
+    if (read === 0) {
+      if ((mask & ~(1 << N)) === 0 && startsName(buf, wordStart)) {
+        out.codeStart = wordStart;
+        out.kind = LineKind.named;
+        p = scanNamed(buf, wordStart, out);
+        break;
+      }
+      out.bare |= wordBit;
+    }
+    if ((mask & wordBit) !== 0 && letter !== G) out.repeated |= wordBit;
+    mask |= wordBit;
+    value[letter] = negative ? -number : number;
+    out.codeEnd = p;
+
+    if (letter === G) {
+      if (out.commands === 0) out.gWords.length = 0;
+      out.commands++;
+      out.gWords.push(number);
+    } else if (letter === M) {
+      out.commands++;
+      if (out.commands === 1 && TEXT_COMMANDS.has(number)) {
+        out.kind = LineKind.text;
+        p = endOfText(buf, p, out, (mask & (1 << N)) !== 0);
+        break;
+      }
+    }
+  }
+
+  if (mask === 0 && out.kind === LineKind.words) out.kind = LineKind.blank;
+  out.mask = mask;
+  if (buf[p] !== LF && buf[p] !== CR) p = endOfLine(buf, p);
+  out.textEnd = p;
+  const next = buf[p] === CR && buf[p + 1] === LF ? p + 2 : p + 1;
+  out.next = next;
+  return next;
+}
+
+/** Comments, checksums and everything that is not a word. Returns where to go on; sets `kind` where nothing can follow. */
+function scanOther(buf: Uint8Array, start: number, out: LineScan, mask: number): number {
+  const c = buf[start];
+  if (c === 59) {
+    const end = endOfLine(buf, start);
+    keepComment(out, start + 1, end);
+    return end;
+  }
+  if (c === 40) return scanParenthesis(buf, start, out);
+  if (c === 42 && out.starAt < 0) {
+    let p = start + 1;
+    let sum = 0;
+    while (buf[p] >= 48 && buf[p] <= 57 && p < start + 5) sum = sum * 10 + buf[p++] - 48;
+    out.starAt = start;
+    out.checksum = p > start + 1 ? sum : -1;
+    return p;
+  }
+  if (c === 37 && mask === 0) return endOfLine(buf, start); // `%` frames a program
+  if (c === 64 && mask === 0) {
+    out.codeStart = start;
+    out.kind = LineKind.named; // `@…` speaks to the host
+    return scanNamed(buf, start, out);
+  }
+  out.kind = LineKind.unreadable;
+  return endOfLine(buf, start);
+}
+
+function keepComment(out: LineScan, start: number, end: number): void {
+  if (out.commentStart >= 0) return;
+  out.commentStart = start;
+  out.commentEnd = end;
+}
+
+/** A comment in parentheses may nest (common practice, no source; RS274/NGC forbids it); unclosed, it runs to the line's end. */
+function scanParenthesis(buf: Uint8Array, start: number, out: LineScan): number {
+  let depth = 1;
+  let p = start + 1;
+  for (; ; p++) {
+    const c = buf[p];
+    if (c === LF || c === CR) break;
+    if (c === 40) depth++;
+    else if (c === 41 && --depth === 0) break;
+  }
+  keepComment(out, start + 1, p);
+  return depth === 0 ? p + 1 : p;
+}
+
+function endOfLine(buf: Uint8Array, start: number): number {
+  let p = start;
+  while (buf[p] !== LF && buf[p] !== CR) p++;
+  return p;
+}
+
+/** End of a message: the line's end, or the checksum of a numbered line. */
+function endOfText(buf: Uint8Array, start: number, out: LineScan, numbered: boolean): number {
+  const end = endOfLine(buf, start);
+  out.codeEnd = end;
+  if (!numbered) return end;
+  let star = end - 1;
+  while (star > start && buf[star] >= 48 && buf[star] <= 57) star--;
+  if (star > start && buf[star] === 42 && star < end - 1) {
+    out.starAt = star;
+    out.checksum = Number(String.fromCharCode(...buf.subarray(star + 1, Math.min(end, star + 5))));
+    out.codeEnd = star;
+  }
+  return end;
+}
+
+/** A name starts with a letter and goes on with a letter or underscore, without a blank between. */
+function startsName(buf: Uint8Array, start: number): boolean {
+  const c = buf[start + 1];
+  return LETTER[c] !== NOT_A_LETTER || c === 95;
+}
+
+/** Runs over a named command: quoted values may hold `;`. Leaves the comment, if any, in `out`. */
+function scanNamed(buf: Uint8Array, start: number, out: LineScan): number {
+  let quote = 0;
+  let p = start;
+  for (; ; p++) {
+    const c = buf[p];
+    if (c === LF || c === CR) break;
+    if (quote !== 0) {
+      if (c === quote) quote = 0;
+    } else if (c === 34 || c === 39) quote = c;
+    else if (c === 59) break;
+  }
+  out.codeEnd = p;
+  if (buf[p] !== 59) return p;
+  const end = endOfLine(buf, p);
+  keepComment(out, p + 1, end);
+  return end;
+}
+
+/** Whether blanks at `p` are followed by more of the same number: `+0. 12 34` (RS274/NGC, 3.3). */
+function continuesNumber(buf: Uint8Array, start: number): boolean {
+  let p = start;
+  while (buf[p] === SPACE || buf[p] === TAB) p++;
+  const c = buf[p];
+  return (c >= 48 && c <= 57) || c === 46;
+}
+
+let longNumber = 0;
+let longDigits = 0;
+
+/** Any number of digits, with blanks among them; leaves the value in `longNumber` and the count in `longDigits`. */
+function scanLongNumber(buf: Uint8Array, start: number, out: LineScan): number {
+  let p = start;
+  let mantissa = 0;
+  let scale = -1;
+  let significant = 0;
+  let text = "";
+  longDigits = 0;
+  for (; ; p++) {
+    const c = buf[p];
+    if (c >= 48 && c <= 57) {
+      longDigits++;
+      if (significant > 0 || c !== 48) significant++;
+      mantissa = mantissa * 10 + (c - 48);
+      if (scale >= 0) scale++;
+      if (longDigits <= 400) text += String.fromCharCode(c);
+    } else if (c === 46 && scale < 0) {
+      scale = 0;
+      text += ".";
+    } else if (c !== SPACE && c !== TAB) break;
+  }
+  // Beyond fifteen digits the integer is no longer exact: let the language's own parser round correctly.
+  longNumber = significant <= 15 && scale <= 22 ? mantissa / POW10[Math.max(scale, 0)] : Number(text);
+  out.codeEnd = p;
+  return p;
+}

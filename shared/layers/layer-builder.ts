@@ -1,0 +1,372 @@
+import type { Machine } from "#shared/formats/machine.ts";
+import type { CommentFact } from "#shared/gcode/markers.ts";
+import type { Findings } from "#shared/layers/findings.ts";
+import type { Boundary, Layer, Wait } from "#shared/layers/reading.ts";
+import { Timeline } from "#shared/layers/timeline.ts";
+import type { LimitChange, MotionSink } from "#shared/machine/interpreter.ts";
+import { applyLimits } from "#shared/motion/file-limits.ts";
+import { motionRules } from "#shared/motion/motion-rules.ts";
+import { Planner } from "#shared/motion/planner.ts";
+import { Refusal } from "#shared/refusal.ts";
+
+/** More layers than this is no part that this trade prints. */
+const MAX_LAYERS = 100_000;
+/** Layers found before the first marker that are still taken for the start of the print. */
+const START_LAYERS = 2;
+/** A run of laying moves whose ends lie this close is a closed loop, mm. */
+const LOOP_GAP_MM = 0.6;
+
+/** The line being read: byte offset, line number, offset of the next line. */
+export const OFFSET = 0;
+export const LINE = 1;
+export const NEXT = 2;
+
+/**
+ * Cuts the stream of moves into layers. A layer begins at the first laying move (material forward with XY motion) at a
+ * Z other than that of the last laying move, and lasts until the next one begins. Heights are compared in whole
+ * micrometres. A laying move that rises is not a new layer until the rise exceeds the nominal height (spiral prints;
+ * a seam that ramps up stays within its layer). When Z falls, a new object begins.
+ */
+export class LayerBuilder implements MotionSink {
+  readonly where = new Float64Array(3);
+  readonly layers: Layer[] = [];
+  readonly timeline: Timeline;
+  readonly planner: Planner;
+  /** number of markers so far, and the first disagreement between a marker's height and the layer it names */
+  markers = 0;
+  markerMismatch: string | undefined;
+  spiral = false;
+  /** line after the last laying move */
+  readonly lastLaid: Boundary = { offset: 0, line: 0, timeS: 0 };
+  layingMoves = 0;
+  /** set when a filament diameter is given in the file, mm */
+  filamentDiameterMm: number;
+
+  private readonly machine: Machine;
+  private readonly findings: Findings;
+  private readonly sums = new Float64Array(SUMS);
+  private current: Layer | undefined;
+  private object = 0;
+  /** raw Z of the last laying move, to leave the common case at once */
+  private lastZ = Number.NaN;
+  private zUm = 0;
+  private baseUm = 0;
+  private nominalUm = 0;
+  private statedNominalUm = 0;
+  /** whether a run of laying moves is open, and whether the run lies on the part's outline */
+  private running = 0;
+  private outline = false;
+  private outlineSeen = false;
+  /** where the layer's marker stands, when one came after the last laying move */
+  private mark: { boundary: Boundary; text: string } | undefined;
+  private statedTopMm: number | undefined;
+  private nozzleC: number | null = null;
+  private bedC: number | null = null;
+  private endsAtNext = 0;
+  private endsAtLine = 0;
+
+  constructor(machine: Machine, findings: Findings) {
+    this.machine = machine;
+    this.findings = findings;
+    this.filamentDiameterMm = machine.motion.filamentDiameterMm;
+    this.planner = new Planner(machine.motion, (count) => this.timeline.advance(count));
+    this.timeline = new Timeline(this.planner);
+    this.clearSums();
+  }
+
+  move(x0: number, y0: number, z0: number, x: number, y: number, z: number, de: number, lengthMm: number, speedMmS: number): void {
+    const dx = x - x0;
+    const dy = y - y0;
+    const { sums } = this;
+    let lays = 0;
+    if (de > 0 && (dx !== 0 || dy !== 0)) {
+      if (z !== this.lastZ || z0 !== z) this.considerLayer(z0, z);
+      lays = 1;
+      if (this.running === 0) {
+        this.running = 1;
+        sums[RUN_X] = x0;
+        sums[RUN_Y] = y0;
+        sums[RUN] = 0;
+        this.widen(x0, y0);
+      }
+      sums[RUN] += lengthMm;
+      sums[FILAMENT] += de;
+      if (x < sums[MIN_X]) sums[MIN_X] = x;
+      if (x > sums[MAX_X]) sums[MAX_X] = x;
+      if (y < sums[MIN_Y]) sums[MIN_Y] = y;
+      if (y > sums[MAX_Y]) sums[MAX_Y] = y;
+      sums[END_X] = x;
+      sums[END_Y] = y;
+      this.endsAtNext = this.where[NEXT];
+      this.endsAtLine = this.where[LINE] + 1;
+      this.mark = undefined;
+    } else if (lengthMm > 0) {
+      sums[TRAVEL] += lengthMm;
+      if (this.running !== 0 && de === 0) {
+        this.endRun();
+        if (this.current) this.timeline.travel(this.where[OFFSET], this.where[LINE]);
+      }
+    }
+    this.planner.add(dx, dy, z - z0, de, lengthMm, speedMmS, lays);
+  }
+
+  /** A comment that names a layer, states a height or a feature. */
+  comment(fact: CommentFact, text: () => string): void {
+    if (fact.says === "feature") {
+      this.endRun();
+      this.outline = fact.outline === true;
+      return;
+    }
+    if (fact.heightMm !== undefined && fact.heightMm > 0) this.statedNominalUm = Math.round(fact.heightMm * 1000);
+    if (fact.topMm !== undefined) this.statedTopMm = fact.topMm;
+    if (fact.says !== "layer") return;
+    if (fact.topMm === undefined) this.statedTopMm = undefined;
+    this.markers++;
+    if (this.markers === 1) this.firstMarker();
+    if (!this.mark) {
+      const boundary = this.boundary();
+      this.timeline.stamp(boundary);
+      this.mark = { boundary, text: text() };
+    }
+  }
+
+  wait(kind: Wait["kind"], seconds: number | null): void {
+    this.planner.stop();
+    if (seconds !== null && seconds > 0) this.timeline.dwell(seconds);
+    if ((kind === "home" || kind === "temperature") && this.markers === 0 && this.layers.length <= START_LAYERS)
+      this.forgetLayers();
+    if (kind === "dwell" && seconds === 0) return;
+    this.current?.waits.push({ kind, line: this.where[LINE], seconds });
+  }
+
+  nozzle(celsius: number): void {
+    this.nozzleC = celsius;
+  }
+
+  bed(celsius: number): void {
+    this.bedC = celsius;
+  }
+
+  limits(change: LimitChange): void {
+    const { motion } = this.machine;
+    if (!motion.honourFileLimits) return;
+    this.planner.setRules(applyLimits(this.planner.currentRules, motionRules(motion), change));
+  }
+
+  odd(code: string, message: string): void {
+    this.findings.add(code, "warning", message, { line: this.where[LINE] });
+  }
+
+  /** Settles everything; afterwards all layers have their times. */
+  end(): void {
+    this.planner.stop();
+    this.closeLayer(this.endsAtNext, this.endsAtLine - 1);
+    this.timeline.end();
+    this.lastLaid.offset = this.endsAtNext;
+    this.lastLaid.line = this.endsAtLine;
+    this.lastLaid.timeS = this.timeline.lastLaidS;
+  }
+
+  private boundary(): Boundary {
+    return { offset: this.where[OFFSET], line: this.where[LINE], timeS: 0 };
+  }
+
+  private firstMarker(): void {
+    if (this.layers.length === 0) return;
+    if (this.layers.length <= START_LAYERS) this.forgetLayers();
+    else
+      this.findings.add(
+        "marker-late",
+        "warning",
+        `the first layer marker stands after ${this.layers.length} layers; all of them are kept`,
+        { line: this.where[LINE] },
+      );
+  }
+
+  private forgetLayers(): void {
+    this.layers.length = 0;
+    this.current = undefined;
+    this.object = 0;
+    this.lastZ = Number.NaN;
+    this.running = 0;
+    this.clearSums();
+    this.timeline.forgetLayers();
+  }
+
+  private considerLayer(z0: number, z: number): void {
+    this.lastZ = z;
+    this.layingMoves++;
+    const zUm = Math.round(z * 1000);
+    const fromUm = Math.round(z0 * 1000);
+    const ramps = fromUm !== zUm;
+    if (!this.current) {
+      const top = ramps ? Math.max(fromUm, zUm) : zUm;
+      this.nominalUm = this.statedNominalUm || (ramps ? Math.max(fromUm, 1) : top);
+      this.beginLayer(zUm, 0);
+      this.spiral ||= ramps;
+      return;
+    }
+    if (ramps) {
+      if (zUm < this.baseUm) this.beginLayer(zUm, 0);
+      else if (zUm > this.baseUm + this.ceilingUm()) {
+        this.spiral ||= fromUm === this.zUm;
+        this.beginLayer(zUm, fromUm < this.zUm ? this.zUm : Math.min(this.baseUm + this.ceilingUm(), zUm - 1));
+      } else if (zUm > this.zUm) this.raise(zUm);
+      return;
+    }
+    if (zUm === this.zUm) return;
+    if (zUm < this.zUm) {
+      this.beginLayer(zUm, 0);
+      return;
+    }
+    this.nominalUm = zUm - this.zUm;
+    this.beginLayer(zUm, this.zUm);
+  }
+
+  private ceilingUm(): number {
+    return this.statedNominalUm || this.nominalUm;
+  }
+
+  private raise(zUm: number): void {
+    this.zUm = zUm;
+    this.current!.zMm = zUm / 1000;
+    this.current!.heightMm = (zUm - this.baseUm) / 1000;
+  }
+
+  private beginLayer(zUm: number, baseUm: number): void {
+    if (this.layers.length >= MAX_LAYERS)
+      throw new Refusal(
+        "too-many-layers",
+        `more than ${MAX_LAYERS} layers`,
+        "Check that the file is a sliced part and not a continuous carving path.",
+        { line: this.where[LINE] },
+      );
+    const falls = this.current === undefined || zUm < this.zUm;
+    this.endRun();
+    this.closeLayer(this.where[OFFSET], this.where[LINE] - 1);
+    if (falls) this.object++;
+    this.zUm = zUm;
+    this.baseUm = falls ? 0 : baseUm;
+    if (falls && this.current) this.nominalUm = zUm;
+    const layer = this.newLayer();
+    this.layers.push(layer);
+    this.current = layer;
+    this.timeline.beginLayer(layer);
+    this.checkMarker(layer);
+  }
+
+  private newLayer(): Layer {
+    const { mark } = this;
+    let writeAt = mark?.boundary;
+    if (!writeAt) {
+      writeAt = this.boundary();
+      this.timeline.stamp(writeAt);
+    }
+    return {
+      index: this.layers.length + 1,
+      object: this.object,
+      zMm: this.zUm / 1000,
+      heightMm: (this.zUm - this.baseUm) / 1000,
+      firstLine: this.where[LINE],
+      lastLine: 0,
+      firstByte: this.where[OFFSET],
+      endByte: 0,
+      startsAtS: 0,
+      timeS: 0,
+      extrudingTimeS: 0,
+      depositedLengthMm: 0,
+      travelLengthMm: 0,
+      filamentMm: 0,
+      volumeMm3: 0,
+      areaMm2: 0,
+      outlineMm: 0,
+      outlineFrom: "geometry",
+      boxMm: { min: [0, 0], max: [0, 0] },
+      nozzleC: this.nozzleC,
+      bedC: this.bedC,
+      duty: {},
+      waits: [],
+      writeAt,
+      ...(mark ? { marker: mark.text } : {}),
+    };
+  }
+
+  /** Markers are the cross-check: the first one whose height differs from the layer it announces is a finding. */
+  private checkMarker(layer: Layer): void {
+    const stated = this.statedTopMm;
+    if (stated === undefined || this.markerMismatch || !this.mark || this.spiral) return;
+    if (Math.abs(stated - layer.zMm) > 0.0015)
+      this.markerMismatch = `the marker of layer ${layer.index} (line ${this.mark.boundary.line}) states ${stated} mm, material is laid at ${layer.zMm} mm`;
+  }
+
+  private closeLayer(endByte: number, lastLine: number): void {
+    const layer = this.current;
+    if (!layer) {
+      this.clearSums();
+      return;
+    }
+    this.endRun();
+    const { sums } = this;
+    layer.lastLine = lastLine;
+    layer.endByte = endByte;
+    layer.depositedLengthMm = sums[DEPOSITED];
+    layer.travelLengthMm = sums[TRAVEL];
+    layer.filamentMm = sums[FILAMENT];
+    layer.volumeMm3 = sums[FILAMENT] * Math.PI * (this.filamentDiameterMm / 2) ** 2;
+    layer.areaMm2 = layer.heightMm > 0 ? layer.volumeMm3 / layer.heightMm : 0;
+    layer.boxMm = { min: [sums[MIN_X], sums[MIN_Y]], max: [sums[MAX_X], sums[MAX_Y]] };
+    const commented = this.outlineSeen && sums[OUTLINE] > 0;
+    layer.outlineFrom = commented ? "comments" : "geometry";
+    layer.outlineMm = commented ? sums[OUTLINE] : sums[LOOP] || boxPerimeterMm(layer);
+    this.clearSums();
+  }
+
+  /** Ends a run of laying moves: a closed one may be the part's outline. */
+  private endRun(): void {
+    if (this.running === 0) return;
+    this.running = 0;
+    const { sums } = this;
+    sums[DEPOSITED] += sums[RUN];
+    if (this.outline) {
+      this.outlineSeen = true;
+      sums[OUTLINE] += sums[RUN];
+    }
+    const gap = Math.hypot(sums[END_X] - sums[RUN_X], sums[END_Y] - sums[RUN_Y]);
+    if (gap < LOOP_GAP_MM && sums[RUN] > sums[LOOP] && sums[RUN] > 4 * LOOP_GAP_MM) sums[LOOP] = sums[RUN];
+  }
+
+  private widen(x: number, y: number): void {
+    const { sums } = this;
+    sums[MIN_X] = Math.min(sums[MIN_X], x);
+    sums[MAX_X] = Math.max(sums[MAX_X], x);
+    sums[MIN_Y] = Math.min(sums[MIN_Y], y);
+    sums[MAX_Y] = Math.max(sums[MAX_Y], y);
+  }
+
+  private clearSums(): void {
+    this.running = 0;
+    this.sums.fill(0);
+    this.sums[MIN_X] = Number.POSITIVE_INFINITY;
+    this.sums[MIN_Y] = Number.POSITIVE_INFINITY;
+    this.sums[MAX_X] = Number.NEGATIVE_INFINITY;
+    this.sums[MAX_Y] = Number.NEGATIVE_INFINITY;
+  }
+}
+
+const boxPerimeterMm = ({ boxMm: { min, max } }: Layer): number => 2 * (max[0] - min[0] + max[1] - min[1]);
+
+const DEPOSITED = 0;
+const TRAVEL = 1;
+const FILAMENT = 2;
+const MIN_X = 3;
+const MAX_X = 4;
+const MIN_Y = 5;
+const MAX_Y = 6;
+const RUN = 7;
+const RUN_X = 8;
+const RUN_Y = 9;
+const END_X = 10;
+const END_Y = 11;
+const OUTLINE = 12;
+const LOOP = 13;
+const SUMS = 14;

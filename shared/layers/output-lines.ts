@@ -1,0 +1,128 @@
+import type { Channel, Machine } from "#shared/formats/machine.ts";
+import type { LineScan } from "#shared/gcode/scan-line.ts";
+import { bit } from "#shared/gcode/scan-line.ts";
+import type { Findings } from "#shared/layers/findings.ts";
+import type { ControlLine, OutputUse, PauseLine } from "#shared/layers/reading.ts";
+import { LINE, NEXT, OFFSET } from "#shared/layers/layer-builder.ts";
+import { channelsByOutput, dutyOn, namedOutput, numberedOutput, type OutputCommand, parseNamed } from "#shared/machine/output-command.ts";
+import { Refusal } from "#shared/refusal.ts";
+
+/** Pauses that printer firmware and hosts know, whether or not the machine document lists them. */
+const KNOWN_PAUSES = ["M0", "M1", "M25", "M226", "M600", "M601", "M125", "PAUSE", "@PAUSE"];
+/** More fan and heater lines than this is no sliced part. */
+const MAX_CONTROLS = 1_000_000;
+/** Named commands of the firmware family that drives its part fan on every M106, whatever its P says (PLANNERS, A 8). */
+const INDEX_BLIND = /^(SET_(FAN_SPEED|PIN|VELOCITY_LIMIT|PRESSURE_ADVANCE|GCODE_OFFSET|HEATER_TEMPERATURE)|EXCLUDE_OBJECT\w*|TEMPERATURE_WAIT|BED_MESH_\w+|(SAVE|RESTORE)_GCODE_STATE)$/;
+/** Named commands that are known not to drive an output. */
+const HARMLESS = /^(SET_(VELOCITY_LIMIT|PRESSURE_ADVANCE|GCODE_OFFSET)|EXCLUDE_OBJECT\w*|(SAVE|RESTORE)_GCODE_STATE)$/;
+const P_BIT = bit("P");
+
+/** Finds the lines that drive outputs or pause the print, and how the file addresses its outputs. */
+export class OutputLines {
+  readonly controls: ControlLine[] = [];
+  readonly pauses: PauseLine[] = [];
+  readonly use: OutputUse = {};
+
+  private readonly channels: readonly Channel[];
+  private readonly byOutput: Map<string, number>;
+  private readonly pauseNumbers = new Set<number>();
+  private readonly pauseNames = new Set<string>();
+  private readonly findings: Findings;
+  private readonly where: Float64Array;
+  private readonly macros = new Set<string>();
+
+  constructor(machine: Machine, findings: Findings, where: Float64Array) {
+    this.channels = machine.channels;
+    this.byOutput = channelsByOutput(machine);
+    this.findings = findings;
+    this.where = where;
+    for (const command of [...KNOWN_PAUSES, ...machine.pauses.map((pause) => pause.command)]) {
+      const number = /^M(\d+)$/i.exec(command)?.[1];
+      if (number) this.pauseNumbers.add(Number(number));
+      else this.pauseNames.add(command.toUpperCase());
+    }
+  }
+
+  /** A line with an M word. Returns what has to learn its print time, if anything. */
+  numbered(scan: LineScan, ours: ControlLine["ours"]): ControlLine | PauseLine | undefined {
+    const code = scan.value[12];
+    if (this.pauseNumbers.has(code)) return this.pause(`M${code}`);
+    if (code === 98 || code === 32 || code === 808) this.macro(`M${code}`);
+    const command = numberedOutput(scan);
+    if (!command) return undefined;
+    const line = this.where[LINE];
+    if (code !== 42 && !ours) {
+      if ((scan.mask & P_BIT) !== 0 && scan.value[15] > 0) this.use.indexedFanLine ??= line;
+      if ((scan.mask & P_BIT) === 0) this.use.bareFanLine ??= line;
+    }
+    return this.control(command, ours);
+  }
+
+  /** A named command, as text. */
+  named(text: string, ours: ControlLine["ours"]): ControlLine | PauseLine | undefined {
+    const { name, parameters } = parseNamed(text);
+    if (this.pauseNames.has(name)) return this.pause(name);
+    if (INDEX_BLIND.test(name)) this.use.namedCommand ??= { name, line: this.where[LINE] };
+    const command = namedOutput(name, parameters);
+    if (command) return this.control(command, ours);
+    if (!HARMLESS.test(name)) this.macro(name);
+    return undefined;
+  }
+
+  private control(command: OutputCommand, ours: ControlLine["ours"]): ControlLine | undefined {
+    const index = this.byOutput.get(command.output);
+    if (index === undefined) return undefined;
+    if (this.controls.length >= MAX_CONTROLS)
+      throw new Refusal(
+        "too-many-controls",
+        `more than ${MAX_CONTROLS} fan and heater lines`,
+        "Check that the file is a sliced part; no plan can be laid over this many commands.",
+        { line: this.where[LINE] },
+      );
+    const channel = this.channels[index];
+    if (command.value > 0 && !ours) this.checkScale(channel, command.value);
+    const line: ControlLine = {
+      channel: index,
+      line: this.where[LINE],
+      offset: this.where[OFFSET],
+      length: this.where[NEXT] - this.where[OFFSET],
+      timeS: 0,
+      layer: 0,
+      does: command.does,
+      duty: dutyOn(channel, command.value),
+      ours,
+    };
+    this.controls.push(line);
+    return line;
+  }
+
+  private checkScale({ id, drive }: Channel, value: number): void {
+    const scale = drive.by === "named-fan" ? 1 : drive.fullScale;
+    if (scale === 255 && value < 1)
+      this.findings.add(
+        "scale-mixed",
+        "warning",
+        `a value of ${value} on channel ${id}, whose full scale is 255, is ${((value / 255) * 100).toFixed(2)} %; on a 0–1 scale it would be ${(value * 100).toFixed(0)} %`,
+        { line: this.where[LINE] },
+      );
+    if (scale === 1 && value > 1 && Number.isFinite(value))
+      this.findings.add("scale-mixed", "warning", `a value of ${value} on channel ${id}, whose full scale is 1, is read as 0–255`, {
+        line: this.where[LINE],
+      });
+  }
+
+  private pause(command: string): PauseLine {
+    const { where } = this;
+    const pause = { command, line: where[LINE], offset: where[OFFSET], length: where[NEXT] - where[OFFSET], timeS: 0, layer: 0 };
+    this.pauses.push(pause);
+    return pause;
+  }
+
+  private macro(name: string): void {
+    if (this.macros.has(name) || this.macros.size >= 100) return;
+    this.macros.add(name);
+    this.findings.add("macro", "info", `${name} is a macro or named command: what it does to fans and heaters can't be seen in this file`, {
+      line: this.where[LINE],
+    });
+  }
+}

@@ -1,0 +1,406 @@
+import type { Machine, Motion } from "#shared/formats/machine.ts";
+import { bit, type LineScan } from "#shared/gcode/scan-line.ts";
+import { type Arc, arcFromCentre, arcFromRadius, arcLengthMm } from "#shared/machine/arc.ts";
+
+/** What a line of words turns into. One receiver, so that the calls stay cheap. */
+export interface MotionSink {
+  /** one straight move, machine coordinates in mm; `de` filament in mm; `lengthMm` of the displacement */
+  move(x0: number, y0: number, z0: number, x: number, y: number, z: number, de: number, lengthMm: number, speedMmS: number): void;
+  /** the queue runs empty: homing, dwell, tool change, wait */
+  wait(kind: "temperature" | "home" | "tool" | "pause" | "dwell", seconds: number | null): void;
+  nozzle(celsius: number): void;
+  bed(celsius: number): void;
+  limits(change: LimitChange): void;
+  odd(code: string, message: string): void;
+}
+
+/** Motion limits that a file sets for itself; mm/s, mm/s². */
+export interface LimitChange {
+  printAccel?: number;
+  travelAccel?: number;
+  retractAccel?: number;
+  maxSpeed?: number;
+  squareCorner?: number;
+  cruiseRatio?: number;
+  deviation?: number;
+  axisSpeed?: Partial<Record<"x" | "y" | "z" | "e", number>>;
+  axisAccel?: Partial<Record<"x" | "y" | "z" | "e", number>>;
+  jerk?: Partial<Record<"x" | "y" | "z" | "e", number>>;
+}
+
+const A = 0;
+const E = 4;
+const F = 5;
+const I = 8;
+const J = 9;
+const K = 10;
+const P = 15;
+const R = 17;
+const S = 18;
+const T = 19;
+const X = 23;
+const Y = 24;
+const Z = 25;
+const [A_BIT, E_BIT, F_BIT, G_BIT, I_BIT, J_BIT, K_BIT] = [..."AEFGIJK"].map(bit);
+const [L_BIT, M_BIT, N_BIT, P_BIT, R_BIT, S_BIT, T_BIT] = [..."LMNPRST"].map(bit);
+const [X_BIT, Y_BIT, Z_BIT] = [..."XYZ"].map(bit);
+const PLAIN_MOVE = X_BIT | Y_BIT | Z_BIT | E_BIT | F_BIT | G_BIT | N_BIT;
+const AXIS_WORDS = X_BIT | Y_BIT | Z_BIT | E_BIT | I_BIT | J_BIT | K_BIT | R_BIT;
+const INCH = 25.4;
+
+/** Modal state of the program: words in, moves in absolute millimetres out. */
+export class Interpreter {
+  private readonly sink: MotionSink;
+  private readonly motion: Motion;
+  /** program position X Y Z E, mm, and the machine position of the program's zero for X Y Z */
+  private readonly at = new Float64Array(7);
+  private absolute = true;
+  private extruderAbsolute = true;
+  /** factors: units to mm, feed override over 60 s, flow override */
+  private unit = 1;
+  private feedPerMinute = 1 / 60;
+  private flow = 1;
+  /** programmed speed in mm/min before the override */
+  private feedMmMin: number;
+  private plane: 17 | 18 | 19 = 17;
+  private motionWord = 0;
+  private retracted = false;
+
+  constructor(machine: Machine, sink: MotionSink) {
+    this.motion = machine.motion;
+    this.sink = sink;
+    this.feedMmMin = machine.motion.initialSpeedMmS * 60;
+  }
+
+  /** Runs one line of words. Output commands (M106 …) are not looked at here. */
+  run(scan: LineScan): void {
+    const mask = scan.mask;
+    if ((mask & ~PLAIN_MOVE) === 0 && scan.commands === 1 && scan.bare === 0) {
+      const g = scan.value[6];
+      if (g === 1 || g === 0) {
+        this.motionWord = g;
+        this.straight(scan.value, mask);
+        return;
+      }
+    }
+    this.command(scan);
+  }
+
+  private straight(value: Float64Array, mask: number): void {
+    const at = this.at;
+    const unit = this.unit;
+    const x0 = at[0];
+    const y0 = at[1];
+    const z0 = at[2];
+    let x = x0;
+    let y = y0;
+    let z = z0;
+    let de = 0;
+    if ((mask & F_BIT) !== 0) this.setFeed(value[F]);
+    if (this.absolute) {
+      if ((mask & X_BIT) !== 0) x = value[X] * unit;
+      if ((mask & Y_BIT) !== 0) y = value[Y] * unit;
+      if ((mask & Z_BIT) !== 0) z = value[Z] * unit;
+    } else {
+      if ((mask & X_BIT) !== 0) x += value[X] * unit;
+      if ((mask & Y_BIT) !== 0) y += value[Y] * unit;
+      if ((mask & Z_BIT) !== 0) z += value[Z] * unit;
+    }
+    if ((mask & E_BIT) !== 0) {
+      const e = value[E] * unit;
+      if (this.extruderIsAbsolute()) {
+        de = (e - at[3]) * this.flow;
+        at[3] = e;
+      } else {
+        de = e * this.flow;
+        at[3] += e;
+      }
+    }
+    const dx = x - x0;
+    const dy = y - y0;
+    const dz = z - z0;
+    const lengthMm = Math.sqrt(dx * dx + dy * dy + dz * dz);
+    at[0] = x;
+    at[1] = y;
+    at[2] = z;
+    if (lengthMm < 1e-9 && de === 0) return;
+    const ox = at[4];
+    const oy = at[5];
+    const oz = at[6];
+    this.sink.move(x0 + ox, y0 + oy, z0 + oz, x + ox, y + oy, z + oz, de, lengthMm, this.feedMmMin * this.feedPerMinute);
+  }
+
+  private setFeed(value: number): void {
+    if (value > 0) this.feedMmMin = value * this.unit;
+    else this.sink.odd("feed-not-positive", `F${value} is no feed rate; the one before it stays in force`);
+  }
+
+  /** E is absolute where M82 says so; whether G91 makes it relative too depends on the firmware family. */
+  private extruderIsAbsolute(): boolean {
+    return this.extruderAbsolute && (this.absolute || this.motion.axisModeSetsExtruder);
+  }
+
+  private command(scan: LineScan): void {
+    const { value } = scan;
+    const mask = scan.mask & ~scan.bare;
+    if (scan.commands > 1) {
+      this.severalCommands(scan, mask);
+      return;
+    }
+    if ((scan.mask & G_BIT) !== 0) this.gCommand(value[6], value, mask, scan.mask);
+    else if ((scan.mask & M_BIT) !== 0) this.mCommand(value[12], value, mask);
+    else if ((mask & T_BIT) !== 0) this.tool(value[T]);
+    else if ((mask & AXIS_WORDS) !== 0) this.move(this.motionWord, value, mask);
+    else if ((mask & F_BIT) !== 0) this.setFeed(value[F]);
+  }
+
+  /** RS274/NGC, 3.8: settings act before the motion of the same line, whatever their order in it. */
+  private severalCommands(scan: LineScan, mask: number): void {
+    this.sink.odd("several-commands", "several commands on one line: firmware families disagree on which of them run");
+    const { value } = scan;
+    const isMotion = (g: number): boolean => g >= 0 && g <= 3;
+    const words = [...scan.gWords];
+    for (const g of words) if (!isMotion(g)) this.gCommand(g, value, 0, scan.mask);
+    if ((scan.mask & M_BIT) !== 0) this.mCommand(value[12], value, mask & ~AXIS_WORDS);
+    const motion = words.filter(isMotion).pop();
+    const onlySettings = words.every((g) => (g >= 17 && g <= 21) || g === 90 || g === 91);
+    if (motion !== undefined) this.move(motion, value, mask);
+    else if (onlySettings && (mask & AXIS_WORDS) !== 0) this.move(this.motionWord, value, mask);
+  }
+
+  private gCommand(g: number, value: Float64Array, mask: number, allWords: number): void {
+    switch (g) {
+      case 0:
+      case 1:
+      case 2:
+      case 3:
+        this.move(g, value, mask);
+        return;
+      case 4:
+        this.dwell(value, mask);
+        return;
+      case 10:
+      case 11:
+        // With L or P the line sets tool data, as in RS274/NGC; alone it is a retraction.
+        if ((allWords & (L_BIT | P_BIT)) === 0) this.firmwareRetract(g === 10);
+        return;
+      case 17:
+      case 18:
+      case 19:
+        this.plane = g;
+        return;
+      case 20:
+        this.unit = INCH;
+        return;
+      case 21:
+        this.unit = 1;
+        return;
+      case 28:
+        this.home(allWords);
+        return;
+      case 29:
+      case 30:
+        this.sink.wait("home", null);
+        return;
+      case 90:
+      case 91:
+        this.absolute = g === 90;
+        if (this.motion.axisModeSetsExtruder) this.extruderAbsolute = g === 90;
+        return;
+      case 92:
+        this.setPosition(value, mask);
+        return;
+    }
+  }
+
+  private mCommand(m: number, value: Float64Array, mask: number): void {
+    const s = (mask & S_BIT) !== 0 ? value[S] : undefined;
+    const temperature = s ?? ((mask & R_BIT) !== 0 ? value[R] : undefined);
+    switch (m) {
+      case 82:
+        this.extruderAbsolute = true;
+        return;
+      case 83:
+        this.extruderAbsolute = false;
+        return;
+      case 104:
+      case 109:
+        if (temperature !== undefined) this.sink.nozzle(temperature);
+        if (m === 109) this.sink.wait("temperature", null);
+        return;
+      case 140:
+      case 190:
+        if (temperature !== undefined) this.sink.bed(temperature);
+        if (m === 190) this.sink.wait("temperature", null);
+        return;
+      case 116:
+      case 191:
+        this.sink.wait("temperature", null);
+        return;
+      case 400:
+        this.sink.wait("dwell", 0);
+        return;
+      case 220:
+        if (s !== undefined && s > 0) this.feedPerMinute = s / 100 / 60;
+        return;
+      case 221:
+        if (s !== undefined && s > 0) this.flow = s / 100;
+        return;
+      case 201:
+      case 203:
+      case 204:
+      case 205:
+        this.fileLimits(m, value, mask);
+        return;
+    }
+  }
+
+  private fileLimits(m: number, value: Float64Array, mask: number): void {
+    const unit = this.unit;
+    const word = (letterBit: number, index: number): number | undefined =>
+      (mask & letterBit) !== 0 && value[index] > 0 ? value[index] * unit : undefined;
+    const axes = { x: word(X_BIT, X), y: word(Y_BIT, Y), z: word(Z_BIT, Z), e: word(E_BIT, E) };
+    if (m === 201) this.sink.limits({ axisAccel: axes });
+    else if (m === 203) this.sink.limits({ axisSpeed: axes });
+    else if (m === 204) {
+      const s = word(S_BIT, S);
+      const p = word(P_BIT, P) ?? s;
+      const t = word(T_BIT, T) ?? s;
+      this.sink.limits({ printAccel: p, travelAccel: t, retractAccel: word(R_BIT, R) });
+    } else this.sink.limits({ jerk: axes, deviation: word(J_BIT, J) });
+  }
+
+  private dwell(value: Float64Array, mask: number): void {
+    let seconds = 0;
+    if ((mask & S_BIT) !== 0) seconds = value[S];
+    else if ((mask & P_BIT) !== 0) seconds = this.motion.dwellP === "ms" ? value[P] / 1000 : value[P];
+    this.sink.wait("dwell", Math.max(seconds, 0));
+  }
+
+  private home(words: number): void {
+    this.sink.wait("home", null);
+    const all = (words & (X_BIT | Y_BIT | Z_BIT)) === 0;
+    for (const [axis, letter] of [X_BIT, Y_BIT, Z_BIT].entries())
+      if (all || (words & letter) !== 0) {
+        this.at[axis] = 0;
+        this.at[4 + axis] = 0;
+      }
+  }
+
+  private setPosition(value: Float64Array, mask: number): void {
+    const all = (mask & (X_BIT | Y_BIT | Z_BIT | E_BIT)) === 0;
+    const { at, unit } = this;
+    for (const [axis, letter, word] of [
+      [0, X_BIT, X],
+      [1, Y_BIT, Y],
+      [2, Z_BIT, Z],
+    ]) {
+      if (!all && (mask & letter) === 0) continue;
+      const v = all ? 0 : value[word] * unit;
+      at[4 + axis] += at[axis] - v;
+      at[axis] = v;
+    }
+    if (all || (mask & E_BIT) !== 0) at[3] = all ? 0 : value[E] * unit;
+  }
+
+  private firmwareRetract(retract: boolean): void {
+    if (this.retracted === retract) return;
+    this.retracted = retract;
+    const { lengthMm, speedMmS } = this.motion.firmwareRetract;
+    if (lengthMm === 0) return;
+    const at = this.at;
+    const x = at[0] + at[4];
+    const y = at[1] + at[5];
+    const z = at[2] + at[6];
+    this.sink.move(x, y, z, x, y, z, retract ? -lengthMm : lengthMm, 0, speedMmS);
+  }
+
+  private tool(t: number): void {
+    // T255 and T1000 are switches of some firmware, not tools (common practice, no source).
+    if (t >= 0 && t < 64) this.sink.wait("tool", null);
+  }
+
+  /** Motion off the fast path: arcs, an extruder on axis A, missing G word. */
+  private move(g: number, value: Float64Array, given: number): void {
+    let mask = given;
+    if ((mask & A_BIT) !== 0 && (mask & E_BIT) === 0) {
+      value[E] = value[A];
+      mask |= E_BIT;
+    }
+    this.motionWord = g;
+    if (g < 2) this.straight(value, mask);
+    else this.arc(g === 2, value, mask);
+  }
+
+  private arc(clockwise: boolean, value: Float64Array, mask: number): void {
+    const at = this.at;
+    const unit = this.unit;
+    // first and second axis of the plane, the axis along it, and their centre words
+    const [a, b, c] = this.plane === 17 ? [0, 1, 2] : this.plane === 18 ? [2, 0, 1] : [1, 2, 0];
+    const words = [X, Y, Z];
+    const bits = [X_BIT, Y_BIT, Z_BIT];
+    const target = (axis: number): number => {
+      if ((mask & bits[axis]) === 0) return at[axis];
+      return value[words[axis]] * unit + (this.absolute ? 0 : at[axis]);
+    };
+    const offset = (axis: number): number =>
+      (mask & [I_BIT, J_BIT, K_BIT][axis]) !== 0 ? value[[I, J, K][axis]] * unit : 0;
+    const a0 = at[a];
+    const b0 = at[b];
+    const c0 = at[c];
+    const a1 = target(a);
+    const b1 = target(b);
+    const c1 = target(c);
+    const arc =
+      (mask & R_BIT) !== 0
+        ? arcFromRadius(a0, b0, a1, b1, value[R] * unit, clockwise)
+        : arcFromCentre(a0, b0, a1, b1, offset(a), offset(b), clockwise);
+    if (!arc) {
+      this.sink.odd("arc-invalid", "this arc has no centre: start and end do not lie on one circle. It is timed as a straight line");
+      this.straight(value, mask);
+      return;
+    }
+    if ((mask & F_BIT) !== 0) this.setFeed(value[F]);
+    let de = 0;
+    if ((mask & E_BIT) !== 0) {
+      const e = value[E] * unit;
+      const absolute = this.extruderIsAbsolute();
+      de = (absolute ? e - at[3] : e) * this.flow;
+      at[3] = absolute ? e : at[3] + e;
+    }
+    this.chords(arc, [a, b, c], [a0, b0, c0], [a1, b1, c1], de);
+    at[a] = a1;
+    at[b] = b1;
+    at[c] = c1;
+  }
+
+  private chords(arc: Arc, axes: number[], from: number[], to: number[], de: number): void {
+    const rise = to[2] - from[2];
+    const count = Math.min(Math.max(1, Math.floor(arcLengthMm(arc, rise) / this.motion.arcSegmentMm)), MAX_CHORDS);
+    const speed = this.feedMmMin * this.feedPerMinute;
+    const offsets = [this.at[4], this.at[5], this.at[6]];
+    const here = [0, 0, 0];
+    const there = [0, 0, 0];
+    for (let k = 0; k < 3; k++) here[axes[k]] = from[k] + offsets[axes[k]];
+    const startX = from[0] - arc.centreX;
+    const startY = from[1] - arc.centreY;
+    for (let i = 1; i <= count; i++) {
+      const share = i / count;
+      const angle = arc.sweepRad * share;
+      const cos = Math.cos(angle);
+      const sin = Math.sin(angle);
+      const last = i === count;
+      there[axes[0]] = (last ? to[0] : arc.centreX + startX * cos - startY * sin) + offsets[axes[0]];
+      there[axes[1]] = (last ? to[1] : arc.centreY + startX * sin + startY * cos) + offsets[axes[1]];
+      there[axes[2]] = from[2] + rise * share + offsets[axes[2]];
+      const length = Math.hypot(there[0] - here[0], there[1] - here[1], there[2] - here[2]);
+      this.sink.move(here[0], here[1], here[2], there[0], there[1], there[2], de / count, length, speed);
+      here[0] = there[0];
+      here[1] = there[1];
+      here[2] = there[2];
+    }
+  }
+}
+
+/** An arc is never cut finer than this, whatever radius a damaged file states. */
+const MAX_CHORDS = 100_000;

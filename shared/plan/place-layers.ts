@@ -1,0 +1,88 @@
+import type { Zone } from "#shared/formats/profile.ts";
+import { micrometres } from "#shared/plan/heights.ts";
+import type { PlanLayer } from "#shared/plan/plan.ts";
+import { refuseZoneMissing } from "#shared/plan/zone-missing.ts";
+import { upperBorders, zoneAt, zonePosition } from "#shared/plan/zones.ts";
+
+/** Where a layer lies in the profile and in its object. Heights are tops, in whole micrometres above the bed. */
+export interface PlacedLayer {
+  layer: PlanLayer;
+  /** index into the profile's zones */
+  zone: number;
+  heightUm: number;
+  /** 1 for the layer on the bed, counted per object */
+  rank: number;
+  /** by zone: the height at which it begins in this object; NaN where the object has no layer below it */
+  zoneStartUm: Float64Array;
+  /** from the layer's top to the top of the print's last object; Infinity in the objects before it */
+  belowEndUm: number;
+}
+
+/** One object of the print while its layers are gone through. */
+interface ObjectSoFar {
+  topUm: number;
+  /** by zone: the last zone position it covers, in the unit of the profile */
+  borders: Float64Array;
+  zoneStartUm: Float64Array;
+  rank: number;
+  reachedUm: number;
+  reachedZone: number;
+}
+
+/**
+ * Finds every layer's place, in print order.
+ *
+ * In millimetres a zone begins at its border. Layer numbers and fractions have no height of their own: there the zone
+ * begins at the top of the object's last layer below it.
+ *
+ * @throws Refusal `zone-missing` for the first layer outside all zones, or without a height
+ */
+export function placeLayers(layers: readonly PlanLayer[], zones: readonly Zone[]): PlacedLayer[] {
+  const objects = findObjects(layers, zones);
+  const last = layers.length === 0 ? undefined : objects.get(layers[layers.length - 1].object);
+  return layers.map((layer) => {
+    const object = objects.get(layer.object)!;
+    const heightUm = micrometres(layer.zMm);
+    const zone = zoneAt(zonePosition(layer, zones), object.borders);
+    if (zone < 0) refuseZoneMissing(layer, zones, object.topUm);
+    if (zones[zone].unit !== "mm") noteZoneStart(object, zone);
+    object.rank++;
+    object.reachedUm = heightUm;
+    object.reachedZone = zone;
+    return {
+      layer,
+      zone,
+      heightUm,
+      rank: object.rank,
+      zoneStartUm: object.zoneStartUm,
+      belowEndUm: object === last ? object.topUm - heightUm : Number.POSITIVE_INFINITY,
+    };
+  });
+}
+
+function noteZoneStart(object: ObjectSoFar, zone: number): void {
+  if (object.reachedZone < 0 || zone <= object.reachedZone || !Number.isNaN(object.zoneStartUm[zone])) return;
+  object.zoneStartUm[zone] = object.reachedUm;
+}
+
+function findObjects(layers: readonly PlanLayer[], zones: readonly Zone[]): Map<number, ObjectSoFar> {
+  const tops = new Map<number, number>();
+  for (const { object, zMm } of layers) {
+    const top = tops.get(object);
+    const heightUm = micrometres(zMm);
+    if (top === undefined || heightUm > top) tops.set(object, heightUm);
+  }
+  const startsUm = Float64Array.from(zones, ({ unit, from }) => (unit === "mm" ? micrometres(from) : Number.NaN));
+  const objects = new Map<number, ObjectSoFar>();
+  for (const [object, topUm] of tops) {
+    objects.set(object, {
+      topUm,
+      borders: upperBorders(zones, topUm),
+      zoneStartUm: startsUm.slice(),
+      rank: 0,
+      reachedUm: 0,
+      reachedZone: -1,
+    });
+  }
+  return objects;
+}

@@ -1,0 +1,358 @@
+import fc from "fast-check";
+import { describe, expect, test } from "vitest";
+import { parseJson } from "#shared/formats/parse-json.ts";
+import { parseProfile, writeProfile } from "#shared/formats/profile.ts";
+import { type Json, problemsOf, refusal, sealRing } from "#tests/shared/formats/documents.ts";
+
+/** Problems of the example profile after it was spoilt. */
+function problems(spoil: (profile: Json) => void): string[] {
+  const profile = sealRing();
+  spoil(profile);
+  return problemsOf(() => parseProfile(profile));
+}
+
+const fixed = { channel: "lamp", rule: "fixed", duty: 0.5 };
+type Border = [from: number, to?: number];
+
+/** A profile whose zones are named a, b, c … and have these borders. */
+const banded = (unit: string, ...borders: Border[]): Json => ({
+  format: "quenchline.profile/1",
+  name: "Bands",
+  polymer: "PPS",
+  zones: borders.map(([from, to], i) => ({
+    name: "abcdefg"[i],
+    from,
+    ...(to === undefined ? {} : { to }),
+    unit,
+    target: "none",
+    heating: fixed,
+  })),
+});
+
+describe("one rule or a list of rules", () => {
+  test("is always a list inside", () => {
+    const profile = sealRing();
+    profile.zones[1].heating = [profile.zones[1].heating];
+    const { zones } = parseProfile(profile);
+    expect(zones.map(({ cooling, heating }) => [cooling.length, heating.length])).toEqual([
+      [1, 1],
+      [1, 1],
+    ]);
+  });
+
+  test("may be left out", () => {
+    expect(parseProfile(banded("mm", [0])).zones[0].cooling).toEqual([]);
+  });
+
+  test("is named in messages as it was written", () => {
+    const [single] = problems((profile) => {
+      profile.zones[1].cooling.points[0][1] = 1.4;
+    });
+    expect(single).toBe(
+      "zones[1].cooling.points[0][1]: must be between 0 and 1, got 1.4. Give the duty as a fraction of full power, such as 0.62 for 62 %.",
+    );
+    const [listed] = problems((profile) => {
+      profile.zones[1].cooling = [{ ...profile.zones[1].cooling, points: [[1, 2]] }];
+    });
+    expect(listed).toMatch(/^zones\[1\]\.cooling\[0\]\.points\[0\]\[1\]: /);
+  });
+});
+
+test("defaults are filled in where optional fields are left out", () => {
+  expect(parseProfile(banded("mm", [0]))).toEqual({
+    format: "quenchline.profile/1",
+    name: "Bands",
+    polymer: "PPS",
+    bedLayers: { count: 0, duty: {} },
+    zones: [{ name: "a", from: 0, unit: "mm", target: "none", rampMm: 0, cooling: [], heating: [fixed] }],
+    limits: {},
+    lead: {},
+    withinLayer: "replace",
+  });
+});
+
+test("defaults are not shared between documents", () => {
+  parseProfile(banded("mm", [0])).limits.lamp = { maxDuty: 0.1 };
+  parseProfile(banded("mm", [0])).bedLayers.duty.lamp = 1;
+  parseProfile(banded("mm", [0])).zones[0].cooling.push({ channel: "lamp", rule: "hold" });
+  expect(parseProfile(banded("mm", [0]))).toMatchObject({
+    limits: {},
+    bedLayers: { duty: {} },
+    zones: [{ cooling: [] }],
+  });
+});
+
+describe("round trip", () => {
+  test("the example is read back as it was written", () => {
+    const profile = parseProfile(sealRing());
+    expect(parseProfile(parseJson(writeProfile(profile), "profile"))).toEqual(profile);
+  });
+
+  test("a curve point stands on one line, and names are left alone", () => {
+    const text = writeProfile(parseProfile({ ...sealRing(), name: "[ 1, 2 ] [\t3,4]".replace("\t", " ") }));
+    expect(text).toContain("            [3, 0.55],\n");
+    expect(text).toContain('"name": "[ 1, 2 ] [ 3,4]"');
+  });
+
+  test("the order in which channels were given does not show in the text", () => {
+    const turned = sealRing();
+    turned.lead = { lamp: "settle", "part-fan": 0 };
+    expect(writeProfile(parseProfile(turned))).toBe(writeProfile(parseProfile(sealRing())));
+  });
+
+  test("whatever zones and curves a profile has, it is read back as it was written", () => {
+    fc.assert(
+      fc.property(anyProfile, (json) => {
+        const profile = parseProfile(json);
+        expect(parseProfile(parseJson(writeProfile(profile), "profile"))).toEqual(profile);
+      }),
+    );
+  });
+});
+
+const duty = fc.double({ min: 0, max: 1, noNaN: true });
+const channelId = fc.stringMatching(/^[a-z][a-z0-9]{0,5}(-[a-z0-9]{1,5}){0,2}$/).filter((id) => id !== "constructor");
+const label = fc.string({ unit: "grapheme", minLength: 1, maxLength: 20 }).filter((text) => text.trim() !== "");
+const points = fc
+  .uniqueArray(fc.tuple(fc.double({ min: 0, max: 1e6, noNaN: true }), duty), {
+    minLength: 1,
+    selector: ([x]) => x + 0,
+  })
+  .map((list) => list.sort(([a], [b]) => a - b));
+const rule = fc.oneof(
+  fc.record({ channel: channelId, rule: fc.constant("fixed"), duty }),
+  fc.record({
+    channel: channelId,
+    rule: fc.constant("curve"),
+    over: fc.constantFrom("layer-time", "deposited-length", "height"),
+    points,
+  }),
+  fc.record({ channel: channelId, rule: fc.constant("hold"), baseDuty: duty }, { requiredKeys: ["channel", "rule"] }),
+);
+const rules = fc.uniqueArray(rule, { maxLength: 4, selector: ({ channel }) => channel });
+const anyProfile = fc
+  .record({
+    name: label,
+    polymer: label,
+    heights: fc.array(fc.integer({ min: 1, max: 50_000 }), { minLength: 1, maxLength: 5 }),
+    rules,
+    limits: fc.dictionary(channelId, fc.record({ maxDuty: duty, maxDutyPerLayer: fc.constantFrom(0.1, 1) })),
+    lead: fc.dictionary(channelId, fc.oneof(fc.constant("settle"), fc.double({ min: 0, max: 60, noNaN: true }))),
+  })
+  .map(({ heights, rules: heating, name, polymer, limits, lead }) => {
+    let top = 0;
+    const zones = heights.map((height) => {
+      const from = top / 1000;
+      top += height;
+      return { name, from, to: top / 1000, unit: "mm", target: "none", heating };
+    });
+    return { format: "quenchline.profile/1", name, polymer, zones, limits, lead };
+  });
+
+describe("zones", () => {
+  test.each<[string, string, Border[]]>([
+    ["one zone for all heights", "mm", [[0]]],
+    [
+      "borders that meet",
+      "mm",
+      [
+        [0, 6],
+        [6, 12.5],
+        [12.5, 40],
+      ],
+    ],
+    ["borders equal in whole micrometres", "mm", [[0, 0.1 + 0.2], [0.3]]],
+    ["layers from 0", "layer", [[0, 10], [10]]],
+    ["layers from 1", "layer", [[1, 10], [10]]],
+    [
+      "fractions to 1",
+      "fraction",
+      [
+        [0, 0.5],
+        [0.5, 1],
+      ],
+    ],
+    ["fractions to the top", "fraction", [[0, 1 / 3], [0.333333]]],
+  ])("may have %s", (_, unit, borders) => {
+    expect(parseProfile(banded(unit, ...borders)).zones).toHaveLength(borders.length);
+  });
+
+  test.each<[string, string, Border[], string]>([
+    [
+      "a gap",
+      "mm",
+      [[0, 6], [7]],
+      'zones[1].from: is 7, so between zones "a" and "b" there is a gap from 6 to 7. Start "b" at 6.',
+    ],
+    ["an overlap", "mm", [[0, 6], [5]], 'zones[1].from: is 5, so zones "a" and "b" overlap up to 6. Start "b" at 6.'],
+    [
+      "nothing at the bottom",
+      "mm",
+      [[0.2]],
+      'zones[0].from: is 0.2, so nothing is said below zone "a". Start the first zone at 0.',
+    ],
+    [
+      "no first layer",
+      "layer",
+      [[2]],
+      'zones[0].from: is 2, so nothing is said below zone "a". Start the first zone at 0 or 1.',
+    ],
+    [
+      "layers that skip one number",
+      "layer",
+      [[1, 10], [11]],
+      'zones[1].from: is 11, so between zones "a" and "b" there is a gap from 10 to 11. Start "b" at 10. A zone covers (from, to], so from 10 begins with layer 11.',
+    ],
+    [
+      "half a layer",
+      "layer",
+      [[0, 2.5], [2.5]],
+      "zones[0].to: must be a whole layer number, got 2.5. Round it, or give the zone in mm.",
+    ],
+    [
+      "a fraction above 1",
+      "fraction",
+      [[0, 50]],
+      'zones[0].to: must be at most 1 with unit "fraction", got 50. Give 0-1, or use unit "mm" or "layer".',
+    ],
+    [
+      "fractions that end early",
+      "fraction",
+      [[0, 0.9]],
+      'zones[0].to: is 0.9, so nothing is said above zone "a". Give 1 or leave it out.',
+    ],
+    [
+      "no end before the last",
+      "mm",
+      [[0], [6]],
+      'zones[0].to: is missing, but zone "b" follows. Only the last zone may leave it out.',
+    ],
+    [
+      "an order from the top down",
+      "mm",
+      [
+        [6, 12],
+        [0, 6],
+      ],
+      'zones[1].from: is 0, below the zone before it (zones "a" and "b"). List the zones from the bottom up.',
+    ],
+    [
+      "no height",
+      "mm",
+      [
+        [0, 6],
+        [6, 6],
+      ],
+      "zones[1].to: is 6, not above from 6. A zone covers (from, to]: give a to above its from.",
+    ],
+    [
+      "less than a micrometre of height",
+      "mm",
+      [[0, 0.0001]],
+      "zones[0].to: is 0.0001, not above from 0. A zone covers (from, to]: give a to above its from.",
+    ],
+  ])("cannot have %s", (_, unit, borders, line) => {
+    expect(problemsOf(() => parseProfile(banded(unit, ...borders)))).toContain(line);
+  });
+
+  test("share one unit", () => {
+    expect(problems((profile) => Object.assign(profile.zones[1], { unit: "layer" }))).toEqual([
+      'zones[1].unit: is "layer", but zones[0] uses "mm". Use one unit for all zones of a profile.',
+    ]);
+  });
+
+  test("are at least one", () => {
+    expect(problems((profile) => Object.assign(profile, { zones: [] }))[0]).toMatch(/^zones: has no zone/);
+  });
+
+  test("give a channel one rule only, cooling and heating together", () => {
+    const [problem] = problems((profile) => {
+      profile.zones[0].heating = { channel: "part-fan", rule: "fixed", duty: 0.1 };
+    });
+    expect(problem).toMatch(/^zones\[0\]\.heating\.channel: "part-fan" has a rule in this zone already/);
+  });
+});
+
+describe("wrong values", () => {
+  test.each<[string, (profile: Json) => void, string | RegExp]>([
+    [
+      "a curve without points",
+      (p) => (p.zones[0].cooling.points = []),
+      "zones[0].cooling.points: has no point. Give at least one, as [x, duty].",
+    ],
+    [
+      "curve points that stand still",
+      (p) => (p.zones[0].cooling.points[1][0] = 3),
+      /^zones\[0\]\.cooling\.points\[1\]\[0\]: must be greater than the x of the point before \(3\), got 3\./,
+    ],
+    [
+      "a point of one number",
+      (p) => (p.zones[0].cooling.points[1] = [10]),
+      "zones[0].cooling.points[1]: must be a pair [x, duty].",
+    ],
+    [
+      "a point that is no list",
+      (p) => (p.zones[0].cooling.points[1] = 10),
+      "zones[0].cooling.points[1]: must be a pair of numbers, got 10.",
+    ],
+    [
+      "an unknown rule",
+      (p) => (p.zones[0].heating.rule = "fix"),
+      'zones[0].heating.rule: must be one of "fixed", "curve", "hold", got "fix". Did you mean "fixed"?',
+    ],
+    [
+      "a rule without a channel",
+      (p) => delete p.zones[0].heating.channel,
+      "zones[0].heating.channel: is missing. Add it: a text.",
+    ],
+    [
+      "a field of another rule",
+      (p) => (p.zones[0].heating.points = []),
+      "zones[0].heating.points: is not a known field. Remove it. The fields here are channel, rule, duty.",
+    ],
+    [
+      "null for a rule",
+      (p) => (p.zones[0].heating = null),
+      "zones[0].heating: must be an object, got null. Leave an optional field out instead.",
+    ],
+    [
+      "a lead that is no time",
+      (p) => (p.lead.lamp = "soon"),
+      'lead.lamp: must be a number of seconds from 0 to 3600, or "settle", got "soon".',
+    ],
+    [
+      "a negative lead",
+      (p) => (p.lead.lamp = -1),
+      'lead.lamp: must be a number of seconds from 0 to 3600, or "settle", got -1.',
+    ],
+    ["a key that is no channel id", (p) => (p.limits["Part Fan"] = {}), /^limits\["Part Fan"\]: is no channel id/],
+    [
+      "limits that cross",
+      (p) => (p.limits.lamp = { minDuty: 0.5, maxDuty: 0.4 }),
+      "limits.lamp.minDuty: is 0.5, above maxDuty 0.4. Lower minDuty or raise maxDuty.",
+    ],
+    [
+      "margins that overlap",
+      (p) => (p.margins = { maxCrystallinity: 0.3, minCrystallinity: 0.2 }),
+      /^margins\.maxCrystallinity: is 0\.3, above minCrystallinity 0\.2/,
+    ],
+    [
+      "a name with a line break",
+      (p) => (p.zones[1].name = "lip\nM106 S255"),
+      /^zones\[1\]\.name: contains a line break/,
+    ],
+    [
+      "an unknown target",
+      (p) => (p.zones[0].target = "crystalline"),
+      /^zones\[0\]\.target: must be one of "amorphous", "semi-crystalline", "none"/,
+    ],
+  ])("%s: refused", (_, spoil, line) => {
+    const [problem] = problems(spoil);
+    if (typeof line === "string") expect(problem).toBe(line);
+    else expect(problem).toMatch(line);
+  });
+
+  test("the refusal says that it is the profile", () => {
+    expect(refusal(() => parseProfile({}))).toMatchObject({ code: "bad-profile", place: { path: "format" } });
+  });
+});
