@@ -5,9 +5,9 @@ import { hatch } from "#samples/generate/infill.ts";
 import { alternatingDeg, BEAD_MM, BEAD_SECTION_MM2, LAYER_MM, printStrokes } from "#samples/generate/layer.ts";
 
 const CENTRE = 125;
-const LAYERS = 43;
-const OUTER_MM = 24;
-const INNER_MM = 19;
+const LAYERS = 45;
+const OUTER_MM = 22;
+const INNER_MM = 18;
 const WALLS = 2;
 
 /** Seal ring: every layer alike, walls as true arcs; which state a layer ends in is left to the profile alone. */

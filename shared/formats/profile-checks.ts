@@ -22,7 +22,7 @@ export function checkZone(zone: Zone, context: Context): void {
   const seen = new Map<string, string>();
   for (const side of ["cooling", "heating"] as const) {
     zone[side].forEach(({ channel }, i) => {
-      const place = `${side}[${i}]`;
+      const place = zone[side].length === 1 ? side : `${side}[${i}]`;
       const earlier = seen.get(channel);
       if (earlier !== undefined) {
         const message = `"${channel}" has a rule in this zone already, at ${earlier}. Give every channel one rule per zone`;

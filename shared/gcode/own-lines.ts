@@ -2,9 +2,9 @@
  * How our own lines are known again in a tuned file. A command of ours ends in a short tag; one provenance line says
  * where the file came from.
  */
-export const PLAN_TAG = ";ql";
-/** stands in the place of a command that brought a kept raise down again */
-export const RESTORE_TAG = ";ql=";
+export const OWN_TAGS = { plan: ";ql", raise: ";ql+", restore: ";ql=" } as const;
+/** `plan`: a duty of the plan; `raise`: a raise of the file, cut to a limit; `restore`: back to the plan after a raise */
+export type OwnTag = keyof typeof OWN_TAGS;
 export const PROVENANCE_PREFIX = ";quenchline ";
 
 const matches = (buf: Uint8Array, start: number, end: number, text: string): boolean => {
@@ -14,10 +14,11 @@ const matches = (buf: Uint8Array, start: number, end: number, text: string): boo
 };
 
 /** Which tag a comment (delimiter excluded) is, if any. */
-export function ownTag(buf: Uint8Array, commentStart: number, commentEnd: number): "plan" | "restore" | false {
-  if (commentStart < 0) return false;
-  if (matches(buf, commentStart, commentEnd, PLAN_TAG.slice(1))) return "plan";
-  return matches(buf, commentStart, commentEnd, RESTORE_TAG.slice(1)) ? "restore" : false;
+export function ownTag(buf: Uint8Array, commentStart: number, commentEnd: number): OwnTag | false {
+  if (commentStart < 0 || commentEnd - commentStart > 3) return false;
+  for (const tag of ["plan", "raise", "restore"] as const)
+    if (matches(buf, commentStart, commentEnd, OWN_TAGS[tag].slice(1))) return tag;
+  return false;
 }
 
 /** Whether a comment-only line is the provenance line. */

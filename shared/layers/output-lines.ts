@@ -71,7 +71,10 @@ export class OutputLines {
 
   private control(command: OutputCommand, ours: ControlLine["ours"]): ControlLine | undefined {
     const index = this.byOutput.get(command.output);
-    if (index === undefined) return undefined;
+    if (index === undefined) {
+      if (ours) this.use.strayOwnLine ??= this.where[LINE];
+      return undefined;
+    }
     if (this.controls.length >= MAX_CONTROLS)
       throw new Refusal(
         "too-many-controls",

@@ -230,7 +230,8 @@ export class ToolpathReader {
     } catch {
       this.findings.add("provenance-broken", "warning", "a provenance line that can't be read", { line: this.line });
     }
-    this.provenance = { line: this.line, text: `;${text}`, data };
+    const { where } = this;
+    this.provenance = { line: this.line, offset: where[OFFSET], length: where[NEXT] - where[OFFSET], text: `;${text}`, data };
   }
 
   /** `filament diameter = 2.85`, the one setting that volume needs. */

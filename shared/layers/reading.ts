@@ -1,3 +1,4 @@
+import type { OwnTag } from "#shared/gcode/own-lines.ts";
 import type { Place } from "#shared/refusal.ts";
 
 /**
@@ -22,8 +23,17 @@ export interface Reading {
   /** how the file addresses its outputs, for the check that a command lands where it should */
   outputs: OutputUse;
   findings: Finding[];
-  /** set when the file was tuned by us before: its provenance line, parsed, and that line's number */
-  provenance?: { line: number; text: string; data: unknown };
+  /** set when the file was tuned by us before */
+  provenance?: ProvenanceLine;
+}
+
+/** Our provenance line as it stands in the file; `data` is its JSON, undefined when it can't be parsed. */
+export interface ProvenanceLine {
+  line: number;
+  offset: number;
+  length: number;
+  text: string;
+  data: unknown;
 }
 
 export interface FileFacts {
@@ -128,8 +138,8 @@ export interface ControlLine {
   does: "duty" | "configuration" | "mixed";
   /** 0-1; NaN where `does` is configuration or the duty is hidden */
   duty: number;
-  /** a line of ours, from an earlier tuning: `plan`, or `restore` after a kept raise */
-  ours: false | "plan" | "restore";
+  /** a line of ours from an earlier tuning: of the plan, a kept raise cut to a limit, or what ended a kept raise */
+  ours: OwnTag | false;
 }
 
 /** First lines of each kind, where there is one; our own lines don't count. */
@@ -140,6 +150,8 @@ export interface OutputUse {
   indexedFanLine?: number;
   /** M106 or M107 without P */
   bareFanLine?: number;
+  /** a line with our tag that drives no channel of this machine: tuned for another one */
+  strayOwnLine?: number;
 }
 
 export interface PauseLine {

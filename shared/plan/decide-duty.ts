@@ -3,6 +3,7 @@ import { applyEndRamp } from "#shared/plan/end-ramp.ts";
 import { limitDuty } from "#shared/plan/limit-duty.ts";
 import type { PlacedLayer } from "#shared/plan/place-layers.ts";
 import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
+import type { Reasons } from "#shared/plan/reasons.ts";
 import { roundDuty } from "#shared/plan/round-duty.ts";
 import { ruleDuty, ruleReason } from "#shared/plan/rules.ts";
 import { applyZoneRamp, type ReadyZone } from "#shared/plan/zone-ramp.ts";
@@ -22,6 +23,7 @@ export interface Decision {
 /**
  * Decides one channel's duty for one layer. The order of the steps is part of the file format's contract.
  *
+ * @param reasons empty; what it collects is in the decision
  * @param before the channel's duty in the layer before in print order; undefined for the first layer
  */
 export function decideDuty(
@@ -29,23 +31,23 @@ export function decideDuty(
   zones: readonly ReadyZone[],
   placed: PlacedLayer,
   before: number | undefined,
+  reasons: Reasons,
 ): Decision {
-  const reasons: string[] = [];
   const wanted = applyEndRamp(ruledDuty(channel, zones, placed, reasons), channel, placed, reasons);
   const allowed = limitDuty(wanted, channel, reasons);
   const reachable = before === undefined ? allowed : limitChange(allowed, before, channel, reasons);
   const duty = roundDuty(reachable, before, channel, reasons);
-  return { wanted, allowed, duty, reasons };
+  return { wanted, allowed, duty, reasons: reasons.take() };
 }
 
 /** The zone's rule with its ramp, or the duty of the bed layers, which no zone ramp touches. */
-function ruledDuty(channel: ReadyChannel, zones: readonly ReadyZone[], placed: PlacedLayer, reasons: string[]): number {
+function ruledDuty(channel: ReadyChannel, zones: readonly ReadyZone[], placed: PlacedLayer, reasons: Reasons): number {
   const { layer, zone, heightUm, rank } = placed;
   const rule = channel.rules[zone];
   const own = ruleDuty(rule, layer, heightUm);
-  reasons.push(ruleReason(rule, layer, heightUm, own));
+  reasons.add(ruleReason(rule, layer, heightUm, own));
   if (channel.bedDuty !== undefined && rank <= channel.bedCount) {
-    reasons.push(`bed layer ${rank} ${channel.text.bed}`);
+    reasons.add(`bed layer ${rank} ${channel.text.bed}`);
     return channel.bedDuty;
   }
   return applyZoneRamp(own, channel.rules, zones, placed, reasons);

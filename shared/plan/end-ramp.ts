@@ -1,5 +1,6 @@
 import type { PlacedLayer } from "#shared/plan/place-layers.ts";
 import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
+import type { Reasons } from "#shared/plan/reasons.ts";
 
 /**
  * Steps a heater down to its idle duty, linearly over the last millimetres of the print: the layer at the very top runs
@@ -8,11 +9,11 @@ import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
  *
  * @param duty the layer's duty so far, 0-1
  */
-export function applyEndRamp(duty: number, channel: ReadyChannel, placed: PlacedLayer, reasons: string[]): number {
+export function applyEndRamp(duty: number, channel: ReadyChannel, placed: PlacedLayer, reasons: Reasons): number {
   const { idleDuty, limits } = channel;
   if (!inEndRamp(channel, placed) || duty <= idleDuty) return duty;
   const share = placed.belowEndUm / channel.endRampUm;
-  reasons.push(`end ramp over the last ${limits.endRampMm} mm: ${Math.round(share * 100)} % left`);
+  reasons.add(`end ramp over the last ${limits.endRampMm} mm: ${Math.round(share * 100)} % left`);
   return idleDuty + (duty - idleDuty) * share;
 }
 

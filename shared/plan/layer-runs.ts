@@ -20,10 +20,10 @@ export class LayerRuns {
   private lastPosition = Number.NaN;
 
   /**
-   * @param position place of the layer in print order, ascending from call to call
+   * @param placed later in print order than the one noted before
    * @param amount e.g. the layer's time
    */
-  note(position: number, { zone, layer }: PlacedLayer, amount: number): void {
+  note({ position, zone, layer }: PlacedLayer, amount: number): void {
     const { index } = layer;
     const run = this.runs[this.runs.length - 1];
     if (position === this.lastPosition + 1 && run.zone === zone) {

@@ -1,4 +1,5 @@
 import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
+import type { Reasons } from "#shared/plan/reasons.ts";
 
 /**
  * Brings a duty within the channel's lowest and highest.
@@ -10,18 +11,18 @@ import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
  * @param duty 0-1
  * @returns 0, or within [minDuty, maxDuty]
  */
-export function limitDuty(duty: number, channel: ReadyChannel, reasons: string[]): number {
+export function limitDuty(duty: number, channel: ReadyChannel, reasons: Reasons): number {
   const { minDuty, maxDuty, mayBeOff } = channel.limits;
   if (duty > maxDuty) {
-    reasons.push(`limited to at most ${channel.text.max}`);
+    reasons.add(`limited to at most ${channel.text.max}`);
     return maxDuty;
   }
   if (duty >= minDuty || (duty === 0 && mayBeOff)) return duty;
   if (channel.kind === "heater") {
-    reasons.push(`raised to at least ${channel.text.min}`);
+    reasons.add(`raised to at least ${channel.text.min}`);
     return minDuty;
   }
   const off = duty < minDuty - duty;
-  reasons.push(`below the fan's dead band of ${channel.text.min}: ${off ? "off" : `raised to ${channel.text.min}`}`);
+  reasons.add(`below the fan's dead band of ${channel.text.min}: ${off ? "off" : `raised to ${channel.text.min}`}`);
   return off ? 0 : minDuty;
 }

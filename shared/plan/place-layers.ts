@@ -7,6 +7,8 @@ import { upperBorders, zoneAt, zonePosition } from "#shared/plan/zones.ts";
 /** Where a layer lies in the profile and in its object. Heights are tops, in whole micrometres above the bed. */
 export interface PlacedLayer {
   layer: PlanLayer;
+  /** in print order, from 0 */
+  position: number;
   /** index into the profile's zones */
   zone: number;
   heightUm: number;
@@ -40,7 +42,7 @@ interface ObjectSoFar {
 export function placeLayers(layers: readonly PlanLayer[], zones: readonly Zone[]): PlacedLayer[] {
   const objects = findObjects(layers, zones);
   const last = layers.length === 0 ? undefined : objects.get(layers[layers.length - 1].object);
-  return layers.map((layer) => {
+  return layers.map((layer, position) => {
     const object = objects.get(layer.object)!;
     const heightUm = micrometres(layer.zMm);
     const zone = zoneAt(zonePosition(layer, zones), object.borders);
@@ -51,6 +53,7 @@ export function placeLayers(layers: readonly PlanLayer[], zones: readonly Zone[]
     object.reachedZone = zone;
     return {
       layer,
+      position,
       zone,
       heightUm,
       rank: object.rank,

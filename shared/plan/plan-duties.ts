@@ -6,6 +6,7 @@ import { decideDuty } from "#shared/plan/decide-duty.ts";
 import { placeLayers } from "#shared/plan/place-layers.ts";
 import type { Plan, PlanLayer, PlannedLayer } from "#shared/plan/plan.ts";
 import { readyChannels } from "#shared/plan/ready-channel.ts";
+import { Reasons } from "#shared/plan/reasons.ts";
 import { readyZones } from "#shared/plan/zone-ramp.ts";
 
 /** What a plan is made from. */
@@ -33,6 +34,7 @@ export function planDuties({ layers, machine, profile }: PlanInput): Plan {
   const zones = readyZones(profile.zones);
   const channels = readyChannels(machine, profile);
   const advisers = channels.map((channel) => new ChannelAdvice(channel));
+  const reasons = new Reasons();
   const placedLayers = placeLayers(layers, profile.zones);
   const planned: PlannedLayer[] = placedLayers.map(({ layer }) => ({ index: layer.index, duty: {}, reason: {} }));
   for (let position = 0; position < planned.length; position++) {
@@ -40,11 +42,10 @@ export function planDuties({ layers, machine, profile }: PlanInput): Plan {
     for (let c = 0; c < channels.length; c++) {
       const { id } = channels[c];
       const before = position === 0 ? undefined : planned[position - 1].duty[id];
-      const { wanted, allowed, duty, reasons } = decideDuty(channels[c], zones, placed, before);
-      planned[position].duty[id] = duty;
-      planned[position].reason[id] = reasons;
-      const below = before === undefined ? undefined : { layer: placedLayers[position - 1], duty: before };
-      advisers[c].noteLayer({ position, placed, below, wanted, allowed, duty });
+      const decision = decideDuty(channels[c], zones, placed, before, reasons);
+      planned[position].duty[id] = decision.duty;
+      planned[position].reason[id] = decision.reasons;
+      advisers[c].noteLayer(placed, decision);
     }
   }
   const zoneNames = zones.map(({ name }) => name);

@@ -4,6 +4,7 @@ import { drivenChannels } from "#shared/plan/driven-channels.ts";
 import { micrometres } from "#shared/plan/heights.ts";
 import { type DutyLimits, effectiveLimits } from "#shared/plan/limits.ts";
 import { givenText } from "#shared/plan/quantity-text.ts";
+import { reasonTable } from "#shared/plan/reasons.ts";
 import { type ReadyRule, readyRule } from "#shared/plan/rules.ts";
 import { Refusal } from "#shared/refusal.ts";
 import { dutySteps, roundDutyInward } from "#shared/units/duty.ts";
@@ -26,6 +27,8 @@ export interface ReadyChannel {
   /** lowest and highest duty other than off that the drive can express within the limits */
   leastDuty: number;
   mostDuty: number;
+  /** the reason for rounding to a step, e.g. `rounded to 108/255` */
+  roundReason: (step: number) => string;
   /** limits as they stand in reasons and advice */
   text: { min: string; max: string; perLayer: string; bed: string };
 }
@@ -55,6 +58,7 @@ function readyChannel(channel: Channel, profile: Profile): ReadyChannel {
     endRampUm: micrometres(limits.endRampMm),
     steps,
     ...reachableDuties(channel.id, limits, steps),
+    roundReason: reasonTable(steps, (step) => `rounded to ${step}/${steps}`),
     text: {
       min: givenText(limits.minDuty),
       max: givenText(limits.maxDuty),

@@ -1,4 +1,5 @@
 import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
+import type { Reasons } from "#shared/plan/reasons.ts";
 import { roundDutyInward } from "#shared/units/duty.ts";
 
 /**
@@ -8,7 +9,7 @@ import { roundDutyInward } from "#shared/units/duty.ts";
  * @param before duty of the layer before in print order; undefined for the first layer
  * @returns a whole number of steps divided by `channel.steps`
  */
-export function roundDuty(duty: number, before: number | undefined, channel: ReadyChannel, reasons: string[]): number {
+export function roundDuty(duty: number, before: number | undefined, channel: ReadyChannel, reasons: Reasons): number {
   if (duty === 0) return 0;
   const { steps, limits } = channel;
   let { minDuty: lo, maxDuty: hi } = limits;
@@ -17,7 +18,7 @@ export function roundDuty(duty: number, before: number | undefined, channel: Rea
     hi = Math.min(hi, Math.max(before + limits.maxDutyPerLayer, channel.leastDuty));
   }
   const rounded = roundDutyInward(duty, steps, lo, hi);
-  if (Math.abs(rounded - duty) > INVISIBLE) reasons.push(`rounded to ${Math.round(rounded * steps)}/${steps}`);
+  if (Math.abs(rounded - duty) > INVISIBLE) reasons.add(channel.roundReason(Math.round(rounded * steps)));
   return rounded;
 }
 

@@ -1,6 +1,7 @@
 import type { Zone } from "#shared/formats/profile.ts";
 import { micrometres } from "#shared/plan/heights.ts";
 import type { PlacedLayer } from "#shared/plan/place-layers.ts";
+import { type Reasons, reasonTable } from "#shared/plan/reasons.ts";
 import { type ReadyRule, ruleDuty } from "#shared/plan/rules.ts";
 
 /** What a zone's ramp needs to know. */
@@ -8,12 +9,16 @@ export interface ReadyZone {
   name: string;
   /** height over which duties run from the lower zone's value to this zone's, micrometres; 0: none */
   rampUm: number;
-  /** as it stands in reasons, e.g. `of 0.6 mm` */
-  rampText: string;
+  /** the reason for a share of the ramp in per cent, e.g. `ramp from zone base: 40 % of 0.6 mm` */
+  rampReason: (percent: number) => string;
 }
 
 export function readyZones(zones: readonly Zone[]): ReadyZone[] {
-  return zones.map(({ name, rampMm }) => ({ name, rampUm: micrometres(rampMm), rampText: `of ${rampMm} mm` }));
+  return zones.map(({ name, rampMm }, z) => ({
+    name,
+    rampUm: micrometres(rampMm),
+    rampReason: reasonTable(100, (percent) => `ramp from zone ${zones[z - 1]?.name}: ${percent} % of ${rampMm} mm`),
+  }));
 }
 
 /**
@@ -31,14 +36,14 @@ export function applyZoneRamp(
   rules: readonly ReadyRule[],
   zones: readonly ReadyZone[],
   placed: PlacedLayer,
-  reasons: string[],
+  reasons: Reasons,
 ): number {
   const { zone, heightUm } = placed;
   const share = rampShare(zones, placed, zone, heightUm);
   if (share === 1) return own;
   const border = dutyAt(rules, zones, placed, zone - 1, placed.zoneStartUm[zone]);
   if (border === own) return own;
-  reasons.push(`ramp from zone ${zones[zone - 1].name}: ${Math.round(share * 100)} % ${zones[zone].rampText}`);
+  reasons.add(zones[zone].rampReason(Math.round(share * 100)));
   return border + (own - border) * share;
 }
 

@@ -23,7 +23,9 @@ test("the demo's machines and polymers are all there, and read without a problem
 });
 
 test("every part has a profile", () => {
-  const parts = profiles.map(({ path }) => Object.keys(MACHINE_OF).find((part) => path.startsWith(`profiles/${part}-`)));
+  const parts = profiles.map(({ path }) =>
+    Object.keys(MACHINE_OF).find((part) => path.startsWith(`profiles/${part}-`)),
+  );
   expect(new Set(parts)).toEqual(new Set(Object.keys(MACHINE_OF)));
 });
 

@@ -111,6 +111,25 @@ export const sealRing = (): Json => ({
   withinLayer: "replace",
 });
 
+/** A heating rule that any machine with a lamp carries out. */
+export const fixedLamp = { channel: "lamp", rule: "fixed", duty: 0.5 };
+export type Border = [from: number, to?: number];
+
+/** A profile whose zones are named a, b, c … and have these borders. */
+export const banded = (unit: string, ...borders: Border[]): Json => ({
+  format: "quenchline.profile/1",
+  name: "Bands",
+  polymer: "PPS",
+  zones: borders.map(([from, to], i) => ({
+    name: "abcdefg"[i],
+    from,
+    ...(to === undefined ? {} : { to }),
+    unit,
+    target: "none",
+    heating: fixedLamp,
+  })),
+});
+
 const number = (value: number): Json => ({ value, source: "invented for tests", confidence: "unverified" });
 
 /** A card with invented numbers of the right size. */
