@@ -138,7 +138,7 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
       if ((mask & ~(1 << N)) === 0 && startsName(buf, wordStart)) {
         out.codeStart = wordStart;
         out.kind = LineKind.named;
-        p = scanNamed(buf, wordStart, out);
+        p = scanNamed(buf, wordStart, out, mask !== 0);
         break;
       }
       out.bare |= wordBit;
@@ -192,7 +192,7 @@ function scanOther(buf: Uint8Array, start: number, out: LineScan, mask: number):
   if (c === 64 && mask === 0) {
     out.codeStart = start;
     out.kind = LineKind.named; // `@…` speaks to the host
-    return scanNamed(buf, start, out);
+    return scanNamed(buf, start, out, false);
   }
   out.kind = LineKind.unreadable;
   return endOfLine(buf, start);
@@ -227,16 +227,23 @@ function endOfLine(buf: Uint8Array, start: number): number {
 /** End of a message: the line's end, or the checksum of a numbered line. */
 function endOfText(buf: Uint8Array, start: number, out: LineScan, numbered: boolean): number {
   const end = endOfLine(buf, start);
-  out.codeEnd = end;
-  if (!numbered) return end;
-  let star = end - 1;
-  while (star > start && buf[star] >= 48 && buf[star] <= 57) star--;
-  if (star > start && buf[star] === 42 && star < end - 1) {
-    out.starAt = star;
-    out.checksum = Number(String.fromCharCode(...buf.subarray(star + 1, Math.min(end, star + 5))));
-    out.codeEnd = star;
-  }
+  takeChecksum(buf, start, end, out, numbered);
   return end;
+}
+
+/** Ends the code at `end`, or at the checksum of a numbered line that stands there. */
+function takeChecksum(buf: Uint8Array, start: number, end: number, out: LineScan, numbered: boolean): void {
+  out.codeEnd = end;
+  if (!numbered) return;
+  let last = end;
+  while (last > start && (buf[last - 1] === SPACE || buf[last - 1] === TAB)) last--;
+  let star = last - 1;
+  while (star > start && buf[star] >= 48 && buf[star] <= 57) star--;
+  if (star === last - 1 || buf[star] !== 42) return;
+  out.starAt = star;
+  out.checksum = 0;
+  for (let k = star + 1; k < Math.min(last, star + 5); k++) out.checksum = out.checksum * 10 + buf[k] - 48;
+  out.codeEnd = star;
 }
 
 /** A name starts with a letter and goes on with a letter or underscore, without a blank between. */
@@ -246,7 +253,7 @@ function startsName(buf: Uint8Array, start: number): boolean {
 }
 
 /** Runs over a named command: quoted values may hold `;`. Leaves the comment, if any, in `out`. */
-function scanNamed(buf: Uint8Array, start: number, out: LineScan): number {
+function scanNamed(buf: Uint8Array, start: number, out: LineScan, numbered: boolean): number {
   let quote = 0;
   let p = start;
   for (; ; p++) {
@@ -257,7 +264,7 @@ function scanNamed(buf: Uint8Array, start: number, out: LineScan): number {
     } else if (c === 34 || c === 39) quote = c;
     else if (c === 59) break;
   }
-  out.codeEnd = p;
+  takeChecksum(buf, start, p, out, numbered);
   if (buf[p] !== 59) return p;
   const end = endOfLine(buf, p);
   keepComment(out, p + 1, end);

@@ -44,7 +44,7 @@ export class OutputLines {
   }
 
   /** A line with an M word. Returns what has to learn its print time, if anything. */
-  numbered(scan: LineScan, ours: ControlLine["ours"]): ControlLine | PauseLine | undefined {
+  numbered(buf: Uint8Array, scan: LineScan, ours: ControlLine["ours"]): ControlLine | PauseLine | undefined {
     const code = scan.value[12];
     if (this.pauseNumbers.has(code)) return this.pause(`M${code}`);
     if (code === 98 || code === 32 || code === 808) this.macro(`M${code}`);
@@ -55,7 +55,7 @@ export class OutputLines {
       if ((scan.mask & P_BIT) !== 0 && scan.value[15] > 0) this.use.indexedFanLine ??= line;
       if ((scan.mask & P_BIT) === 0) this.use.bareFanLine ??= line;
     }
-    return this.control(command, ours);
+    return this.control(command, codeText(buf, scan.codeStart, scan.codeEnd), ours);
   }
 
   /** A named command, as text. */
@@ -64,12 +64,12 @@ export class OutputLines {
     if (this.pauseNames.has(name)) return this.pause(name);
     if (INDEX_BLIND.test(name)) this.use.namedCommand ??= { name, line: this.where[LINE] };
     const command = namedOutput(name, parameters);
-    if (command) return this.control(command, ours);
+    if (command) return this.control(command, text.trimEnd(), ours);
     if (!HARMLESS.test(name)) this.macro(name);
     return undefined;
   }
 
-  private control(command: OutputCommand, ours: ControlLine["ours"]): ControlLine | undefined {
+  private control(command: OutputCommand, code: string, ours: ControlLine["ours"]): ControlLine | undefined {
     const index = this.byOutput.get(command.output);
     if (index === undefined) {
       if (ours) this.use.strayOwnLine ??= this.where[LINE];
@@ -93,6 +93,7 @@ export class OutputLines {
       layer: 0,
       does: command.does,
       duty: dutyOn(channel, command.value),
+      code,
       ours,
     };
     this.controls.push(line);
@@ -128,4 +129,14 @@ export class OutputLines {
       line: this.where[LINE],
     });
   }
+}
+
+/** Longest command text that is kept; a duty command is far shorter. */
+const CODE_BYTES = 256;
+
+/** A command's text without its line number and the blanks around it. */
+function codeText(buf: Uint8Array, start: number, end: number): string {
+  return String.fromCharCode(...buf.subarray(start, Math.min(end, start + CODE_BYTES)))
+    .replace(/^[Nn]\s*\d+\s*/, "")
+    .trim();
 }

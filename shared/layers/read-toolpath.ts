@@ -160,7 +160,7 @@ export class ToolpathReader {
         this.interpreter.run(scan);
         return;
       case LineKind.text:
-        this.outputs.numbered(scan, false);
+        this.outputs.numbered(buf, scan, false);
         if (scan.value[12] === 0 || scan.value[12] === 1) this.pauseIfNew();
         return;
       case LineKind.named:
@@ -177,7 +177,7 @@ export class ToolpathReader {
     const { scan } = this;
     const ours = ownTag(buf, scan.commentStart, scan.commentEnd);
     const before = this.outputs.pauses.length;
-    const timed = this.outputs.numbered(scan, ours);
+    const timed = this.outputs.numbered(buf, scan, ours);
     if (this.outputs.pauses.length > before) this.pauseIfNew();
     if (timed) this.builder.timeline.stamp(timed);
   }

@@ -138,6 +138,8 @@ export interface ControlLine {
   does: "duty" | "configuration" | "mixed";
   /** 0-1; NaN where `does` is configuration or the duty is hidden */
   duty: number;
+  /** the command as written, without number, checksum and comment */
+  code: string;
   /** a line of ours from an earlier tuning: of the plan, a kept raise cut to a limit, or what ended a kept raise */
   ours: OwnTag | false;
 }

@@ -1,8 +1,8 @@
 import { adviceText } from "#shared/plan/advice-text.ts";
 import type { Decision } from "#shared/plan/decide-duty.ts";
 import { inEndRamp } from "#shared/plan/end-ramp.ts";
+import type { PlacedLayer } from "#shared/plan/layer-placer.ts";
 import { LayerRuns } from "#shared/plan/layer-runs.ts";
-import type { PlacedLayer } from "#shared/plan/place-layers.ts";
 import type { Advice, AdviceCode } from "#shared/plan/plan.ts";
 import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
 import { curveInput } from "#shared/plan/rules.ts";

@@ -1,7 +1,7 @@
 import { limitChange } from "#shared/plan/change-limit.ts";
 import { applyEndRamp } from "#shared/plan/end-ramp.ts";
+import type { PlacedLayer } from "#shared/plan/layer-placer.ts";
 import { limitDuty } from "#shared/plan/limit-duty.ts";
-import type { PlacedLayer } from "#shared/plan/place-layers.ts";
 import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
 import type { Reasons } from "#shared/plan/reasons.ts";
 import { roundDuty } from "#shared/plan/round-duty.ts";

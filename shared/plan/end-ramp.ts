@@ -1,4 +1,4 @@
-import type { PlacedLayer } from "#shared/plan/place-layers.ts";
+import type { PlacedLayer } from "#shared/plan/layer-placer.ts";
 import type { ReadyChannel } from "#shared/plan/ready-channel.ts";
 import type { Reasons } from "#shared/plan/reasons.ts";
 

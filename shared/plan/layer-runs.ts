@@ -1,4 +1,4 @@
-import type { PlacedLayer } from "#shared/plan/place-layers.ts";
+import type { PlacedLayer } from "#shared/plan/layer-placer.ts";
 
 /** Layers in a row, in print order, that the same thing is to be said about. */
 export interface LayerRun {

@@ -1,22 +1,27 @@
 /** Duties in thousandths, at least two decimals: "0.40", "0.425". Looked up, since a plan names tens of thousands. */
-const THOUSANDTHS = Array.from({ length: 1001 }, (_, i) => (i / 1000).toFixed(3).replace(/0$/, ""));
+const DUTIES = Array.from({ length: 1001 }, (_, i) => (i / 1000).toFixed(3).replace(/0$/, ""));
+
+/** What follows the whole number for 0 to 999 thousandths: "", ".2", ".125". */
+const DECIMALS = Array.from({ length: 1000 }, (_, i) => String(i / 1000).slice(1));
 
 /** A duty 0-1 as text, to the nearest thousandth. */
 export function dutyText(duty: number): string {
-  return THOUSANDTHS[Math.round(duty * 1000)] ?? String(duty);
+  return DUTIES[Math.round(duty * 1000)] ?? String(duty);
 }
 
 /** A quantity >= 0 with one decimal where it has one, e.g. seconds: "7.2", "12". */
 export function tenthsText(value: number): string {
-  const tenths = Math.round(value * 10);
-  if (!(tenths < 2 ** 31)) return String(value);
-  const rest = tenths % 10;
-  return rest === 0 ? `${tenths / 10}` : `${(tenths - rest) / 10}.${rest}`;
+  return Number.isFinite(value) ? thousandthsText(Math.round(value * 10) * 100) : String(value);
 }
 
-/** A height in whole micrometres as mm, as many decimals as it needs: "6.2". */
+/** A height in whole micrometres as mm, with as many decimals as it needs: "6.2". */
 export function heightText(heightUm: number): string {
-  return `${heightUm / 1000}`;
+  return Number.isFinite(heightUm) && heightUm > 0 ? thousandthsText(heightUm) : "0";
+}
+
+function thousandthsText(thousandths: number): string {
+  const rest = thousandths % 1000;
+  return `${(thousandths - rest) / 1000}${DECIMALS[rest]}`;
 }
 
 /** Two to four decimals for a number that someone typed into a document: "0.40", "0.125". */

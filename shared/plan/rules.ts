@@ -70,9 +70,8 @@ export function ruleDuty(rule: ReadyRule, layer: PlanLayer, heightUm: number): n
 export function ruleReason(rule: ReadyRule, layer: PlanLayer, heightUm: number, duty: number): string {
   if (rule.kind === "fixed") return rule.reason;
   const { over, lead } = rule;
-  if (over === "layer-time") return `${lead}${tenthsText(curveInput(over, layer, heightUm))} s → ${dutyText(duty)}`;
-  if (over === "height") return `${lead}${heightText(heightUm)} mm → ${dutyText(duty)}`;
-  return `${lead}${tenthsText(curveInput(over, layer, heightUm))} mm → ${dutyText(duty)}`;
+  const at = over === "height" ? heightText(heightUm) : tenthsText(curveInput(over, layer, heightUm));
+  return lead + (at + (over === "layer-time" ? " s → " : " mm → ") + dutyText(duty));
 }
 
 /** What a curve is read at, s or mm. A time or length that is unknown or below 0 counts as 0: the shortest layer. */

@@ -1,6 +1,6 @@
 import type { Zone } from "#shared/formats/profile.ts";
 import { micrometres } from "#shared/plan/heights.ts";
-import type { PlacedLayer } from "#shared/plan/place-layers.ts";
+import type { PlacedLayer } from "#shared/plan/layer-placer.ts";
 import { type Reasons, reasonTable } from "#shared/plan/reasons.ts";
 import { type ReadyRule, ruleDuty } from "#shared/plan/rules.ts";
 

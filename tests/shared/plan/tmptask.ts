@@ -31,4 +31,3 @@ export function largeTask() {
 function curvePoints(width: number): [number, number][] {
   return Array.from({ length: 6 }, (_, i) => [((i + 0.5) * width) / 6, 0.95 - i * 0.17]);
 }
-

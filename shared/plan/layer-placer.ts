@@ -32,17 +32,20 @@ interface ObjectSoFar {
 }
 
 /**
- * Finds every layer's place, in print order.
+ * Finds the layers' places. Ask for them once each and in print order: how far an object has come decides where a zone
+ * begins in it.
  *
  * In millimetres a zone begins at its border. Layer numbers and fractions have no height of their own: there the zone
  * begins at the top of the object's last layer below it.
  *
- * @throws Refusal `zone-missing` for the first layer outside all zones, or without a height
+ * @returns a function of the position in print order, from 0. It throws Refusal `zone-missing` for a layer outside all
+ * zones or without a height
  */
-export function placeLayers(layers: readonly PlanLayer[], zones: readonly Zone[]): PlacedLayer[] {
+export function layerPlacer(layers: readonly PlanLayer[], zones: readonly Zone[]): (position: number) => PlacedLayer {
   const objects = findObjects(layers, zones);
   const last = layers.length === 0 ? undefined : objects.get(layers[layers.length - 1].object);
-  return layers.map((layer, position) => {
+  return (position) => {
+    const layer = layers[position];
     const object = objects.get(layer.object)!;
     const heightUm = micrometres(layer.zMm);
     const zone = zoneAt(zonePosition(layer, zones), object.borders);
@@ -51,16 +54,10 @@ export function placeLayers(layers: readonly PlanLayer[], zones: readonly Zone[]
     object.rank++;
     object.reachedUm = heightUm;
     object.reachedZone = zone;
-    return {
-      layer,
-      position,
-      zone,
-      heightUm,
-      rank: object.rank,
-      zoneStartUm: object.zoneStartUm,
-      belowEndUm: object === last ? object.topUm - heightUm : Number.POSITIVE_INFINITY,
-    };
-  });
+    const { rank, zoneStartUm, topUm } = object;
+    const belowEndUm = object === last ? topUm - heightUm : Number.POSITIVE_INFINITY;
+    return { layer, position, zone, heightUm, rank, zoneStartUm, belowEndUm };
+  };
 }
 
 function noteZoneStart(object: ObjectSoFar, zone: number): void {
