@@ -168,7 +168,7 @@ export class Timeline {
     if (!this.layer) return;
     this.layer.timeS = Math.max(atS - this.layer.startsAtS, 0);
     this.layer.extrudingTimeS = this.laidS;
-    this.travels.closeLayer(atS);
+    this.travels.closeLayer(this.layer.startsAtS, atS);
   }
 }
 
@@ -179,9 +179,9 @@ const TRAVEL = 3;
 const DWELL = 4;
 
 /**
- * Line boundaries before travel moves. Commands that lead a layer are placed near the end of the layer below, so
- * boundaries are kept densely there and thinned by their distance in time from the layer's end: memory grows with
- * layers, not with moves.
+ * Line boundaries before travel moves. Commands that lead a layer are placed near the end of the layer below, and a
+ * lamp that is lit climbs at a layer's beginning; so boundaries are kept densely there and thinned by their distance in
+ * time from the layer's nearer border: memory grows with layers, not with moves.
  */
 class TravelIndex {
   /** all travels of the open layer, as offset, line, time; thinned to every second when full */
@@ -197,13 +197,14 @@ class TravelIndex {
     this.open = [];
   }
 
-  closeLayer(atS: number): void {
+  closeLayer(startS: number, endS: number): void {
     const { open } = this;
     const keep: number[] = [];
     let lastKeptS = Number.POSITIVE_INFINITY;
     for (let i = open.length - 3; i >= 0; i -= 3) {
       const timeS = open[i + 2];
-      if (lastKeptS - timeS < Math.max(CLOSE_S, SPREAD * (atS - timeS))) continue;
+      const fromBorderS = Math.min(endS - timeS, timeS - startS);
+      if (lastKeptS - timeS < Math.max(CLOSE_S, SPREAD * fromBorderS)) continue;
       keep.push(i);
       lastKeptS = timeS;
     }
@@ -239,6 +240,6 @@ function everySecond(triples: number[]): number[] {
 }
 
 const OPEN_LIMIT = 16_384;
-/** closest spacing of kept boundaries, s, and growth of the spacing with distance from the layer's end */
+/** closest spacing of kept boundaries, s, and growth of the spacing with distance from the layer's nearer border */
 const CLOSE_S = 0.05;
 const SPREAD = 0.05;

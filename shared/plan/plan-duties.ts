@@ -42,7 +42,8 @@ export function planDuties({ layers, machine, profile }: PlanInput): Plan {
   const planned: PlannedLayer[] = [];
   for (let position = 0; position < layers.length; position++) {
     const placed = placeAt(position);
-    const [duty, reason] = [{ ...noDuty }, { ...noReason }];
+    const duty = { ...noDuty };
+    const reason = { ...noReason };
     for (let c = 0; c < channels.length; c++) {
       const { id } = channels[c];
       const before = position === 0 ? undefined : planned[position - 1].duty[id];

@@ -24,7 +24,7 @@ export interface PlannedLayer {
 export interface Advice {
   /** index of the first layer concerned; the message names the range */
   layer: number;
-  code: AdviceCode;
+  code: AdviceCode | TuningAdviceCode;
   message: string;
 }
 
@@ -39,3 +39,6 @@ export type AdviceCode =
   | "change-below-step"
   | "end-ramp-not-held"
   | "rate-too-slow";
+
+/** What shows only when the plan is laid over the file. */
+export type TuningAdviceCode = "boost-left-out" | "raises-kept" | "output-shared";

@@ -24,7 +24,8 @@ function thousandthsText(thousandths: number): string {
   return `${(thousandths - rest) / 1000}${DECIMALS[rest]}`;
 }
 
-/** Two to four decimals for a number that someone typed into a document: "0.40", "0.125". */
+/** A number that someone typed into a document, as it was typed but with at least two decimals: "0.40", "0.125". */
 export function givenText(value: number): string {
-  return value.toFixed(4).replace(/0{1,2}$/, "");
+  const short = value.toFixed(2);
+  return Number(short) === value ? short : String(value);
 }

@@ -1,6 +1,6 @@
 import { expect, test } from "vitest";
 import { planDuties } from "#shared/plan/plan-duties.ts";
-import { curve, fixed, layersOf, machineWith, profileWith } from "./documents.ts";
+import { curve, fixed, layersOf, machineWith, profileWith } from "#tests/shared/plan/documents.ts";
 
 /** Six zones, ramped, three channels, every kind of curve, limits that bite, advice of several kinds. */
 function largeTask() {

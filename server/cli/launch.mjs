@@ -1,0 +1,15 @@
+// `npm run -s quenchline -- …`: installs what is missing, bundles what has changed, runs the command.
+// Standard output belongs to the command alone.
+import { pathToFileURL } from "node:url";
+import { freshCommandLine } from "../bundle.mjs";
+import { installMissing } from "../install.mjs";
+
+if (process.env.DEBUG) process.setSourceMapsEnabled(true);
+try {
+  await installMissing();
+  const { main } = await import(pathToFileURL(await freshCommandLine()));
+  process.exitCode = await main(process.argv.slice(2));
+} catch (error) {
+  process.stderr.write(`quenchline could not start: ${process.env.DEBUG ? error.stack : error.message}\n`);
+  process.exitCode = 1;
+}

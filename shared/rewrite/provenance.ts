@@ -1,0 +1,63 @@
+import { PROVENANCE_PREFIX } from "#shared/gcode/own-lines.ts";
+import type { Reading } from "#shared/layers/reading.ts";
+import { Refusal } from "#shared/refusal.ts";
+
+/** Hex SHA-256 of a text; given by the caller, since the core knows no platform. */
+export type Digest = (text: string) => string;
+
+/** What a tuned file says of itself. */
+export interface Provenance {
+  v: 1;
+  profile: Named;
+  machine: Named;
+  /** SHA-256 of the untuned file, kept when the file is tuned again */
+  original: string;
+  engine: string;
+  status: "trial-only" | "approved";
+  channels: string[];
+  withinLayer: "replace" | "keep-raises";
+  /** number of our command lines, and the digest of them and of the kept raises with their places */
+  lines: number;
+  seal: string;
+}
+
+export interface Named {
+  name: string;
+  sha256: string;
+  /** version of the document where a team keeps versions */
+  version?: number;
+}
+
+/** The one comment line, printable ASCII whatever the names hold, so that no text of a user can end the line. */
+export function provenanceLine(provenance: Provenance): string {
+  const json = JSON.stringify(provenance).replace(/[^\x20-\x7e]/g, (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, "0")}`);
+  return PROVENANCE_PREFIX + json;
+}
+
+/**
+ * The untuned file's digest and channels, where the file was tuned before.
+ *
+ * @throws Refusal when the earlier tuning can't be taken back
+ */
+export function earlierTuning(reading: Reading, driven: readonly string[]): { original: string } | undefined {
+  const { provenance, controls, outputs, findings } = reading;
+  const ownLine = controls.find((line) => line.ours);
+  const refuse = (code: string, message: string, line: number | undefined): never => {
+    throw new Refusal(code, message, "Tune the original file instead of this one.", { line });
+  };
+  if (outputs.strayOwnLine !== undefined)
+    refuse("tuned-for-other-machine", "this file was tuned for a machine with other outputs", outputs.strayOwnLine);
+  if (findings.some(({ code }) => code === "provenance-twice"))
+    refuse("provenance-twice", "this file holds two provenance lines", provenance?.line);
+  if (!provenance) {
+    if (ownLine) refuse("provenance-missing", "this file holds lines of an earlier tuning but no provenance line", ownLine.line);
+    return undefined;
+  }
+  const { original, channels } = (provenance.data ?? {}) as Partial<Provenance>;
+  if (typeof original !== "string" || !/^[0-9a-f]{64}$/.test(original) || !Array.isArray(channels))
+    return refuse("provenance-broken", "the provenance line of this file is damaged", provenance.line);
+  const lost = channels.filter((id) => !driven.includes(id));
+  if (lost.length > 0)
+    refuse("tuned-for-other-channels", `the earlier tuning of this file replaced the commands of ${lost.join(", ")}, which this profile does not drive`, provenance.line);
+  return { original };
+}

@@ -1,0 +1,68 @@
+import type { Channel, Machine } from "#shared/formats/machine.ts";
+import type { ControlLine, Reading } from "#shared/layers/reading.ts";
+import type { DutyLimits } from "#shared/plan/limits.ts";
+import type { Write } from "#shared/rewrite/write.ts";
+
+/** What stays of a fan's own commands, and what is written because of them. */
+export interface Raises {
+  writes: Write[];
+  kept: ReadonlySet<ControlLine>;
+}
+
+const SAME = 1e-6;
+
+/**
+ * Keeps the raises of a fan inside layers (bridges, overhangs) that lie above the plan. A raise is a command after the
+ * layer's first laying move, above what the file had in force there and above the plan. It ends at the file's next lower
+ * command in the layer, else where the next layer begins; what ends it is rewritten to the plan's duty. A raise above
+ * the limit is rewritten to the limit.
+ *
+ * @param planned the channel's writes, in file order
+ */
+export function keepRaises(channel: Channel, machine: Machine, reading: Reading, limits: DutyLimits, planned: readonly Write[]): Raises {
+  const index = machine.channels.indexOf(channel);
+  const lines = reading.controls.filter((line) => line.channel === index && line.does === "duty");
+  const kept = new Set<ControlLine>();
+  const writes: Write[] = [];
+  let next = 0;
+  let nextPlanned = 0;
+  let inForce = 0; // the plan's duty
+  let raised = false;
+
+  /** Takes over the plan's writes up to a byte; any of them ends a raise. */
+  const planUpTo = (offset: number): void => {
+    for (; nextPlanned < planned.length && planned[nextPlanned].offset <= offset; nextPlanned++) {
+      writes.push(planned[nextPlanned]);
+      inForce = planned[nextPlanned].duty;
+      raised = false;
+    }
+  };
+  const handle = (line: ControlLine, baseDuty: number): void => {
+    planUpTo(line.offset);
+    if (line.ours === "plan") return;
+    const raises = line.duty > baseDuty + SAME && line.duty > inForce + SAME;
+    if (raises && line.duty <= limits.maxDuty + SAME && line.ours === false) kept.add(line);
+    else if (raises) writes.push({ ...placeOf(line), duty: Math.min(line.duty, limits.maxDuty), tag: "raise" });
+    else if (raised) writes.push({ ...placeOf(line), duty: inForce, tag: "restore" });
+    raised = raises;
+  };
+
+  let fileDuty = 0;
+  for (const [k, layer] of reading.layers.entries()) {
+    planUpTo(layer.writeAt.offset);
+    if (raised) writes.push({ ...layer.writeAt, duty: inForce, tag: "plan" });
+    raised = false;
+    // Commands before the layer's first laying move set the base that its raises rise from.
+    for (; next < lines.length && lines[next].offset < layer.firstByte; next++) fileDuty = lines[next].duty;
+    const baseDuty = fileDuty;
+    const bodyEnd = reading.layers[k + 1]?.writeAt.offset ?? reading.window.end.offset;
+    for (; next < lines.length && lines[next].offset < bodyEnd; next++) {
+      handle(lines[next], baseDuty);
+      fileDuty = lines[next].duty;
+    }
+  }
+  planUpTo(Number.POSITIVE_INFINITY);
+  return { writes, kept };
+}
+
+const placeOf = ({ offset, line, timeS }: ControlLine): Pick<Write, "offset" | "line" | "timeS"> => ({ offset, line, timeS });
