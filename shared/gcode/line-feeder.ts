@@ -27,7 +27,9 @@ export class LineFeeder {
     return this.offset + this.carried;
   }
 
-  push(chunk: Uint8Array): void {
+  push(bytes: Uint8Array): void {
+    // One kind of array, whatever subclass the platform reads into: the scanner's inner loop stays monomorphic.
+    const chunk = new Uint8Array(bytes.buffer, bytes.byteOffset, bytes.byteLength);
     const end = lastLineEnd(chunk);
     if (end === 0) {
       this.keep(chunk);

@@ -40,21 +40,30 @@ export class LineScan {
   next = 0;
   /** value of each letter; meaningful only where its bit is set in `mask` and clear in `bare` */
   readonly value = new Float64Array(26);
-  /** the G words of a line that has several, in order */
-  readonly gWords: number[] = [];
+  /** the first eight G words, in order, and their number */
+  readonly gWords = new Float64Array(8);
+  gCount = 0;
 }
 
 const LF = 10;
 const CR = 13;
 const TAB = 9;
 const SPACE = 32;
-const NOT_A_LETTER = 255;
+/** classes of bytes that start no word */
+const BLANK = 253;
+const END = 254;
+const OTHER = 255;
 
-const LETTER = new Uint8Array(256).fill(NOT_A_LETTER);
+/** 0-25 for a letter in either case, else the byte's class. */
+const CLASS = new Uint8Array(256).fill(OTHER);
 for (let k = 0; k < 26; k++) {
-  LETTER[65 + k] = k;
-  LETTER[97 + k] = k;
+  CLASS[65 + k] = k;
+  CLASS[97 + k] = k;
 }
+CLASS[SPACE] = BLANK;
+CLASS[TAB] = BLANK;
+CLASS[LF] = END;
+CLASS[CR] = END;
 const POW10 = Float64Array.from({ length: 23 }, (_, k) => 10 ** k);
 const G = 6;
 const M = 12;
@@ -71,43 +80,63 @@ const TEXT_COMMANDS = new Set([0, 1, 16, 23, 28, 30, 32, 36, 38, 98, 117, 118, 4
  */
 export function scanLine(buf: Uint8Array, start: number, out: LineScan): number {
   const value = out.value;
+  const classes = CLASS;
+  const powers = POW10;
   let p = start;
   let mask = 0;
-  out.bare = 0;
-  out.repeated = 0;
-  out.commands = 0;
+  let bare = 0;
+  let repeated = 0;
+  let commands = 0;
+  let gCount = 0;
+  let codeStart = start;
+  let codeEnd = start;
   out.commentStart = -1;
   out.starAt = -1;
-  out.checksum = -1;
-  out.codeStart = start;
-  out.codeEnd = start;
   out.kind = LineKind.words;
 
-  for (;;) {
-    let c = buf[p];
-    while (c === SPACE || c === TAB) c = buf[++p];
-    const letter = LETTER[c];
+  // Nearly all lines begin like this; the general way below reads them too.
+  let c = buf[p];
+  if (c === 71 && buf[p + 2] === SPACE && (buf[p + 1] & 0xfe) === 48) {
+    const number = buf[p + 1] - 48;
+    value[G] = number;
+    out.gWords[0] = number;
+    mask = 1 << G;
+    commands = 1;
+    gCount = 1;
+    codeEnd = p + 2;
+    p += 3;
+    c = buf[p];
+  }
 
-    if (letter === NOT_A_LETTER) {
-      if (c === LF || c === CR) break;
+  for (;;) {
+    let letter = classes[c];
+    while (letter === BLANK) {
+      c = buf[++p];
+      letter = classes[c];
+    }
+    if (letter >= BLANK) {
+      if (letter === END) break;
       p = scanOther(buf, p, out, mask);
       if (out.kind !== LineKind.words) break;
+      c = buf[p];
       continue;
     }
 
-    if (mask === 0) out.codeStart = p;
+    if (mask === 0) codeStart = p;
     const wordStart = p;
     c = buf[++p];
-    while (c === SPACE || c === TAB) c = buf[++p];
     let negative = false;
-    if (c === 45) {
-      negative = true;
-      c = buf[++p];
-    } else if (c === 43) c = buf[++p];
+    if (c < 48) {
+      while (c === SPACE || c === TAB) c = buf[++p];
+      if (c === 45) {
+        negative = true;
+        c = buf[++p];
+      } else if (c === 43) c = buf[++p];
+    }
     const digits = p;
     let whole = 0;
     let d = c - 48;
-    while (d >= 0 && d <= 9) {
+    while (d >>> 0 <= 9) {
       whole = (Math.imul(whole, 10) + d) | 0;
       c = buf[++p];
       d = c - 48;
@@ -118,17 +147,18 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
       const fraction = p + 1;
       c = buf[++p];
       d = c - 48;
-      while (d >= 0 && d <= 9) {
+      while (d >>> 0 <= 9) {
         whole = (Math.imul(whole, 10) + d) | 0;
         c = buf[++p];
         d = c - 48;
       }
       read += p - fraction;
-      number = whole / POW10[(p - fraction) & 15];
+      number = whole / powers[(p - fraction) & 15];
     }
     // Nine digits fit an int32; more, or a blank inside the number, take the careful way.
-    if (read > 9 || ((c === SPACE || c === TAB) && buf[p + 1] < 65 && read > 0 && continuesNumber(buf, p))) {
-      p = scanLongNumber(buf, digits, out);
+    if (read > 9 || (classes[c] === BLANK && buf[p + 1] < 65 && read > 0 && continuesNumber(buf, p))) {
+      p = scanLongNumber(buf, digits);
+      c = buf[p];
       number = longNumber;
       read = longDigits;
     }
@@ -136,25 +166,25 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
     const wordBit = 1 << letter;
     if (read === 0) {
       if ((mask & ~(1 << N)) === 0 && startsName(buf, wordStart)) {
-        out.codeStart = wordStart;
+        codeStart = wordStart;
         out.kind = LineKind.named;
         p = scanNamed(buf, wordStart, out, mask !== 0);
         break;
       }
-      out.bare |= wordBit;
+      bare |= wordBit;
     }
-    if ((mask & wordBit) !== 0 && letter !== G) out.repeated |= wordBit;
+    if ((mask & wordBit) !== 0 && letter !== G) repeated |= wordBit;
     mask |= wordBit;
     value[letter] = negative ? -number : number;
-    out.codeEnd = p;
+    codeEnd = p;
 
     if (letter === G) {
-      if (out.commands === 0) out.gWords.length = 0;
-      out.commands++;
-      out.gWords.push(number);
+      commands++;
+      out.gWords[gCount & 7] = number;
+      gCount++;
     } else if (letter === M) {
-      out.commands++;
-      if (out.commands === 1 && TEXT_COMMANDS.has(number)) {
+      commands++;
+      if (commands === 1 && TEXT_COMMANDS.has(number)) {
         out.kind = LineKind.text;
         p = endOfText(buf, p, out, (mask & (1 << N)) !== 0);
         break;
@@ -162,8 +192,16 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
     }
   }
 
-  if (mask === 0 && out.kind === LineKind.words) out.kind = LineKind.blank;
+  if (out.kind === LineKind.words) {
+    if (mask === 0) out.kind = LineKind.blank;
+    out.codeEnd = codeEnd;
+  } else if (out.kind === LineKind.named && mask === 0) codeStart = out.codeStart;
   out.mask = mask;
+  out.bare = bare;
+  out.repeated = repeated;
+  out.commands = commands;
+  out.gCount = gCount;
+  out.codeStart = codeStart;
   if (buf[p] !== LF && buf[p] !== CR) p = endOfLine(buf, p);
   out.textEnd = p;
   const next = buf[p] === CR && buf[p + 1] === LF ? p + 2 : p + 1;
@@ -249,7 +287,7 @@ function takeChecksum(buf: Uint8Array, start: number, end: number, out: LineScan
 /** A name starts with a letter and goes on with a letter or underscore, without a blank between. */
 function startsName(buf: Uint8Array, start: number): boolean {
   const c = buf[start + 1];
-  return LETTER[c] !== NOT_A_LETTER || c === 95;
+  return CLASS[c] < BLANK || c === 95;
 }
 
 /** Runs over a named command: quoted values may hold `;`. Leaves the comment, if any, in `out`. */
@@ -283,7 +321,7 @@ let longNumber = 0;
 let longDigits = 0;
 
 /** Any number of digits, with blanks among them; leaves the value in `longNumber` and the count in `longDigits`. */
-function scanLongNumber(buf: Uint8Array, start: number, out: LineScan): number {
+function scanLongNumber(buf: Uint8Array, start: number): number {
   let p = start;
   let mantissa = 0;
   let scale = -1;
@@ -305,6 +343,5 @@ function scanLongNumber(buf: Uint8Array, start: number, out: LineScan): number {
   }
   // Beyond fifteen digits the integer is no longer exact: let the language's own parser round correctly.
   longNumber = significant <= 15 && scale <= 22 ? mantissa / POW10[Math.max(scale, 0)] : Number(text);
-  out.codeEnd = p;
   return p;
 }

@@ -4,6 +4,7 @@ import type { Findings } from "#shared/layers/findings.ts";
 import type { Boundary, Layer, Wait } from "#shared/layers/reading.ts";
 import { Timeline } from "#shared/layers/timeline.ts";
 import type { LimitChange, MotionSink } from "#shared/machine/interpreter.ts";
+import { FED, LENGTH, newMove, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { applyLimits } from "#shared/motion/file-limits.ts";
 import { motionRules } from "#shared/motion/motion-rules.ts";
 import { Planner } from "#shared/motion/planner.ts";
@@ -29,6 +30,7 @@ export const NEXT = 2;
  */
 export class LayerBuilder implements MotionSink {
   readonly where = new Float64Array(3);
+  readonly row = newMove();
   readonly layers: Layer[] = [];
   readonly timeline: Timeline;
   readonly planner: Planner;
@@ -47,8 +49,6 @@ export class LayerBuilder implements MotionSink {
   private readonly sums = new Float64Array(SUMS);
   private current: Layer | undefined;
   private object = 0;
-  /** raw Z of the last laying move, to leave the common case at once */
-  private lastZ = Number.NaN;
   private zUm = 0;
   private baseUm = 0;
   private nominalUm = 0;
@@ -62,8 +62,6 @@ export class LayerBuilder implements MotionSink {
   private statedTopMm: number | undefined;
   private nozzleC: number | null = null;
   private bedC: number | null = null;
-  private endsAtNext = 0;
-  private endsAtLine = 0;
 
   constructor(machine: Machine, findings: Findings) {
     this.machine = machine;
@@ -71,16 +69,22 @@ export class LayerBuilder implements MotionSink {
     this.filamentDiameterMm = machine.motion.filamentDiameterMm;
     this.planner = new Planner(machine.motion, (count) => this.timeline.advance(count));
     this.timeline = new Timeline(this.planner);
+    this.sums[LAST_Z] = Number.NaN;
     this.clearSums();
   }
 
-  move(x0: number, y0: number, z0: number, x: number, y: number, z: number, de: number, lengthMm: number, speedMmS: number): void {
-    const dx = x - x0;
-    const dy = y - y0;
-    const { sums } = this;
+  move(): void {
+    const { sums, row } = this;
+    const x0 = row[X0];
+    const y0 = row[Y0];
+    const x = row[X1];
+    const y = row[Y1];
+    const z = row[Z1];
+    const de = row[FED];
+    const lengthMm = row[LENGTH];
     let lays = 0;
-    if (de > 0 && (dx !== 0 || dy !== 0)) {
-      if (z !== this.lastZ || z0 !== z) this.considerLayer(z0, z);
+    if (de > 0 && (x !== x0 || y !== y0)) {
+      if (z !== sums[LAST_Z] || row[Z0] !== z) this.considerLayer(row[Z0], z);
       lays = 1;
       if (this.running === 0) {
         this.running = 1;
@@ -97,8 +101,8 @@ export class LayerBuilder implements MotionSink {
       if (y > sums[MAX_Y]) sums[MAX_Y] = y;
       sums[END_X] = x;
       sums[END_Y] = y;
-      this.endsAtNext = this.where[NEXT];
-      this.endsAtLine = this.where[LINE] + 1;
+      sums[ENDS_AT] = this.where[NEXT];
+      sums[ENDS_LINE] = this.where[LINE] + 1;
       this.mark = undefined;
     } else if (lengthMm > 0) {
       sums[TRAVEL] += lengthMm;
@@ -107,7 +111,7 @@ export class LayerBuilder implements MotionSink {
         if (this.current) this.timeline.travel(this.where[OFFSET], this.where[LINE]);
       }
     }
-    this.planner.add(dx, dy, z - z0, de, lengthMm, speedMmS, lays);
+    this.planner.add(row, lays);
   }
 
   /** A comment that names a layer, states a height or a feature. */
@@ -160,10 +164,11 @@ export class LayerBuilder implements MotionSink {
   /** Settles everything; afterwards all layers have their times. */
   end(): void {
     this.planner.stop();
-    this.closeLayer(this.endsAtNext, this.endsAtLine - 1);
+    const [endOffset, endLine] = [this.sums[ENDS_AT], this.sums[ENDS_LINE]];
+    this.closeLayer(endOffset, endLine - 1);
     this.timeline.end();
-    this.lastLaid.offset = this.endsAtNext;
-    this.lastLaid.line = this.endsAtLine;
+    this.lastLaid.offset = endOffset;
+    this.lastLaid.line = endLine;
     this.lastLaid.timeS = this.timeline.lastLaidS;
   }
 
@@ -187,14 +192,14 @@ export class LayerBuilder implements MotionSink {
     this.layers.length = 0;
     this.current = undefined;
     this.object = 0;
-    this.lastZ = Number.NaN;
+    this.sums[LAST_Z] = Number.NaN;
     this.running = 0;
     this.clearSums();
     this.timeline.forgetLayers();
   }
 
   private considerLayer(z0: number, z: number): void {
-    this.lastZ = z;
+    this.sums[LAST_Z] = z;
     this.layingMoves++;
     const zUm = Math.round(z * 1000);
     const fromUm = Math.round(z0 * 1000);
@@ -345,7 +350,7 @@ export class LayerBuilder implements MotionSink {
 
   private clearSums(): void {
     this.running = 0;
-    this.sums.fill(0);
+    this.sums.fill(0, 0, LAST_Z);
     this.sums[MIN_X] = Number.POSITIVE_INFINITY;
     this.sums[MIN_Y] = Number.POSITIVE_INFINITY;
     this.sums[MAX_X] = Number.NEGATIVE_INFINITY;
@@ -369,4 +374,9 @@ const END_X = 10;
 const END_Y = 11;
 const OUTLINE = 12;
 const LOOP = 13;
-const SUMS = 14;
+/** raw Z of the last laying move, to leave the common case at once; outlives the layer */
+const LAST_Z = 14;
+/** byte and line behind the last laying move; outlive the layer */
+const ENDS_AT = 15;
+const ENDS_LINE = 16;
+const SUMS = 17;

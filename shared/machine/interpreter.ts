@@ -1,11 +1,13 @@
 import type { Machine, Motion } from "#shared/formats/machine.ts";
-import { bit, type LineScan } from "#shared/gcode/scan-line.ts";
+import type { LineScan } from "#shared/gcode/scan-line.ts";
+import * as move from "#shared/machine/move.ts";
 import { type Arc, arcFromCentre, arcFromRadius, arcLengthMm } from "#shared/machine/arc.ts";
 
 /** What a line of words turns into. One receiver, so that the calls stay cheap. */
 export interface MotionSink {
-  /** one straight move, machine coordinates in mm; `de` filament in mm; `lengthMm` of the displacement */
-  move(x0: number, y0: number, z0: number, x: number, y: number, z: number, de: number, lengthMm: number, speedMmS: number): void;
+  /** the row that the interpreter fills (machine coordinates, mm), and the call that says it is filled; see move.ts */
+  readonly row: Float64Array;
+  move(): void;
   /** the queue runs empty: homing, dwell, tool change, wait */
   wait(kind: "temperature" | "home" | "tool" | "pause" | "dwell", seconds: number | null): void;
   nozzle(celsius: number): void;
@@ -41,9 +43,23 @@ const T = 19;
 const X = 23;
 const Y = 24;
 const Z = 25;
-const [A_BIT, E_BIT, F_BIT, G_BIT, I_BIT, J_BIT, K_BIT] = [..."AEFGIJK"].map(bit);
-const [L_BIT, M_BIT, N_BIT, P_BIT, R_BIT, S_BIT, T_BIT] = [..."LMNPRST"].map(bit);
-const [X_BIT, Y_BIT, Z_BIT] = [..."XYZ"].map(bit);
+const A_BIT = 1 << 0;
+const E_BIT = 1 << 4;
+const F_BIT = 1 << 5;
+const G_BIT = 1 << 6;
+const I_BIT = 1 << 8;
+const J_BIT = 1 << 9;
+const K_BIT = 1 << 10;
+const L_BIT = 1 << 11;
+const M_BIT = 1 << 12;
+const N_BIT = 1 << 13;
+const P_BIT = 1 << 15;
+const R_BIT = 1 << 17;
+const S_BIT = 1 << 18;
+const T_BIT = 1 << 19;
+const X_BIT = 1 << 23;
+const Y_BIT = 1 << 24;
+const Z_BIT = 1 << 25;
 const PLAIN_MOVE = X_BIT | Y_BIT | Z_BIT | E_BIT | F_BIT | G_BIT | N_BIT;
 const AXIS_WORDS = X_BIT | Y_BIT | Z_BIT | E_BIT | I_BIT | J_BIT | K_BIT | R_BIT;
 const INCH = 25.4;
@@ -51,6 +67,7 @@ const INCH = 25.4;
 /** Modal state of the program: words in, moves in absolute millimetres out. */
 export class Interpreter {
   private readonly sink: MotionSink;
+  private readonly row: Float64Array;
   private readonly motion: Motion;
   /** program position X Y Z E, mm, and the machine position of the program's zero for X Y Z */
   private readonly at = new Float64Array(7);
@@ -69,6 +86,7 @@ export class Interpreter {
   constructor(machine: Machine, sink: MotionSink) {
     this.motion = machine.motion;
     this.sink = sink;
+    this.row = sink.row;
     this.feedMmMin = machine.motion.initialSpeedMmS * 60;
   }
 
@@ -124,10 +142,17 @@ export class Interpreter {
     at[1] = y;
     at[2] = z;
     if (lengthMm < 1e-9 && de === 0) return;
-    const ox = at[4];
-    const oy = at[5];
-    const oz = at[6];
-    this.sink.move(x0 + ox, y0 + oy, z0 + oz, x + ox, y + oy, z + oz, de, lengthMm, this.feedMmMin * this.feedPerMinute);
+    const row = this.row;
+    row[move.X0] = x0 + at[4];
+    row[move.Y0] = y0 + at[5];
+    row[move.Z0] = z0 + at[6];
+    row[move.X1] = x + at[4];
+    row[move.Y1] = y + at[5];
+    row[move.Z1] = z + at[6];
+    row[move.FED] = de;
+    row[move.LENGTH] = lengthMm;
+    row[move.SPEED] = this.feedMmMin * this.feedPerMinute;
+    this.sink.move();
   }
 
   private setFeed(value: number): void {
@@ -150,7 +175,7 @@ export class Interpreter {
     if ((scan.mask & G_BIT) !== 0) this.gCommand(value[6], value, mask, scan.mask);
     else if ((scan.mask & M_BIT) !== 0) this.mCommand(value[12], value, mask);
     else if ((mask & T_BIT) !== 0) this.tool(value[T]);
-    else if ((mask & AXIS_WORDS) !== 0) this.move(this.motionWord, value, mask);
+    else if ((mask & AXIS_WORDS) !== 0) this.motionCommand(this.motionWord, value, mask);
     else if ((mask & F_BIT) !== 0) this.setFeed(value[F]);
   }
 
@@ -159,13 +184,13 @@ export class Interpreter {
     this.sink.odd("several-commands", "several commands on one line: firmware families disagree on which of them run");
     const { value } = scan;
     const isMotion = (g: number): boolean => g >= 0 && g <= 3;
-    const words = [...scan.gWords];
+    const words = [...scan.gWords.subarray(0, scan.gCount)];
     for (const g of words) if (!isMotion(g)) this.gCommand(g, value, 0, scan.mask);
     if ((scan.mask & M_BIT) !== 0) this.mCommand(value[12], value, mask & ~AXIS_WORDS);
     const motion = words.filter(isMotion).pop();
     const onlySettings = words.every((g) => (g >= 17 && g <= 21) || g === 90 || g === 91);
-    if (motion !== undefined) this.move(motion, value, mask);
-    else if (onlySettings && (mask & AXIS_WORDS) !== 0) this.move(this.motionWord, value, mask);
+    if (motion !== undefined) this.motionCommand(motion, value, mask);
+    else if (onlySettings && (mask & AXIS_WORDS) !== 0) this.motionCommand(this.motionWord, value, mask);
   }
 
   private gCommand(g: number, value: Float64Array, mask: number, allWords: number): void {
@@ -174,7 +199,7 @@ export class Interpreter {
       case 1:
       case 2:
       case 3:
-        this.move(g, value, mask);
+        this.motionCommand(g, value, mask);
         return;
       case 4:
         this.dwell(value, mask);
@@ -308,11 +333,15 @@ export class Interpreter {
     this.retracted = retract;
     const { lengthMm, speedMmS } = this.motion.firmwareRetract;
     if (lengthMm === 0) return;
-    const at = this.at;
-    const x = at[0] + at[4];
-    const y = at[1] + at[5];
-    const z = at[2] + at[6];
-    this.sink.move(x, y, z, x, y, z, retract ? -lengthMm : lengthMm, 0, speedMmS);
+    const { at, row } = this;
+    for (let k = 0; k < 3; k++) {
+      row[k] = at[k] + at[4 + k];
+      row[3 + k] = row[k];
+    }
+    row[move.FED] = retract ? -lengthMm : lengthMm;
+    row[move.LENGTH] = 0;
+    row[move.SPEED] = speedMmS;
+    this.sink.move();
   }
 
   private tool(t: number): void {
@@ -321,7 +350,7 @@ export class Interpreter {
   }
 
   /** Motion off the fast path: arcs, an extruder on axis A, missing G word. */
-  private move(g: number, value: Float64Array, given: number): void {
+  private motionCommand(g: number, value: Float64Array, given: number): void {
     let mask = given;
     if ((mask & A_BIT) !== 0 && (mask & E_BIT) === 0) {
       value[E] = value[A];
@@ -378,10 +407,9 @@ export class Interpreter {
     const rise = to[2] - from[2];
     const count = Math.min(Math.max(1, Math.floor(arcLengthMm(arc, rise) / this.motion.arcSegmentMm)), MAX_CHORDS);
     const speed = this.feedMmMin * this.feedPerMinute;
+    const { row } = this;
     const offsets = [this.at[4], this.at[5], this.at[6]];
-    const here = [0, 0, 0];
-    const there = [0, 0, 0];
-    for (let k = 0; k < 3; k++) here[axes[k]] = from[k] + offsets[axes[k]];
+    for (let k = 0; k < 3; k++) row[3 + axes[k]] = from[k] + offsets[axes[k]];
     const startX = from[0] - arc.centreX;
     const startY = from[1] - arc.centreY;
     for (let i = 1; i <= count; i++) {
@@ -390,14 +418,14 @@ export class Interpreter {
       const cos = Math.cos(angle);
       const sin = Math.sin(angle);
       const last = i === count;
-      there[axes[0]] = (last ? to[0] : arc.centreX + startX * cos - startY * sin) + offsets[axes[0]];
-      there[axes[1]] = (last ? to[1] : arc.centreY + startX * sin + startY * cos) + offsets[axes[1]];
-      there[axes[2]] = from[2] + rise * share + offsets[axes[2]];
-      const length = Math.hypot(there[0] - here[0], there[1] - here[1], there[2] - here[2]);
-      this.sink.move(here[0], here[1], here[2], there[0], there[1], there[2], de / count, length, speed);
-      here[0] = there[0];
-      here[1] = there[1];
-      here[2] = there[2];
+      row.copyWithin(0, 3, 6);
+      row[3 + axes[0]] = (last ? to[0] : arc.centreX + startX * cos - startY * sin) + offsets[axes[0]];
+      row[3 + axes[1]] = (last ? to[1] : arc.centreY + startX * sin + startY * cos) + offsets[axes[1]];
+      row[3 + axes[2]] = from[2] + rise * share + offsets[axes[2]];
+      row[move.FED] = de / count;
+      row[move.LENGTH] = Math.hypot(row[3] - row[0], row[4] - row[1], row[5] - row[2]);
+      row[move.SPEED] = speed;
+      this.sink.move();
     }
   }
 }

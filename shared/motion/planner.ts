@@ -1,4 +1,5 @@
 import type { Motion } from "#shared/formats/machine.ts";
+import { FED, LENGTH, SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { type MotionRules, motionRules } from "#shared/motion/motion-rules.ts";
 
 /**
@@ -79,13 +80,16 @@ export class Planner {
   /**
    * Adds one straight move.
    *
-   * @param dx dy dz displacement, mm
-   * @param de material fed, mm of filament, negative when retracting
-   * @param lengthMm length of the displacement, mm; 0 for a move of material alone
-   * @param speedMmS programmed speed, mm/s
+   * @param row the move, see machine/move.ts
    * @param lays 1 when the move lays material
    */
-  add(dx: number, dy: number, dz: number, de: number, lengthMm: number, speedMmS: number, lays: number): void {
+  add(row: Float64Array, lays: number): void {
+    const dx = row[X1] - row[X0];
+    const dy = row[Y1] - row[Y0];
+    const dz = row[Z1] - row[Z0];
+    const de = row[FED];
+    const lengthMm = row[LENGTH];
+    const speedMmS = row[SPEED];
     if (this.count === this.threshold) this.settle(false);
     const rules = this.rules;
     const last = this.last;

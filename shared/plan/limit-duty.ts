@@ -22,7 +22,7 @@ export function limitDuty(duty: number, channel: ReadyChannel, reasons: Reasons)
     reasons.add(`raised to at least ${channel.text.min}`);
     return minDuty;
   }
-  const off = duty <= minDuty - duty;
+  const off = duty < minDuty - duty;
   reasons.add(`below the fan's dead band of ${channel.text.min}: ${off ? "off" : `raised to ${channel.text.min}`}`);
   return off ? 0 : minDuty;
 }

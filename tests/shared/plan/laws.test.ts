@@ -45,7 +45,7 @@ const zones = fc
   });
 
 const limits = fc.record(
-  { maxDuty: fc.constantFrom(0.5, 0.77, 1), maxDutyPerLayer: fc.constantFrom(0.001, 0.02, 0.1, 0.35) },
+  { maxDuty: fc.constantFrom(0.5, 0.77, 1), maxDutyPerLayer: fc.constantFrom(0.001, 0.02, 0.03, 0.1, 0.35) },
   { requiredKeys: [] },
 );
 

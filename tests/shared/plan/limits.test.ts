@@ -137,6 +137,26 @@ describe("the largest change per layer", () => {
     expect(plan.layers[1].reason.lamp.slice(1)).toEqual(["change limited to 0.15 a layer", "rounded to 38/255"]);
   });
 
+  test("is not passed by rounding on the way down either", () => {
+    const zones = [
+      { name: "low", from: 0, to: 0.2, heating: fixed("lamp", 0.8) },
+      { name: "high", from: 0.2, heating: fixed("lamp", 0) },
+    ];
+    const profile = profileWith(zones, { limits: { lamp: { maxDutyPerLayer: 0.03 } } });
+    const plan = planDuties({ layers: layersOf(3), machine: machineWith(), profile });
+    expect(plan.layers.map(({ duty }) => Math.round(duty.lamp * 255))).toEqual([204, 197, 190]);
+  });
+
+  test("is not named where a fan only goes from off to its least duty, as its rule says", () => {
+    const zones = [
+      { name: "low", from: 0, to: 0.2, cooling: fixed("part-fan", 0) },
+      { name: "high", from: 0.2, cooling: fixed("part-fan", 0.12) },
+    ];
+    const profile = profileWith(zones, { limits: { "part-fan": { maxDutyPerLayer: 0.03 } } });
+    const plan = planDuties({ layers: layersOf(2), machine: machineWith({ fan: { minDuty: 0.12 } }), profile });
+    expect(plan.layers[1].reason["part-fan"]).toEqual(["zone high: fixed at 0.12", "rounded to 31/255"]);
+  });
+
   test("does not keep a fan off: it may go to its least duty at once, but no further", () => {
     const { duties, reasons } = follow("part-fan", [0, 500, 500], { minDuty: 0.12 }, { maxDutyPerLayer: 0.05 });
     expect(duties).toEqual([0, 120, 170]);

@@ -76,6 +76,15 @@ describe("a zone's ramp", () => {
     expect(lampPlan(zones, layers).duties).toEqual([0.6, 0.6, 0.3, 0.3]);
   });
 
+  test("stays at the lower zone's value where a layer dips below the zone's start", () => {
+    const zones = [
+      { ...BASE, unit: "layer", to: 2 },
+      { ...LIP, unit: "layer", from: 2 },
+    ];
+    const layers = layersOf(4, (i) => ({ zMm: [0.8, 1, 0.9, 1.2][i] }));
+    expect(lampPlan(zones, layers).duties).toEqual([0.6, 0.6, 0.6, 0.5]);
+  });
+
   test("begins where the lower zone's own ramp had come to, so no duty jumps at a ramped border", () => {
     const zones = [
       BASE,
