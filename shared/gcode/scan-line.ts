@@ -38,11 +38,27 @@ export class LineScan {
   /** end of the line without and with its terminator */
   textEnd = 0;
   next = 0;
+  /** the line was a plain G0 or G1 move: all fields but mask, textEnd and next hold what that implies */
+  plain = false;
   /** value of each letter; meaningful only where its bit is set in `mask` and clear in `bare` */
   readonly value = new Float64Array(26);
   /** the first eight G words, in order, and their number */
   readonly gWords = new Float64Array(8);
   gCount = 0;
+
+  /** Sets what is the same for all plain moves; `codeStart` and `codeEnd` are not kept for them. */
+  makePlain(g: number): void {
+    this.plain = true;
+    this.kind = LineKind.words;
+    this.bare = 0;
+    this.repeated = 0;
+    this.commands = 1;
+    this.gCount = 1;
+    this.gWords[0] = g;
+    this.commentStart = -1;
+    this.starAt = -1;
+    this.checksum = -1;
+  }
 }
 
 const LF = 10;
@@ -64,6 +80,12 @@ CLASS[SPACE] = BLANK;
 CLASS[TAB] = BLANK;
 CLASS[LF] = END;
 CLASS[CR] = END;
+/** Bits of X Y Z E F, in either case, by byte; 0 for all other bytes. */
+const AXIS_BIT = new Int32Array(256);
+for (const letter of "XYZEF") {
+  AXIS_BIT[letter.charCodeAt(0)] = bit(letter);
+  AXIS_BIT[letter.toLowerCase().charCodeAt(0)] = bit(letter);
+}
 const POW10 = Float64Array.from({ length: 23 }, (_, k) => 10 ** k);
 const G = 6;
 const M = 12;
@@ -79,6 +101,8 @@ const TEXT_COMMANDS = new Set([0, 1, 16, 23, 28, 30, 32, 36, 38, 98, 117, 118, 4
  * @returns offset of the next line
  */
 export function scanLine(buf: Uint8Array, start: number, out: LineScan): number {
+  if (scanPlainMove(buf, start, out)) return out.next;
+  out.plain = false;
   const value = out.value;
   const classes = CLASS;
   const powers = POW10;
@@ -94,20 +118,7 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
   out.starAt = -1;
   out.kind = LineKind.words;
 
-  // Nearly all lines begin like this; the general way below reads them too.
   let c = buf[p];
-  if (c === 71 && buf[p + 2] === SPACE && (buf[p + 1] & 0xfe) === 48) {
-    const number = buf[p + 1] - 48;
-    value[G] = number;
-    out.gWords[0] = number;
-    mask = 1 << G;
-    commands = 1;
-    gCount = 1;
-    codeEnd = p + 2;
-    p += 3;
-    c = buf[p];
-  }
-
   for (;;) {
     let letter = classes[c];
     while (letter === BLANK) {
@@ -207,6 +218,64 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
   const next = buf[p] === CR && buf[p + 1] === LF ? p + 2 : p + 1;
   out.next = next;
   return next;
+}
+
+/**
+ * The shape that nearly all lines have: `G0` or `G1`, words of X Y Z E F, each once, with numbers of up to nine digits,
+ * and the line's end. Anything else is left to the general way, which reads these lines too, only slower.
+ */
+function scanPlainMove(buf: Uint8Array, start: number, out: LineScan): boolean {
+  if ((buf[start] | 32) !== 103) return false;
+  let p = start + 1;
+  if (buf[p] === 48 && (buf[p + 1] & 0xfe) === 48) p++; // G00, G01
+  const g = buf[p] - 48;
+  if (g >>> 0 > 1) return false;
+  const value = out.value;
+  const powers = POW10;
+  const axes = AXIS_BIT;
+  let mask = 1 << G;
+  let c = buf[++p];
+  for (;;) {
+    while (c === SPACE) c = buf[++p];
+    const wordBit = axes[c];
+    if ((mask & wordBit) !== 0 || wordBit === 0) break;
+    const letter = (c & 31) - 1;
+    c = buf[++p];
+    const negative = c === 45;
+    if (negative) c = buf[++p];
+    const digits = p;
+    let whole = 0;
+    let d = c - 48;
+    while (d >>> 0 <= 9) {
+      whole = (Math.imul(whole, 10) + d) | 0;
+      c = buf[++p];
+      d = c - 48;
+    }
+    let number = whole;
+    let read = p - digits;
+    if (c === 46) {
+      const fraction = p + 1;
+      c = buf[++p];
+      d = c - 48;
+      while (d >>> 0 <= 9) {
+        whole = (Math.imul(whole, 10) + d) | 0;
+        c = buf[++p];
+        d = c - 48;
+      }
+      read += p - fraction;
+      number = whole / powers[(p - fraction) & 15];
+    }
+    if ((read - 1) >>> 0 > 8) return false;
+    value[letter] = negative ? -number : number;
+    mask |= wordBit;
+  }
+  if (c !== LF && (c !== CR || buf[p + 1] !== LF)) return false;
+  value[G] = g;
+  out.mask = mask;
+  out.textEnd = p;
+  out.next = c === LF ? p + 1 : p + 2;
+  if (!out.plain) out.makePlain(g);
+  return true;
 }
 
 /** Comments, checksums and everything that is not a word. Returns where to go on; sets `kind` where nothing can follow. */

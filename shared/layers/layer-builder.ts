@@ -55,6 +55,7 @@ export class LayerBuilder implements MotionSink {
   private statedNominalUm = 0;
   /** whether a run of laying moves is open, and whether the run lies on the part's outline */
   private running = 0;
+  private laidSinceTravel = false;
   private outline = false;
   private outlineSeen = false;
   /** where the layer's marker stands, when one came after the last laying move */
@@ -88,6 +89,7 @@ export class LayerBuilder implements MotionSink {
       lays = 1;
       if (this.running === 0) {
         this.running = 1;
+        this.laidSinceTravel = true;
         sums[RUN_X] = x0;
         sums[RUN_Y] = y0;
         sums[RUN] = 0;
@@ -99,15 +101,14 @@ export class LayerBuilder implements MotionSink {
       if (x > sums[MAX_X]) sums[MAX_X] = x;
       if (y < sums[MIN_Y]) sums[MIN_Y] = y;
       if (y > sums[MAX_Y]) sums[MAX_Y] = y;
-      sums[END_X] = x;
-      sums[END_Y] = y;
       sums[ENDS_AT] = this.where[NEXT];
       sums[ENDS_LINE] = this.where[LINE] + 1;
       this.mark = undefined;
     } else if (lengthMm > 0) {
       sums[TRAVEL] += lengthMm;
-      if (this.running !== 0 && de === 0) {
-        this.endRun();
+      if (this.running !== 0) this.endRun(x0, y0);
+      if (de === 0 && this.laidSinceTravel) {
+        this.laidSinceTravel = false;
         if (this.current) this.timeline.travel(this.where[OFFSET], this.where[LINE]);
       }
     }
@@ -117,7 +118,7 @@ export class LayerBuilder implements MotionSink {
   /** A comment that names a layer, states a height or a feature. */
   comment(fact: CommentFact, text: () => string): void {
     if (fact.says === "feature") {
-      this.endRun();
+      this.endRun(this.row[X1], this.row[Y1]);
       this.outline = fact.outline === true;
       return;
     }
@@ -247,7 +248,7 @@ export class LayerBuilder implements MotionSink {
         { line: this.where[LINE] },
       );
     const falls = this.current === undefined || zUm < this.zUm;
-    this.endRun();
+    this.endRun(this.row[X0], this.row[Y0]);
     this.closeLayer(this.where[OFFSET], this.where[LINE] - 1);
     if (falls) this.object++;
     this.zUm = zUm;
@@ -310,7 +311,7 @@ export class LayerBuilder implements MotionSink {
       this.clearSums();
       return;
     }
-    this.endRun();
+    this.endRun(this.row[X1], this.row[Y1]);
     const { sums } = this;
     layer.lastLine = lastLine;
     layer.endByte = endByte;
@@ -326,8 +327,8 @@ export class LayerBuilder implements MotionSink {
     this.clearSums();
   }
 
-  /** Ends a run of laying moves: a closed one may be the part's outline. */
-  private endRun(): void {
+  /** Ends a run of laying moves at a point: a closed one may be the part's outline. */
+  private endRun(x: number, y: number): void {
     if (this.running === 0) return;
     this.running = 0;
     const { sums } = this;
@@ -336,7 +337,7 @@ export class LayerBuilder implements MotionSink {
       this.outlineSeen = true;
       sums[OUTLINE] += sums[RUN];
     }
-    const gap = Math.hypot(sums[END_X] - sums[RUN_X], sums[END_Y] - sums[RUN_Y]);
+    const gap = Math.hypot(x - sums[RUN_X], y - sums[RUN_Y]);
     if (gap < LOOP_GAP_MM && sums[RUN] > sums[LOOP] && sums[RUN] > 4 * LOOP_GAP_MM) sums[LOOP] = sums[RUN];
   }
 
@@ -370,13 +371,11 @@ const MAX_Y = 6;
 const RUN = 7;
 const RUN_X = 8;
 const RUN_Y = 9;
-const END_X = 10;
-const END_Y = 11;
-const OUTLINE = 12;
-const LOOP = 13;
+const OUTLINE = 10;
+const LOOP = 11;
 /** raw Z of the last laying move, to leave the common case at once; outlives the layer */
-const LAST_Z = 14;
+const LAST_Z = 12;
 /** byte and line behind the last laying move; outlive the layer */
-const ENDS_AT = 15;
-const ENDS_LINE = 16;
-const SUMS = 17;
+const ENDS_AT = 13;
+const ENDS_LINE = 14;
+const SUMS = 15;

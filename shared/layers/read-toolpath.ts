@@ -18,6 +18,7 @@ import { Refusal } from "#shared/refusal.ts";
 const M_BIT = 1 << 12;
 const N_BIT = 1 << 13;
 const EQUALS = 61;
+const CR = 13;
 const HEAD_BYTES = 512;
 const BOM = [0xef, 0xbb, 0xbf];
 /** Longest text of a named command that is looked at. */
@@ -130,21 +131,23 @@ export class ToolpathReader {
   }
 
   private lines(buf: Uint8Array, from: number, to: number, fileOffset: number): void {
-    const { scan, where, interpreter } = this;
     const base = fileOffset - from;
     let p = from;
     if (fileOffset === 0 && BOM.every((byte, k) => buf[from + k] === byte)) p += 3;
-    while (p < to) {
-      const next = scanLine(buf, p, scan);
-      where[OFFSET] = base + p;
-      where[LINE] = ++this.line;
-      where[NEXT] = base + next;
-      if (next - scan.textEnd === 2) this.crlf++;
-      else if (buf[scan.textEnd] === 13) this.cr++;
-      if (scan.kind === LineKind.words && (scan.mask & (M_BIT | N_BIT)) === 0 && scan.starAt < 0) interpreter.run(scan);
-      else this.otherLine(buf, p);
-      p = next;
-    }
+    while (p < to) p = this.oneLine(buf, p, base);
+  }
+
+  private oneLine(buf: Uint8Array, start: number, base: number): number {
+    const { scan, where } = this;
+    const next = scanLine(buf, start, scan);
+    where[OFFSET] = base + start;
+    where[LINE] = ++this.line;
+    where[NEXT] = base + next;
+    if (next - scan.textEnd === 2) this.crlf++;
+    else if (buf[scan.textEnd] === CR) this.cr++;
+    if (scan.kind === LineKind.words && (scan.mask & (M_BIT | N_BIT)) === 0 && scan.starAt < 0) this.interpreter.run(scan);
+    else this.otherLine(buf, start);
+    return next;
   }
 
   private otherLine(buf: Uint8Array, start: number): void {

@@ -54,22 +54,23 @@ export class Timeline {
 
   /** Takes the durations of the moves that the planner has just settled. */
   advance(count: number): void {
+    const base = this.planner.settled - count;
+    let from = 0;
+    while (from < count) {
+      this.handleUpTo(base + from);
+      const to = Math.min(count, this.nextEventMove() - base);
+      this.pass(from, to);
+      from = to;
+    }
+  }
+
+  /** Lets the moves [from, to) of the settled batch pass; no event stands between them. */
+  private pass(from: number, to: number): void {
     const { timeS, lays } = this.planner;
-    let move = this.planner.settled - count;
     let clock = this.clockS;
-    let laid = this.laidS;
+    let laid = 0;
     let lastLaid = this.lastLaidS;
-    let next = this.nextEventMove();
-    for (let i = 0; i < count; i++, move++) {
-      if (move >= next) {
-        this.clockS = clock;
-        this.laidS = laid;
-        this.lastLaidS = lastLaid;
-        this.handleUpTo(move);
-        clock = this.clockS;
-        laid = this.laidS;
-        next = this.nextEventMove();
-      }
+    for (let i = from; i < to; i++) {
       const t = timeS[i];
       clock += t;
       if (lays[i] !== 0) {
@@ -78,7 +79,7 @@ export class Timeline {
       }
     }
     this.clockS = clock;
-    this.laidS = laid;
+    this.laidS += laid;
     this.lastLaidS = lastLaid;
   }
 

@@ -24,8 +24,8 @@ export interface MotionRules {
   cornerFactor: number;
   /** share of the acceleration that the second budget may use: 1 − minimum cruise ratio */
   easyShare: number;
-  /** largest jump of filament speed in a corner, mm/s */
-  extruderStep: number;
+  /** square of the largest jump of filament speed in a corner, mm²/s² */
+  extruderStepSq: number;
   jerk: { x: number; y: number; z: number; e: number };
   stopAtExtrudeOnly: boolean;
   /** blocks the controller sees; Infinity for the whole file */
@@ -60,7 +60,7 @@ export function motionRules(motion: Motion): MotionRules {
         ? cornering.deviationMm
         : 0,
     easyShare: 1 - (square?.cruiseRatio ?? 0),
-    extruderStep: square?.extruderStepMmS ?? none,
+    extruderStepSq: (square?.extruderStepMmS ?? none) ** 2,
     jerk: { x: jerk.x ?? none, y: jerk.y ?? none, z: jerk.z ?? none, e: jerk.e ?? none },
     stopAtExtrudeOnly: motion.stopAtExtrudeOnly,
     lookAhead: motion.lookAhead === "full" ? none : motion.lookAhead,

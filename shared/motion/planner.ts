@@ -34,7 +34,7 @@ export class Planner {
   settled = 0;
   added = 0;
   /** largest number of moves ever held */
-  static readonly windowLimit = 1 << 18;
+  static readonly windowLimit = 1 << 17;
   /** set when the window was full and the planner had to assume a stop */
   forcedStops = 0;
 
@@ -43,18 +43,11 @@ export class Planner {
 
   private count = 0;
   private threshold = BATCH;
-  private length = new Float64Array(0);
-  private accel = new Float64Array(0);
-  private cruiseSq = new Float64Array(0);
-  private limitSq = new Float64Array(0);
-  private span = new Float64Array(0);
-  private easyLimitSq = new Float64Array(0);
-  private easySpan = new Float64Array(0);
-  private startSq = new Float64Array(0);
+  /** one record of eight numbers a move, so that a move is one cache line */
+  private moves = new Float64Array(0);
   private peakSq = new Float64Array(0);
-
-  /** the move added last: direction, material per mm, and its numbers (see LAST) */
-  private readonly last = new Float64Array(12);
+  /** direction, material per mm and corner factor of the move added last */
+  private readonly last = new Float64Array(5);
   private lastMoves = false;
   private hasLast = false;
   /** state of the forward pass across batches */
@@ -137,66 +130,67 @@ export class Planner {
     const uy = dy * inverse;
     const uz = dz * inverse;
     const ue = de * inverse;
-    const corner = rules.cornerFactor * (accel / baseAccel);
+    const corner = accel === baseAccel ? rules.cornerFactor : rules.cornerFactor * (accel / baseAccel);
 
     let limit = 0;
     let easyLimit = 0;
     if (this.hasLast && ((moves && this.lastMoves) || !rules.stopAtExtrudeOnly)) {
-      limit = cruiseSq < last[CRUISE] ? cruiseSq : last[CRUISE];
-      const reach = last[LIMIT] + last[SPAN];
+      const before = this.moves;
+      const m = (this.count - 1) * RECORD;
+      const cruiseBeforeSq = before[m + CRUISE];
+      const spanBefore = before[m + SPAN];
+      limit = cruiseSq < cruiseBeforeSq ? cruiseSq : cruiseBeforeSq;
+      const reach = before[m + LIMIT] + spanBefore;
       if (reach < limit) limit = reach;
       // Moves of material alone point along an axis of their own.
       const dot =
         moves && this.lastMoves ? ux * last[UX] + uy * last[UY] + uz * last[UZ] : moves || this.lastMoves ? 0 : ue * last[UE];
       if (rules.cornering === SQUARE_CORNER) {
-        const step = ue - last[UE];
-        if (step !== 0 && moves) {
-          const v = rules.extruderStep / step;
-          if (v * v < limit) limit = v * v;
+        if (moves) {
+          const step = ue - last[UE];
+          const stepLimit = rules.extruderStepSq;
+          if (stepLimit < limit * step * step) limit = stepLimit / (step * step);
         }
-        const sinHalf = Math.sqrt(dot > -1 ? 0.5 * (1 + dot) : 0);
-        const cosHalf = Math.sqrt(dot < 1 ? 0.5 * (1 - dot) : 0);
-        if (sinHalf < 1 && cosHalf > 0) {
-          const lower = corner < last[CORNER] ? corner : last[CORNER];
-          const shorter = span < last[SPAN] ? span : last[SPAN];
-          const round = (lower * sinHalf) / (1 - sinHalf);
-          const middle = (0.25 * shorter * sinHalf) / cosHalf;
-          if (round < limit) limit = round;
-          if (middle < limit) limit = middle;
+        // Each bound is computed only where it is the lower one, which its square tells without a root.
+        const lower = corner < last[CORNER] ? corner : last[CORNER];
+        const sum = lower + limit;
+        if ((1 + dot) * sum * sum < 2 * limit * limit) {
+          const sinHalf = Math.sqrt(dot > -1 ? 0.5 * (1 + dot) : 0);
+          limit = (lower * sinHalf) / (1 - sinHalf);
         }
+        const middle = 0.25 * (span < spanBefore ? span : spanBefore);
+        if (middle * middle * (1 + dot) < limit * limit * (1 - dot))
+          limit = middle * Math.sqrt((dot > -1 ? 1 + dot : 0) / (1 - dot));
       } else if (rules.cornering === JUNCTION_DEVIATION) {
         const bound = this.deviationSq(ux, uy, uz, dot, accel, length);
         if (bound < limit) limit = bound;
       } else {
-        const bound = this.jerkSq(ux, uy, uz, ue, limitSpeedSq(cruiseSq, last[CRUISE]));
+        const bound = this.jerkSq(ux, uy, uz, ue, limitSpeedSq(cruiseSq, cruiseBeforeSq));
         if (bound < limit) limit = bound;
       }
-      const easyReach = last[EASY_LIMIT] + last[EASY_SPAN];
+      const easyReach = before[m + EASY_LIMIT] + before[m + EASY_SPAN];
       easyLimit = limit < easyReach ? limit : easyReach;
     } else if (rules.cornering === AXIS_JERK) {
       limit = this.startFromRestSq(ux, uy, uz, ue, cruiseSq);
       easyLimit = limit;
     }
 
+    const records = this.moves;
     const i = this.count++;
-    this.added++;
-    this.length[i] = length;
-    this.accel[i] = accel;
-    this.cruiseSq[i] = cruiseSq;
-    this.span[i] = span;
-    this.easySpan[i] = easySpan;
-    this.limitSq[i] = limit;
-    this.easyLimitSq[i] = easyLimit;
+    const r = i * RECORD;
+    records[r + LENGTH_OF] = length;
+    records[r + ACCEL] = accel;
+    records[r + CRUISE] = cruiseSq;
+    records[r + SPAN] = span;
+    records[r + EASY_SPAN] = easySpan;
+    records[r + LIMIT] = limit;
+    records[r + EASY_LIMIT] = easyLimit;
     this.lays[i] = lays;
+    this.added++;
     last[UX] = ux;
     last[UY] = uy;
     last[UZ] = uz;
     last[UE] = ue;
-    last[CRUISE] = cruiseSq;
-    last[SPAN] = span;
-    last[EASY_SPAN] = easySpan;
-    last[LIMIT] = limit;
-    last[EASY_LIMIT] = easyLimit;
     last[CORNER] = corner;
     this.lastMoves = moves;
     this.hasLast = true;
@@ -284,32 +278,34 @@ export class Planner {
       this.forwardCruiseSq = 0;
     }
     this.threshold = Math.min(this.count * 2 + BATCH, Planner.windowLimit);
-    if (this.threshold > this.length.length) this.grow(this.threshold);
+    if (this.threshold > this.peakSq.length) this.grow(this.threshold);
   }
 
   /** Start and peak speeds of all held moves; returns how many of the first are settled for good. */
   private backwardPass(): number {
-    const { cruiseSq, limitSq, span, easyLimitSq, easySpan, startSq, peakSq } = this;
+    const { moves, peakSq } = this;
     let next = 0;
     let easyNext = 0;
     let peak = 0;
     let waiting = 0; // moves since the last one that could gain speed
     let fixed = -1; // newest move that starts at its limit in both budgets
     let settled = 0;
-    for (let i = this.count - 1; i >= 0; i--) {
-      const reach = next + span[i];
-      const limit = limitSq[i];
+    for (let i = this.count - 1, r = i * RECORD; i >= 0; i--, r -= RECORD) {
+      const reach = next + moves[r + SPAN];
+      const limit = moves[r + LIMIT];
       const start = limit < reach ? limit : reach;
-      const easyReach = easyNext + easySpan[i];
-      const easyLimit = easyLimitSq[i];
+      const easySpan = moves[r + EASY_SPAN];
+      const easyReach = easyNext + easySpan;
+      const easyLimit = moves[r + EASY_LIMIT];
       waiting++;
       if (easyLimit < easyReach) {
-        if (easyLimit + easySpan[i] > easyNext || waiting > 1) {
+        if (easyLimit + easySpan > easyNext || waiting > 1) {
           peak = (easyLimit + easyReach) * 0.5;
           if (settled === 0 && i + 2 <= fixed) settled = i + 1;
         }
+        const cruise = moves[r + CRUISE];
         let top = (start + reach) * 0.5;
-        if (cruiseSq[i] < top) top = cruiseSq[i];
+        if (cruise < top) top = cruise;
         if (peak < top) top = peak;
         peakSq[i] = top;
         waiting = 0;
@@ -320,7 +316,7 @@ export class Planner {
         easyNext = easyReach;
         if (fixed < 0 && start === limit && easyReach === easyLimit) fixed = i;
       }
-      startSq[i] = start;
+      moves[r + START] = start;
       next = start;
     }
     return settled;
@@ -328,57 +324,63 @@ export class Planner {
 
   /** Durations of the first `count` moves from their start, peak and end speeds. */
   private forwardPass(count: number, blocks: number): void {
-    const { startSq, peakSq, length, accel, span, timeS } = this;
+    const { moves, peakSq, timeS } = this;
     const held = this.count;
     const full = blocks === Number.POSITIVE_INFINITY;
     let spanSum = 0;
-    if (!full) for (let k = 0; k < Math.min(blocks, held); k++) spanSum += span[k];
+    if (!full) for (let k = 0; k < Math.min(blocks, held); k++) spanSum += moves[k * RECORD + SPAN];
     let before = this.forwardCruiseSq;
     let entry = full ? 0 : this.forwardEntrySq;
     let lastExitSq = -1;
     let lastExit = 0;
-    for (let i = 0; i < count; i++) {
+    for (let i = 0, r = 0; i < count; i++, r += RECORD) {
       let top = peakSq[i];
-      const start = startSq[i];
+      const start = moves[r + START];
       if (top < 0) top = before < start ? before : start;
       before = top;
-      let next = i + 1 < held ? startSq[i + 1] : 0;
+      let next = i + 1 < held ? moves[r + RECORD + START] : 0;
       let from = start;
       if (!full) {
         from = i === 0 && this.forwardEntrySq === 0 ? Math.min(start, spanSum) : entry;
-        spanSum += (i + blocks < held ? span[i + blocks] : 0) - span[i];
-        next = Math.max(0, Math.min(next, i + 1 + blocks <= held ? spanSum : next, from + span[i]));
-        top = Math.max(from, next, Math.min(top, (from + next + span[i]) * 0.5));
+        const span = moves[r + SPAN];
+        spanSum += (i + blocks < held ? moves[(i + blocks) * RECORD + SPAN] : 0) - span;
+        next = Math.max(0, Math.min(next, i + 1 + blocks <= held ? spanSum : next, from + span));
+        top = Math.max(from, next, Math.min(top, (from + next + span) * 0.5));
         entry = next;
       }
       if (from > top) from = top;
       if (next > top) next = top;
 
       const enter = from === lastExitSq ? lastExit : Math.sqrt(from);
-      const cruise = Math.sqrt(top);
-      const exit = next === top ? cruise : Math.sqrt(next);
-      const inverse = 1 / accel[i];
-      const rest = length[i] - (top - from + (top - next)) * 0.5 * inverse;
-      timeS[i] = (cruise - enter + (cruise - exit)) * inverse + (rest > 0 ? rest / cruise : 0);
+      if (from === top && next === top) {
+        timeS[i] = moves[r + LENGTH_OF] / enter;
+        lastExit = enter;
+      } else {
+        const cruise = top === from ? enter : Math.sqrt(top);
+        const exit = next === top ? cruise : Math.sqrt(next);
+        const inverse = 1 / moves[r + ACCEL];
+        const rest = moves[r + LENGTH_OF] - (top - from + (top - next)) * 0.5 * inverse;
+        timeS[i] = (cruise - enter + (cruise - exit)) * inverse + (rest > 0 ? rest / cruise : 0);
+        lastExit = exit;
+      }
       lastExitSq = next;
-      lastExit = exit;
     }
     this.forwardCruiseSq = before;
     this.forwardEntrySq = entry;
   }
 
   private dropFirst(count: number): void {
-    for (const name of COLUMNS) this[name].copyWithin(0, count, this.count);
+    this.moves.copyWithin(0, count * RECORD, this.count * RECORD);
     this.lays.copyWithin(0, count, this.count);
     this.count -= count;
   }
 
   private grow(capacity: number): void {
-    for (const name of [...COLUMNS, "startSq", "peakSq", "timeS"] as const) {
-      const wider = new Float64Array(capacity);
-      wider.set(this[name]);
-      this[name] = wider;
-    }
+    const moves = new Float64Array(capacity * RECORD);
+    moves.set(this.moves);
+    this.moves = moves;
+    this.peakSq = new Float64Array(capacity);
+    this.timeS = new Float64Array(capacity);
     const lays = new Uint8Array(capacity);
     lays.set(this.lays);
     this.lays = lays;
@@ -390,7 +392,6 @@ const limitSpeedSq = (a: number, b: number): number => (a < b ? a : b);
 const BATCH = 1024;
 /** a displacement below this is none, mm */
 const NO_TRAVEL = 1e-9;
-const COLUMNS = ["length", "accel", "cruiseSq", "limitSq", "span", "easyLimitSq", "easySpan"] as const;
 const SQUARE_CORNER = 0;
 const JUNCTION_DEVIATION = 1;
 const AXIS_JERK = 2;
@@ -398,9 +399,14 @@ const UX = 0;
 const UY = 1;
 const UZ = 2;
 const UE = 3;
-const CRUISE = 4;
-const SPAN = 5;
+const CORNER = 4;
+/** a record of `moves`: squared speeds and spans in mm²/s² */
+const RECORD = 8;
+const LENGTH_OF = 0;
+const ACCEL = 1;
+const CRUISE = 2;
+const LIMIT = 3;
+const SPAN = 4;
+const EASY_LIMIT = 5;
 const EASY_SPAN = 6;
-const LIMIT = 7;
-const EASY_LIMIT = 8;
-const CORNER = 9;
+const START = 7;

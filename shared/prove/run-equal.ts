@@ -30,13 +30,9 @@ export function runEqual(original: LineFeed, tuned: LineFeed, { within, first }:
     if (c !== b[p + shift]) break;
     if (c === LF) p++;
     else if (c !== CR || p + 1 >= end) break;
-    else {
-      p++;
-      if (a[p] === LF) {
-        if (b[p + shift] !== LF) break;
-        p++;
-      }
-    }
+    else if (a[p + 1] !== LF) p++;
+    else if (b[p + 1 + shift] === LF) p += 2;
+    else break;
     lines++;
     start = p;
   }
