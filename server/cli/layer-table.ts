@@ -11,14 +11,14 @@ const WAITS_WIDTH = 18;
 export function layerTable(name: string, reading: Reading, machine: Machine): string {
   const { file, layers, totals, findings } = reading;
   const { shown, left } = channelColumns(layers, machine);
+  const columns = [...measures(layers), ...shown, waitsColumn(layers)];
   const lines = [
-    `${name === "-" ? "standard input" : name}: ${sizeText(file.bytes)}, ${counted(file.lines, "line")}, SHA-256 ${file.sha256}`,
+    `${name === "-" ? "standard input" : name}: ${sizeText(file.bytes)}, ${counted(file.lines, "line")}`,
+    `SHA-256 ${file.sha256}`,
     "",
-    ...columnText([...measures(layers), ...shown, waitsColumn(layers)], layers.length),
+    ...columnText(columns, layers.length),
     "",
-    `Total  ${counted(totals.layers, "layer")}, ${durationText(totals.printTimeS)} (${totals.printTimeS.toFixed(1)} s), ` +
-      `deposited ${totals.depositedLengthMm.toFixed(1)} mm, travel ${totals.travelLengthMm.toFixed(1)} mm, ` +
-      `filament ${totals.filamentMm.toFixed(1)} mm`,
+    `${counted(totals.layers, "layer")}, print time ${durationText(totals.printTimeS)}, filament ${totals.filamentMm.toFixed(1)} mm`,
     "Times leave waits out. Duties are means over the layer; ~ marks those that change within it.",
     ...(left.length === 0 ? [] : [`No room for ${left.join(", ")}: --json has every channel.`]),
     ...(findings.length === 0 ? [] : ["", "Findings", ...findings.map(findingText)]),
@@ -32,17 +32,21 @@ function measures(layers: readonly Layer[]): Column[] {
     align: "right",
     cell: (row) => of(layers[row]).toFixed(decimals),
   });
+  const summed: typeof number = (head, unit, decimals, of) => ({
+    ...number(head, unit, decimals, of),
+    foot: layers.reduce((sum, layer) => sum + of(layer), 0).toFixed(decimals),
+  });
   const several = layers[layers.length - 1].object > 1;
   return [
-    number("layer", "", 0, (layer) => layer.index),
+    { ...number("layer", "", 0, (layer) => layer.index), foot: "total" },
     ...(several ? [number("object", "", 0, (layer) => layer.object)] : []),
     number("z", "mm", 3, (layer) => layer.zMm),
     number("height", "mm", 3, (layer) => layer.heightMm),
-    number("time", "s", 2, (layer) => layer.timeS),
-    number("extruding", "s", 2, (layer) => layer.extrudingTimeS),
-    number("deposited", "mm", 1, (layer) => layer.depositedLengthMm),
-    number("travel", "mm", 1, (layer) => layer.travelLengthMm),
-    number("volume", "mm³", 2, (layer) => layer.volumeMm3),
+    summed("time", "s", 2, (layer) => layer.timeS),
+    summed("extruding", "s", 2, (layer) => layer.extrudingTimeS),
+    summed("deposited", "mm", 1, (layer) => layer.depositedLengthMm),
+    summed("travel", "mm", 1, (layer) => layer.travelLengthMm),
+    summed("volume", "mm³", 2, (layer) => layer.volumeMm3),
   ];
 }
 

@@ -8,14 +8,15 @@ const REASONS: Record<string, string> = {
   EPERM: "you may not write there",
   EROFS: "the disk can't be written",
   EIO: "the disk fails",
+  ENOENT: "the folder is gone",
 };
 
 /**
  * What stands in the way in place of a system's error about a file that is written; anything else is returned as it is.
  *
- * @param folder where it was to be written
+ * @param where what was to be written, and where: `in /parts`, `to standard output`
  */
-export function obstacle(error: unknown, folder: string, remedy: string): unknown {
+export function obstacle(error: unknown, where: string, remedy: string): unknown {
   const reason = REASONS[errorCode(error) ?? ""];
-  return reason === undefined ? error : new Obstacle(`nothing can be written in ${folder}: ${reason}`, remedy);
+  return reason === undefined ? error : new Obstacle(`nothing can be written ${where}: ${reason}`, remedy);
 }

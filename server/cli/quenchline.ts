@@ -3,7 +3,7 @@ import { EXIT, type ExitStatus, UsageError } from "#server/cli/exit.ts";
 import { help } from "#server/cli/help.ts";
 import { report } from "#server/cli/report.ts";
 import { print } from "#server/cli/terminal.ts";
-import { version } from "../../package.json";
+import { version } from "#server/cli/version.ts";
 
 type Run = (argv: string[]) => Promise<ExitStatus>;
 

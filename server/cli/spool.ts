@@ -20,7 +20,7 @@ export async function spool(source: AsyncIterable<Uint8Array>, mostBytes: number
     return handle;
   } catch (error) {
     await handle?.close();
-    throw obstacle(error, folder, "Set TMPDIR to a folder with more room.");
+    throw obstacle(error, `in ${folder}`, "Set TMPDIR to a folder with more room.");
   }
 }
 

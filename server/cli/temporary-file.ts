@@ -97,7 +97,11 @@ export class TemporaryFile {
 }
 
 function inTheWay(error: unknown, target: string): unknown {
-  return obstacle(error, dirname(target), "Make room, or name another folder. What stood there before is unchanged.");
+  return obstacle(
+    error,
+    `in ${dirname(target)}`,
+    "Make room, or name another folder. What stood there before is unchanged.",
+  );
 }
 
 let guarding = false;

@@ -1,3 +1,5 @@
+import { obstacle } from "#server/cli/obstacle.ts";
+
 const UNPRINTABLE = /[\p{Cc}\p{Cs}\u202a-\u202e\u2066-\u2069]/gu;
 
 /** Text from a file or a name must not steer the terminal: control characters are shown as escapes. */
@@ -15,7 +17,9 @@ export function complain(text: string): void {
 /** Writes to standard output and waits until it is taken: a reader may be slow, and leaving would cut it short. */
 export function print(text: string): Promise<void> {
   return new Promise((resolve, reject) => {
-    process.stdout.write(text, (error) => (error ? reject(error) : resolve()));
+    process.stdout.write(text, (error) =>
+      error ? reject(obstacle(error, "to standard output", "Make room, or send it elsewhere.")) : resolve(),
+    );
   });
 }
 

@@ -34,7 +34,10 @@ export function tuningText({ machine, profile, reading, tuning, proof, path }: T
     `Layers  ${counted(reading.totals.layers, "layer")}, ${durationText(reading.totals.printTimeS)}`,
     `Lines   ${lineCounts(proof)}`,
     `Proof   passed, ${counted(proof.checks.length, "check")}`,
-    ...section("Advice", tuning.plan.advice.map(({ layer, message }) => `layer ${layer}: ${message}`)),
+    ...section(
+      "Advice",
+      tuning.plan.advice.map(({ message }) => message),
+    ),
     ...section("Findings", warnings.map(findingText)),
     ...section("Cautions", CAUTIONS),
   ];

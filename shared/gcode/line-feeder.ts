@@ -100,10 +100,9 @@ function lastLineEnd(chunk: Uint8Array): number {
   return chunk.lastIndexOf(CR, chunk.length - 2) + 1;
 }
 
+/** End of the first line; called only where the chunk holds one. */
 function firstLineEnd(chunk: Uint8Array): number {
-  const lf = chunk.indexOf(LF);
-  const cr = chunk.indexOf(CR);
-  if (cr < 0 || cr >= chunk.length - 1) return lf + 1;
-  if (lf < 0 || cr < lf - 1) return cr + 1;
-  return lf + 1;
+  let p = 0;
+  while (chunk[p] !== LF && (chunk[p] !== CR || p === chunk.length - 1)) p++;
+  return chunk[p] === CR && chunk[p + 1] === LF ? p + 2 : p + 1;
 }

@@ -4,7 +4,7 @@ import type { Findings } from "#shared/layers/findings.ts";
 import type { Boundary, Layer, Wait } from "#shared/layers/reading.ts";
 import { Timeline } from "#shared/layers/timeline.ts";
 import type { LimitChange, MotionSink } from "#shared/machine/interpreter.ts";
-import { FED, LENGTH, newMove, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
+import { Move } from "#shared/machine/move.ts";
 import { applyLimits } from "#shared/motion/file-limits.ts";
 import { motionRules } from "#shared/motion/motion-rules.ts";
 import { Planner } from "#shared/motion/planner.ts";
@@ -30,7 +30,7 @@ export const NEXT = 2;
  */
 export class LayerBuilder implements MotionSink {
   readonly where = new Float64Array(3);
-  readonly row = newMove();
+  readonly next = new Move();
   readonly layers: Layer[] = [];
   readonly timeline: Timeline;
   readonly planner: Planner;
@@ -46,7 +46,25 @@ export class LayerBuilder implements MotionSink {
 
   private readonly machine: Machine;
   private readonly findings: Findings;
-  private readonly sums = new Float64Array(SUMS);
+  // Sums of the open layer. They start as NaN or Infinity so that they are stored as doubles from the beginning.
+  private depositedMm = Number.NaN;
+  private travelMm = Number.NaN;
+  private filamentMm = Number.NaN;
+  private outlineMm = Number.NaN;
+  private loopMm = Number.NaN;
+  private minX = Number.POSITIVE_INFINITY;
+  private maxX = Number.NEGATIVE_INFINITY;
+  private minY = Number.POSITIVE_INFINITY;
+  private maxY = Number.NEGATIVE_INFINITY;
+  /** length and start of the open run of laying moves */
+  private runMm = Number.NaN;
+  private runX = Number.NaN;
+  private runY = Number.NaN;
+  /** raw Z of the last laying move, to leave the common case at once */
+  private lastZ = Number.NaN;
+  /** byte and line behind the last laying move */
+  private endsAt = Number.NaN;
+  private endsLine = 0;
   private current: Layer | undefined;
   private object = 0;
   private zUm = 0;
@@ -70,55 +88,48 @@ export class LayerBuilder implements MotionSink {
     this.filamentDiameterMm = machine.motion.filamentDiameterMm;
     this.planner = new Planner(machine.motion, (count) => this.timeline.advance(count));
     this.timeline = new Timeline(this.planner);
-    this.sums[LAST_Z] = Number.NaN;
     this.clearSums();
   }
 
   move(): void {
-    const { sums, row } = this;
-    const x0 = row[X0];
-    const y0 = row[Y0];
-    const x = row[X1];
-    const y = row[Y1];
-    const z = row[Z1];
-    const de = row[FED];
-    const lengthMm = row[LENGTH];
+    const { next } = this;
+    const { x0, y0, x1: x, y1: y, z1: z, fedMm: de, lengthMm } = next;
     let lays = 0;
     if (de > 0 && (x !== x0 || y !== y0)) {
-      if (z !== sums[LAST_Z] || row[Z0] !== z) this.considerLayer(row[Z0], z);
+      if (z !== this.lastZ || next.z0 !== z) this.considerLayer(next.z0, z);
       lays = 1;
       if (this.running === 0) {
         this.running = 1;
         this.laidSinceTravel = true;
-        sums[RUN_X] = x0;
-        sums[RUN_Y] = y0;
-        sums[RUN] = 0;
+        this.runX = x0;
+        this.runY = y0;
+        this.runMm = 0;
         this.widen(x0, y0);
       }
-      sums[RUN] += lengthMm;
-      sums[FILAMENT] += de;
-      if (x < sums[MIN_X]) sums[MIN_X] = x;
-      if (x > sums[MAX_X]) sums[MAX_X] = x;
-      if (y < sums[MIN_Y]) sums[MIN_Y] = y;
-      if (y > sums[MAX_Y]) sums[MAX_Y] = y;
-      sums[ENDS_AT] = this.where[NEXT];
-      sums[ENDS_LINE] = this.where[LINE] + 1;
+      this.runMm += lengthMm;
+      this.filamentMm += de;
+      if (x < this.minX) this.minX = x;
+      if (x > this.maxX) this.maxX = x;
+      if (y < this.minY) this.minY = y;
+      if (y > this.maxY) this.maxY = y;
+      this.endsAt = this.where[NEXT];
+      this.endsLine = this.where[LINE] + 1;
       this.mark = undefined;
     } else if (lengthMm > 0) {
-      sums[TRAVEL] += lengthMm;
+      this.travelMm += lengthMm;
       if (this.running !== 0) this.endRun(x0, y0);
       if (de === 0 && this.laidSinceTravel) {
         this.laidSinceTravel = false;
         if (this.current) this.timeline.travel(this.where[OFFSET], this.where[LINE]);
       }
     }
-    this.planner.add(row, lays);
+    this.planner.add(next, lays);
   }
 
   /** A comment that names a layer, states a height or a feature. */
   comment(fact: CommentFact, text: () => string): void {
     if (fact.says === "feature") {
-      this.endRun(this.row[X1], this.row[Y1]);
+      this.endRun(this.next.x1, this.next.y1);
       this.outline = fact.outline === true;
       return;
     }
@@ -165,7 +176,7 @@ export class LayerBuilder implements MotionSink {
   /** Settles everything; afterwards all layers have their times. */
   end(): void {
     this.planner.stop();
-    const [endOffset, endLine] = [this.sums[ENDS_AT], this.sums[ENDS_LINE]];
+    const [endOffset, endLine] = [this.endsAt, this.endsLine];
     this.closeLayer(endOffset, endLine - 1);
     this.timeline.end();
     this.lastLaid.offset = endOffset;
@@ -193,14 +204,14 @@ export class LayerBuilder implements MotionSink {
     this.layers.length = 0;
     this.current = undefined;
     this.object = 0;
-    this.sums[LAST_Z] = Number.NaN;
+    this.lastZ = Number.NaN;
     this.running = 0;
     this.clearSums();
     this.timeline.forgetLayers();
   }
 
   private considerLayer(z0: number, z: number): void {
-    this.sums[LAST_Z] = z;
+    this.lastZ = z;
     this.layingMoves++;
     const zUm = Math.round(z * 1000);
     const fromUm = Math.round(z0 * 1000);
@@ -248,7 +259,7 @@ export class LayerBuilder implements MotionSink {
         { line: this.where[LINE] },
       );
     const falls = this.current === undefined || zUm < this.zUm;
-    this.endRun(this.row[X0], this.row[Y0]);
+    this.endRun(this.next.x0, this.next.y0);
     this.closeLayer(this.where[OFFSET], this.where[LINE] - 1);
     if (falls) this.object++;
     this.zUm = zUm;
@@ -311,19 +322,18 @@ export class LayerBuilder implements MotionSink {
       this.clearSums();
       return;
     }
-    this.endRun(this.row[X1], this.row[Y1]);
-    const { sums } = this;
+    this.endRun(this.next.x1, this.next.y1);
     layer.lastLine = lastLine;
     layer.endByte = endByte;
-    layer.depositedLengthMm = sums[DEPOSITED];
-    layer.travelLengthMm = sums[TRAVEL];
-    layer.filamentMm = sums[FILAMENT];
-    layer.volumeMm3 = sums[FILAMENT] * Math.PI * (this.filamentDiameterMm / 2) ** 2;
+    layer.depositedLengthMm = this.depositedMm;
+    layer.travelLengthMm = this.travelMm;
+    layer.filamentMm = this.filamentMm;
+    layer.volumeMm3 = this.filamentMm * Math.PI * (this.filamentDiameterMm / 2) ** 2;
     layer.areaMm2 = layer.heightMm > 0 ? layer.volumeMm3 / layer.heightMm : 0;
-    layer.boxMm = { min: [sums[MIN_X], sums[MIN_Y]], max: [sums[MAX_X], sums[MAX_Y]] };
-    const commented = this.outlineSeen && sums[OUTLINE] > 0;
+    layer.boxMm = { min: [this.minX, this.minY], max: [this.maxX, this.maxY] };
+    const commented = this.outlineSeen && this.outlineMm > 0;
     layer.outlineFrom = commented ? "comments" : "geometry";
-    layer.outlineMm = commented ? sums[OUTLINE] : sums[LOOP] || boxPerimeterMm(layer);
+    layer.outlineMm = commented ? this.outlineMm : this.loopMm || boxPerimeterMm(layer);
     this.clearSums();
   }
 
@@ -331,51 +341,34 @@ export class LayerBuilder implements MotionSink {
   private endRun(x: number, y: number): void {
     if (this.running === 0) return;
     this.running = 0;
-    const { sums } = this;
-    sums[DEPOSITED] += sums[RUN];
+    this.depositedMm += this.runMm;
     if (this.outline) {
       this.outlineSeen = true;
-      sums[OUTLINE] += sums[RUN];
+      this.outlineMm += this.runMm;
     }
-    const gap = Math.hypot(x - sums[RUN_X], y - sums[RUN_Y]);
-    if (gap < LOOP_GAP_MM && sums[RUN] > sums[LOOP] && sums[RUN] > 4 * LOOP_GAP_MM) sums[LOOP] = sums[RUN];
+    const gap = Math.hypot(x - this.runX, y - this.runY);
+    if (gap < LOOP_GAP_MM && this.runMm > this.loopMm && this.runMm > 4 * LOOP_GAP_MM) this.loopMm = this.runMm;
   }
 
   private widen(x: number, y: number): void {
-    const { sums } = this;
-    sums[MIN_X] = Math.min(sums[MIN_X], x);
-    sums[MAX_X] = Math.max(sums[MAX_X], x);
-    sums[MIN_Y] = Math.min(sums[MIN_Y], y);
-    sums[MAX_Y] = Math.max(sums[MAX_Y], y);
+    this.minX = Math.min(this.minX, x);
+    this.maxX = Math.max(this.maxX, x);
+    this.minY = Math.min(this.minY, y);
+    this.maxY = Math.max(this.maxY, y);
   }
 
   private clearSums(): void {
     this.running = 0;
-    this.sums.fill(0, 0, LAST_Z);
-    this.sums[MIN_X] = Number.POSITIVE_INFINITY;
-    this.sums[MIN_Y] = Number.POSITIVE_INFINITY;
-    this.sums[MAX_X] = Number.NEGATIVE_INFINITY;
-    this.sums[MAX_Y] = Number.NEGATIVE_INFINITY;
+    this.depositedMm = 0;
+    this.travelMm = 0;
+    this.filamentMm = 0;
+    this.outlineMm = 0;
+    this.loopMm = 0;
+    this.minX = Number.POSITIVE_INFINITY;
+    this.minY = Number.POSITIVE_INFINITY;
+    this.maxX = Number.NEGATIVE_INFINITY;
+    this.maxY = Number.NEGATIVE_INFINITY;
   }
 }
 
 const boxPerimeterMm = ({ boxMm: { min, max } }: Layer): number => 2 * (max[0] - min[0] + max[1] - min[1]);
-
-const DEPOSITED = 0;
-const TRAVEL = 1;
-const FILAMENT = 2;
-const MIN_X = 3;
-const MAX_X = 4;
-const MIN_Y = 5;
-const MAX_Y = 6;
-const RUN = 7;
-const RUN_X = 8;
-const RUN_Y = 9;
-const OUTLINE = 10;
-const LOOP = 11;
-/** raw Z of the last laying move, to leave the common case at once; outlives the layer */
-const LAST_Z = 12;
-/** byte and line behind the last laying move; outlive the layer */
-const ENDS_AT = 13;
-const ENDS_LINE = 14;
-const SUMS = 15;

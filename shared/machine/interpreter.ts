@@ -1,12 +1,12 @@
 import type { Machine, Motion } from "#shared/formats/machine.ts";
 import type { LineScan } from "#shared/gcode/scan-line.ts";
-import * as move from "#shared/machine/move.ts";
+import type { Move } from "#shared/machine/move.ts";
 import { type Arc, arcFromCentre, arcFromRadius, arcLengthMm } from "#shared/machine/arc.ts";
 
 /** What a line of words turns into. One receiver, so that the calls stay cheap. */
 export interface MotionSink {
-  /** the row that the interpreter fills (machine coordinates, mm), and the call that says it is filled; see move.ts */
-  readonly row: Float64Array;
+  /** the move that the interpreter fills, and the call that says it is filled */
+  readonly next: Move;
   move(): void;
   /** the queue runs empty: homing, dwell, tool change, wait */
   wait(kind: "temperature" | "home" | "tool" | "pause" | "dwell", seconds: number | null): void;
@@ -67,7 +67,7 @@ const INCH = 25.4;
 /** Modal state of the program: words in, moves in absolute millimetres out. */
 export class Interpreter {
   private readonly sink: MotionSink;
-  private readonly row: Float64Array;
+  private readonly next: Move;
   private readonly motion: Motion;
   /** program position X Y Z E, mm, and the machine position of the program's zero for X Y Z */
   private readonly at = new Float64Array(7);
@@ -86,7 +86,7 @@ export class Interpreter {
   constructor(machine: Machine, sink: MotionSink) {
     this.motion = machine.motion;
     this.sink = sink;
-    this.row = sink.row;
+    this.next = sink.next;
     this.feedMmMin = machine.motion.initialSpeedMmS * 60;
   }
 
@@ -142,16 +142,19 @@ export class Interpreter {
     at[1] = y;
     at[2] = z;
     if (lengthMm < 1e-9 && de === 0) return;
-    const row = this.row;
-    row[move.X0] = x0 + at[4];
-    row[move.Y0] = y0 + at[5];
-    row[move.Z0] = z0 + at[6];
-    row[move.X1] = x + at[4];
-    row[move.Y1] = y + at[5];
-    row[move.Z1] = z + at[6];
-    row[move.FED] = de;
-    row[move.LENGTH] = lengthMm;
-    row[move.SPEED] = this.feedMmMin * this.feedPerMinute;
+    const move = this.next;
+    const ox = at[4];
+    const oy = at[5];
+    const oz = at[6];
+    move.x0 = x0 + ox;
+    move.y0 = y0 + oy;
+    move.z0 = z0 + oz;
+    move.x1 = x + ox;
+    move.y1 = y + oy;
+    move.z1 = z + oz;
+    move.fedMm = de;
+    move.lengthMm = lengthMm;
+    move.speedMmS = this.feedMmMin * this.feedPerMinute;
     this.sink.move();
   }
 
@@ -333,14 +336,13 @@ export class Interpreter {
     this.retracted = retract;
     const { lengthMm, speedMmS } = this.motion.firmwareRetract;
     if (lengthMm === 0) return;
-    const { at, row } = this;
-    for (let k = 0; k < 3; k++) {
-      row[k] = at[k] + at[4 + k];
-      row[3 + k] = row[k];
-    }
-    row[move.FED] = retract ? -lengthMm : lengthMm;
-    row[move.LENGTH] = 0;
-    row[move.SPEED] = speedMmS;
+    const { at, next } = this;
+    next.x0 = next.x1 = at[0] + at[4];
+    next.y0 = next.y1 = at[1] + at[5];
+    next.z0 = next.z1 = at[2] + at[6];
+    next.fedMm = retract ? -lengthMm : lengthMm;
+    next.lengthMm = 0;
+    next.speedMmS = speedMmS;
     this.sink.move();
   }
 
@@ -407,9 +409,10 @@ export class Interpreter {
     const rise = to[2] - from[2];
     const count = Math.min(Math.max(1, Math.floor(arcLengthMm(arc, rise) / this.motion.arcSegmentMm)), MAX_CHORDS);
     const speed = this.feedMmMin * this.feedPerMinute;
-    const { row } = this;
-    const offsets = [this.at[4], this.at[5], this.at[6]];
-    for (let k = 0; k < 3; k++) row[3 + axes[k]] = from[k] + offsets[axes[k]];
+    const { next } = this;
+    const here = [0, 0, 0];
+    const there = [0, 0, 0];
+    for (let k = 0; k < 3; k++) there[axes[k]] = from[k] + this.at[4 + axes[k]];
     const startX = from[0] - arc.centreX;
     const startY = from[1] - arc.centreY;
     for (let i = 1; i <= count; i++) {
@@ -418,13 +421,15 @@ export class Interpreter {
       const cos = Math.cos(angle);
       const sin = Math.sin(angle);
       const last = i === count;
-      row.copyWithin(0, 3, 6);
-      row[3 + axes[0]] = (last ? to[0] : arc.centreX + startX * cos - startY * sin) + offsets[axes[0]];
-      row[3 + axes[1]] = (last ? to[1] : arc.centreY + startX * sin + startY * cos) + offsets[axes[1]];
-      row[3 + axes[2]] = from[2] + rise * share + offsets[axes[2]];
-      row[move.FED] = de / count;
-      row[move.LENGTH] = Math.hypot(row[3] - row[0], row[4] - row[1], row[5] - row[2]);
-      row[move.SPEED] = speed;
+      for (let k = 0; k < 3; k++) here[k] = there[k];
+      there[axes[0]] = (last ? to[0] : arc.centreX + startX * cos - startY * sin) + this.at[4 + axes[0]];
+      there[axes[1]] = (last ? to[1] : arc.centreY + startX * sin + startY * cos) + this.at[4 + axes[1]];
+      there[axes[2]] = from[2] + rise * share + this.at[4 + axes[2]];
+      [next.x0, next.y0, next.z0] = here;
+      [next.x1, next.y1, next.z1] = there;
+      next.fedMm = de / count;
+      next.lengthMm = Math.hypot(there[0] - here[0], there[1] - here[1], there[2] - here[2]);
+      next.speedMmS = speed;
       this.sink.move();
     }
   }

@@ -9,13 +9,15 @@ export function applyLimits(now: MotionRules, machine: MotionRules, change: Limi
   const { axisSpeed = {}, axisAccel = {}, jerk = {} } = change;
   const square = machine.cornering === 0 && change.squareCorner !== undefined;
   const deviation = machine.cornering === 1 && change.deviation !== undefined;
+  const limitsXY = [axisSpeed.x, axisSpeed.y, axisAccel.x, axisAccel.y].some((v) => v !== undefined);
   return {
     ...now,
     maxSpeed: lower(change.maxSpeed, machine.maxSpeed, now.maxSpeed),
     printAccel: lower(change.printAccel, machine.printAccel, now.printAccel),
     travelAccel: lower(change.travelAccel, machine.travelAccel, now.travelAccel),
     retractAccel: lower(change.retractAccel, machine.retractAccel, now.retractAccel),
-    limitsXY: now.limitsXY || [axisSpeed.x, axisSpeed.y, axisAccel.x, axisAccel.y].some((v) => v !== undefined),
+    limitsXY: now.limitsXY || limitsXY,
+    limitsEveryMove: now.limitsEveryMove || limitsXY,
     maxSpeedX: lower(axisSpeed.x, machine.maxSpeedX, now.maxSpeedX),
     maxSpeedY: lower(axisSpeed.y, machine.maxSpeedY, now.maxSpeedY),
     maxSpeedZ: lower(axisSpeed.z, machine.maxSpeedZ, now.maxSpeedZ),
@@ -29,7 +31,7 @@ export function applyLimits(now: MotionRules, machine: MotionRules, change: Limi
       : deviation
         ? lower(change.deviation, machine.cornerFactor, now.cornerFactor)
         : now.cornerFactor,
-    easyShare: change.cruiseRatio === undefined ? now.easyShare : 1 - Math.max(change.cruiseRatio, 1 - machine.easyShare),
+    easyFactor: change.cruiseRatio === undefined ? now.easyFactor : Math.min(2 * (1 - change.cruiseRatio), machine.easyFactor),
     jerk: {
       x: lower(jerk.x, machine.jerk.x, now.jerk.x),
       y: lower(jerk.y, machine.jerk.y, now.jerk.y),

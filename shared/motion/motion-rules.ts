@@ -10,6 +10,8 @@ export interface MotionRules {
   /** true when x or y has a limit of its own */
   limitsXY: boolean;
   limitsEveryE: boolean;
+  /** true when plain XY moves have limits beyond those along the path */
+  limitsEveryMove: boolean;
   maxSpeedX: number;
   maxSpeedY: number;
   maxSpeedZ: number;
@@ -22,8 +24,8 @@ export interface MotionRules {
   cornering: number;
   /** square corner: acceleration × deviation, mm²/s²; junction deviation: deviation, mm */
   cornerFactor: number;
-  /** share of the acceleration that the second budget may use: 1 − minimum cruise ratio */
-  easyShare: number;
+  /** twice the share of the acceleration that the second budget may use: 2(1 − minimum cruise ratio) */
+  easyFactor: number;
   /** square of the largest jump of filament speed in a corner, mm²/s² */
   extruderStepSq: number;
   jerk: { x: number; y: number; z: number; e: number };
@@ -45,6 +47,7 @@ export function motionRules(motion: Motion): MotionRules {
     retractAccel: motion.accelMmS2.retract,
     limitsXY: x !== undefined || y !== undefined,
     limitsEveryE: motion.extruderLimits === "every-move",
+    limitsEveryMove: x !== undefined || y !== undefined || motion.extruderLimits === "every-move",
     maxSpeedX: x?.maxSpeedMmS ?? none,
     maxSpeedY: y?.maxSpeedMmS ?? none,
     maxSpeedZ: z?.maxSpeedMmS ?? none,
@@ -59,7 +62,7 @@ export function motionRules(motion: Motion): MotionRules {
       : cornering.rule === "junction-deviation"
         ? cornering.deviationMm
         : 0,
-    easyShare: 1 - (square?.cruiseRatio ?? 0),
+    easyFactor: 2 * (1 - (square?.cruiseRatio ?? 0)),
     extruderStepSq: (square?.extruderStepMmS ?? none) ** 2,
     jerk: { x: jerk.x ?? none, y: jerk.y ?? none, z: jerk.z ?? none, e: jerk.e ?? none },
     stopAtExtrudeOnly: motion.stopAtExtrudeOnly,

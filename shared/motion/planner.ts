@@ -1,5 +1,6 @@
 import type { Motion } from "#shared/formats/machine.ts";
-import { FED, LENGTH, SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
+import type { Move } from "#shared/machine/move.ts";
+import { deviationCornerSq, jerkCornerSq, limitByAxes, startFromRestSq } from "#shared/motion/move-limits.ts";
 import { type MotionRules, motionRules } from "#shared/motion/motion-rules.ts";
 
 /**
@@ -44,10 +45,15 @@ export class Planner {
   private count = 0;
   private threshold = BATCH;
   /** one record of eight numbers a move, so that a move is one cache line */
-  private moves = new Float64Array(0);
+  private records = new Float64Array(0);
   private peakSq = new Float64Array(0);
-  /** direction, material per mm and corner factor of the move added last */
-  private readonly last = new Float64Array(5);
+  /** how many of the moves held have their limits */
+  private prepared = 0;
+  /** the last prepared move: displacement, material and length (see the record), its corner factor, and what it lets the next start with */
+  private readonly last = new Float64Array(9);
+  private readonly limited = new Float64Array(2);
+  private lastSpan = 0;
+  private lastEasySpan = 0;
   private lastMoves = false;
   private hasLast = false;
   /** state of the forward pass across batches */
@@ -63,6 +69,7 @@ export class Planner {
 
   /** New limits for the moves to come (a file's own acceleration commands, where the machine honours them). */
   setRules(rules: MotionRules): void {
+    this.prepare();
     this.rules = rules;
   }
 
@@ -73,127 +80,154 @@ export class Planner {
   /**
    * Adds one straight move.
    *
-   * @param row the move, see machine/move.ts
    * @param lays 1 when the move lays material
    */
-  add(row: Float64Array, lays: number): void {
-    const dx = row[X1] - row[X0];
-    const dy = row[Y1] - row[Y0];
-    const dz = row[Z1] - row[Z0];
-    const de = row[FED];
-    const lengthMm = row[LENGTH];
-    const speedMmS = row[SPEED];
+  add(move: Move, lays: number): void {
     if (this.count === this.threshold) this.settle(false);
-    const rules = this.rules;
-    const last = this.last;
-    const moves = lengthMm > NO_TRAVEL;
-    const length = moves ? lengthMm : Math.abs(de);
-
-    let baseAccel: number;
-    let accel: number;
-    let speed: number;
-    if (moves) {
-      baseAccel = de !== 0 ? rules.printAccel : rules.travelAccel;
-      accel = baseAccel;
-      speed = speedMmS < rules.maxSpeed ? speedMmS : rules.maxSpeed;
-      if (dz !== 0 || rules.limitsXY) {
-        const z = Math.abs(dz) / length;
-        if (rules.maxSpeedZ < speed * z) speed = rules.maxSpeedZ / z;
-        if (rules.maxAccelZ < accel * z) accel = rules.maxAccelZ / z;
-        if (rules.limitsXY) {
-          const x = Math.abs(dx) / length;
-          const y = Math.abs(dy) / length;
-          if (rules.maxSpeedX < speed * x) speed = rules.maxSpeedX / x;
-          if (rules.maxSpeedY < speed * y) speed = rules.maxSpeedY / y;
-          if (rules.maxAccelX < accel * x) accel = rules.maxAccelX / x;
-          if (rules.maxAccelY < accel * y) accel = rules.maxAccelY / y;
-        }
-      }
-      if (de < 0 || (de > 0 && (rules.limitsEveryE || (dx === 0 && dy === 0)))) {
-        const e = Math.abs(de) / length;
-        if (rules.maxSpeedE < speed * e) speed = rules.maxSpeedE / e;
-        if (rules.maxAccelE < accel * e) accel = rules.maxAccelE / e;
-      }
-    } else {
-      baseAccel = rules.retractAccel;
-      accel = baseAccel < rules.maxAccelE ? baseAccel : rules.maxAccelE;
-      const cap = rules.maxSpeedE < Number.POSITIVE_INFINITY ? rules.maxSpeedE : rules.maxSpeed;
-      speed = speedMmS < cap ? speedMmS : cap;
-    }
-
-    const cruiseSq = speed * speed;
-    const span = 2 * accel * length;
-    const easy = 2 * baseAccel * rules.easyShare * length;
-    const easySpan = easy < span ? easy : span;
-    const inverse = 1 / length;
-    const ux = dx * inverse;
-    const uy = dy * inverse;
-    const uz = dz * inverse;
-    const ue = de * inverse;
-    const corner = accel === baseAccel ? rules.cornerFactor : rules.cornerFactor * (accel / baseAccel);
-
-    let limit = 0;
-    let easyLimit = 0;
-    if (this.hasLast && ((moves && this.lastMoves) || !rules.stopAtExtrudeOnly)) {
-      const before = this.moves;
-      const m = (this.count - 1) * RECORD;
-      const cruiseBeforeSq = before[m + CRUISE];
-      const spanBefore = before[m + SPAN];
-      limit = cruiseSq < cruiseBeforeSq ? cruiseSq : cruiseBeforeSq;
-      const reach = before[m + LIMIT] + spanBefore;
-      if (reach < limit) limit = reach;
-      // Moves of material alone point along an axis of their own.
-      const dot =
-        moves && this.lastMoves ? ux * last[UX] + uy * last[UY] + uz * last[UZ] : moves || this.lastMoves ? 0 : ue * last[UE];
-      if (rules.cornering === SQUARE_CORNER) {
-        if (moves) {
-          const step = ue - last[UE];
-          const stepLimit = rules.extruderStepSq;
-          if (stepLimit < limit * step * step) limit = stepLimit / (step * step);
-        }
-        // Each bound is computed only where it is the lower one, which its square tells without a root.
-        const lower = corner < last[CORNER] ? corner : last[CORNER];
-        const sum = lower + limit;
-        if ((1 + dot) * sum * sum < 2 * limit * limit) {
-          const sinHalf = Math.sqrt(dot > -1 ? 0.5 * (1 + dot) : 0);
-          limit = (lower * sinHalf) / (1 - sinHalf);
-        }
-        const middle = 0.25 * (span < spanBefore ? span : spanBefore);
-        if (middle * middle * (1 + dot) < limit * limit * (1 - dot))
-          limit = middle * Math.sqrt((dot > -1 ? 1 + dot : 0) / (1 - dot));
-      } else if (rules.cornering === JUNCTION_DEVIATION) {
-        const bound = this.deviationSq(ux, uy, uz, dot, accel, length);
-        if (bound < limit) limit = bound;
-      } else {
-        const bound = this.jerkSq(ux, uy, uz, ue, limitSpeedSq(cruiseSq, cruiseBeforeSq));
-        if (bound < limit) limit = bound;
-      }
-      const easyReach = before[m + EASY_LIMIT] + before[m + EASY_SPAN];
-      easyLimit = limit < easyReach ? limit : easyReach;
-    } else if (rules.cornering === AXIS_JERK) {
-      limit = this.startFromRestSq(ux, uy, uz, ue, cruiseSq);
-      easyLimit = limit;
-    }
-
-    const records = this.moves;
+    const { records } = this;
     const i = this.count++;
     const r = i * RECORD;
-    records[r + LENGTH_OF] = length;
-    records[r + ACCEL] = accel;
-    records[r + CRUISE] = cruiseSq;
-    records[r + SPAN] = span;
-    records[r + EASY_SPAN] = easySpan;
-    records[r + LIMIT] = limit;
-    records[r + EASY_LIMIT] = easyLimit;
+    records[r + DX] = move.x1 - move.x0;
+    records[r + DY] = move.y1 - move.y0;
+    records[r + DZ] = move.z1 - move.z0;
+    records[r + DE] = move.fedMm;
+    records[r + LENGTH] = move.lengthMm;
+    records[r + SPEED] = move.speedMmS;
     this.lays[i] = lays;
     this.added++;
-    last[UX] = ux;
-    last[UY] = uy;
-    last[UZ] = uz;
-    last[UE] = ue;
-    last[CORNER] = corner;
-    this.lastMoves = moves;
-    this.hasLast = true;
+  }
+
+  /** Limits of the moves added since the last time: cruise speed, spans and the two start limits at each corner. */
+  private prepare(): void {
+    const { records, rules, last, limited } = this;
+    const { maxSpeed, printAccel, travelAccel, retractAccel, limitsEveryMove, cornering, stopAtExtrudeOnly } = rules;
+    const { cornerFactor, easyFactor, extruderStepSq } = rules;
+    const square = cornering === SQUARE_CORNER;
+    const retractSpeed = rules.maxSpeedE < Number.POSITIVE_INFINITY ? rules.maxSpeedE : maxSpeed;
+    let lastX = last[DX];
+    let lastY = last[DY];
+    let lastZ = last[DZ];
+    let lastE = last[DE];
+    let lastLength = last[LENGTH];
+    let lastCruiseSq = last[CRUISE];
+    let lastCorner = last[LAST_CORNER];
+    let lastLimit = last[LAST_LIMIT];
+    let lastEasyLimit = last[LAST_EASY_LIMIT];
+    let lastSpan = this.lastSpan;
+    let lastEasySpan = this.lastEasySpan;
+    let lastMoves = this.lastMoves;
+    let hasLast = this.hasLast;
+
+    const end = this.count * RECORD;
+    for (let r = this.prepared * RECORD; r < end; r += RECORD) {
+      const dx = records[r + DX];
+      const dy = records[r + DY];
+      const dz = records[r + DZ];
+      const de = records[r + DE];
+      const programmed = records[r + SPEED];
+      let length = records[r + LENGTH];
+      const moves = length > NO_TRAVEL;
+
+      let baseAccel = de !== 0 ? printAccel : travelAccel;
+      let speed = programmed < maxSpeed ? programmed : maxSpeed;
+      let accel = baseAccel;
+      if (!moves) {
+        length = de < 0 ? -de : de;
+        baseAccel = retractAccel;
+        accel = baseAccel < rules.maxAccelE ? baseAccel : rules.maxAccelE;
+        speed = programmed < retractSpeed ? programmed : retractSpeed;
+      } else if (dz !== 0 || de < 0 || limitsEveryMove) {
+        limitByAxes(rules, dx, dy, dz, de, length, speed, accel, limited);
+        speed = limited[0];
+        accel = limited[1];
+      }
+      const cruiseSq = speed * speed;
+      const span = 2 * accel * length;
+      const easy = baseAccel * easyFactor * length;
+      const easySpan = easy < span ? easy : span;
+      const corner = accel === baseAccel ? cornerFactor : cornerFactor * (accel / baseAccel);
+
+      let limit = 0;
+      let easyLimit = 0;
+      if (hasLast && ((moves && lastMoves) || !stopAtExtrudeOnly)) {
+        limit = cruiseSq < lastCruiseSq ? cruiseSq : lastCruiseSq;
+        const reach = lastLimit + lastSpan;
+        if (reach < limit) limit = reach;
+        // Directions are compared without a division: everything below is multiplied by both lengths.
+        const lengths = length * lastLength;
+        // Moves of material alone point along an axis of their own.
+        let dot = 0;
+        if (moves && lastMoves) dot = dx * lastX + dy * lastY + dz * lastZ;
+        else if (!moves && !lastMoves) dot = de * lastE;
+        if (square) {
+          if (moves) {
+            const step = de * lastLength - lastE * length;
+            const stepSq = step * step;
+            const allowedSq = extruderStepSq * lengths * lengths;
+            if (allowedSq < limit * stepSq) limit = allowedSq / stepSq;
+          }
+          // Each bound is computed only where it is the lower one, which its square tells without a root.
+          const lower = corner < lastCorner ? corner : lastCorner;
+          const sum = lower + limit;
+          const along = lengths + dot;
+          if (along * sum * sum < 2 * limit * limit * lengths) {
+            const sinHalf = Math.sqrt(along > 0 ? (0.5 * along) / lengths : 0);
+            limit = (lower * sinHalf) / (1 - sinHalf);
+          }
+          const middle = 0.25 * (span < lastSpan ? span : lastSpan);
+          const against = lengths - dot;
+          if (middle * middle * along < limit * limit * against) limit = middle * Math.sqrt((along > 0 ? along : 0) / against);
+        } else {
+          const [ux, uy, uz, ue] = [dx / length, dy / length, dz / length, de / length];
+          const [vx, vy, vz, ve] = [lastX / lastLength, lastY / lastLength, lastZ / lastLength, lastE / lastLength];
+          const bound =
+            cornering === JUNCTION_DEVIATION
+              ? deviationCornerSq(rules, [ux - vx, uy - vy, uz - vz], dot / lengths, accel, length)
+              : jerkCornerSq(rules, [ux - vx, uy - vy, uz - vz, ue - ve], Math.min(cruiseSq, lastCruiseSq));
+          if (bound < limit) limit = bound;
+        }
+        const easyReach = lastEasyLimit + lastEasySpan;
+        easyLimit = limit < easyReach ? limit : easyReach;
+      } else if (cornering === AXIS_JERK) {
+        limit = startFromRestSq(rules, [dx / length, dy / length, dz / length, de / length], cruiseSq);
+        easyLimit = limit;
+      }
+
+      records[r + LIMIT] = limit;
+      records[r + SPAN] = span;
+      records[r + EASY_LIMIT] = easyLimit;
+      records[r + EASY_SPAN] = easySpan;
+      records[r + LENGTH] = length;
+      records[r + CRUISE] = cruiseSq;
+      records[r + ACCEL] = accel;
+      lastX = dx;
+      lastY = dy;
+      lastZ = dz;
+      lastE = de;
+      lastLength = length;
+      lastCruiseSq = cruiseSq;
+      lastCorner = corner;
+      lastSpan = span;
+      lastEasySpan = easySpan;
+      lastLimit = limit;
+      lastEasyLimit = easyLimit;
+      lastMoves = moves;
+      hasLast = true;
+    }
+    this.prepared = this.count;
+    last[DX] = lastX;
+    last[DY] = lastY;
+    last[DZ] = lastZ;
+    last[DE] = lastE;
+    last[LENGTH] = lastLength;
+    last[CRUISE] = lastCruiseSq;
+    last[LAST_CORNER] = lastCorner;
+    last[LAST_LIMIT] = lastLimit;
+    last[LAST_EASY_LIMIT] = lastEasyLimit;
+    this.lastSpan = lastSpan;
+    this.lastEasySpan = lastEasySpan;
+    this.lastMoves = lastMoves;
+    this.hasLast = hasLast;
   }
 
   /** A full stop: everything held is settled, the next move starts from rest. */
@@ -202,62 +236,11 @@ export class Planner {
     this.hasLast = false;
   }
 
-  /** Junction deviation with the acceleration limited per axis along the change of direction. */
-  private deviationSq(ux: number, uy: number, uz: number, dot: number, accel: number, length: number): number {
-    const last = this.last;
-    if (dot > 0.999999) return Number.POSITIVE_INFINITY;
-    if (dot < -0.999999) return 0;
-    const rules = this.rules;
-    const jx = Math.abs(ux - last[UX]);
-    const jy = Math.abs(uy - last[UY]);
-    const jz = Math.abs(uz - last[UZ]);
-    const norm = Math.sqrt(jx * jx + jy * jy + jz * jz) || 1;
-    let a = accel;
-    if (rules.maxAccelX * norm < a * jx) a = (rules.maxAccelX * norm) / jx;
-    if (rules.maxAccelY * norm < a * jy) a = (rules.maxAccelY * norm) / jy;
-    if (rules.maxAccelZ * norm < a * jz) a = (rules.maxAccelZ * norm) / jz;
-    const sinHalf = Math.sqrt(0.5 * (1 + dot));
-    let bound = (a * rules.cornerFactor * sinHalf) / (1 - sinHalf);
-    // Short chords at an obtuse angle are an arc: v² = a·r with r = length/angle.
-    if (length < 1 && dot > Math.SQRT1_2) {
-      const arc = (length * a) / Math.max(Math.acos(dot), 0.033);
-      if (arc < bound) bound = arc;
-    }
-    return bound;
-  }
-
-  /** Per-axis jerk: both directions at one common speed; no axis may jump by more than its own jerk. */
-  private jerkSq(ux: number, uy: number, uz: number, ue: number, commonSq: number): number {
-    const last = this.last;
-    const jerk = this.rules.jerk;
-    const v = Math.sqrt(commonSq);
-    let factor = 1;
-    const x = Math.abs(ux - last[UX]) * v;
-    const y = Math.abs(uy - last[UY]) * v;
-    const z = Math.abs(uz - last[UZ]) * v;
-    const e = Math.abs(ue - last[UE]) * v;
-    if (x > jerk.x) factor = Math.min(factor, jerk.x / x);
-    if (y > jerk.y) factor = Math.min(factor, jerk.y / y);
-    if (z > jerk.z) factor = Math.min(factor, jerk.z / z);
-    if (e > jerk.e) factor = Math.min(factor, jerk.e / e);
-    return commonSq * factor * factor;
-  }
-
-  /** After standstill a move may start at the speed whose axis components equal the jerk. */
-  private startFromRestSq(ux: number, uy: number, uz: number, ue: number, cruiseSq: number): number {
-    const jerk = this.rules.jerk;
-    let v = Math.sqrt(cruiseSq);
-    if (Math.abs(ux) * v > jerk.x) v = jerk.x / Math.abs(ux);
-    if (Math.abs(uy) * v > jerk.y) v = jerk.y / Math.abs(uy);
-    if (Math.abs(uz) * v > jerk.z) v = jerk.z / Math.abs(uz);
-    if (Math.abs(ue) * v > jerk.e) v = jerk.e / Math.abs(ue);
-    return v * v;
-  }
-
   /** Settles what can no longer change, or with `all` everything, as if the machine came to rest after the newest move. */
   private settle(all: boolean): void {
     const n = this.count;
     if (n === 0) return;
+    this.prepare();
     let settled = this.backwardPass();
     const blocks = this.rules.lookAhead;
     if (all) settled = n;
@@ -283,7 +266,7 @@ export class Planner {
 
   /** Start and peak speeds of all held moves; returns how many of the first are settled for good. */
   private backwardPass(): number {
-    const { moves, peakSq } = this;
+    const { records, peakSq } = this;
     let next = 0;
     let easyNext = 0;
     let peak = 0;
@@ -291,19 +274,19 @@ export class Planner {
     let fixed = -1; // newest move that starts at its limit in both budgets
     let settled = 0;
     for (let i = this.count - 1, r = i * RECORD; i >= 0; i--, r -= RECORD) {
-      const reach = next + moves[r + SPAN];
-      const limit = moves[r + LIMIT];
+      const reach = next + records[r + SPAN];
+      const limit = records[r + LIMIT];
       const start = limit < reach ? limit : reach;
-      const easySpan = moves[r + EASY_SPAN];
+      const easySpan = records[r + EASY_SPAN];
       const easyReach = easyNext + easySpan;
-      const easyLimit = moves[r + EASY_LIMIT];
+      const easyLimit = records[r + EASY_LIMIT];
       waiting++;
       if (easyLimit < easyReach) {
         if (easyLimit + easySpan > easyNext || waiting > 1) {
           peak = (easyLimit + easyReach) * 0.5;
           if (settled === 0 && i + 2 <= fixed) settled = i + 1;
         }
-        const cruise = moves[r + CRUISE];
+        const cruise = records[r + CRUISE];
         let top = (start + reach) * 0.5;
         if (cruise < top) top = cruise;
         if (peak < top) top = peak;
@@ -316,7 +299,7 @@ export class Planner {
         easyNext = easyReach;
         if (fixed < 0 && start === limit && easyReach === easyLimit) fixed = i;
       }
-      moves[r + START] = start;
+      records[r + START] = start;
       next = start;
     }
     return settled;
@@ -324,26 +307,26 @@ export class Planner {
 
   /** Durations of the first `count` moves from their start, peak and end speeds. */
   private forwardPass(count: number, blocks: number): void {
-    const { moves, peakSq, timeS } = this;
+    const { records, peakSq, timeS } = this;
     const held = this.count;
     const full = blocks === Number.POSITIVE_INFINITY;
     let spanSum = 0;
-    if (!full) for (let k = 0; k < Math.min(blocks, held); k++) spanSum += moves[k * RECORD + SPAN];
+    if (!full) for (let k = 0; k < Math.min(blocks, held); k++) spanSum += records[k * RECORD + SPAN];
     let before = this.forwardCruiseSq;
     let entry = full ? 0 : this.forwardEntrySq;
     let lastExitSq = -1;
     let lastExit = 0;
     for (let i = 0, r = 0; i < count; i++, r += RECORD) {
       let top = peakSq[i];
-      const start = moves[r + START];
+      const start = records[r + START];
       if (top < 0) top = before < start ? before : start;
       before = top;
-      let next = i + 1 < held ? moves[r + RECORD + START] : 0;
+      let next = i + 1 < held ? records[r + RECORD + START] : 0;
       let from = start;
       if (!full) {
         from = i === 0 && this.forwardEntrySq === 0 ? Math.min(start, spanSum) : entry;
-        const span = moves[r + SPAN];
-        spanSum += (i + blocks < held ? moves[(i + blocks) * RECORD + SPAN] : 0) - span;
+        const span = records[r + SPAN];
+        spanSum += (i + blocks < held ? records[(i + blocks) * RECORD + SPAN] : 0) - span;
         next = Math.max(0, Math.min(next, i + 1 + blocks <= held ? spanSum : next, from + span));
         top = Math.max(from, next, Math.min(top, (from + next + span) * 0.5));
         entry = next;
@@ -353,13 +336,13 @@ export class Planner {
 
       const enter = from === lastExitSq ? lastExit : Math.sqrt(from);
       if (from === top && next === top) {
-        timeS[i] = moves[r + LENGTH_OF] / enter;
+        timeS[i] = records[r + LENGTH] / enter;
         lastExit = enter;
       } else {
         const cruise = top === from ? enter : Math.sqrt(top);
         const exit = next === top ? cruise : Math.sqrt(next);
-        const inverse = 1 / moves[r + ACCEL];
-        const rest = moves[r + LENGTH_OF] - (top - from + (top - next)) * 0.5 * inverse;
+        const inverse = 1 / records[r + ACCEL];
+        const rest = records[r + LENGTH] - (top - from + (top - next)) * 0.5 * inverse;
         timeS[i] = (cruise - enter + (cruise - exit)) * inverse + (rest > 0 ? rest / cruise : 0);
         lastExit = exit;
       }
@@ -370,15 +353,16 @@ export class Planner {
   }
 
   private dropFirst(count: number): void {
-    this.moves.copyWithin(0, count * RECORD, this.count * RECORD);
+    this.records.copyWithin(0, count * RECORD, this.count * RECORD);
     this.lays.copyWithin(0, count, this.count);
     this.count -= count;
+    this.prepared -= count;
   }
 
   private grow(capacity: number): void {
-    const moves = new Float64Array(capacity * RECORD);
-    moves.set(this.moves);
-    this.moves = moves;
+    const records = new Float64Array(capacity * RECORD);
+    records.set(this.records);
+    this.records = records;
     this.peakSq = new Float64Array(capacity);
     this.timeS = new Float64Array(capacity);
     const lays = new Uint8Array(capacity);
@@ -387,26 +371,28 @@ export class Planner {
   }
 }
 
-const limitSpeedSq = (a: number, b: number): number => (a < b ? a : b);
-
-const BATCH = 1024;
+const BATCH = 512;
 /** a displacement below this is none, mm */
 const NO_TRAVEL = 1e-9;
 const SQUARE_CORNER = 0;
 const JUNCTION_DEVIATION = 1;
 const AXIS_JERK = 2;
-const UX = 0;
-const UY = 1;
-const UZ = 2;
-const UE = 3;
-const CORNER = 4;
-/** a record of `moves`: squared speeds and spans in mm²/s² */
+/** A record: as added, and (from the same places on) as prepared, squared speeds and spans in mm²/s². */
 const RECORD = 8;
-const LENGTH_OF = 0;
-const ACCEL = 1;
-const CRUISE = 2;
-const LIMIT = 3;
-const SPAN = 4;
-const EASY_LIMIT = 5;
-const EASY_SPAN = 6;
+const DX = 0;
+const DY = 1;
+const DZ = 2;
+const DE = 3;
+const LENGTH = 4;
+const SPEED = 5;
+const LIMIT = 0;
+const SPAN = 1;
+const EASY_LIMIT = 2;
+const EASY_SPAN = 3;
+const CRUISE = 5;
+const ACCEL = 6;
 const START = 7;
+/** further places of `last` */
+const LAST_CORNER = 6;
+const LAST_LIMIT = 7;
+const LAST_EASY_LIMIT = 8;

@@ -23,13 +23,22 @@ export class Agreement {
     if (!command || this.disagreement) return;
     const alike = command.what === "output" ? this.sameControl(command, offset, ours) : this.samePause(command, offset);
     if (alike) this.agreed++;
-    else this.disagreement = { originalLine, offset, message: "the two readers take a command for different things, or one of them missed it" };
+    else
+      this.disagreement = {
+        originalLine,
+        offset,
+        message: "the two readers take a command for different things, or one of them missed it",
+      };
   }
 
   end(): void {
     const missed = this.reading.controls[this.control] ?? this.reading.pauses[this.pause];
     if (missed)
-      this.disagreement ??= { originalLine: missed.line, offset: missed.offset, message: "one of the two readers missed a command" };
+      this.disagreement ??= {
+        originalLine: missed.line,
+        offset: missed.offset,
+        message: "one of the two readers missed a command",
+      };
   }
 
   private sameControl({ channel, does, duty }: OutputSetting, offset: number, ours: boolean): boolean {

@@ -5,7 +5,7 @@ import type { Comparison } from "#shared/prove/comparison.ts";
 import { LineFeed } from "#shared/prove/line-feed.ts";
 import { LineLook } from "#shared/prove/line-look.ts";
 import { LineNumbers } from "#shared/prove/line-numbers.ts";
-import { isEarlierOwn, ownKind } from "#shared/prove/own-line.ts";
+import { ownKind } from "#shared/prove/own-line.ts";
 import { Recorder } from "#shared/prove/recorder.ts";
 import { runEqual } from "#shared/prove/run-equal.ts";
 import { runNumbered } from "#shared/prove/run-numbered.ts";
@@ -44,13 +44,16 @@ class Walk {
   private readonly record: Recorder;
   private readonly theirs = new LineLook();
   private readonly ours = new LineLook();
-  /** the last kept line has a terminator in one file only; allowed where lines of ours end the file */
-  private openEnd: "lent" | "taken" | undefined;
+  private readonly finalNewline: boolean;
+  /** the last kept line has a terminator in one file only: what follows can only be ours */
+  private openEnd = false;
+  private tunedIsOpen = false;
 
   constructor({ original, tuned, reading, machine }: CompareInput) {
     this.original = new LineFeed(original);
     this.tuned = new LineFeed(tuned);
     this.numbered = reading.file.numbered;
+    this.finalNewline = reading.file.finalNewline;
     this.watch = watchFor(machine, this.numbered);
     this.plain = numberedLineWatch(this.watch);
     this.record = new Recorder(reading, machine, this.numbers);
@@ -83,22 +86,21 @@ class Walk {
   /** Looks at the current line of each file. @returns false at the end of both, or where they part */
   private step(): boolean {
     const { original, tuned, record, theirs, ours, numbered } = this;
-    if (original.finished && tuned.finished) {
-      if (this.openEnd) record.part(undefined, undefined, original.offset, `the line end at the end of the file was ${this.openEnd === "lent" ? "added" : "taken away"}`);
-      return false;
-    }
+    if (original.finished && tuned.finished) return this.atTheEnd();
     if (!original.finished) {
       theirs.take(original);
-      if (isEarlierOwn(theirs)) return this.takeOut();
+      if (record.isEarlierOwn(theirs)) return this.takeOut();
     }
     if (tuned.finished) return record.sets(theirs) ? this.takeOut() : this.part();
     ours.take(tuned);
-    if (!original.finished && this.openEnd === undefined) {
+    this.tunedIsOpen = !tuned.terminated;
+    if (!original.finished && !this.openEnd) {
+      // Where lines of ours end the file and it has no final terminator, one is put before them and goes with them.
       const openEnd = original.terminated !== tuned.terminated;
       const sameness = sameLine(theirs, ours, numbered, openEnd);
       if (sameness !== "other") {
         record.kept(theirs, ours, sameness, original.offset);
-        if (openEnd) this.openEnd = tuned.terminated ? "lent" : "taken";
+        this.openEnd = openEnd;
         original.advance();
         tuned.advance();
         return true;
@@ -107,7 +109,6 @@ class Walk {
     const own = ownKind(ours);
     if (own !== undefined) {
       record.inserted(ours, own, original.offset);
-      if (this.openEnd === "lent" && !tuned.terminated) this.openEnd = undefined;
       tuned.advance();
       return true;
     }
@@ -116,10 +117,19 @@ class Walk {
 
   private takeOut(): boolean {
     this.record.removed(this.theirs, this.original.offset);
-    // Lines of an earlier tuning at an open end came with the terminator before them, and it went with them.
-    if (this.openEnd === "taken" && !this.original.terminated) this.openEnd = undefined;
     this.original.advance();
     return true;
+  }
+
+  private atTheEnd(): false {
+    if (this.tunedIsOpen === this.finalNewline)
+      this.record.part(
+        undefined,
+        undefined,
+        this.original.offset,
+        "only one of the files has a line end at its very end",
+      );
+    return false;
   }
 
   private part(): boolean {

@@ -32,7 +32,8 @@ export interface Difference {
 /** A line of the tuned file that the proof is about. */
 export type Entry = ProvenanceEntry | OwnEntry | OutputEntry | PauseEntry;
 
-interface Standing {
+/** Where a line stands. */
+export interface Standing {
   tunedLine: number;
   /** lines of the file's own before it in the tuned file */
   keptBefore: number;

@@ -47,7 +47,9 @@ export class OutputClassifier {
   }
 
   private output(words: readonly Word[]): OutputSetting | undefined {
-    const command = words.find(({ letter, value }) => letter === "M" && (value === 106 || value === 107 || value === 42));
+    const command = words.find(
+      ({ letter, value }) => letter === "M" && (value === 106 || value === 107 || value === 42),
+    );
     if (!command) return undefined;
     const of = (letter: string) => words.filter((word) => word.letter === letter);
     const [p] = of("P");
@@ -56,15 +58,19 @@ export class OutputClassifier {
     const index = p && !Number.isNaN(p.value) ? p.value : 0;
     const by = command.value === 42 ? "pin" : "fan-index";
     const channel = this.channels.findIndex(({ drive }) =>
-      drive.by === "pin" ? by === "pin" && drive.pin === index : drive.by === "fan-index" && by === drive.by && drive.index === index,
+      drive.by === "pin"
+        ? by === "pin" && drive.pin === index
+        : drive.by === "fan-index" && by === drive.by && drive.index === index,
     );
     if (channel < 0) return undefined;
     const plain = words.length === 1 + of("P").length + of("S").length && of("P").length <= 1 && of("S").length <= 1;
     if (command.value === 107) return { what: "output", channel, does: plain ? "duty" : "mixed", duty: 0 };
     const said = s && !Number.isNaN(s.value);
     if (plain) return { what: "output", channel, does: "duty", duty: said ? this.duty(channel, s.value) : 1 };
-    const settings = words.every(({ letter }, k) => k === 0 || "PLXBHFIRACKQV".includes(letter)) && words[0] === command;
-    if (command.value === 106 && settings && !said) return { what: "output", channel, does: "configuration", duty: Number.NaN };
+    const settings =
+      words.every(({ letter }, k) => k === 0 || "PLXBHFIRACKQV".includes(letter)) && words[0] === command;
+    if (command.value === 106 && settings && !said)
+      return { what: "output", channel, does: "configuration", duty: Number.NaN };
     return { what: "output", channel, does: "mixed", duty: said ? this.duty(channel, s.value) : Number.NaN };
   }
 
@@ -72,7 +78,11 @@ export class OutputClassifier {
     const name = (/^[\w.@]+/.exec(code)?.[0] ?? "").toUpperCase();
     if (this.pauses.has(name)) return { what: "pause", command: name };
     const [targetKey, valueKey, by] =
-      name === "SET_FAN_SPEED" ? ["FAN", "SPEED", "named-fan"] : name === "SET_PIN" ? ["PIN", "VALUE", "named-pin"] : [];
+      name === "SET_FAN_SPEED"
+        ? ["FAN", "SPEED", "named-fan"]
+        : name === "SET_PIN"
+          ? ["PIN", "VALUE", "named-pin"]
+          : [];
     if (targetKey === undefined) return undefined;
     const pairs = keysOf(code.slice(name.length));
     const target = pairs.get(targetKey)?.toLowerCase();

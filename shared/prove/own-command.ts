@@ -28,7 +28,8 @@ function after(code: string, lead: string): string | undefined {
 
 function registerDuty(value: string | undefined, fullScale: 255 | 1): number | undefined {
   if (value === undefined) return undefined;
-  if (fullScale === 255) return /^(0|[1-9]\d{0,2})$/.test(value) && Number(value) <= 255 ? Number(value) / 255 : undefined;
+  if (fullScale === 255)
+    return /^(0|[1-9]\d{0,2})$/.test(value) && Number(value) <= 255 ? Number(value) / 255 : undefined;
   // A value without a decimal point would be read on the other scale by some firmware.
   return /^(0\.(0|\d{0,2}[1-9])|1\.0)$/.test(value) ? Number(value) : undefined;
 }

@@ -1,5 +1,5 @@
-import { LineKind } from "#shared/gcode/scan-line.ts";
 import { isProvenance, type OwnTag, ownTag } from "#shared/gcode/own-lines.ts";
+import { LineKind } from "#shared/gcode/scan-line.ts";
 import type { LineLook } from "#shared/prove/line-look.ts";
 
 /** Which of our lines a line is: the provenance line, or a command with one of our tags behind it. */
@@ -9,15 +9,6 @@ export function ownKind(line: LineLook): "provenance" | OwnTag | undefined {
   if (kind === LineKind.blank) return isProvenance(line.buf, commentStart, commentEnd) ? "provenance" : undefined;
   return ownTag(line.buf, commentStart, commentEnd) || undefined;
 }
-
-/** Whether our line of an earlier tuning may stand here: a tag behind anything else than such a command is not ours. */
-export const isEarlierOwn = (line: LineLook): boolean => {
-  const own = ownKind(line);
-  if (own === undefined || own === "provenance") return own !== undefined;
-  return line.scan.kind === LineKind.named || (line.scan.mask & M_BIT) !== 0;
-};
-
-const M_BIT = 1 << 12;
 
 /**
  * What is wrong with how a command of ours is written, apart from the command itself: `[N…␠]command[*…]␠;tag`, with

@@ -2,12 +2,12 @@ import type { Machine } from "#shared/formats/machine.ts";
 import type { OwnTag } from "#shared/gcode/own-lines.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import { Agreement } from "#shared/prove/agreement.ts";
-import type { Comparison, Entry, OwnEntry, Removal } from "#shared/prove/comparison.ts";
+import type { Comparison, OwnEntry, Removal, Standing } from "#shared/prove/comparison.ts";
 import type { LineLook } from "#shared/prove/line-look.ts";
 import type { LineNumbers } from "#shared/prove/line-numbers.ts";
 import { OutputClassifier, type OutputSetting, type PauseCommand } from "#shared/prove/output-line.ts";
 import { ownDuty } from "#shared/prove/own-command.ts";
-import { isEarlierOwn, ownFormProblem } from "#shared/prove/own-line.ts";
+import { ownFormProblem, ownKind } from "#shared/prove/own-line.ts";
 import { pauseForms } from "#shared/prove/pause-line.ts";
 import type { Sameness } from "#shared/prove/same-line.ts";
 
@@ -68,7 +68,8 @@ export class Recorder {
     this.numbers.note(tuned, standing.tunedLine);
     const command = this.classify(original);
     this.agreement.note(command, offset, this.originalLine, false);
-    if (command?.what === "output") found.entries.push({ ...standing, what: "file", code: original.code, set: command });
+    if (command?.what === "output")
+      found.entries.push({ ...standing, what: "file", code: original.code, set: command });
     if (command?.what === "pause") {
       const endsAt = offset + original.next - original.start;
       found.entries.push({ ...standing, what: "pause", command: command.command, endsAt });
@@ -82,9 +83,15 @@ export class Recorder {
     return this.classify(original)?.what === "output";
   }
 
+  /** Whether a line of the original is ours, of an earlier tuning: a tag behind any other command means nothing. */
+  isEarlierOwn(original: LineLook): boolean {
+    const own = ownKind(original);
+    return own === "provenance" || (own !== undefined && this.sets(original));
+  }
+
   removed(original: LineLook, offset: number): void {
     this.openGap(offset);
-    const ours = isEarlierOwn(original);
+    const ours = this.isEarlierOwn(original);
     const command = this.classify(original);
     this.agreement.note(command, offset, this.originalLine, ours);
     const { window } = this.reading;
@@ -99,12 +106,21 @@ export class Recorder {
 
   inserted(tuned: LineLook, own: "provenance" | OwnTag, offset: number): void {
     const { found } = this;
-    if (found.inserted >= MAX_OWN_LINES) return this.part(undefined, tuned, offset, "there are too many lines of ours");
+    if (found.inserted >= MAX_OWN_LINES) {
+      this.part(undefined, tuned, offset, "there are too many lines of ours");
+      return;
+    }
     this.openGap(offset);
-    const standing = { tunedLine: this.tunedLine, keptBefore: found.kept + found.renumbered, from: this.gapFrom, to: -1 };
+    const standing = {
+      tunedLine: this.tunedLine,
+      keptBefore: found.kept + found.renumbered,
+      from: this.gapFrom,
+      to: -1,
+    };
     this.numbers.note(tuned, standing.tunedLine);
-    if (own === "provenance") found.entries.push({ ...standing, what: "provenance", text: tuned.text(tuned.start, tuned.textEnd) });
-    else found.entries.push({ ...standing, ...this.ownCommand(tuned, own) });
+    if (own === "provenance")
+      found.entries.push({ ...standing, what: "provenance", text: tuned.text(tuned.start, tuned.textEnd) });
+    else found.entries.push({ ...this.ownCommand(tuned, own), ...standing });
     found.inserted++;
   }
 
@@ -147,14 +163,13 @@ export class Recorder {
     return this.classified;
   }
 
-  private ownCommand(tuned: LineLook, tag: OwnTag): Omit<OwnEntry, keyof Entry & ("tunedLine" | "keptBefore" | "from" | "to")> {
-    const { code } = tuned;
-    const { newline } = this.reading.file;
-    let problem = ownFormProblem(tuned, this.numbers.counts);
-    const { terminator } = tuned;
-    if (terminator === "" ? this.reading.file.finalNewline : !endsLike(newline, terminator))
+  private ownCommand(tuned: LineLook, tag: OwnTag): Omit<OwnEntry, keyof Standing> {
+    const { code, terminator } = tuned;
+    const { newline, finalNewline, numbered } = this.reading.file;
+    let problem = ownFormProblem(tuned, numbered);
+    if (terminator === "" ? finalNewline : !ENDS[newline].includes(terminator))
       problem ??= "its line does not end as the lines of the file do";
-    const own: ReturnType<Recorder["ownCommand"]> = { what: "own", tag, code };
+    const own: Omit<OwnEntry, keyof Standing> = { what: "own", tag, code };
     for (const [channel, { drive }] of this.machine.channels.entries()) {
       const duty = ownDuty(code, drive);
       if (duty !== undefined) own.set = { channel, duty };
@@ -179,8 +194,6 @@ export class Recorder {
 }
 
 const ENDS = { lf: ["\n"], crlf: ["\r\n"], cr: ["\r"], mixed: ["\n", "\r\n", "\r"], none: ["\n"] };
-
-const endsLike = (newline: Reading["file"]["newline"], terminator: string): boolean => ENDS[newline].includes(terminator);
 
 function partMessage(original: LineLook | undefined, tuned: LineLook | undefined): string {
   if (!original) return `\`${tuned?.shown}\` stands behind the end of the original`;

@@ -9,6 +9,7 @@ import { checkTargets, type NamedFile, type Target, targetInPlace } from "#serve
 import { TemporaryFile } from "#server/cli/temporary-file.ts";
 import { complain, print, printable } from "#server/cli/terminal.ts";
 import { tuningText } from "#server/cli/tuning-text.ts";
+import { version } from "#server/cli/version.ts";
 import { writeTuned } from "#server/cli/write-tuned.ts";
 import { checkFit } from "#shared/formats/fit.ts";
 import type { Machine } from "#shared/formats/machine.ts";
@@ -19,7 +20,9 @@ import { type ProofDocument, writeProof } from "#shared/formats/proof.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import { Refusal } from "#shared/refusal.ts";
 import { prepareTuning, type Tuning } from "#shared/rewrite/prepare-tuning.ts";
-import { version } from "../../../package.json";
+
+/** Approval is for the team's own server to give. */
+const STATUS = "trial-only";
 
 /** Where the results go. */
 interface Targets {
@@ -96,7 +99,10 @@ async function tuneInput(
 function readTargets(fileName: string, values: Arguments<"tune">["values"]): Targets {
   const inPlace = values["in-place"] === true;
   if (inPlace === (values.out !== undefined))
-    throw new UsageError(inPlace ? "--out and --in-place exclude each other" : "--out or --in-place is missing", "tune");
+    throw new UsageError(
+      inPlace ? "--out and --in-place exclude each other" : "--out or --in-place is missing",
+      "tune",
+    );
   const named = (roles: [role: string, name: string | undefined][]): NamedFile[] =>
     roles.flatMap(([role, name]) => (name === undefined ? [] : [{ role, name }]));
   const inputs = named([
@@ -126,7 +132,7 @@ async function loadDocuments(machineName: string, profileName: string, polymerNa
 
 async function prepare(fileName: string, reading: Reading, { profileName, ...documents }: Documents): Promise<Tuning> {
   try {
-    return prepareTuning({ ...documents, reading, digest: documentDigest, engine: version, status: "trial-only" });
+    return prepareTuning({ ...documents, reading, digest: documentDigest, engine: version, status: STATUS });
   } catch (error) {
     if (!(error instanceof Refusal)) throw error;
     throw new InputRefused(error, error.place.path === undefined ? fileName : profileName);
@@ -141,7 +147,8 @@ async function proveWritten(
 ): Promise<ProofDocument> {
   const tuned = await ToolpathInput.open(out.path, "several times");
   try {
-    return await proveInputs({ original: input, tuned, reading, machine, profile });
+    const expected = { engine: version, status: STATUS };
+    return await proveInputs({ original: input, tuned, reading, machine, profile, expected });
   } finally {
     await tuned.close();
   }

@@ -71,7 +71,12 @@ export const sha256 = (bytes: Uint8Array): string => createHash("sha256").update
 export function smallPart({ layers = 12, sides = 4, lamp = "M106 P2 S0" } = {}): string {
   const lines = ["M140 S140", "M104 S390", "G28", "M190 S140", "M109 S390", "G21", "G90", "M83", lamp];
   for (let layer = 0; layer < layers; layer++) {
-    lines.push(`;LAYER:${layer}`, `G0 Z${(0.2 * (layer + 1)).toFixed(2)} F600`, "G0 X110 Y100 F9000", `M106 S${80 + layer}`);
+    lines.push(
+      `;LAYER:${layer}`,
+      `G0 Z${(0.2 * (layer + 1)).toFixed(2)} F600`,
+      "G0 X110 Y100 F9000",
+      `M106 S${80 + layer}`,
+    );
     for (let side = 1; side <= sides; side++) {
       const angle = (2 * Math.PI * side) / sides;
       const point = `X${(100 + 10 * Math.cos(angle)).toFixed(3)} Y${(100 + 10 * Math.sin(angle)).toFixed(3)}`;

@@ -5,7 +5,8 @@ test("--help names every command, an example and the exit statuses, on standard 
   const { status, stdout, stderr } = await quenchline(["--help"]);
   expect(status).toBe(0);
   expect(stderr).toBe("");
-  for (const word of ["read", "tune", "prove", "samples/seal-ring.gcode", "Exit status"]) expect(stdout).toContain(word);
+  for (const word of ["read", "tune", "prove", "samples/seal-ring.gcode", "Exit status"])
+    expect(stdout).toContain(word);
   expect(stdout).not.toContain("predict");
 });
 

@@ -2,6 +2,7 @@ import { readFileSync, symlinkSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { gzipSync } from "node:zlib";
 import { describe, expect, test } from "vitest";
+import { parseReading } from "#shared/formats/reading.ts";
 import {
   listFolder,
   outcome,
@@ -15,7 +16,6 @@ import {
   start,
   TERN,
 } from "#tests/server/cli/command-line.ts";
-import { parseReading } from "#shared/formats/reading.ts";
 
 const readJson = async (file: string, input?: Uint8Array | string) => {
   const { status, stdout, stderr } = await quenchline(["read", file, "--machine", TERN, "--json"], { input });
@@ -54,16 +54,23 @@ describe("the table", () => {
     expect(status).toBe(0);
     expect(stderr).toBe("");
     const lines = stdout.split("\n");
-    for (const line of lines.filter((text) => !text.startsWith("  "))) expect(line.length).toBeLessThanOrEqual(130);
     const head = lines.findIndex((line) => line.startsWith("layer"));
     expect(lines[head]).toMatch(/layer +z +height +time +extruding +deposited +travel +volume +part-fan +lamp +waits/);
     expect(lines[head + 1]).toMatch(/mm +mm +s +s +mm +mm +mm³ +% +%/);
     const rows = lines.slice(head + 2, head + 2 + 305);
     expect(rows.map((row) => Number(row.slice(0, 5)))).toEqual(Array.from({ length: 305 }, (_, k) => k + 1));
-    const points = (row: string) => [...row.matchAll(/\./g)].map(({ index }) => index).slice(0, 9).join();
+    const points = (row: string) =>
+      [...row.matchAll(/\./g)]
+        .map(({ index }) => index)
+        .slice(0, 9)
+        .join();
     expect(new Set(rows.map(points)).size).toBe(1);
-    for (const row of rows) expect(row.length).toBeLessThanOrEqual(120);
-    expect(stdout).toContain("Total  305 layers");
+    for (const line of lines.slice(1, head + 2 + 305 + 4)) expect(line.length).toBeLessThanOrEqual(120);
+    const total = lines[head + 2 + 305].split(/ +/).map(Number);
+    const { totals } = await readJson(sample("mast-bracket.gcode"));
+    expect(total[1]).toBeCloseTo(totals.printTimeS, 1);
+    expect(total[3]).toBeCloseTo(totals.depositedLengthMm, 0);
+    expect(stdout).toContain("305 layers, print time ");
     expect(stdout).toContain("Findings");
   });
 
@@ -71,7 +78,11 @@ describe("the table", () => {
     const folder = scratchFolder();
     const machine = JSON.parse(readFileSync(TERN, "utf8"));
     for (let index = 3; index < 12; index++)
-      machine.channels.push({ ...machine.channels[0], id: `fan-${index}`, drive: { by: "fan-index", index, fullScale: 255 } });
+      machine.channels.push({
+        ...machine.channels[0],
+        id: `fan-${index}`,
+        drive: { by: "fan-index", index, fullScale: 255 },
+      });
     writeFileSync(join(folder, "machine.json"), JSON.stringify(machine));
     const { stdout } = await quenchline(["read", SEAL_RING, "--machine", join(folder, "machine.json")]);
     expect(stdout).toMatch(/No room for fan-.*fan-11: --json has every channel/);
@@ -91,7 +102,9 @@ describe("paths are taken from where the caller is", () => {
   const argv = (file: string) => ["read", file, "--machine", "machines/tern.json", "--json"];
 
   test("when called through npm from a folder inside the project", async () => {
-    const { status, stdout } = await outcome(start("npm", ["run", "-s", "quenchline", "--", ...argv("seal-ring.gcode")], { cwd: sample("") }));
+    const { status, stdout } = await outcome(
+      start("npm", ["run", "-s", "quenchline", "--", ...argv("seal-ring.gcode")], { cwd: sample("") }),
+    );
     expect(status).toBe(0);
     expect(JSON.parse(stdout).layers).toHaveLength(45);
   });
@@ -104,12 +117,19 @@ describe("paths are taken from where the caller is", () => {
 });
 
 describe("a refused input ends with status 3 and says what, where and what to do", () => {
-  const refused = async (file: string, { machine = TERN, input }: { machine?: string; input?: string | Uint8Array } = {}) => {
+  const refused = async (
+    file: string,
+    { machine = TERN, input }: { machine?: string; input?: string | Uint8Array } = {},
+  ) => {
     const { status, stdout, stderr } = await quenchline(["read", file, "--machine", machine, "--json"], { input });
     expect(status).toBe(3);
     expect(stderr).toMatch(/^quenchline: [\s\S]+\nwhere: .+\nwhat to do: .+\n$/);
     const refusal = JSON.parse(stdout);
-    expect(refusal).toMatchObject({ format: "quenchline.refusal/1", file: expect.any(String), remedy: expect.any(String) });
+    expect(refusal).toMatchObject({
+      format: "quenchline.refusal/1",
+      file: expect.any(String),
+      remedy: expect.any(String),
+    });
     expect(stderr).toContain(refusal.message.split("\n")[0]);
     return { ...refusal, stderr };
   };
@@ -124,7 +144,10 @@ describe("a refused input ends with status 3 and says what, where and what to do
   test("a file that is not there, a folder, an unreadable document", async () => {
     expect(await refused("no-such.gcode")).toMatchObject({ code: "not-found", file: "no-such.gcode" });
     expect(await refused(ROOT)).toMatchObject({ code: "not-a-file", file: ROOT });
-    expect(await refused(SEAL_RING, { machine: "no-such.json" })).toMatchObject({ code: "not-found", file: "no-such.json" });
+    expect(await refused(SEAL_RING, { machine: "no-such.json" })).toMatchObject({
+      code: "not-found",
+      file: "no-such.json",
+    });
   });
 
   test("a damaged line of a numbered file is named", async () => {
@@ -146,7 +169,12 @@ describe("a refused input ends with status 3 and says what, where and what to do
     const packed = gzipSync(readFileSync(SEAL_RING));
     const altered = Buffer.from(packed);
     altered[packed.length - 6] ^= 1;
-    const cases = { "cut.gz": packed.subarray(0, packed.length / 2), "altered.gz": altered, "plain.gz": readFileSync(SEAL_RING), "empty.gz": Buffer.alloc(0) };
+    const cases = {
+      "cut.gz": packed.subarray(0, packed.length / 2),
+      "altered.gz": altered,
+      "plain.gz": readFileSync(SEAL_RING),
+      "empty.gz": Buffer.alloc(0),
+    };
     for (const [name, bytes] of Object.entries(cases)) {
       writeFileSync(join(folder, name), bytes);
       expect(await refused(join(folder, name))).toMatchObject({ code: "broken-gzip" });

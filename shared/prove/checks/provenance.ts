@@ -1,0 +1,81 @@
+import { writeMachine } from "#shared/formats/machine.ts";
+import { writeProfile } from "#shared/formats/profile.ts";
+import type { Check } from "#shared/formats/proof.ts";
+import { verdict } from "#shared/prove/checks/verdict.ts";
+import type { Evidence } from "#shared/prove/evidence.ts";
+import type { ProvenanceFacts } from "#shared/prove/provenance.ts";
+import { listed } from "#shared/prove/wording.ts";
+
+/** What the caller knows of the tuning and the provenance line has to say too; what is left out is not compared. */
+export interface Expected {
+  engine?: string;
+  status?: ProvenanceFacts["status"];
+  versions?: { profile?: number; machine?: number };
+}
+
+/** Exactly one provenance line, directly where the first layer begins, and everything it says is so. */
+export function checkProvenance(evidence: Evidence, digest: (text: string) => string, expected: Expected): Check {
+  const { facts } = evidence.provenance;
+  const found =
+    facts &&
+    `One line, where the first layer begins: profile "${facts.profile.name}", machine "${facts.machine.name}", ${facts.status}, engine ${facts.engine}.`;
+  return verdict(
+    "provenance",
+    lineProblem(evidence) ?? (facts && factsProblem(evidence, facts, digest)) ?? expectedProblem(facts, expected),
+    found ?? "",
+  );
+}
+
+function lineProblem({ provenance, comparison, reading }: Evidence): string | undefined {
+  const { entries, problem } = provenance;
+  if (entries.length !== 1) return `The tuned file has ${entries.length || "no"} provenance lines; it has to have one.`;
+  const [line] = entries;
+  const { offset } = reading.window.start;
+  const firstOwn = comparison.entries.find(({ what }) => what === "provenance" || what === "own");
+  if (firstOwn !== line) return `Line ${firstOwn?.tunedLine} of the tuned file stands before the provenance line.`;
+  if (line.from > offset || line.to < offset)
+    return `The provenance line is line ${line.tunedLine} of the tuned file, not where the first layer begins.`;
+  return problem && `The provenance line ${problem}.`;
+}
+
+function factsProblem(
+  evidence: Evidence,
+  facts: ProvenanceFacts,
+  digest: (text: string) => string,
+): string | undefined {
+  const { machine, profile, reading, own } = evidence;
+  const driven = evidence.channels().map(({ channel }) => channel.id);
+  if (facts.machine.name !== machine.name || facts.machine.sha256 !== digest(writeMachine(machine)))
+    return `The tuned file was made for the machine "${facts.machine.name}" in another version, not for this one.`;
+  if (profile && (facts.profile.name !== profile.name || facts.profile.sha256 !== digest(writeProfile(profile))))
+    return `The tuned file was made with the profile "${facts.profile.name}" in another version, not with this one.`;
+  if (profile && facts.withinLayer !== profile.withinLayer)
+    return `The provenance line says "${facts.withinLayer}", the profile "${profile.withinLayer}".`;
+  if (facts.channels.join() !== driven.join())
+    return `The provenance line names ${listed(facts.channels) || "no channel"}, but ${listed(driven) || "none"} of the machine can be driven.`;
+  if (facts.lines !== own.length)
+    return `The provenance line counts ${facts.lines} commands of ours, the tuned file has ${own.length}.`;
+  const original = untunedDigest(reading);
+  return facts.original === original ? undefined : "The provenance line names another untuned file than this original.";
+}
+
+/** The original's own digest, or, where it was tuned before, that of the file it came from. */
+function untunedDigest({ provenance, file }: Evidence["reading"]): unknown {
+  if (!provenance) return file.sha256;
+  const { data } = provenance;
+  return typeof data === "object" && data !== null && "original" in data ? data.original : undefined;
+}
+
+function expectedProblem(
+  facts: ProvenanceFacts | undefined,
+  { engine, status, versions }: Expected,
+): string | undefined {
+  if (!facts) return undefined;
+  if (engine !== undefined && facts.engine !== engine)
+    return `The provenance line names engine ${facts.engine}, not ${engine}.`;
+  if (status !== undefined && facts.status !== status)
+    return `The provenance line says ${facts.status}, not ${status}.`;
+  if (versions && (facts.profile.version !== versions.profile || facts.machine.version !== versions.machine))
+    return "The provenance line names other versions of profile or machine.";
+  return undefined;
+}

@@ -1,0 +1,74 @@
+import type { Channel } from "#shared/formats/machine.ts";
+import type { Check } from "#shared/formats/proof.ts";
+import { verdict } from "#shared/prove/checks/verdict.ts";
+import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
+import { dutyWords } from "#shared/prove/wording.ts";
+import { dutySteps } from "#shared/units/duty.ts";
+
+/** Print times are sums of floating-point durations, s. */
+const SAME_S = 1e-6;
+const SAME = 1e-9;
+
+/**
+ * The largest change per second is held, from command to command and over every second as a whole, to half a step of
+ * the output; where it is less than one step, single steps stand further apart. A heater may fall at once, to idle at a
+ * pause and off behind the last layer. A fan may jump over its dead band, to its start boost, and into and out of a
+ * raise of the file.
+ */
+export function checkRate(evidence: Evidence): Check {
+  const said: string[] = [];
+  for (const { channel, index } of evidence.channels()) {
+    const { maxDutyPerS } = evidence.limits(channel);
+    if (!Number.isFinite(maxDutyPerS)) continue;
+    const problem = problemOf(evidence, channel, evidence.events[index], maxDutyPerS);
+    if (problem !== undefined) return verdict("rate", problem, "");
+    said.push(`${channel.id} changes by at most ${maxDutyPerS} a second`);
+  }
+  return verdict("rate", undefined, `${said.join("; ") || "No driven channel has a largest change per second"}.`);
+}
+
+function problemOf(
+  evidence: Evidence,
+  channel: Channel,
+  events: readonly DutyEvent[],
+  maxDutyPerS: number,
+): string | undefined {
+  const step = 1 / dutySteps(channel.drive);
+  const atOnce = Math.max(maxDutyPerS, step) + step / 2 + SAME;
+  let duty = 0;
+  let sinceS = Number.NEGATIVE_INFINITY;
+  /** what was set within the last second, oldest first, and the duty in force before that */
+  let recent: { timeS: number; before: number }[] = [];
+  for (const event of events) {
+    const { entry, timeS, source } = event;
+    const before = duty;
+    if (source === "file") duty = event.duty;
+    if (source !== "plan" || event.duty === before) continue;
+    duty = event.duty;
+    const elapsedS = Math.max(1, timeS - sinceS);
+    sinceS = timeS;
+    if (isExempt(evidence, channel, event, before)) {
+      recent = [];
+      continue;
+    }
+    recent = recent.filter((change) => change.timeS > timeS - 1 + SAME_S);
+    recent.push({ timeS, before });
+    const inASecond = Math.abs(duty - recent[0].before);
+    if (inASecond > atOnce || Math.abs(duty - before) > maxDutyPerS * (elapsedS + SAME_S) + step / 2 + SAME)
+      return `${channel.id} changes from ${dutyWords(recent[0].before)} to ${dutyWords(duty)} within a second at ${evidence.place(entry)}; at most ${maxDutyPerS} a second is allowed.`;
+  }
+  return undefined;
+}
+
+function isExempt(evidence: Evidence, channel: Channel, { entry, duty }: DutyEvent, before: number): boolean {
+  if (channel.kind === "fan") {
+    const { minDuty, maxDuty } = evidence.limits(channel);
+    const step = 1 / dutySteps(channel.drive);
+    const deadBand = Math.min(duty, before) === 0 && Math.max(duty, before) < minDuty + step;
+    return deadBand || (channel.startBoostS > 0 && Math.max(duty, before) > maxDuty - step);
+  }
+  const { end } = evidence.reading.window;
+  if (duty > before) return false;
+  if (duty === 0 && entry.from <= end.offset && entry.to >= end.offset) return true;
+  return duty <= channel.idleDuty + SAME && evidence.pauses.some(({ from }) => entry.from <= from && from <= entry.to);
+}
