@@ -30,7 +30,14 @@ export function lineCounts({ kept, removed, inserted, renumbered }: ProofDocumen
 
 function checkLines(checks: readonly Check[]): string[] {
   const width = Math.max(0, ...checks.map(({ id }) => id.length));
-  return checks.map(({ id, passed, detail }) => `  ${passed ? "passed" : "FAILED"}  ${id.padEnd(width)}  ${detail}`);
+  return checks.map(
+    ({ id, passed, detail }) => `  ${passed ? "passed" : "FAILED"}  ${id.padEnd(width)}  ${oneLine(detail)}`,
+  );
+}
+
+/** A detail may quote the file. */
+function oneLine(text: string): string {
+  return text.replace(/[\r\n]+/g, " ");
 }
 
 function failure(checks: readonly Check[]): string {

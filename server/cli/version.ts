@@ -1,2 +1,4 @@
+import { version as packageVersion } from "../../package.json";
+
 /** Version of the engine, as tuned files and proofs name it. */
-export { version } from "../../package.json";
+export const version: string = packageVersion;

@@ -1,7 +1,10 @@
 import { Refusal } from "#shared/refusal.ts";
 
-/** Called with complete lines: `buf[from, to)` ends with a line terminator, and one more byte stands behind it. */
-export type LinesHandler = (buf: Uint8Array, from: number, to: number, fileOffset: number) => void;
+/**
+ * Called with complete lines: `buf[from, to)` ends with a line terminator, and one more byte stands behind it. With
+ * `open` it is the one last line of a file that ends without a terminator: a line feed is lent to it.
+ */
+export type LinesHandler = (buf: Uint8Array, from: number, to: number, fileOffset: number, open: boolean) => void;
 
 const LF = 10;
 const CR = 13;
@@ -42,7 +45,7 @@ export class LineFeeder {
       this.flush();
     }
     if (end > from) {
-      this.onLines(chunk, from, end, this.offset);
+      this.onLines(chunk, from, end, this.offset, false);
       this.offset += end - from;
     }
     this.keep(chunk.subarray(end));
@@ -50,15 +53,16 @@ export class LineFeeder {
 
   /** Hands on the last line. Returns false when it had no terminator: one is then lent to it. */
   end(): boolean {
-    if (this.carried === 0) return true;
-    if (this.carry[this.carried - 1] === CR) {
-      this.flush();
-      return true;
-    }
-    this.room(1);
-    this.carry[this.carried++] = LF;
-    this.flush();
-    this.offset--;
+    const lineStart = this.carry.subarray(0, this.carried).lastIndexOf(CR) + 1;
+    const rest = this.carry.slice(lineStart, this.carried);
+    this.carried = lineStart;
+    if (lineStart > 0) this.flush();
+    if (rest.length === 0) return true;
+    const line = new Uint8Array(rest.length + 2);
+    line.set(rest);
+    line[rest.length] = LF;
+    this.onLines(line, 0, rest.length + 1, this.offset, true);
+    this.offset += rest.length;
     return false;
   }
 
@@ -67,7 +71,7 @@ export class LineFeeder {
     this.carry[this.carried] = 0;
     const length = this.carried;
     this.carried = 0;
-    this.onLines(this.carry, 0, length, this.offset);
+    this.onLines(this.carry, 0, length, this.offset, false);
     this.offset += length;
   }
 

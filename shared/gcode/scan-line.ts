@@ -35,9 +35,12 @@ export class LineScan {
   /** checksum behind `*`, or -1; and where the star stands */
   checksum = -1;
   starAt = -1;
-  /** end of the line without and with its terminator */
+  /** start of the line, its end without terminator, and the start of the next line, all as places in the buffer */
+  start = 0;
   textEnd = 0;
   next = 0;
+  /** 1-based number of the line in the file, counted by the caller */
+  line = 0;
   /** the line was a plain G0 or G1 move: all fields but mask, textEnd and next hold what that implies */
   plain = false;
   /** value of each letter; meaningful only where its bit is set in `mask` and clear in `bare` */
@@ -101,6 +104,7 @@ const TEXT_COMMANDS = new Set([0, 1, 16, 23, 28, 30, 32, 36, 38, 98, 117, 118, 4
  * @returns offset of the next line
  */
 export function scanLine(buf: Uint8Array, start: number, out: LineScan): number {
+  out.start = start;
   if (scanPlainMove(buf, start, out)) return out.next;
   out.plain = false;
   const value = out.value;
@@ -177,7 +181,7 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
     const wordBit = 1 << letter;
     if (read === 0) {
       if ((mask & ~(1 << N)) === 0 && startsName(buf, wordStart)) {
-        codeStart = wordStart;
+        out.codeStart = wordStart;
         out.kind = LineKind.named;
         p = scanNamed(buf, wordStart, out, mask !== 0);
         break;
@@ -206,13 +210,13 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
   if (out.kind === LineKind.words) {
     if (mask === 0) out.kind = LineKind.blank;
     out.codeEnd = codeEnd;
-  } else if (out.kind === LineKind.named && mask === 0) codeStart = out.codeStart;
+  }
+  if (out.kind !== LineKind.named) out.codeStart = codeStart;
   out.mask = mask;
   out.bare = bare;
   out.repeated = repeated;
   out.commands = commands;
   out.gCount = gCount;
-  out.codeStart = codeStart;
   if (buf[p] !== LF && buf[p] !== CR) p = endOfLine(buf, p);
   out.textEnd = p;
   const next = buf[p] === CR && buf[p + 1] === LF ? p + 2 : p + 1;

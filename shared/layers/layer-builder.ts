@@ -1,10 +1,11 @@
 import type { Machine } from "#shared/formats/machine.ts";
+import type { LineScan } from "#shared/gcode/scan-line.ts";
 import type { CommentFact } from "#shared/gcode/markers.ts";
 import type { Findings } from "#shared/layers/findings.ts";
 import type { Boundary, Layer, Wait } from "#shared/layers/reading.ts";
 import { Timeline } from "#shared/layers/timeline.ts";
 import type { LimitChange, MotionSink } from "#shared/machine/interpreter.ts";
-import { Move } from "#shared/machine/move.ts";
+import { FED, LENGTH, newMove, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { applyLimits } from "#shared/motion/file-limits.ts";
 import { motionRules } from "#shared/motion/motion-rules.ts";
 import { Planner } from "#shared/motion/planner.ts";
@@ -17,11 +18,6 @@ const START_LAYERS = 2;
 /** A run of laying moves whose ends lie this close is a closed loop, mm. */
 const LOOP_GAP_MM = 0.6;
 
-/** The line being read: byte offset, line number, offset of the next line. */
-export const OFFSET = 0;
-export const LINE = 1;
-export const NEXT = 2;
-
 /**
  * Cuts the stream of moves into layers. A layer begins at the first laying move (material forward with XY motion) at a
  * Z other than that of the last laying move, and lasts until the next one begins. Heights are compared in whole
@@ -29,8 +25,12 @@ export const NEXT = 2;
  * a seam that ramps up stays within its layer). When Z falls, a new object begins.
  */
 export class LayerBuilder implements MotionSink {
-  readonly where = new Float64Array(3);
-  readonly next = new Move();
+  /** the line being read, and the file offset of the buffer it stands in */
+  readonly scan: LineScan;
+  base = 0;
+  /** the line being read is the last one and has no terminator but the one lent to it */
+  openEnd = false;
+  readonly row = newMove();
   readonly layers: Layer[] = [];
   readonly timeline: Timeline;
   readonly planner: Planner;
@@ -46,25 +46,12 @@ export class LayerBuilder implements MotionSink {
 
   private readonly machine: Machine;
   private readonly findings: Findings;
-  // Sums of the open layer. They start as NaN or Infinity so that they are stored as doubles from the beginning.
-  private depositedMm = Number.NaN;
-  private travelMm = Number.NaN;
-  private filamentMm = Number.NaN;
-  private outlineMm = Number.NaN;
-  private loopMm = Number.NaN;
-  private minX = Number.POSITIVE_INFINITY;
-  private maxX = Number.NEGATIVE_INFINITY;
-  private minY = Number.POSITIVE_INFINITY;
-  private maxY = Number.NEGATIVE_INFINITY;
-  /** length and start of the open run of laying moves */
-  private runMm = Number.NaN;
-  private runX = Number.NaN;
-  private runY = Number.NaN;
-  /** raw Z of the last laying move, to leave the common case at once */
-  private lastZ = Number.NaN;
-  /** byte and line behind the last laying move */
-  private endsAt = Number.NaN;
-  private endsLine = 0;
+  /** sums of the open layer, see the places below */
+  private readonly sums = new Float64Array(SUMS);
+  /** the last laying move: its line, where the next line starts in the buffer (-1 once the buffer is gone) and in the file */
+  private laidLine = 0;
+  private laidNext = -1;
+  private endsAt = 0;
   private current: Layer | undefined;
   private object = 0;
   private zUm = 0;
@@ -82,7 +69,9 @@ export class LayerBuilder implements MotionSink {
   private nozzleC: number | null = null;
   private bedC: number | null = null;
 
-  constructor(machine: Machine, findings: Findings) {
+  constructor(machine: Machine, findings: Findings, scan: LineScan) {
+    this.scan = scan;
+    this.sums[LAST_Z] = Number.NaN;
     this.machine = machine;
     this.findings = findings;
     this.filamentDiameterMm = machine.motion.filamentDiameterMm;
@@ -92,44 +81,67 @@ export class LayerBuilder implements MotionSink {
   }
 
   move(): void {
-    const { next } = this;
-    const { x0, y0, x1: x, y1: y, z1: z, fedMm: de, lengthMm } = next;
+    const { row, sums } = this;
+    const x = row[X1];
+    const y = row[Y1];
+    const lengthMm = row[LENGTH];
+    const fed = row[FED];
     let lays = 0;
-    if (de > 0 && (x !== x0 || y !== y0)) {
-      if (z !== this.lastZ || next.z0 !== z) this.considerLayer(next.z0, z);
+    if (fed > 0 && (x !== row[X0] || y !== row[Y0])) {
+      const z = row[Z1];
+      if (z !== sums[LAST_Z] || row[Z0] !== z) this.considerLayer(row[Z0], z);
       lays = 1;
-      if (this.running === 0) {
-        this.running = 1;
-        this.laidSinceTravel = true;
-        this.runX = x0;
-        this.runY = y0;
-        this.runMm = 0;
-        this.widen(x0, y0);
-      }
-      this.runMm += lengthMm;
-      this.filamentMm += de;
-      if (x < this.minX) this.minX = x;
-      if (x > this.maxX) this.maxX = x;
-      if (y < this.minY) this.minY = y;
-      if (y > this.maxY) this.maxY = y;
-      this.endsAt = this.where[NEXT];
-      this.endsLine = this.where[LINE] + 1;
-      this.mark = undefined;
+      if (this.running === 0) this.beginRun();
+      sums[RUN] += lengthMm;
+      sums[FILAMENT] += fed;
+      if (x < sums[MIN_X]) sums[MIN_X] = x;
+      if (x > sums[MAX_X]) sums[MAX_X] = x;
+      if (y < sums[MIN_Y]) sums[MIN_Y] = y;
+      if (y > sums[MAX_Y]) sums[MAX_Y] = y;
+      this.laidLine = this.scan.line;
+      this.laidNext = this.scan.next;
+      if (this.mark !== undefined) this.mark = undefined;
     } else if (lengthMm > 0) {
-      this.travelMm += lengthMm;
-      if (this.running !== 0) this.endRun(x0, y0);
-      if (de === 0 && this.laidSinceTravel) {
+      sums[TRAVEL] += lengthMm;
+      if (this.running !== 0) this.endRun(row[X0], row[Y0]);
+      if (fed === 0 && this.laidSinceTravel) {
         this.laidSinceTravel = false;
-        if (this.current) this.timeline.travel(this.where[OFFSET], this.where[LINE]);
+        if (this.current) this.timeline.travel(this.offset(), this.scan.line);
       }
     }
-    this.planner.add(next, lays);
+    this.planner.add(row, lays);
+  }
+
+  private beginRun(): void {
+    const { row, sums } = this;
+    this.running = 1;
+    this.laidSinceTravel = true;
+    sums[RUN_X] = row[X0];
+    sums[RUN_Y] = row[Y0];
+    sums[RUN] = 0;
+    this.widen(row[X0], row[Y0]);
+  }
+
+  /** byte at which the line being read starts */
+  offset(): number {
+    return this.base + this.scan.start;
+  }
+
+  /** length of the line being read with its terminator, none at the end of an open file */
+  lineBytes(): number {
+    return this.scan.next - this.scan.start - (this.openEnd ? 1 : 0);
+  }
+
+  /** What is kept by place in the buffer is turned into file offsets before the buffer goes. */
+  endBlock(): void {
+    if (this.laidNext >= 0) this.endsAt = this.base + this.laidNext - (this.openEnd ? 1 : 0);
+    this.laidNext = -1;
   }
 
   /** A comment that names a layer, states a height or a feature. */
   comment(fact: CommentFact, text: () => string): void {
     if (fact.says === "feature") {
-      this.endRun(this.next.x1, this.next.y1);
+      this.endRun(this.row[X1], this.row[Y1]);
       this.outline = fact.outline === true;
       return;
     }
@@ -152,7 +164,7 @@ export class LayerBuilder implements MotionSink {
     if ((kind === "home" || kind === "temperature") && this.markers === 0 && this.layers.length <= START_LAYERS)
       this.forgetLayers();
     if (kind === "dwell" && seconds === 0) return;
-    this.current?.waits.push({ kind, line: this.where[LINE], seconds });
+    this.current?.waits.push({ kind, line: this.scan.line, seconds });
   }
 
   nozzle(celsius: number): void {
@@ -170,22 +182,22 @@ export class LayerBuilder implements MotionSink {
   }
 
   odd(code: string, message: string): void {
-    this.findings.add(code, "warning", message, { line: this.where[LINE] });
+    this.findings.add(code, "warning", message, { line: this.scan.line });
   }
 
   /** Settles everything; afterwards all layers have their times. */
   end(): void {
     this.planner.stop();
-    const [endOffset, endLine] = [this.endsAt, this.endsLine];
-    this.closeLayer(endOffset, endLine - 1);
+    this.endBlock();
+    this.closeLayer(this.endsAt, this.laidLine);
     this.timeline.end();
-    this.lastLaid.offset = endOffset;
-    this.lastLaid.line = endLine;
+    this.lastLaid.offset = this.endsAt;
+    this.lastLaid.line = this.laidLine + 1;
     this.lastLaid.timeS = this.timeline.lastLaidS;
   }
 
   private boundary(): Boundary {
-    return { offset: this.where[OFFSET], line: this.where[LINE], timeS: 0 };
+    return { offset: this.offset(), line: this.scan.line, timeS: 0 };
   }
 
   private firstMarker(): void {
@@ -196,7 +208,7 @@ export class LayerBuilder implements MotionSink {
         "marker-late",
         "warning",
         `the first layer marker stands after ${this.layers.length} layers; all of them are kept`,
-        { line: this.where[LINE] },
+        { line: this.scan.line },
       );
   }
 
@@ -204,14 +216,14 @@ export class LayerBuilder implements MotionSink {
     this.layers.length = 0;
     this.current = undefined;
     this.object = 0;
-    this.lastZ = Number.NaN;
+    this.sums[LAST_Z] = Number.NaN;
     this.running = 0;
     this.clearSums();
     this.timeline.forgetLayers();
   }
 
   private considerLayer(z0: number, z: number): void {
-    this.lastZ = z;
+    this.sums[LAST_Z] = z;
     this.layingMoves++;
     const zUm = Math.round(z * 1000);
     const fromUm = Math.round(z0 * 1000);
@@ -256,11 +268,11 @@ export class LayerBuilder implements MotionSink {
         "too-many-layers",
         `more than ${MAX_LAYERS} layers`,
         "Check that the file is a sliced part and not a continuous carving path.",
-        { line: this.where[LINE] },
+        { line: this.scan.line },
       );
     const falls = this.current === undefined || zUm < this.zUm;
-    this.endRun(this.next.x0, this.next.y0);
-    this.closeLayer(this.where[OFFSET], this.where[LINE] - 1);
+    this.endRun(this.row[X0], this.row[Y0]);
+    this.closeLayer(this.offset(), this.scan.line - 1);
     if (falls) this.object++;
     this.zUm = zUm;
     this.baseUm = falls ? 0 : baseUm;
@@ -284,9 +296,9 @@ export class LayerBuilder implements MotionSink {
       object: this.object,
       zMm: this.zUm / 1000,
       heightMm: (this.zUm - this.baseUm) / 1000,
-      firstLine: this.where[LINE],
+      firstLine: this.scan.line,
       lastLine: 0,
-      firstByte: this.where[OFFSET],
+      firstByte: this.offset(),
       endByte: 0,
       startsAtS: 0,
       timeS: 0,
@@ -322,18 +334,18 @@ export class LayerBuilder implements MotionSink {
       this.clearSums();
       return;
     }
-    this.endRun(this.next.x1, this.next.y1);
+    this.endRun(this.row[X1], this.row[Y1]);
     layer.lastLine = lastLine;
     layer.endByte = endByte;
-    layer.depositedLengthMm = this.depositedMm;
-    layer.travelLengthMm = this.travelMm;
-    layer.filamentMm = this.filamentMm;
-    layer.volumeMm3 = this.filamentMm * Math.PI * (this.filamentDiameterMm / 2) ** 2;
+    layer.depositedLengthMm = this.sums[DEPOSITED];
+    layer.travelLengthMm = this.sums[TRAVEL];
+    layer.filamentMm = this.sums[FILAMENT];
+    layer.volumeMm3 = this.sums[FILAMENT] * Math.PI * (this.filamentDiameterMm / 2) ** 2;
     layer.areaMm2 = layer.heightMm > 0 ? layer.volumeMm3 / layer.heightMm : 0;
-    layer.boxMm = { min: [this.minX, this.minY], max: [this.maxX, this.maxY] };
-    const commented = this.outlineSeen && this.outlineMm > 0;
+    layer.boxMm = { min: [this.sums[MIN_X], this.sums[MIN_Y]], max: [this.sums[MAX_X], this.sums[MAX_Y]] };
+    const commented = this.outlineSeen && this.sums[OUTLINE] > 0;
     layer.outlineFrom = commented ? "comments" : "geometry";
-    layer.outlineMm = commented ? this.outlineMm : this.loopMm || boxPerimeterMm(layer);
+    layer.outlineMm = commented ? this.sums[OUTLINE] : this.sums[LOOP] || boxPerimeterMm(layer);
     this.clearSums();
   }
 
@@ -341,34 +353,52 @@ export class LayerBuilder implements MotionSink {
   private endRun(x: number, y: number): void {
     if (this.running === 0) return;
     this.running = 0;
-    this.depositedMm += this.runMm;
+    this.sums[DEPOSITED] += this.sums[RUN];
     if (this.outline) {
       this.outlineSeen = true;
-      this.outlineMm += this.runMm;
+      this.sums[OUTLINE] += this.sums[RUN];
     }
-    const gap = Math.hypot(x - this.runX, y - this.runY);
-    if (gap < LOOP_GAP_MM && this.runMm > this.loopMm && this.runMm > 4 * LOOP_GAP_MM) this.loopMm = this.runMm;
+    const gap = Math.hypot(x - this.sums[RUN_X], y - this.sums[RUN_Y]);
+    if (gap < LOOP_GAP_MM && this.sums[RUN] > this.sums[LOOP] && this.sums[RUN] > 4 * LOOP_GAP_MM) this.sums[LOOP] = this.sums[RUN];
   }
 
   private widen(x: number, y: number): void {
-    this.minX = Math.min(this.minX, x);
-    this.maxX = Math.max(this.maxX, x);
-    this.minY = Math.min(this.minY, y);
-    this.maxY = Math.max(this.maxY, y);
+    this.sums[MIN_X] = Math.min(this.sums[MIN_X], x);
+    this.sums[MAX_X] = Math.max(this.sums[MAX_X], x);
+    this.sums[MIN_Y] = Math.min(this.sums[MIN_Y], y);
+    this.sums[MAX_Y] = Math.max(this.sums[MAX_Y], y);
   }
 
   private clearSums(): void {
     this.running = 0;
-    this.depositedMm = 0;
-    this.travelMm = 0;
-    this.filamentMm = 0;
-    this.outlineMm = 0;
-    this.loopMm = 0;
-    this.minX = Number.POSITIVE_INFINITY;
-    this.minY = Number.POSITIVE_INFINITY;
-    this.maxX = Number.NEGATIVE_INFINITY;
-    this.maxY = Number.NEGATIVE_INFINITY;
+    this.sums[DEPOSITED] = 0;
+    this.sums[TRAVEL] = 0;
+    this.sums[FILAMENT] = 0;
+    this.sums[OUTLINE] = 0;
+    this.sums[LOOP] = 0;
+    this.sums[MIN_X] = Number.POSITIVE_INFINITY;
+    this.sums[MIN_Y] = Number.POSITIVE_INFINITY;
+    this.sums[MAX_X] = Number.NEGATIVE_INFINITY;
+    this.sums[MAX_Y] = Number.NEGATIVE_INFINITY;
   }
 }
 
 const boxPerimeterMm = ({ boxMm: { min, max } }: Layer): number => 2 * (max[0] - min[0] + max[1] - min[1]);
+
+const DEPOSITED = 0;
+const TRAVEL = 1;
+const FILAMENT = 2;
+const OUTLINE = 3;
+/** longest closed run */
+const LOOP = 4;
+const MIN_X = 5;
+const MAX_X = 6;
+const MIN_Y = 7;
+const MAX_Y = 8;
+/** length and start of the open run of laying moves */
+const RUN = 9;
+const RUN_X = 10;
+const RUN_Y = 11;
+/** raw Z of the last laying move, to leave the common case at once */
+const LAST_Z = 12;
+const SUMS = 13;

@@ -3,7 +3,7 @@ import type { LineScan } from "#shared/gcode/scan-line.ts";
 import { bit } from "#shared/gcode/scan-line.ts";
 import type { Findings } from "#shared/layers/findings.ts";
 import type { ControlLine, OutputUse, PauseLine } from "#shared/layers/reading.ts";
-import { LINE, NEXT, OFFSET } from "#shared/layers/layer-builder.ts";
+import type { LayerBuilder } from "#shared/layers/layer-builder.ts";
 import { channelsByOutput, dutyOn, namedOutput, numberedOutput, type OutputCommand, parseNamed } from "#shared/machine/output-command.ts";
 import { Refusal } from "#shared/refusal.ts";
 
@@ -28,14 +28,14 @@ export class OutputLines {
   private readonly pauseNumbers = new Set<number>();
   private readonly pauseNames = new Set<string>();
   private readonly findings: Findings;
-  private readonly where: Float64Array;
+  private readonly builder: LayerBuilder;
   private readonly macros = new Set<string>();
 
-  constructor(machine: Machine, findings: Findings, where: Float64Array) {
+  constructor(machine: Machine, findings: Findings, builder: LayerBuilder) {
     this.channels = machine.channels;
     this.byOutput = channelsByOutput(machine);
     this.findings = findings;
-    this.where = where;
+    this.builder = builder;
     for (const command of [...KNOWN_PAUSES, ...machine.pauses.map((pause) => pause.command)]) {
       const number = /^M(\d+)$/i.exec(command)?.[1];
       if (number) this.pauseNumbers.add(Number(number));
@@ -50,7 +50,7 @@ export class OutputLines {
     if (code === 98 || code === 32 || code === 808) this.macro(`M${code}`);
     const command = numberedOutput(scan);
     if (!command) return undefined;
-    const line = this.where[LINE];
+    const line = this.builder.scan.line;
     if (code !== 42 && !ours) {
       if ((scan.mask & P_BIT) !== 0 && scan.value[15] > 0) this.use.indexedFanLine ??= line;
       if ((scan.mask & P_BIT) === 0) this.use.bareFanLine ??= line;
@@ -62,7 +62,7 @@ export class OutputLines {
   named(text: string, ours: ControlLine["ours"]): ControlLine | PauseLine | undefined {
     const { name, parameters } = parseNamed(text);
     if (this.pauseNames.has(name)) return this.pause(name);
-    if (INDEX_BLIND.test(name)) this.use.namedCommand ??= { name, line: this.where[LINE] };
+    if (INDEX_BLIND.test(name)) this.use.namedCommand ??= { name, line: this.builder.scan.line };
     const command = namedOutput(name, parameters);
     if (command) return this.control(command, text.trimEnd(), ours);
     if (!HARMLESS.test(name)) this.macro(name);
@@ -72,7 +72,7 @@ export class OutputLines {
   private control(command: OutputCommand, code: string, ours: ControlLine["ours"]): ControlLine | undefined {
     const index = this.byOutput.get(command.output);
     if (index === undefined) {
-      if (ours) this.use.strayOwnLine ??= this.where[LINE];
+      if (ours) this.use.strayOwnLine ??= this.builder.scan.line;
       return undefined;
     }
     if (this.controls.length >= MAX_CONTROLS)
@@ -80,15 +80,15 @@ export class OutputLines {
         "too-many-controls",
         `more than ${MAX_CONTROLS} fan and heater lines`,
         "Check that the file is a sliced part; no plan can be laid over this many commands.",
-        { line: this.where[LINE] },
+        { line: this.builder.scan.line },
       );
     const channel = this.channels[index];
     if (command.value > 0 && !ours) this.checkScale(channel, command.value);
     const line: ControlLine = {
       channel: index,
-      line: this.where[LINE],
-      offset: this.where[OFFSET],
-      length: this.where[NEXT] - this.where[OFFSET],
+      line: this.builder.scan.line,
+      offset: this.builder.offset(),
+      length: this.builder.lineBytes(),
       timeS: 0,
       layer: 0,
       does: command.does,
@@ -107,17 +107,17 @@ export class OutputLines {
         "scale-mixed",
         "warning",
         `a value of ${value} on channel ${id}, whose full scale is 255, is ${((value / 255) * 100).toFixed(2)} %; on a 0–1 scale it would be ${(value * 100).toFixed(0)} %`,
-        { line: this.where[LINE] },
+        { line: this.builder.scan.line },
       );
     if (scale === 1 && value > 1 && Number.isFinite(value))
       this.findings.add("scale-mixed", "warning", `a value of ${value} on channel ${id}, whose full scale is 1, is read as 0–255`, {
-        line: this.where[LINE],
+        line: this.builder.scan.line,
       });
   }
 
   private pause(command: string): PauseLine {
-    const { where } = this;
-    const pause = { command, line: where[LINE], offset: where[OFFSET], length: where[NEXT] - where[OFFSET], timeS: 0, layer: 0 };
+    const { builder } = this;
+    const pause = { command, line: builder.scan.line, offset: builder.offset(), length: builder.lineBytes(), timeS: 0, layer: 0 };
     this.pauses.push(pause);
     return pause;
   }
@@ -126,7 +126,7 @@ export class OutputLines {
     if (this.macros.has(name) || this.macros.size >= 100) return;
     this.macros.add(name);
     this.findings.add("macro", "info", `${name} is a macro or named command: what it does to fans and heaters can't be seen in this file`, {
-      line: this.where[LINE],
+      line: this.builder.scan.line,
     });
   }
 }

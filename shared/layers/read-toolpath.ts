@@ -7,7 +7,7 @@ import { LineKind, LineScan, scanLine } from "#shared/gcode/scan-line.ts";
 import { refuseForeign } from "#shared/gcode/sniff.ts";
 import { finishReading } from "#shared/layers/finish-reading.ts";
 import { Findings } from "#shared/layers/findings.ts";
-import { LayerBuilder, LINE, NEXT, OFFSET } from "#shared/layers/layer-builder.ts";
+import { LayerBuilder } from "#shared/layers/layer-builder.ts";
 import { namedLimits, namedTemperatures } from "#shared/layers/named-settings.ts";
 import { OutputLines } from "#shared/layers/output-lines.ts";
 import type { Reading } from "#shared/layers/reading.ts";
@@ -44,10 +44,8 @@ export class ToolpathReader {
   private readonly interpreter: Interpreter;
   private readonly outputs: OutputLines;
   private readonly comments: CommentReader;
-  private readonly feeder = new LineFeeder((buf, from, to, fileOffset) => this.lines(buf, from, to, fileOffset));
+  private readonly feeder = new LineFeeder((buf, from, to, fileOffset, open) => this.lines(buf, from, to, fileOffset, open));
   private readonly scan = new LineScan();
-  private readonly where: Float64Array;
-  private line = 0;
   private crlf = 0;
   private cr = 0;
   private numbered = false;
@@ -57,10 +55,9 @@ export class ToolpathReader {
 
   constructor(machine: Machine, options: ReadOptions = {}) {
     this.machine = machine;
-    this.builder = new LayerBuilder(machine, this.findings);
-    this.where = this.builder.where;
+    this.builder = new LayerBuilder(machine, this.findings, this.scan);
     this.interpreter = new Interpreter(machine, this.builder);
-    this.outputs = new OutputLines(machine, this.findings, this.where);
+    this.outputs = new OutputLines(machine, this.findings, this.builder);
     this.comments = new CommentReader(options.markers);
   }
 
@@ -103,7 +100,7 @@ export class ToolpathReader {
       provenance: this.provenance,
       file: {
         bytes,
-        lines: this.line,
+        lines: this.scan.line,
         sha256,
         newline: this.newline(finalNewline),
         numbered: this.numbered,
@@ -123,35 +120,35 @@ export class ToolpathReader {
 
   private newline(finalNewline: boolean): Reading["file"]["newline"] {
     const { crlf, cr } = this;
-    const lf = this.line - crlf - cr - (finalNewline ? 0 : 1);
+    const lf = this.scan.line - crlf - cr - (finalNewline ? 0 : 1);
     const kinds = [lf > 0, crlf > 0, cr > 0].filter(Boolean).length;
     if (kinds === 0) return "none";
     if (kinds > 1) return "mixed";
     return lf > 0 ? "lf" : crlf > 0 ? "crlf" : "cr";
   }
 
-  private lines(buf: Uint8Array, from: number, to: number, fileOffset: number): void {
-    const base = fileOffset - from;
+  private lines(buf: Uint8Array, from: number, to: number, fileOffset: number, open: boolean): void {
+    this.builder.base = fileOffset - from;
+    this.builder.openEnd = open;
     let p = from;
     if (fileOffset === 0 && BOM.every((byte, k) => buf[from + k] === byte)) p += 3;
-    while (p < to) p = this.oneLine(buf, p, base);
+    while (p < to) p = this.oneLine(buf, p);
+    this.builder.endBlock();
   }
 
-  private oneLine(buf: Uint8Array, start: number, base: number): number {
-    const { scan, where } = this;
+  private oneLine(buf: Uint8Array, start: number): number {
+    const { scan } = this;
     const next = scanLine(buf, start, scan);
-    where[OFFSET] = base + start;
-    where[LINE] = ++this.line;
-    where[NEXT] = base + next;
+    scan.line++;
     if (next - scan.textEnd === 2) this.crlf++;
-    else if (buf[scan.textEnd] === CR) this.cr++;
-    if (scan.kind === LineKind.words && (scan.mask & (M_BIT | N_BIT)) === 0 && scan.starAt < 0) this.interpreter.run(scan);
+    if (scan.plain) this.interpreter.run(scan);
     else this.otherLine(buf, start);
     return next;
   }
 
   private otherLine(buf: Uint8Array, start: number): void {
     const { scan } = this;
+    if (buf[scan.textEnd] === CR && scan.next - scan.textEnd === 1) this.cr++;
     if (scan.starAt >= 0) this.checkSum(buf, start);
     switch (scan.kind) {
       case LineKind.blank:
@@ -171,7 +168,7 @@ export class ToolpathReader {
         return;
       default:
         this.findings.add("unreadable-line", "warning", "this line can't be read as G-code; it is kept as it stands", {
-          line: this.line,
+          line: this.scan.line,
         });
     }
   }
@@ -224,17 +221,17 @@ export class ToolpathReader {
     const { commentStart, commentEnd } = this.scan;
     const text = String.fromCharCode(...buf.subarray(commentStart, Math.min(commentEnd, commentStart + 8192)));
     if (this.provenance) {
-      this.findings.add("provenance-twice", "warning", "a second provenance line; the first one counts", { line: this.line });
+      this.findings.add("provenance-twice", "warning", "a second provenance line; the first one counts", { line: this.scan.line });
       return;
     }
     let data: unknown;
     try {
       data = JSON.parse(text.slice(PROVENANCE_PREFIX.length - 1));
     } catch {
-      this.findings.add("provenance-broken", "warning", "a provenance line that can't be read", { line: this.line });
+      this.findings.add("provenance-broken", "warning", "a provenance line that can't be read", { line: this.scan.line });
     }
-    const { where } = this;
-    this.provenance = { line: this.line, offset: where[OFFSET], length: where[NEXT] - where[OFFSET], text: `;${text}`, data };
+    const { builder } = this;
+    this.provenance = { line: this.scan.line, offset: builder.offset(), length: builder.lineBytes(), text: `;${text}`, data };
   }
 
   /** `filament diameter = 2.85`, the one setting that volume needs. */
@@ -255,9 +252,9 @@ export class ToolpathReader {
     if (computed !== scan.checksum)
       throw new Refusal(
         "checksum",
-        `the checksum of line ${this.line} is ${scan.checksum < 0 ? "missing" : scan.checksum}, its bytes give ${computed}`,
+        `the checksum of line ${this.scan.line} is ${scan.checksum < 0 ? "missing" : scan.checksum}, its bytes give ${computed}`,
         "The file is damaged: export or transfer it again.",
-        { line: this.line },
+        { line: this.scan.line },
       );
   }
 
@@ -267,7 +264,7 @@ export class ToolpathReader {
     const resets = (scan.mask & M_BIT) !== 0 && scan.value[12] === 110;
     if (scan.starAt >= 0 && !resets && this.lastNumber >= 0 && number !== this.lastNumber + 1)
       this.findings.add("number-order", "warning", `line number ${number} follows ${this.lastNumber}: firmware asks for a resend there`, {
-        line: this.line,
+        line: this.scan.line,
       });
     this.lastNumber = number;
   }

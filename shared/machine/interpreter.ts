@@ -1,12 +1,12 @@
 import type { Machine, Motion } from "#shared/formats/machine.ts";
 import type { LineScan } from "#shared/gcode/scan-line.ts";
-import type { Move } from "#shared/machine/move.ts";
+import { FED, LENGTH, SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { type Arc, arcFromCentre, arcFromRadius, arcLengthMm } from "#shared/machine/arc.ts";
 
 /** What a line of words turns into. One receiver, so that the calls stay cheap. */
 export interface MotionSink {
-  /** the move that the interpreter fills, and the call that says it is filled */
-  readonly next: Move;
+  /** the row that the interpreter fills (see move.ts), and the call that says it is filled */
+  readonly row: Float64Array;
   move(): void;
   /** the queue runs empty: homing, dwell, tool change, wait */
   wait(kind: "temperature" | "home" | "tool" | "pause" | "dwell", seconds: number | null): void;
@@ -52,7 +52,6 @@ const J_BIT = 1 << 9;
 const K_BIT = 1 << 10;
 const L_BIT = 1 << 11;
 const M_BIT = 1 << 12;
-const N_BIT = 1 << 13;
 const P_BIT = 1 << 15;
 const R_BIT = 1 << 17;
 const S_BIT = 1 << 18;
@@ -60,24 +59,29 @@ const T_BIT = 1 << 19;
 const X_BIT = 1 << 23;
 const Y_BIT = 1 << 24;
 const Z_BIT = 1 << 25;
-const PLAIN_MOVE = X_BIT | Y_BIT | Z_BIT | E_BIT | F_BIT | G_BIT | N_BIT;
 const AXIS_WORDS = X_BIT | Y_BIT | Z_BIT | E_BIT | I_BIT | J_BIT | K_BIT | R_BIT;
 const INCH = 25.4;
+
+/** places in `program` */
+const ZERO_X = 0;
+const AT_E = 3;
 
 /** Modal state of the program: words in, moves in absolute millimetres out. */
 export class Interpreter {
   private readonly sink: MotionSink;
-  private readonly next: Move;
+  private readonly row: Float64Array;
   private readonly motion: Motion;
-  /** program position X Y Z E, mm, and the machine position of the program's zero for X Y Z */
-  private readonly at = new Float64Array(7);
+  /** machine position of the program's zero in X Y Z, mm, and the program's extruder position, mm */
+  private readonly program = new Float64Array(4);
   private absolute = true;
   private extruderAbsolute = true;
-  /** factors: units to mm, feed override over 60 s, flow override */
+  /** E words are absolute: see extruderMode */
+  private absoluteE = true;
+  /** factors: units to mm, feed override, flow override */
   private unit = 1;
-  private feedPerMinute = 1 / 60;
+  private feedFactor = 1;
   private flow = 1;
-  /** programmed speed in mm/min before the override */
+  /** programmed speed before the override */
   private feedMmMin: number;
   private plane: 17 | 18 | 19 = 17;
   private motionWord = 0;
@@ -86,86 +90,76 @@ export class Interpreter {
   constructor(machine: Machine, sink: MotionSink) {
     this.motion = machine.motion;
     this.sink = sink;
-    this.next = sink.next;
+    this.row = sink.row;
     this.feedMmMin = machine.motion.initialSpeedMmS * 60;
+    this.updateSpeed();
   }
 
   /** Runs one line of words. Output commands (M106 …) are not looked at here. */
   run(scan: LineScan): void {
-    const mask = scan.mask;
-    if ((mask & ~PLAIN_MOVE) === 0 && scan.commands === 1 && scan.bare === 0) {
-      const g = scan.value[6];
-      if (g === 1 || g === 0) {
-        this.motionWord = g;
-        this.straight(scan.value, mask);
-        return;
-      }
-    }
-    this.command(scan);
+    if (scan.plain) {
+      this.motionWord = scan.value[6];
+      this.straight(scan.value, scan.mask);
+    } else this.command(scan);
   }
 
   private straight(value: Float64Array, mask: number): void {
-    const at = this.at;
-    const unit = this.unit;
-    const x0 = at[0];
-    const y0 = at[1];
-    const z0 = at[2];
+    const { row, program, unit } = this;
+    if ((mask & F_BIT) !== 0) this.setFeed(value[F]);
+    const x0 = row[X1];
+    const y0 = row[Y1];
+    const z0 = row[Z1];
     let x = x0;
     let y = y0;
     let z = z0;
-    let de = 0;
-    if ((mask & F_BIT) !== 0) this.setFeed(value[F]);
     if (this.absolute) {
-      if ((mask & X_BIT) !== 0) x = value[X] * unit;
-      if ((mask & Y_BIT) !== 0) y = value[Y] * unit;
-      if ((mask & Z_BIT) !== 0) z = value[Z] * unit;
+      if ((mask & X_BIT) !== 0) x = value[X] * unit + program[ZERO_X];
+      if ((mask & Y_BIT) !== 0) y = value[Y] * unit + program[ZERO_X + 1];
+      if ((mask & Z_BIT) !== 0) z = value[Z] * unit + program[ZERO_X + 2];
     } else {
       if ((mask & X_BIT) !== 0) x += value[X] * unit;
       if ((mask & Y_BIT) !== 0) y += value[Y] * unit;
       if ((mask & Z_BIT) !== 0) z += value[Z] * unit;
     }
+    let fed = 0;
     if ((mask & E_BIT) !== 0) {
-      const e = value[E] * unit;
-      if (this.extruderIsAbsolute()) {
-        de = (e - at[3]) * this.flow;
-        at[3] = e;
-      } else {
-        de = e * this.flow;
-        at[3] += e;
-      }
+      fed = value[E] * unit;
+      if (this.absoluteE) {
+        const e = fed;
+        fed -= program[AT_E];
+        program[AT_E] = e;
+      } else program[AT_E] += fed;
+      fed *= this.flow;
     }
     const dx = x - x0;
     const dy = y - y0;
     const dz = z - z0;
-    const lengthMm = Math.sqrt(dx * dx + dy * dy + dz * dz);
-    at[0] = x;
-    at[1] = y;
-    at[2] = z;
-    if (lengthMm < 1e-9 && de === 0) return;
-    const move = this.next;
-    const ox = at[4];
-    const oy = at[5];
-    const oz = at[6];
-    move.x0 = x0 + ox;
-    move.y0 = y0 + oy;
-    move.z0 = z0 + oz;
-    move.x1 = x + ox;
-    move.y1 = y + oy;
-    move.z1 = z + oz;
-    move.fedMm = de;
-    move.lengthMm = lengthMm;
-    move.speedMmS = this.feedMmMin * this.feedPerMinute;
-    this.sink.move();
+    row[X0] = x0;
+    row[Y0] = y0;
+    row[Z0] = z0;
+    row[X1] = x;
+    row[Y1] = y;
+    row[Z1] = z;
+    row[FED] = fed;
+    const lengthSq = dx * dx + dy * dy + dz * dz;
+    row[LENGTH] = Math.sqrt(lengthSq);
+    if (lengthSq > NO_TRAVEL_SQ || fed !== 0) this.sink.move();
   }
 
   private setFeed(value: number): void {
-    if (value > 0) this.feedMmMin = value * this.unit;
-    else this.sink.odd("feed-not-positive", `F${value} is no feed rate; the one before it stays in force`);
+    if (value > 0) {
+      this.feedMmMin = value * this.unit;
+      this.updateSpeed();
+    } else this.sink.odd("feed-not-positive", `F${value} is no feed rate; the one before it stays in force`);
+  }
+
+  private updateSpeed(): void {
+    this.row[SPEED] = (this.feedMmMin * this.feedFactor) / 60;
   }
 
   /** E is absolute where M82 says so; whether G91 makes it relative too depends on the firmware family. */
-  private extruderIsAbsolute(): boolean {
-    return this.extruderAbsolute && (this.absolute || this.motion.axisModeSetsExtruder);
+  private extruderMode(): void {
+    this.absoluteE = this.extruderAbsolute && (this.absolute || this.motion.axisModeSetsExtruder);
   }
 
   private command(scan: LineScan): void {
@@ -234,6 +228,7 @@ export class Interpreter {
       case 91:
         this.absolute = g === 90;
         if (this.motion.axisModeSetsExtruder) this.extruderAbsolute = g === 90;
+        this.extruderMode();
         return;
       case 92:
         this.setPosition(value, mask);
@@ -247,9 +242,11 @@ export class Interpreter {
     switch (m) {
       case 82:
         this.extruderAbsolute = true;
+        this.extruderMode();
         return;
       case 83:
         this.extruderAbsolute = false;
+        this.extruderMode();
         return;
       case 104:
       case 109:
@@ -269,7 +266,8 @@ export class Interpreter {
         this.sink.wait("dwell", 0);
         return;
       case 220:
-        if (s !== undefined && s > 0) this.feedPerMinute = s / 100 / 60;
+        if (s !== undefined && s > 0) this.feedFactor = s / 100;
+        this.updateSpeed();
         return;
       case 221:
         if (s !== undefined && s > 0) this.flow = s / 100;
@@ -310,25 +308,21 @@ export class Interpreter {
     const all = (words & (X_BIT | Y_BIT | Z_BIT)) === 0;
     for (const [axis, letter] of [X_BIT, Y_BIT, Z_BIT].entries())
       if (all || (words & letter) !== 0) {
-        this.at[axis] = 0;
-        this.at[4 + axis] = 0;
+        this.row[X1 + axis] = 0;
+        this.program[ZERO_X + axis] = 0;
       }
   }
 
   private setPosition(value: Float64Array, mask: number): void {
     const all = (mask & (X_BIT | Y_BIT | Z_BIT | E_BIT)) === 0;
-    const { at, unit } = this;
+    const { row, program, unit } = this;
     for (const [axis, letter, word] of [
       [0, X_BIT, X],
       [1, Y_BIT, Y],
       [2, Z_BIT, Z],
-    ]) {
-      if (!all && (mask & letter) === 0) continue;
-      const v = all ? 0 : value[word] * unit;
-      at[4 + axis] += at[axis] - v;
-      at[axis] = v;
-    }
-    if (all || (mask & E_BIT) !== 0) at[3] = all ? 0 : value[E] * unit;
+    ])
+      if (all || (mask & letter) !== 0) program[ZERO_X + axis] = row[X1 + axis] - (all ? 0 : value[word] * unit);
+    if (all || (mask & E_BIT) !== 0) program[AT_E] = all ? 0 : value[E] * unit;
   }
 
   private firmwareRetract(retract: boolean): void {
@@ -336,14 +330,13 @@ export class Interpreter {
     this.retracted = retract;
     const { lengthMm, speedMmS } = this.motion.firmwareRetract;
     if (lengthMm === 0) return;
-    const { at, next } = this;
-    next.x0 = next.x1 = at[0] + at[4];
-    next.y0 = next.y1 = at[1] + at[5];
-    next.z0 = next.z1 = at[2] + at[6];
-    next.fedMm = retract ? -lengthMm : lengthMm;
-    next.lengthMm = 0;
-    next.speedMmS = speedMmS;
+    const { row } = this;
+    row.copyWithin(X0, X1, X1 + 3);
+    row[FED] = retract ? -lengthMm : lengthMm;
+    row[LENGTH] = 0;
+    row[SPEED] = speedMmS;
     this.sink.move();
+    this.updateSpeed();
   }
 
   private tool(t: number): void {
@@ -364,55 +357,40 @@ export class Interpreter {
   }
 
   private arc(clockwise: boolean, value: Float64Array, mask: number): void {
-    const at = this.at;
-    const unit = this.unit;
+    const { row, program, unit } = this;
     // first and second axis of the plane, the axis along it, and their centre words
-    const [a, b, c] = this.plane === 17 ? [0, 1, 2] : this.plane === 18 ? [2, 0, 1] : [1, 2, 0];
+    const axes = this.plane === 17 ? [0, 1, 2] : this.plane === 18 ? [2, 0, 1] : [1, 2, 0];
     const words = [X, Y, Z];
     const bits = [X_BIT, Y_BIT, Z_BIT];
-    const target = (axis: number): number => {
-      if ((mask & bits[axis]) === 0) return at[axis];
-      return value[words[axis]] * unit + (this.absolute ? 0 : at[axis]);
-    };
-    const offset = (axis: number): number =>
-      (mask & [I_BIT, J_BIT, K_BIT][axis]) !== 0 ? value[[I, J, K][axis]] * unit : 0;
-    const a0 = at[a];
-    const b0 = at[b];
-    const c0 = at[c];
-    const a1 = target(a);
-    const b1 = target(b);
-    const c1 = target(c);
+    const from = axes.map((axis) => row[X1 + axis]);
+    const to = axes.map((axis, k) => {
+      if ((mask & bits[axis]) === 0) return from[k];
+      return value[words[axis]] * unit + (this.absolute ? program[ZERO_X + axis] : from[k]);
+    });
+    const [i, j] = axes.map((axis) => ((mask & [I_BIT, J_BIT, K_BIT][axis]) !== 0 ? value[[I, J, K][axis]] * unit : 0));
     const arc =
       (mask & R_BIT) !== 0
-        ? arcFromRadius(a0, b0, a1, b1, value[R] * unit, clockwise)
-        : arcFromCentre(a0, b0, a1, b1, offset(a), offset(b), clockwise);
+        ? arcFromRadius(from[0], from[1], to[0], to[1], value[R] * unit, clockwise)
+        : arcFromCentre(from[0], from[1], to[0], to[1], i, j, clockwise);
     if (!arc) {
       this.sink.odd("arc-invalid", "this arc has no centre: start and end do not lie on one circle. It is timed as a straight line");
       this.straight(value, mask);
       return;
     }
     if ((mask & F_BIT) !== 0) this.setFeed(value[F]);
-    let de = 0;
+    let fed = 0;
     if ((mask & E_BIT) !== 0) {
       const e = value[E] * unit;
-      const absolute = this.extruderIsAbsolute();
-      de = (absolute ? e - at[3] : e) * this.flow;
-      at[3] = absolute ? e : at[3] + e;
+      fed = (this.absoluteE ? e - program[AT_E] : e) * this.flow;
+      program[AT_E] = this.absoluteE ? e : program[AT_E] + e;
     }
-    this.chords(arc, [a, b, c], [a0, b0, c0], [a1, b1, c1], de);
-    at[a] = a1;
-    at[b] = b1;
-    at[c] = c1;
+    this.chords(arc, axes, from, to, fed);
   }
 
-  private chords(arc: Arc, axes: number[], from: number[], to: number[], de: number): void {
+  private chords(arc: Arc, axes: number[], from: number[], to: number[], fed: number): void {
+    const { row } = this;
     const rise = to[2] - from[2];
     const count = Math.min(Math.max(1, Math.floor(arcLengthMm(arc, rise) / this.motion.arcSegmentMm)), MAX_CHORDS);
-    const speed = this.feedMmMin * this.feedPerMinute;
-    const { next } = this;
-    const here = [0, 0, 0];
-    const there = [0, 0, 0];
-    for (let k = 0; k < 3; k++) there[axes[k]] = from[k] + this.at[4 + axes[k]];
     const startX = from[0] - arc.centreX;
     const startY = from[1] - arc.centreY;
     for (let i = 1; i <= count; i++) {
@@ -421,19 +399,18 @@ export class Interpreter {
       const cos = Math.cos(angle);
       const sin = Math.sin(angle);
       const last = i === count;
-      for (let k = 0; k < 3; k++) here[k] = there[k];
-      there[axes[0]] = (last ? to[0] : arc.centreX + startX * cos - startY * sin) + this.at[4 + axes[0]];
-      there[axes[1]] = (last ? to[1] : arc.centreY + startX * sin + startY * cos) + this.at[4 + axes[1]];
-      there[axes[2]] = from[2] + rise * share + this.at[4 + axes[2]];
-      [next.x0, next.y0, next.z0] = here;
-      [next.x1, next.y1, next.z1] = there;
-      next.fedMm = de / count;
-      next.lengthMm = Math.hypot(there[0] - here[0], there[1] - here[1], there[2] - here[2]);
-      next.speedMmS = speed;
+      row.copyWithin(X0, X1, X1 + 3);
+      row[X1 + axes[0]] = last ? to[0] : arc.centreX + startX * cos - startY * sin;
+      row[X1 + axes[1]] = last ? to[1] : arc.centreY + startX * sin + startY * cos;
+      row[X1 + axes[2]] = from[2] + rise * share;
+      row[FED] = fed / count;
+      row[LENGTH] = Math.hypot(row[X1] - row[X0], row[Y1] - row[Y0], row[Z1] - row[Z0]);
       this.sink.move();
     }
   }
 }
 
+/** a displacement below 1e-9 mm is none */
+const NO_TRAVEL_SQ = 1e-18;
 /** An arc is never cut finer than this, whatever radius a damaged file states. */
 const MAX_CHORDS = 100_000;

@@ -1,19 +1,19 @@
 /**
- * One straight move, in machine coordinates, mm. One object is filled again and again and handed from interpreter to
- * layers to planner: doubles passed as arguments would each be boxed on the hottest path of the reader. Its fields start
- * as NaN so that the engine stores them as doubles from the first move on.
+ * One straight move in machine coordinates, mm, as a row of numbers that interpreter, layers and planner share. Doubles
+ * passed as arguments or kept in object fields would be boxed on the hottest path of the reader; a row is not. A move
+ * starts where the one before it ended, so the row also is the machine's position: X1 Y1 Z1.
  */
-export class Move {
-  x0 = Number.NaN;
-  y0 = Number.NaN;
-  z0 = Number.NaN;
-  x1 = Number.NaN;
-  y1 = Number.NaN;
-  z1 = Number.NaN;
-  /** filament fed, mm, negative when retracting */
-  fedMm = Number.NaN;
-  /** length of the displacement; 0 for a move of material alone */
-  lengthMm = Number.NaN;
-  /** programmed speed, mm/s */
-  speedMmS = Number.NaN;
-}
+export const X0 = 0;
+export const Y0 = 1;
+export const Z0 = 2;
+export const X1 = 3;
+export const Y1 = 4;
+export const Z1 = 5;
+/** filament fed, mm, negative when retracting */
+export const FED = 6;
+/** length of the displacement, mm; 0 for a move of material alone */
+export const LENGTH = 7;
+/** programmed speed with its override, mm/s; stays until it changes */
+export const SPEED = 8;
+
+export const newMove = (): Float64Array => new Float64Array(9);

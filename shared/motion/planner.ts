@@ -1,5 +1,5 @@
 import type { Motion } from "#shared/formats/machine.ts";
-import type { Move } from "#shared/machine/move.ts";
+import { FED, LENGTH as MOVE_LENGTH, SPEED as MOVE_SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { deviationCornerSq, jerkCornerSq, limitByAxes, startFromRestSq } from "#shared/motion/move-limits.ts";
 import { type MotionRules, motionRules } from "#shared/motion/motion-rules.ts";
 
@@ -80,19 +80,20 @@ export class Planner {
   /**
    * Adds one straight move.
    *
+   * @param row the move, see machine/move.ts
    * @param lays 1 when the move lays material
    */
-  add(move: Move, lays: number): void {
+  add(row: Float64Array, lays: number): void {
     if (this.count === this.threshold) this.settle(false);
     const { records } = this;
     const i = this.count++;
     const r = i * RECORD;
-    records[r + DX] = move.x1 - move.x0;
-    records[r + DY] = move.y1 - move.y0;
-    records[r + DZ] = move.z1 - move.z0;
-    records[r + DE] = move.fedMm;
-    records[r + LENGTH] = move.lengthMm;
-    records[r + SPEED] = move.speedMmS;
+    records[r + DX] = row[X1] - row[X0];
+    records[r + DY] = row[Y1] - row[Y0];
+    records[r + DZ] = row[Z1] - row[Z0];
+    records[r + DE] = row[FED];
+    records[r + LENGTH] = row[MOVE_LENGTH];
+    records[r + SPEED] = row[MOVE_SPEED];
     this.lays[i] = lays;
     this.added++;
   }

@@ -3,7 +3,6 @@ import type { LineFeed } from "#shared/prove/line-feed.ts";
 
 const N_BIT = 1 << 13;
 const M_BIT = 1 << 12;
-const STAR = 42;
 /** Longest command that is looked at; every command of an output is far shorter. */
 const CODE_BYTES = 2048;
 
@@ -35,7 +34,7 @@ export class LineLook {
     if ((scan.mask & N_BIT) === 0 || scan.kind === LineKind.blank) return;
     this.findNumber();
     if (this.numberStart < 0) return;
-    this.starAt = scan.kind === LineKind.named ? this.starBefore(scan.codeEnd) : scan.starAt;
+    this.starAt = scan.starAt;
     if (this.starAt >= 0) this.sumEnd = this.digitsFrom(this.starAt + 1);
   }
 
@@ -67,10 +66,11 @@ export class LineLook {
 
   /** The command without number, checksum and comment. */
   get code(): string {
-    const { scan } = this;
-    const from = this.numberEnd >= 0 ? this.numberEnd : scan.codeStart;
-    const to = this.starAt >= 0 ? Math.min(this.starAt, scan.codeEnd) : scan.codeEnd;
-    return this.text(from, Math.min(to, from + CODE_BYTES)).trim();
+    const from = this.numberEnd >= 0 ? this.numberEnd : this.start;
+    // The scanner keeps no end of the code for plain moves: it is the end of the line.
+    const end = this.scan.plain ? this.textEnd : this.scan.codeEnd;
+    const to = this.starAt >= 0 ? Math.min(this.starAt, end) : end;
+    return this.text(from, Math.min(to, from + CODE_BYTES)).replace(/^(\s|\([^()]*\))+/, "").trimEnd();
   }
 
   /** The whole line, cut off where it is too long to show. */
@@ -106,14 +106,5 @@ export class LineLook {
     let p = from;
     while (this.buf[p] >= 48 && this.buf[p] <= 57) p++;
     return p;
-  }
-
-  /** The star of a checksum that ends a command whose values may hold anything. */
-  private starBefore(end: number): number {
-    let p = end - 1;
-    while (p > this.start && (this.buf[p] === 32 || this.buf[p] === 9)) p--;
-    const digits = p;
-    while (p > this.start && this.buf[p] >= 48 && this.buf[p] <= 57) p--;
-    return p < digits && this.buf[p] === STAR ? p : -1;
   }
 }

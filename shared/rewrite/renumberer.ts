@@ -14,13 +14,11 @@ const M_BIT = bit("M");
  */
 export class Renumberer {
   private readonly out: Blocks;
-  private readonly feeder = new LineFeeder((buf, from, to, offset) => this.lines(buf, from, to, offset));
+  private readonly feeder = new LineFeeder((buf, from, to, offset, open) => this.lines(buf, from, to, offset, open));
   private readonly scan = new LineScan();
   /** output byte from which lines are renumbered: bytes before the first edit are the same in both files */
   private readonly startsAt: number;
   private last = 0;
-  /** what was read last; if the file ends in an open line, the terminator lent to it is not written */
-  private held: Uint8Array | undefined;
 
   constructor(out: Blocks, firstEdit: number) {
     this.out = out;
@@ -38,13 +36,11 @@ export class Renumberer {
   }
 
   end(): void {
-    const terminated = this.feeder.end();
-    if (this.held) this.out.write(terminated ? this.held : this.held.subarray(0, this.held.length - 1));
+    this.feeder.end();
     this.out.end();
   }
 
-  private lines(buf: Uint8Array, from: number, to: number, offset: number): void {
-    if (this.held) this.out.write(this.held);
+  private lines(buf: Uint8Array, from: number, to: number, offset: number, open: boolean): void {
     const { scan } = this;
     let unchanged = from;
     let p = from;
@@ -62,7 +58,8 @@ export class Renumberer {
       this.renumbered(buf, start);
       unchanged = scan.starAt + 1 + digitsFrom(buf, scan.starAt + 1);
     }
-    this.held = buf.slice(unchanged, to);
+    // The terminator lent to an open last line is not written.
+    this.out.write(buf.subarray(unchanged, open ? to - 1 : to));
   }
 
   private renumbered(buf: Uint8Array, start: number): void {

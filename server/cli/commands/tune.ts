@@ -22,7 +22,7 @@ import { Refusal } from "#shared/refusal.ts";
 import { prepareTuning, type Tuning } from "#shared/rewrite/prepare-tuning.ts";
 
 /** Approval is for the team's own server to give. */
-const STATUS = "trial-only";
+const STATUS = "trial-only" as const;
 
 /** Where the results go. */
 interface Targets {

@@ -1,8 +1,9 @@
 import type { ChildProcess } from "node:child_process";
-import { existsSync, readFileSync, writeFileSync } from "node:fs";
+import { closeSync, existsSync, openSync, readFileSync, writeFileSync, writeSync } from "node:fs";
 import { join } from "node:path";
 import { setTimeout as wait } from "node:timers/promises";
 import { beforeAll, describe, expect, test } from "vitest";
+import { parseProof } from "#shared/formats/proof.ts";
 import {
   LAUNCH,
   listFolder,
@@ -26,12 +27,15 @@ beforeAll(() => {
 });
 
 /** A folder with the long part, and a run that has begun to write its tuned file there. */
-async function runThatWrites(program = [process.execPath, LAUNCH]): Promise<{ folder: string; child: ChildProcess }> {
+async function runThatWrites({
+  program = [process.execPath, LAUNCH],
+  more = [] as string[],
+} = {}): Promise<{ folder: string; child: ChildProcess }> {
   const folder = scratchFolder();
   writeFileSync(join(folder, "part.gcode"), longPart);
   writeFileSync(join(folder, "tuned.gcode"), "what stood there before");
   const [part, out] = ["part.gcode", "tuned.gcode"].map((name) => join(folder, name));
-  const child = start(program[0], [...program.slice(1), "tune", part, ...DOCUMENTS, "--out", out]);
+  const child = start(program[0], [...program.slice(1), "tune", part, ...DOCUMENTS, "--out", out, ...more]);
   while (!listFolder(folder).some((name) => PART.test(name))) {
     if (child.exitCode !== null) throw new Error("it ended before it could be cut short");
     await wait(2);
@@ -52,7 +56,7 @@ describe("whoever stops a run finds OUT as it was before", () => {
   });
 
   test("SIGTERM reaches it through npm", async () => {
-    const { folder, child } = await runThatWrites(["npm", "run", "-s", "quenchline", "--"]);
+    const { folder, child } = await runThatWrites({ program: ["npm", "run", "-s", "quenchline", "--"] });
     const ended = outcome(child);
     child.kill("SIGTERM");
     await ended;
@@ -75,6 +79,23 @@ describe("whoever stops a run finds OUT as it was before", () => {
     expect(status).toBe(0);
     expect(listFolder(folder)).toEqual([going, "other.gcode", "part.gcode", "tuned.gcode"].sort());
   });
+});
+
+test("a toolpath that changes while it is tuned fails the proof: status 4, no OUT, and the proof says why", async () => {
+  const proof = join(scratchFolder(), "proof.json");
+  const { folder, child } = await runThatWrites({ more: ["--proof", proof, "--plan", `${proof}.plan`] });
+  const ended = outcome(child);
+  const file = openSync(join(folder, "part.gcode"), "r+");
+  writeSync(file, "2", longPart.lastIndexOf("F1200") + 1);
+  closeSync(file);
+  const { status, stdout, stderr } = await ended;
+  expect(stderr).toMatch(/the proof failed, so nothing was written under .*\n {2}FAILED {2}bytes-kept/);
+  expect(stdout).toBe("");
+  expect(status).toBe(4);
+  expect(listFolder(folder)).toEqual(["part.gcode", "tuned.gcode"]);
+  expect(standing(folder)).toBe("what stood there before");
+  expect(parseProof(JSON.parse(readFileSync(proof, "utf8")))).toMatchObject({ passed: false });
+  expect(existsSync(`${proof}.plan`)).toBe(false);
 });
 
 describe("where there is no room", () => {
