@@ -27,24 +27,34 @@ const shape = (source: string, read: CommentShape["read"]): CommentShape => ({
 });
 const optional = (text: string | undefined): number | undefined => (text === undefined ? undefined : Number(text));
 
-const OUTLINE = /outer[ _-]?(wall|perimeter)|(wall|perimeter)[ _-]?outer|external[ _-]?perimeter|^(outline|perimeter|skin line)\b/i;
+const OUTLINE =
+  /outer[ _-]?(wall|perimeter)|(wall|perimeter)[ _-]?outer|external[ _-]?perimeter|^(outline|perimeter|skin line)\b/i;
 
 export const COMMENT_SHAPES: readonly CommentShape[] = [
   // number and height on one line: `layer 12, z = 2.4`, `stratum 12 top 2.400`
-  shape(`(?:layer|stratum)\\s*[:#]?\\s*${NUMBER}[\\s,;:]+(?:z|top|height)\\s*[=:]?\\s*${LENGTH}(?:\\s*mm)?$`, ([n, top]) => ({
+  shape(
+    `(?:layer|stratum)\\s*[:#]?\\s*${NUMBER}[\\s,;:]+(?:z|top|height)\\s*[=:]?\\s*${LENGTH}(?:\\s*mm)?$`,
+    ([n, top]) => ({
+      says: "layer",
+      number: optional(n),
+      topMm: optional(top),
+    }),
+  ),
+  // number after a keyword: `LAYER:0`, `layer 3`, `layer #3`, `layer 3/120`
+  shape(`(?:layer|stratum)\\s*[:#=]?\\s*${NUMBER}(?:\\s*(?:/|of)\\s*\\d+)?$`, ([n]) => ({
     says: "layer",
     number: optional(n),
-    topMm: optional(top),
   })),
-  // number after a keyword: `LAYER:0`, `layer 3`, `layer #3`, `layer 3/120`
-  shape(`(?:layer|stratum)\\s*[:#=]?\\s*${NUMBER}(?:\\s*(?:/|of)\\s*\\d+)?$`, ([n]) => ({ says: "layer", number: optional(n) })),
   // a change keyword, its height in a later comment
   shape("(?:layer_change|change_layer|layer change)$", () => ({ says: "layer" })),
   // a begin keyword with the height
   shape(`begin_layer(?:_object)?\\s+z\\s*=\\s*${LENGTH}`, ([top]) => ({ says: "layer", topMm: optional(top) })),
   // heights that follow a change keyword
   shape(`(?:z|z_height)\\s*[:=]\\s*${LENGTH}$`, ([top]) => ({ says: "height", topMm: optional(top) })),
-  shape(`(?:height|layer_height)\\s*[:=]\\s*${LENGTH}$`, ([height]) => ({ says: "height", heightMm: optional(height) })),
+  shape(`(?:height|layer_height)\\s*[:=]\\s*${LENGTH}$`, ([height]) => ({
+    says: "height",
+    heightMm: optional(height),
+  })),
   // features
   shape("(?:type|feature)\\s*:\\s*(.+)$", ([name]) => ({ says: "feature", outline: OUTLINE.test(name!.trim()) })),
   shape("'([^']+) path'", ([name]) => ({ says: "feature", outline: OUTLINE.test(name!.trim()) })),

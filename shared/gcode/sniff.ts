@@ -2,7 +2,11 @@ import { Refusal } from "#shared/refusal.ts";
 
 /** First bytes of things that people drop by mistake, and what to call them. */
 const SIGNATURES: [bytes: number[] | string, looksLike: string, remedy: string][] = [
-  ["PK\u0003\u0004", "a ZIP archive (project files of a slicer are such archives)", "Export the sliced toolpath as G-code text."],
+  [
+    "PK\u0003\u0004",
+    "a ZIP archive (project files of a slicer are such archives)",
+    "Export the sliced toolpath as G-code text.",
+  ],
   ["GCDE", "a binary G-code container", "Switch binary output off in the slicer and export G-code text."],
   [[0x1f, 0x8b], "gzip inside gzip", "Unpack it once more, or send the plain file."],
   ["7z\u00bc\u00af", "a 7z archive", "Unpack it and send the G-code file."],
@@ -38,5 +42,6 @@ export function refuseForeign(head: Uint8Array): void {
     refuse("an STL model", "Slice it first and send the G-code that the slicer writes.");
   let zeros = 0;
   for (const byte of head) if (byte === 0) zeros++;
-  if (zeros > 0) refuse("binary data (it holds zero bytes; a binary STL model has them)", "Send the sliced G-code file as text.");
+  if (zeros > 0)
+    refuse("binary data (it holds zero bytes; a binary STL model has them)", "Send the sliced G-code file as text.");
 }

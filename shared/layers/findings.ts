@@ -8,7 +8,12 @@ export class Findings {
   private readonly list: Finding[] = [];
   private readonly counts = new Map<string, number>();
 
-  add(code: string, severity: Finding["severity"], message: string, place: { line?: number; layer?: number } = {}): void {
+  add(
+    code: string,
+    severity: Finding["severity"],
+    message: string,
+    place: { line?: number; layer?: number } = {},
+  ): void {
     const count = (this.counts.get(code) ?? 0) + 1;
     this.counts.set(code, count);
     if (count <= KEPT) this.list.push({ code, severity, message, ...place });

@@ -25,13 +25,18 @@ export function finishReading({ machine, builder, outputs, findings, provenance,
       "Export the toolpath of a sliced part; check that extrusion is on E.",
     );
   if (builder.markers === 0) layers = withoutPrimeLine(layers, findings);
+  for (const layer of layers) layer.outlineMm ||= boxPerimeterMm(layer);
   const window = { start: layers[0].writeAt, end: builder.lastLaid };
   placeLines(outputs, layers, window.start.offset, window.end.offset);
   fillDutySeen(layers, outputs.controls, machine);
   crossCheck(builder, layers, findings);
   noteControls(outputs, machine, layers, findings);
   if (builder.planner.forcedStops > 0)
-    findings.add("window-full", "info", `${builder.planner.forcedStops} runs of very short moves were timed with a stop in between`);
+    findings.add(
+      "window-full",
+      "info",
+      `${builder.planner.forcedStops} runs of very short moves were timed with a stop in between`,
+    );
   const last = layers[layers.length - 1];
   return {
     file,
@@ -48,6 +53,9 @@ export function finishReading({ machine, builder, outputs, findings, provenance,
     ...(provenance ? { provenance } : {}),
   };
 }
+
+/** Where no closed run was found, the box around the layer has to do. */
+const boxPerimeterMm = ({ boxMm: { min, max } }: Layer): number => 2 * (max[0] - min[0] + max[1] - min[1]);
 
 function totals(layers: readonly Layer[]): Reading["totals"] {
   const sum = (of: (layer: Layer) => number): number => layers.reduce((total, layer) => total + of(layer), 0);
@@ -68,9 +76,14 @@ function withoutPrimeLine(layers: Layer[], findings: Findings): Layer[] {
   let first = 0;
   while (first < 2 && first + 1 < layers.length && apart(layers[first], layers[first + 1])) first++;
   if (first === 0) return layers;
-  findings.add("prime-line", "info", `what is laid at ${layers[0].zMm} mm lies apart from the part and is counted as the start of the print`, {
-    line: layers[0].firstLine,
-  });
+  findings.add(
+    "prime-line",
+    "info",
+    `what is laid at ${layers[0].zMm} mm lies apart from the part and is counted as the start of the print`,
+    {
+      line: layers[0].firstLine,
+    },
+  );
   const kept = layers.slice(first);
   const firstObject = kept[0].object;
   for (const [k, layer] of kept.entries()) {
@@ -103,21 +116,36 @@ function placeLines({ controls, pauses }: OutputLines, layers: readonly Layer[],
 function crossCheck(builder: LayerBuilder, layers: readonly Layer[], findings: Findings): void {
   const { markers } = builder;
   if (markers > 0 && markers !== layers.length)
-    findings.add("marker-count", "info", `${markers} layer markers, ${layers.length} layers by geometry; geometry counts`);
+    findings.add(
+      "marker-count",
+      "info",
+      `${markers} layer markers, ${layers.length} layers by geometry; geometry counts`,
+    );
   if (builder.markerMismatch) findings.add("marker-height", "info", builder.markerMismatch);
   if (builder.spiral)
-    findings.add("spiral", "info", "material is laid while Z rises: such stretches are cut into layers of the nominal height");
+    findings.add(
+      "spiral",
+      "info",
+      "material is laid while Z rises: such stretches are cut into layers of the nominal height",
+    );
   const objects = layers[layers.length - 1].object;
   if (objects > 1) findings.add("sequential", "info", `${objects} objects are printed one after the other`);
 }
 
 function noteControls({ controls }: OutputLines, machine: Machine, layers: readonly Layer[], findings: Findings): void {
   for (const [index, channel] of machine.channels.entries()) {
-    const inside = controls.filter((line) => line.channel === index && line.layer >= 1 && line.layer <= layers.length && !line.ours);
+    const inside = controls.filter(
+      (line) => line.channel === index && line.layer >= 1 && line.layer <= layers.length && !line.ours,
+    );
     if (inside.length === 0) continue;
     const what = channel.kind === "heater" ? "the heater's output" : "the fan";
-    findings.add("controls-inside", "info", `${inside.length} lines between the first and the last layer already set ${channel.id} (${what})`, {
-      line: inside[0].line,
-    });
+    findings.add(
+      "controls-inside",
+      "info",
+      `${inside.length} lines between the first and the last layer already set ${channel.id} (${what})`,
+      {
+        line: inside[0].line,
+      },
+    );
   }
 }

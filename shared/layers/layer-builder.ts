@@ -1,14 +1,14 @@
 import type { Machine } from "#shared/formats/machine.ts";
-import type { LineScan } from "#shared/gcode/scan-line.ts";
 import type { CommentFact } from "#shared/gcode/markers.ts";
+import type { LineScan } from "#shared/gcode/scan-line.ts";
 import type { Findings } from "#shared/layers/findings.ts";
 import type { Boundary, Layer, Wait } from "#shared/layers/reading.ts";
 import { Timeline } from "#shared/layers/timeline.ts";
 import type { LimitChange, MotionSink } from "#shared/machine/interpreter.ts";
-import { FED, LENGTH, newMove, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
+import { FED, newMove, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { applyLimits } from "#shared/motion/file-limits.ts";
 import { motionRules } from "#shared/motion/motion-rules.ts";
-import { Planner } from "#shared/motion/planner.ts";
+import { FEEDS, LAYS, Planner, TRAVELS } from "#shared/motion/planner.ts";
 import { Refusal } from "#shared/refusal.ts";
 
 /** More layers than this is no part that this trade prints. */
@@ -62,7 +62,6 @@ export class LayerBuilder implements MotionSink {
   private running = 0;
   private laidSinceTravel = false;
   private outline = false;
-  private outlineSeen = false;
   /** where the layer's marker stands, when one came after the last laying move */
   private mark: { boundary: Boundary; text: string } | undefined;
   private statedTopMm: number | undefined;
@@ -84,15 +83,12 @@ export class LayerBuilder implements MotionSink {
     const { row, sums } = this;
     const x = row[X1];
     const y = row[Y1];
-    const lengthMm = row[LENGTH];
     const fed = row[FED];
-    let lays = 0;
-    if (fed > 0 && (x !== row[X0] || y !== row[Y0])) {
+    const travels = x !== row[X0] || y !== row[Y0];
+    if (fed > 0 && travels) {
       const z = row[Z1];
       if (z !== sums[LAST_Z] || row[Z0] !== z) this.considerLayer(row[Z0], z);
-      lays = 1;
       if (this.running === 0) this.beginRun();
-      sums[RUN] += lengthMm;
       sums[FILAMENT] += fed;
       if (x < sums[MIN_X]) sums[MIN_X] = x;
       if (x > sums[MAX_X]) sums[MAX_X] = x;
@@ -101,15 +97,11 @@ export class LayerBuilder implements MotionSink {
       this.laidLine = this.scan.line;
       this.laidNext = this.scan.next;
       if (this.mark !== undefined) this.mark = undefined;
-    } else if (lengthMm > 0) {
-      sums[TRAVEL] += lengthMm;
-      if (this.running !== 0) this.endRun(row[X0], row[Y0]);
-      if (fed === 0 && this.laidSinceTravel) {
-        this.laidSinceTravel = false;
-        if (this.current) this.timeline.travel(this.offset(), this.scan.line);
-      }
+      this.planner.add(row, LAYS);
+    } else {
+      if (travels) this.leave();
+      this.planner.add(row, travels || row[Z0] !== row[Z1] ? TRAVELS : FEEDS);
     }
-    this.planner.add(row, lays);
   }
 
   private beginRun(): void {
@@ -118,8 +110,17 @@ export class LayerBuilder implements MotionSink {
     this.laidSinceTravel = true;
     sums[RUN_X] = row[X0];
     sums[RUN_Y] = row[Y0];
-    sums[RUN] = 0;
     this.widen(row[X0], row[Y0]);
+  }
+
+  /** The nozzle leaves what it laid: a run ends, and before a travel without material a command may stand. */
+  private leave(): void {
+    const { row } = this;
+    if (this.running !== 0) this.endRun(row[X0], row[Y0]);
+    if (row[FED] === 0 && this.laidSinceTravel) {
+      this.laidSinceTravel = false;
+      if (this.current) this.timeline.travel(this.offset(), this.scan.line);
+    }
   }
 
   /** byte at which the line being read starts */
@@ -337,15 +338,10 @@ export class LayerBuilder implements MotionSink {
     this.endRun(this.row[X1], this.row[Y1]);
     layer.lastLine = lastLine;
     layer.endByte = endByte;
-    layer.depositedLengthMm = this.sums[DEPOSITED];
-    layer.travelLengthMm = this.sums[TRAVEL];
     layer.filamentMm = this.sums[FILAMENT];
     layer.volumeMm3 = this.sums[FILAMENT] * Math.PI * (this.filamentDiameterMm / 2) ** 2;
     layer.areaMm2 = layer.heightMm > 0 ? layer.volumeMm3 / layer.heightMm : 0;
     layer.boxMm = { min: [this.sums[MIN_X], this.sums[MIN_Y]], max: [this.sums[MAX_X], this.sums[MAX_Y]] };
-    const commented = this.outlineSeen && this.sums[OUTLINE] > 0;
-    layer.outlineFrom = commented ? "comments" : "geometry";
-    layer.outlineMm = commented ? this.sums[OUTLINE] : this.sums[LOOP] || boxPerimeterMm(layer);
     this.clearSums();
   }
 
@@ -353,13 +349,8 @@ export class LayerBuilder implements MotionSink {
   private endRun(x: number, y: number): void {
     if (this.running === 0) return;
     this.running = 0;
-    this.sums[DEPOSITED] += this.sums[RUN];
-    if (this.outline) {
-      this.outlineSeen = true;
-      this.sums[OUTLINE] += this.sums[RUN];
-    }
     const gap = Math.hypot(x - this.sums[RUN_X], y - this.sums[RUN_Y]);
-    if (gap < LOOP_GAP_MM && this.sums[RUN] > this.sums[LOOP] && this.sums[RUN] > 4 * LOOP_GAP_MM) this.sums[LOOP] = this.sums[RUN];
+    this.timeline.endRun(gap < LOOP_GAP_MM, this.outline);
   }
 
   private widen(x: number, y: number): void {
@@ -371,11 +362,7 @@ export class LayerBuilder implements MotionSink {
 
   private clearSums(): void {
     this.running = 0;
-    this.sums[DEPOSITED] = 0;
-    this.sums[TRAVEL] = 0;
     this.sums[FILAMENT] = 0;
-    this.sums[OUTLINE] = 0;
-    this.sums[LOOP] = 0;
     this.sums[MIN_X] = Number.POSITIVE_INFINITY;
     this.sums[MIN_Y] = Number.POSITIVE_INFINITY;
     this.sums[MAX_X] = Number.NEGATIVE_INFINITY;
@@ -383,22 +370,14 @@ export class LayerBuilder implements MotionSink {
   }
 }
 
-const boxPerimeterMm = ({ boxMm: { min, max } }: Layer): number => 2 * (max[0] - min[0] + max[1] - min[1]);
-
-const DEPOSITED = 0;
-const TRAVEL = 1;
-const FILAMENT = 2;
-const OUTLINE = 3;
-/** longest closed run */
-const LOOP = 4;
-const MIN_X = 5;
-const MAX_X = 6;
-const MIN_Y = 7;
-const MAX_Y = 8;
-/** length and start of the open run of laying moves */
-const RUN = 9;
-const RUN_X = 10;
-const RUN_Y = 11;
+const FILAMENT = 0;
+const MIN_X = 1;
+const MAX_X = 2;
+const MIN_Y = 3;
+const MAX_Y = 4;
+/** start of the open run of laying moves */
+const RUN_X = 5;
+const RUN_Y = 6;
 /** raw Z of the last laying move, to leave the common case at once */
-const LAST_Z = 12;
-const SUMS = 13;
+const LAST_Z = 7;
+const SUMS = 8;

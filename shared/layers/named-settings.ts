@@ -12,7 +12,11 @@ export function namedLimits(name: string, parameters: Map<string, string>): Limi
   const toDecel = number(parameters.get("ACCEL_TO_DECEL"));
   const ratio = parameters.get("MINIMUM_CRUISE_RATIO");
   const cruiseRatio =
-    ratio !== undefined ? Number(ratio) : toDecel !== undefined && accel !== undefined ? 1 - Math.min(1, toDecel / accel) : undefined;
+    ratio !== undefined
+      ? Number(ratio)
+      : toDecel !== undefined && accel !== undefined
+        ? 1 - Math.min(1, toDecel / accel)
+        : undefined;
   return {
     maxSpeed: number(parameters.get("VELOCITY")),
     printAccel: accel,

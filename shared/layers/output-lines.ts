@@ -2,9 +2,16 @@ import type { Channel, Machine } from "#shared/formats/machine.ts";
 import type { LineScan } from "#shared/gcode/scan-line.ts";
 import { bit } from "#shared/gcode/scan-line.ts";
 import type { Findings } from "#shared/layers/findings.ts";
-import type { ControlLine, OutputUse, PauseLine } from "#shared/layers/reading.ts";
 import type { LayerBuilder } from "#shared/layers/layer-builder.ts";
-import { channelsByOutput, dutyOn, namedOutput, numberedOutput, type OutputCommand, parseNamed } from "#shared/machine/output-command.ts";
+import type { ControlLine, OutputUse, PauseLine } from "#shared/layers/reading.ts";
+import {
+  channelsByOutput,
+  dutyOn,
+  namedOutput,
+  numberedOutput,
+  type OutputCommand,
+  parseNamed,
+} from "#shared/machine/output-command.ts";
 import { Refusal } from "#shared/refusal.ts";
 
 /** Pauses that printer firmware and hosts know, whether or not the machine document lists them. */
@@ -12,7 +19,8 @@ const KNOWN_PAUSES = ["M0", "M1", "M25", "M226", "M600", "M601", "M125", "PAUSE"
 /** More fan and heater lines than this is no sliced part. */
 const MAX_CONTROLS = 1_000_000;
 /** Named commands of the firmware family that drives its part fan on every M106, whatever its P says (PLANNERS, A 8). */
-const INDEX_BLIND = /^(SET_(FAN_SPEED|PIN|VELOCITY_LIMIT|PRESSURE_ADVANCE|GCODE_OFFSET|HEATER_TEMPERATURE)|EXCLUDE_OBJECT\w*|TEMPERATURE_WAIT|BED_MESH_\w+|(SAVE|RESTORE)_GCODE_STATE)$/;
+const INDEX_BLIND =
+  /^(SET_(FAN_SPEED|PIN|VELOCITY_LIMIT|PRESSURE_ADVANCE|GCODE_OFFSET|HEATER_TEMPERATURE)|EXCLUDE_OBJECT\w*|TEMPERATURE_WAIT|BED_MESH_\w+|(SAVE|RESTORE)_GCODE_STATE)$/;
 /** Named commands that are known not to drive an output. */
 const HARMLESS = /^(SET_(VELOCITY_LIMIT|PRESSURE_ADVANCE|GCODE_OFFSET)|EXCLUDE_OBJECT\w*|(SAVE|RESTORE)_GCODE_STATE)$/;
 const P_BIT = bit("P");
@@ -110,14 +118,26 @@ export class OutputLines {
         { line: this.builder.scan.line },
       );
     if (scale === 1 && value > 1 && Number.isFinite(value))
-      this.findings.add("scale-mixed", "warning", `a value of ${value} on channel ${id}, whose full scale is 1, is read as 0–255`, {
-        line: this.builder.scan.line,
-      });
+      this.findings.add(
+        "scale-mixed",
+        "warning",
+        `a value of ${value} on channel ${id}, whose full scale is 1, is read as 0–255`,
+        {
+          line: this.builder.scan.line,
+        },
+      );
   }
 
   private pause(command: string): PauseLine {
     const { builder } = this;
-    const pause = { command, line: builder.scan.line, offset: builder.offset(), length: builder.lineBytes(), timeS: 0, layer: 0 };
+    const pause = {
+      command,
+      line: builder.scan.line,
+      offset: builder.offset(),
+      length: builder.lineBytes(),
+      timeS: 0,
+      layer: 0,
+    };
     this.pauses.push(pause);
     return pause;
   }
@@ -125,9 +145,14 @@ export class OutputLines {
   private macro(name: string): void {
     if (this.macros.has(name) || this.macros.size >= 100) return;
     this.macros.add(name);
-    this.findings.add("macro", "info", `${name} is a macro or named command: what it does to fans and heaters can't be seen in this file`, {
-      line: this.builder.scan.line,
-    });
+    this.findings.add(
+      "macro",
+      "info",
+      `${name} is a macro or named command: what it does to fans and heaters can't be seen in this file`,
+      {
+        line: this.builder.scan.line,
+      },
+    );
   }
 }
 

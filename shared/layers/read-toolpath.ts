@@ -5,8 +5,8 @@ import { CommentReader, type CommentShape } from "#shared/gcode/markers.ts";
 import { isProvenance, ownTag, PROVENANCE_PREFIX } from "#shared/gcode/own-lines.ts";
 import { LineKind, LineScan, scanLine } from "#shared/gcode/scan-line.ts";
 import { refuseForeign } from "#shared/gcode/sniff.ts";
-import { finishReading } from "#shared/layers/finish-reading.ts";
 import { Findings } from "#shared/layers/findings.ts";
+import { finishReading } from "#shared/layers/finish-reading.ts";
 import { LayerBuilder } from "#shared/layers/layer-builder.ts";
 import { namedLimits, namedTemperatures } from "#shared/layers/named-settings.ts";
 import { OutputLines } from "#shared/layers/output-lines.ts";
@@ -44,7 +44,9 @@ export class ToolpathReader {
   private readonly interpreter: Interpreter;
   private readonly outputs: OutputLines;
   private readonly comments: CommentReader;
-  private readonly feeder = new LineFeeder((buf, from, to, fileOffset, open) => this.lines(buf, from, to, fileOffset, open));
+  private readonly feeder = new LineFeeder((buf, from, to, fileOffset, open) =>
+    this.lines(buf, from, to, fileOffset, open),
+  );
   private readonly scan = new LineScan();
   private crlf = 0;
   private cr = 0;
@@ -90,7 +92,8 @@ export class ToolpathReader {
     this.start();
     const finalNewline = this.feeder.end();
     const { bytes } = this.feeder;
-    if (bytes === 0) throw new Refusal("empty", "the file is empty", "Export the toolpath again and check that the disk is not full.");
+    if (bytes === 0)
+      throw new Refusal("empty", "the file is empty", "Export the toolpath again and check that the disk is not full.");
     this.builder.end();
     return finishReading({
       machine: this.machine,
@@ -114,7 +117,9 @@ export class ToolpathReader {
     const { head } = this;
     if (!head) return;
     this.head = undefined;
-    refuseForeign(BOM.every((byte, k) => head[k] === byte) ? head.subarray(3, HEAD_BYTES) : head.subarray(0, HEAD_BYTES));
+    refuseForeign(
+      BOM.every((byte, k) => head[k] === byte) ? head.subarray(3, HEAD_BYTES) : head.subarray(0, HEAD_BYTES),
+    );
     this.feeder.push(head);
   }
 
@@ -221,17 +226,27 @@ export class ToolpathReader {
     const { commentStart, commentEnd } = this.scan;
     const text = String.fromCharCode(...buf.subarray(commentStart, Math.min(commentEnd, commentStart + 8192)));
     if (this.provenance) {
-      this.findings.add("provenance-twice", "warning", "a second provenance line; the first one counts", { line: this.scan.line });
+      this.findings.add("provenance-twice", "warning", "a second provenance line; the first one counts", {
+        line: this.scan.line,
+      });
       return;
     }
     let data: unknown;
     try {
       data = JSON.parse(text.slice(PROVENANCE_PREFIX.length - 1));
     } catch {
-      this.findings.add("provenance-broken", "warning", "a provenance line that can't be read", { line: this.scan.line });
+      this.findings.add("provenance-broken", "warning", "a provenance line that can't be read", {
+        line: this.scan.line,
+      });
     }
     const { builder } = this;
-    this.provenance = { line: this.scan.line, offset: builder.offset(), length: builder.lineBytes(), text: `;${text}`, data };
+    this.provenance = {
+      line: this.scan.line,
+      offset: builder.offset(),
+      length: builder.lineBytes(),
+      text: `;${text}`,
+      data,
+    };
   }
 
   /** `filament diameter = 2.85`, the one setting that volume needs. */
@@ -263,9 +278,14 @@ export class ToolpathReader {
     const number = scan.value[13];
     const resets = (scan.mask & M_BIT) !== 0 && scan.value[12] === 110;
     if (scan.starAt >= 0 && !resets && this.lastNumber >= 0 && number !== this.lastNumber + 1)
-      this.findings.add("number-order", "warning", `line number ${number} follows ${this.lastNumber}: firmware asks for a resend there`, {
-        line: this.scan.line,
-      });
+      this.findings.add(
+        "number-order",
+        "warning",
+        `line number ${number} follows ${this.lastNumber}: firmware asks for a resend there`,
+        {
+          line: this.scan.line,
+        },
+      );
     this.lastNumber = number;
   }
 }

@@ -1,5 +1,5 @@
 import type { Layer, Travels } from "#shared/layers/reading.ts";
-import type { Planner } from "#shared/motion/planner.ts";
+import { LAYS, type Planner, TRAVELS } from "#shared/motion/planner.ts";
 
 /** Something that wants to know the print time at which it stands. */
 export interface Timed {
@@ -25,7 +25,13 @@ export class Timeline {
   private readonly objects = new Map<number, Timed | Layer>();
   private nextObject = 0;
   private layer: Layer | undefined;
+  // Of the open layer, and of the open run of laying moves.
   private laidS = 0;
+  private travelledMm = 0;
+  private depositedMm = 0;
+  private outlineMm = 0;
+  private longestLoopMm = 0;
+  private runMm = 0;
 
   constructor(planner: Planner) {
     this.planner = planner;
@@ -52,6 +58,16 @@ export class Timeline {
     this.note(DWELL, seconds, 0);
   }
 
+  /**
+   * A run of laying moves ends here.
+   *
+   * @param closed its end lies at its start
+   * @param outline comments say that it lies on the part's outline
+   */
+  endRun(closed: boolean, outline: boolean): void {
+    this.note(RUN, closed ? 1 : 0, outline ? 1 : 0);
+  }
+
   /** Takes the durations of the moves that the planner has just settled. */
   advance(count: number): void {
     const base = this.planner.settled - count;
@@ -66,21 +82,26 @@ export class Timeline {
 
   /** Lets the moves [from, to) of the settled batch pass; no event stands between them. */
   private pass(from: number, to: number): void {
-    const { timeS, lays } = this.planner;
+    const { timeS, lengthMm, kind } = this.planner;
     let clock = this.clockS;
-    let laid = 0;
     let lastLaid = this.lastLaidS;
+    let laidS = 0;
+    let laidMm = 0;
+    let travelledMm = 0;
     for (let i = from; i < to; i++) {
       const t = timeS[i];
       clock += t;
-      if (lays[i] !== 0) {
-        laid += t;
+      if (kind[i] === LAYS) {
+        laidS += t;
+        laidMm += lengthMm[i];
         lastLaid = clock;
-      }
+      } else if (kind[i] === TRAVELS) travelledMm += lengthMm[i];
     }
     this.clockS = clock;
-    this.laidS += laid;
     this.lastLaidS = lastLaid;
+    this.laidS += laidS;
+    this.runMm += laidMm;
+    this.travelledMm += travelledMm;
   }
 
   /** Handles what is left once every move is settled, and closes the last layer at its last laying move. */
@@ -149,12 +170,16 @@ export class Timeline {
         this.closeLayer(this.clockS);
         this.layer = this.take(a) as Layer;
         this.layer.startsAtS = this.clockS;
-        this.laidS = 0;
+        this.clearSums();
         return;
       case FORGET:
         this.closeLayer(this.clockS);
         this.layer = undefined;
+        this.clearSums();
         this.travels.clear();
+        return;
+      case RUN:
+        this.closeRun(a === 1, b === 1);
         return;
       case TRAVEL:
         this.travels.add(a, b, this.clockS);
@@ -165,14 +190,36 @@ export class Timeline {
     }
   }
 
+  private closeRun(closed: boolean, outline: boolean): void {
+    this.depositedMm += this.runMm;
+    if (outline) this.outlineMm += this.runMm;
+    if (closed && this.runMm > this.longestLoopMm) this.longestLoopMm = this.runMm;
+    this.runMm = 0;
+  }
+
+  private clearSums(): void {
+    this.laidS = 0;
+    this.travelledMm = 0;
+    this.depositedMm = 0;
+    this.outlineMm = 0;
+    this.longestLoopMm = 0;
+    this.runMm = 0;
+  }
+
   private closeLayer(atS: number): void {
     if (!this.layer) return;
     this.layer.timeS = Math.max(atS - this.layer.startsAtS, 0);
+    this.closeRun(false, false);
     this.layer.extrudingTimeS = this.laidS;
+    this.layer.depositedLengthMm = this.depositedMm;
+    this.layer.travelLengthMm = this.travelledMm;
+    this.layer.outlineMm = this.outlineMm || this.longestLoopMm;
+    if (this.outlineMm > 0) this.layer.outlineFrom = "comments";
     this.travels.closeLayer(this.layer.startsAtS, atS);
   }
 }
 
+const RUN = 5;
 const STAMP = 0;
 const LAYER = 1;
 const FORGET = 2;

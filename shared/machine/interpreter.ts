@@ -1,7 +1,7 @@
 import type { Machine, Motion } from "#shared/formats/machine.ts";
 import type { LineScan } from "#shared/gcode/scan-line.ts";
-import { FED, LENGTH, SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { type Arc, arcFromCentre, arcFromRadius, arcLengthMm } from "#shared/machine/arc.ts";
+import { FED, SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 
 /** What a line of words turns into. One receiver, so that the calls stay cheap. */
 export interface MotionSink {
@@ -60,6 +60,7 @@ const X_BIT = 1 << 23;
 const Y_BIT = 1 << 24;
 const Z_BIT = 1 << 25;
 const AXIS_WORDS = X_BIT | Y_BIT | Z_BIT | E_BIT | I_BIT | J_BIT | K_BIT | R_BIT;
+const MOTION_LETTERS = [X, Y, Z, E, F, I, J, K, R];
 const INCH = 25.4;
 
 /** places in `program` */
@@ -131,9 +132,6 @@ export class Interpreter {
       } else program[AT_E] += fed;
       fed *= this.flow;
     }
-    const dx = x - x0;
-    const dy = y - y0;
-    const dz = z - z0;
     row[X0] = x0;
     row[Y0] = y0;
     row[Z0] = z0;
@@ -141,9 +139,7 @@ export class Interpreter {
     row[Y1] = y;
     row[Z1] = z;
     row[FED] = fed;
-    const lengthSq = dx * dx + dy * dy + dz * dz;
-    row[LENGTH] = Math.sqrt(lengthSq);
-    if (lengthSq > NO_TRAVEL_SQ || fed !== 0) this.sink.move();
+    if (fed !== 0 || isTravel(x - x0, y - y0, z - z0)) this.sink.move();
   }
 
   private setFeed(value: number): void {
@@ -165,6 +161,11 @@ export class Interpreter {
   private command(scan: LineScan): void {
     const { value } = scan;
     const mask = scan.mask & ~scan.bare;
+    for (const letter of MOTION_LETTERS)
+      if ((mask & (1 << letter)) !== 0 && !(Math.abs(value[letter]) < LARGEST)) {
+        this.sink.odd("number-too-large", "a number on this line is far beyond any machine; the line is not counted");
+        return;
+      }
     if (scan.commands > 1) {
       this.severalCommands(scan, mask);
       return;
@@ -333,7 +334,6 @@ export class Interpreter {
     const { row } = this;
     row.copyWithin(X0, X1, X1 + 3);
     row[FED] = retract ? -lengthMm : lengthMm;
-    row[LENGTH] = 0;
     row[SPEED] = speedMmS;
     this.sink.move();
     this.updateSpeed();
@@ -373,7 +373,10 @@ export class Interpreter {
         ? arcFromRadius(from[0], from[1], to[0], to[1], value[R] * unit, clockwise)
         : arcFromCentre(from[0], from[1], to[0], to[1], i, j, clockwise);
     if (!arc) {
-      this.sink.odd("arc-invalid", "this arc has no centre: start and end do not lie on one circle. It is timed as a straight line");
+      this.sink.odd(
+        "arc-invalid",
+        "this arc has no centre: start and end do not lie on one circle. It is timed as a straight line",
+      );
       this.straight(value, mask);
       return;
     }
@@ -404,13 +407,16 @@ export class Interpreter {
       row[X1 + axes[1]] = last ? to[1] : arc.centreY + startX * sin + startY * cos;
       row[X1 + axes[2]] = from[2] + rise * share;
       row[FED] = fed / count;
-      row[LENGTH] = Math.hypot(row[X1] - row[X0], row[Y1] - row[Y0], row[Z1] - row[Z0]);
       this.sink.move();
     }
   }
 }
 
-/** a displacement below 1e-9 mm is none */
-const NO_TRAVEL_SQ = 1e-18;
+/** Whether a displacement is one: relative moves that cancel out leave rounding errors, mm. */
+const isTravel = (dx: number, dy: number, dz: number): boolean => dx * dx + dy * dy + dz * dz > 1e-18;
+
+/** No machine moves this far or this fast; a damaged file may say so, mm or mm/min. */
+const LARGEST = 1e8;
+
 /** An arc is never cut finer than this, whatever radius a damaged file states. */
 const MAX_CHORDS = 100_000;

@@ -11,9 +11,7 @@ export const Y1 = 4;
 export const Z1 = 5;
 /** filament fed, mm, negative when retracting */
 export const FED = 6;
-/** length of the displacement, mm; 0 for a move of material alone */
-export const LENGTH = 7;
 /** programmed speed with its override, mm/s; stays until it changes */
-export const SPEED = 8;
+export const SPEED = 7;
 
-export const newMove = (): Float64Array => new Float64Array(9);
+export const newMove = (): Float64Array => new Float64Array(8);

@@ -31,7 +31,8 @@ export function applyLimits(now: MotionRules, machine: MotionRules, change: Limi
       : deviation
         ? lower(change.deviation, machine.cornerFactor, now.cornerFactor)
         : now.cornerFactor,
-    easyFactor: change.cruiseRatio === undefined ? now.easyFactor : Math.min(2 * (1 - change.cruiseRatio), machine.easyFactor),
+    easyFactor:
+      change.cruiseRatio === undefined ? now.easyFactor : Math.min(2 * (1 - change.cruiseRatio), machine.easyFactor),
     jerk: {
       x: lower(jerk.x, machine.jerk.x, now.jerk.x),
       y: lower(jerk.y, machine.jerk.y, now.jerk.y),

@@ -46,7 +46,13 @@ const MIN_TURN = 0.033;
  * @param change difference of the unit directions, x y z
  * @param dot u1·u2
  */
-export function deviationCornerSq(rules: MotionRules, change: number[], dot: number, accelMmS2: number, lengthMm: number): number {
+export function deviationCornerSq(
+  rules: MotionRules,
+  change: number[],
+  dot: number,
+  accelMmS2: number,
+  lengthMm: number,
+): number {
   if (dot > 0.999999) return Number.POSITIVE_INFINITY;
   if (dot < -0.999999) return 0;
   const norm = Math.hypot(...change);

@@ -1,7 +1,12 @@
 import type { Motion } from "#shared/formats/machine.ts";
-import { FED, LENGTH as MOVE_LENGTH, SPEED as MOVE_SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
-import { deviationCornerSq, jerkCornerSq, limitByAxes, startFromRestSq } from "#shared/motion/move-limits.ts";
+import { FED, SPEED as MOVE_SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { type MotionRules, motionRules } from "#shared/motion/motion-rules.ts";
+import { deviationCornerSq, jerkCornerSq, limitByAxes, startFromRestSq } from "#shared/motion/move-limits.ts";
+
+/** what a move does: lays material, moves without laying, or only feeds or retracts material */
+export const LAYS = 1;
+export const TRAVELS = 2;
+export const FEEDS = 0;
 
 /**
  * Look-ahead planner: moves in, duration of every move out, streamed.
@@ -28,9 +33,12 @@ import { type MotionRules, motionRules } from "#shared/motion/motion-rules.ts";
  * next N blocks, from which it must be able to stop.
  */
 export class Planner {
-  /** durations of the moves just settled, s, and whether each lays material; valid during `onSettled` only */
+  /**
+   * The moves just settled: duration, s, length (of the material for a move of material alone), mm, and kind. Valid during `onSettled` only.
+   */
   timeS = new Float64Array(0);
-  lays = new Uint8Array(0);
+  lengthMm = new Float64Array(0);
+  kind = new Uint8Array(0);
   /** moves settled so far, and moves added so far */
   settled = 0;
   added = 0;
@@ -81,9 +89,9 @@ export class Planner {
    * Adds one straight move.
    *
    * @param row the move, see machine/move.ts
-   * @param lays 1 when the move lays material
+   * @param kind LAYS, TRAVELS or FEEDS (material alone)
    */
-  add(row: Float64Array, lays: number): void {
+  add(row: Float64Array, kind: number): void {
     if (this.count === this.threshold) this.settle(false);
     const { records } = this;
     const i = this.count++;
@@ -92,9 +100,8 @@ export class Planner {
     records[r + DY] = row[Y1] - row[Y0];
     records[r + DZ] = row[Z1] - row[Z0];
     records[r + DE] = row[FED];
-    records[r + LENGTH] = row[MOVE_LENGTH];
     records[r + SPEED] = row[MOVE_SPEED];
-    this.lays[i] = lays;
+    this.kind[i] = kind;
     this.added++;
   }
 
@@ -126,7 +133,7 @@ export class Planner {
       const dz = records[r + DZ];
       const de = records[r + DE];
       const programmed = records[r + SPEED];
-      let length = records[r + LENGTH];
+      let length = Math.sqrt(dx * dx + dy * dy + dz * dz);
       const moves = length > NO_TRAVEL;
 
       let baseAccel = de !== 0 ? printAccel : travelAccel;
@@ -177,7 +184,8 @@ export class Planner {
           }
           const middle = 0.25 * (span < lastSpan ? span : lastSpan);
           const against = lengths - dot;
-          if (middle * middle * along < limit * limit * against) limit = middle * Math.sqrt((along > 0 ? along : 0) / against);
+          if (middle * middle * along < limit * limit * against)
+            limit = middle * Math.sqrt((along > 0 ? along : 0) / against);
         } else {
           const [ux, uy, uz, ue] = [dx / length, dy / length, dz / length, de / length];
           const [vx, vy, vz, ve] = [lastX / lastLength, lastY / lastLength, lastZ / lastLength, lastE / lastLength];
@@ -308,7 +316,7 @@ export class Planner {
 
   /** Durations of the first `count` moves from their start, peak and end speeds. */
   private forwardPass(count: number, blocks: number): void {
-    const { records, peakSq, timeS } = this;
+    const { records, peakSq, timeS, lengthMm } = this;
     const held = this.count;
     const full = blocks === Number.POSITIVE_INFINITY;
     let spanSum = 0;
@@ -336,14 +344,16 @@ export class Planner {
       if (next > top) next = top;
 
       const enter = from === lastExitSq ? lastExit : Math.sqrt(from);
+      const length = records[r + LENGTH];
+      lengthMm[i] = length;
       if (from === top && next === top) {
-        timeS[i] = records[r + LENGTH] / enter;
+        timeS[i] = enter > 0 ? length / enter : 0;
         lastExit = enter;
       } else {
         const cruise = top === from ? enter : Math.sqrt(top);
         const exit = next === top ? cruise : Math.sqrt(next);
         const inverse = 1 / records[r + ACCEL];
-        const rest = records[r + LENGTH] - (top - from + (top - next)) * 0.5 * inverse;
+        const rest = length - (top - from + (top - next)) * 0.5 * inverse;
         timeS[i] = (cruise - enter + (cruise - exit)) * inverse + (rest > 0 ? rest / cruise : 0);
         lastExit = exit;
       }
@@ -355,7 +365,7 @@ export class Planner {
 
   private dropFirst(count: number): void {
     this.records.copyWithin(0, count * RECORD, this.count * RECORD);
-    this.lays.copyWithin(0, count, this.count);
+    this.kind.copyWithin(0, count, this.count);
     this.count -= count;
     this.prepared -= count;
   }
@@ -366,9 +376,10 @@ export class Planner {
     this.records = records;
     this.peakSq = new Float64Array(capacity);
     this.timeS = new Float64Array(capacity);
-    const lays = new Uint8Array(capacity);
-    lays.set(this.lays);
-    this.lays = lays;
+    this.lengthMm = new Float64Array(capacity);
+    const kind = new Uint8Array(capacity);
+    kind.set(this.kind);
+    this.kind = kind;
   }
 }
 

@@ -6,7 +6,7 @@ import { LineFeed } from "#shared/prove/line-feed.ts";
 import { LineLook } from "#shared/prove/line-look.ts";
 import { LineNumbers } from "#shared/prove/line-numbers.ts";
 import { ownKind } from "#shared/prove/own-line.ts";
-import { Recorder } from "#shared/prove/recorder.ts";
+import { LINE_ENDS, Recorder } from "#shared/prove/recorder.ts";
 import { runEqual } from "#shared/prove/run-equal.ts";
 import { runNumbered } from "#shared/prove/run-numbered.ts";
 import { sameLine } from "#shared/prove/same-line.ts";
@@ -45,6 +45,7 @@ class Walk {
   private readonly theirs = new LineLook();
   private readonly ours = new LineLook();
   private readonly finalNewline: boolean;
+  private readonly lineEnds: readonly string[];
   /** the last kept line has a terminator in one file only: what follows can only be ours */
   private openEnd = false;
   private tunedIsOpen = false;
@@ -54,6 +55,7 @@ class Walk {
     this.tuned = new LineFeed(tuned);
     this.numbered = reading.file.numbered;
     this.finalNewline = reading.file.finalNewline;
+    this.lineEnds = LINE_ENDS[reading.file.newline];
     this.watch = watchFor(machine, this.numbered);
     this.plain = numberedLineWatch(this.watch);
     this.record = new Recorder(reading, machine, this.numbers);
@@ -96,7 +98,8 @@ class Walk {
     this.tunedIsOpen = !tuned.terminated;
     if (!original.finished && !this.openEnd) {
       // Where lines of ours end the file and it has no final terminator, one is put before them and goes with them.
-      const openEnd = original.terminated !== tuned.terminated;
+      const openEnd =
+        original.terminated !== tuned.terminated && this.lineEnds.includes(theirs.terminator + ours.terminator);
       const sameness = sameLine(theirs, ours, numbered, openEnd);
       if (sameness !== "other") {
         record.kept(theirs, ours, sameness, original.offset);

@@ -49,6 +49,8 @@ export interface ProvenanceEntry extends Standing {
   what: "provenance";
   /** the whole line */
   text: string;
+  /** it does not end as the lines of the file do */
+  oddEnd: boolean;
 }
 
 export interface OwnEntry extends Standing {

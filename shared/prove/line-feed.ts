@@ -2,14 +2,13 @@ import { MAX_LINE_BYTES } from "#shared/gcode/line-feeder.ts";
 
 const LF = 10;
 const CR = 13;
-const FIRST_BYTES = 1 << 17;
 
 /**
  * A file as a window of bytes that moves on with the current line. Bytes from `start` on are held, so that a line can be
  * looked at as a whole wherever the chunks were cut; memory is bounded by a chunk and the longest line.
  */
 export class LineFeed {
-  buf = new Uint8Array(FIRST_BYTES);
+  buf = new Uint8Array(0);
   /** first byte of the current line in `buf` */
   start = 0;
   /** bytes before this one are known to hold no end of the current line, and to be equal in both files */

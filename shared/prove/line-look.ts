@@ -70,7 +70,9 @@ export class LineLook {
     // The scanner keeps no end of the code for plain moves: it is the end of the line.
     const end = this.scan.plain ? this.textEnd : this.scan.codeEnd;
     const to = this.starAt >= 0 ? Math.min(this.starAt, end) : end;
-    return this.text(from, Math.min(to, from + CODE_BYTES)).replace(/^(\s|\([^()]*\))+/, "").trimEnd();
+    return this.text(from, Math.min(to, from + CODE_BYTES))
+      .replace(/^(\s|\([^()]*\))+/, "")
+      .trimEnd();
   }
 
   /** The whole line, cut off where it is too long to show. */

@@ -119,7 +119,12 @@ export class Recorder {
     };
     this.numbers.note(tuned, standing.tunedLine);
     if (own === "provenance")
-      found.entries.push({ ...standing, what: "provenance", text: tuned.text(tuned.start, tuned.textEnd) });
+      found.entries.push({
+        ...standing,
+        what: "provenance",
+        text: tuned.text(tuned.start, tuned.textEnd),
+        oddEnd: this.endsOddly(tuned),
+      });
     else found.entries.push({ ...this.ownCommand(tuned, own), ...standing });
     found.inserted++;
   }
@@ -164,11 +169,9 @@ export class Recorder {
   }
 
   private ownCommand(tuned: LineLook, tag: OwnTag): Omit<OwnEntry, keyof Standing> {
-    const { code, terminator } = tuned;
-    const { newline, finalNewline, numbered } = this.reading.file;
-    let problem = ownFormProblem(tuned, numbered);
-    if (terminator === "" ? finalNewline : !ENDS[newline].includes(terminator))
-      problem ??= "its line does not end as the lines of the file do";
+    const { code } = tuned;
+    let problem = ownFormProblem(tuned, this.reading.file.numbered);
+    if (this.endsOddly(tuned)) problem ??= "its line does not end as the lines of the file do";
     const own: Omit<OwnEntry, keyof Standing> = { what: "own", tag, code };
     for (const [channel, { drive }] of this.machine.channels.entries()) {
       const duty = ownDuty(code, drive);
@@ -176,6 +179,12 @@ export class Recorder {
     }
     if (problem !== undefined) own.problem = problem;
     return own;
+  }
+
+  /** A line of ours ends as the lines of the file do, without a terminator only at a file's end that has none. */
+  private endsOddly({ terminator }: LineLook): boolean {
+    const { newline, finalNewline } = this.reading.file;
+    return terminator === "" ? finalNewline : !LINE_ENDS[newline].includes(terminator);
   }
 
   private openGap(offset: number): void {
@@ -193,7 +202,8 @@ export class Recorder {
   }
 }
 
-const ENDS = { lf: ["\n"], crlf: ["\r\n"], cr: ["\r"], mixed: ["\n", "\r\n", "\r"], none: ["\n"] };
+/** By the file's kind of line end: those that a line of ours may have. */
+export const LINE_ENDS = { lf: ["\n"], crlf: ["\r\n"], cr: ["\r"], mixed: ["\n", "\r\n", "\r"], none: ["\n"] };
 
 function partMessage(original: LineLook | undefined, tuned: LineLook | undefined): string {
   if (!original) return `\`${tuned?.shown}\` stands behind the end of the original`;

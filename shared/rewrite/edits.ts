@@ -29,7 +29,9 @@ export class EditList {
    */
   end(newline: string, { bytes, finalNewline }: { bytes: number; finalNewline: boolean }): Edit[] {
     const offsets = [...new Set([...this.removals.keys(), ...this.insertions.keys()])].sort((a, b) => a - b);
-    const lastRemoved = !finalNewline && offsets.some((offset) => offset + (this.removals.get(offset) ?? 0) === bytes && this.removals.has(offset));
+    const lastRemoved =
+      !finalNewline &&
+      offsets.some((offset) => offset + (this.removals.get(offset) ?? 0) === bytes && this.removals.has(offset));
     const edits = offsets.map((offset): Edit => {
       const lines = this.insertions.get(offset) ?? [];
       return { offset, remove: this.removals.get(offset) ?? 0, insert: lines.map((line) => line + newline).join("") };
@@ -54,8 +56,16 @@ function atOpenEnd(edits: Edit[], newline: string, bytes: number): Edit[] {
  */
 function withoutLastNewline(edits: Edit[], newline: string, bytes: number): Edit[] {
   let first = edits.length - 1;
-  while (first > 0 && edits[first - 1].remove > 0 && edits[first - 1].offset + edits[first - 1].remove === edits[first].offset) first--;
-  const insert = edits.slice(first).map((edit) => edit.insert).join("");
+  while (
+    first > 0 &&
+    edits[first - 1].remove > 0 &&
+    edits[first - 1].offset + edits[first - 1].remove === edits[first].offset
+  )
+    first--;
+  const insert = edits
+    .slice(first)
+    .map((edit) => edit.insert)
+    .join("");
   const offset = edits[first].offset - newline.length;
   const last: Edit = {
     offset,

@@ -66,10 +66,16 @@ export function prepareTuning(input: TuningInput): Tuning {
     return (raises?.writes ?? planned).map((write) => ({ ...write, text: writeDuty(channel.drive, write.duty) }));
   });
   if (kept.size > 0)
-    advice.push({ layer: 1, code: "raises-kept", message: `${kept.size} raises of the fan inside layers are kept as the file has them.` });
+    advice.push({
+      layer: 1,
+      code: "raises-kept",
+      message: `${kept.size} raises of the fan inside layers are kept as the file has them.`,
+    });
 
   const channels = new Set(driven.map((channel) => machine.channels.indexOf(channel)));
-  const removed = reading.controls.filter((line) => line.ours || (channels.has(line.channel) && isInside(line) && line.does === "duty" && !kept.has(line)));
+  const removed = reading.controls.filter(
+    (line) => line.ours || (channels.has(line.channel) && isInside(line) && line.does === "duty" && !kept.has(line)),
+  );
   const provenance: Provenance = {
     v: 1,
     profile: named(profile.name, writeProfile(profile), input.digest, input.versions?.profile),
@@ -100,7 +106,12 @@ const named = (name: string, document: string, digest: Digest, version: number |
  * The text whose digest seals the tuned file: every command of ours and every kept raise, each with the number of the
  * file's own lines before it. Any change to one of them, or to its place, shows.
  */
-function sealText(reading: Reading, commands: readonly Command[], removed: readonly ControlLine[], kept: ReadonlySet<ControlLine>): string {
+function sealText(
+  reading: Reading,
+  commands: readonly Command[],
+  removed: readonly ControlLine[],
+  kept: ReadonlySet<ControlLine>,
+): string {
   const goneLines = removed.map(({ line }) => line);
   if (reading.provenance) goneLines.push(reading.provenance.line);
   goneLines.sort((a, b) => a - b);
@@ -118,7 +129,12 @@ function sealText(reading: Reading, commands: readonly Command[], removed: reado
   return text;
 }
 
-function layEdits(reading: Reading, commands: readonly Command[], removed: readonly ControlLine[], provenance: Provenance): Edit[] {
+function layEdits(
+  reading: Reading,
+  commands: readonly Command[],
+  removed: readonly ControlLine[],
+  provenance: Provenance,
+): Edit[] {
   const list = new EditList();
   for (const { offset, length } of removed) list.remove(offset, length);
   if (reading.provenance) list.remove(reading.provenance.offset, reading.provenance.length);

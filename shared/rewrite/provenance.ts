@@ -30,7 +30,10 @@ export interface Named {
 
 /** The one comment line, printable ASCII whatever the names hold, so that no text of a user can end the line. */
 export function provenanceLine(provenance: Provenance): string {
-  const json = JSON.stringify(provenance).replace(/[^\x20-\x7e]/g, (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, "0")}`);
+  const json = JSON.stringify(provenance).replace(
+    /[^\x20-\x7e]/g,
+    (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, "0")}`,
+  );
   return PROVENANCE_PREFIX + json;
 }
 
@@ -50,7 +53,8 @@ export function earlierTuning(reading: Reading, driven: readonly string[]): { or
   if (findings.some(({ code }) => code === "provenance-twice"))
     refuse("provenance-twice", "this file holds two provenance lines", provenance?.line);
   if (!provenance) {
-    if (ownLine) refuse("provenance-missing", "this file holds lines of an earlier tuning but no provenance line", ownLine.line);
+    if (ownLine)
+      refuse("provenance-missing", "this file holds lines of an earlier tuning but no provenance line", ownLine.line);
     return undefined;
   }
   const { original, channels } = (provenance.data ?? {}) as Partial<Provenance>;
@@ -58,6 +62,10 @@ export function earlierTuning(reading: Reading, driven: readonly string[]): { or
     return refuse("provenance-broken", "the provenance line of this file is damaged", provenance.line);
   const lost = channels.filter((id) => !driven.includes(id));
   if (lost.length > 0)
-    refuse("tuned-for-other-channels", `the earlier tuning of this file replaced the commands of ${lost.join(", ")}, which this profile does not drive`, provenance.line);
+    refuse(
+      "tuned-for-other-channels",
+      `the earlier tuning of this file replaced the commands of ${lost.join(", ")}, which this profile does not drive`,
+      provenance.line,
+    );
   return { original };
 }

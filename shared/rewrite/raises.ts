@@ -19,7 +19,13 @@ const SAME = 1e-6;
  *
  * @param planned the channel's writes, in file order
  */
-export function keepRaises(channel: Channel, machine: Machine, reading: Reading, limits: DutyLimits, planned: readonly Write[]): Raises {
+export function keepRaises(
+  channel: Channel,
+  machine: Machine,
+  reading: Reading,
+  limits: DutyLimits,
+  planned: readonly Write[],
+): Raises {
   const index = machine.channels.indexOf(channel);
   const lines = reading.controls.filter((line) => line.channel === index && line.does === "duty");
   const kept = new Set<ControlLine>();
@@ -65,4 +71,8 @@ export function keepRaises(channel: Channel, machine: Machine, reading: Reading,
   return { writes, kept };
 }
 
-const placeOf = ({ offset, line, timeS }: ControlLine): Pick<Write, "offset" | "line" | "timeS"> => ({ offset, line, timeS });
+const placeOf = ({ offset, line, timeS }: ControlLine): Pick<Write, "offset" | "line" | "timeS"> => ({
+  offset,
+  line,
+  timeS,
+});

@@ -63,7 +63,8 @@ function refuseSharedOutput({ outputs }: Reading, heater: Channel, advice: Advic
 }
 
 function refuseOnAfterEnd({ controls }: Reading, heater: Channel, index: number): void {
-  const after = (line: ControlLine): boolean => line.channel === index && line.layer === Number.POSITIVE_INFINITY && !line.ours;
+  const after = (line: ControlLine): boolean =>
+    line.channel === index && line.layer === Number.POSITIVE_INFINITY && !line.ours;
   const line = controls.find((control) => after(control) && control.does !== "configuration" && !(control.duty === 0));
   if (!line) return;
   throw new Refusal(

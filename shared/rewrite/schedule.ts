@@ -97,7 +97,12 @@ const merged = (resumed: Target[], inside: Target[]): Target[] =>
 const blocks = (machine: Machine, command: string): boolean =>
   machine.pauses.some((pause) => pause.blocking && pause.command.toUpperCase() === command.toUpperCase());
 
-function follow(channel: Channel, limits: DutyLimits, boundaries: Boundaries, { from, targets, end }: Stretch): Write[] {
+function follow(
+  channel: Channel,
+  limits: DutyLimits,
+  boundaries: Boundaries,
+  { from, targets, end }: Stretch,
+): Write[] {
   const { list } = boundaries;
   const driveSteps = dutySteps(channel.drive);
   const steps = Number.isFinite(limits.maxDutyPerS)
@@ -125,7 +130,13 @@ const BOOST_SLACK_S = 2;
  * A fan that starts from standstill gets full power for a moment. The boost stands at a boundary before the wanted one,
  * so that the planned duty is in force in time; where none is near, it is left to the firmware, with advice.
  */
-function withStartBoost(channel: Channel, limits: DutyLimits, writes: Write[], input: ScheduleInput, advice: Advice[]): Write[] {
+function withStartBoost(
+  channel: Channel,
+  limits: DutyLimits,
+  writes: Write[],
+  input: ScheduleInput,
+  advice: Advice[],
+): Write[] {
   if (channel.startBoostS === 0) return writes;
   const { boundaries, reading } = input;
   const out: Write[] = [];
@@ -136,7 +147,8 @@ function withStartBoost(channel: Channel, limits: DutyLimits, writes: Write[], i
     before = write.duty;
     if (starts) {
       const at = boundaries.list[boundaries.lastBefore(write.timeS - channel.startBoostS)];
-      const afterLast = out.length === 0 ? at.offset >= reading.window.start.offset : at.offset > out[out.length - 1].offset;
+      const afterLast =
+        out.length === 0 ? at.offset >= reading.window.start.offset : at.offset > out[out.length - 1].offset;
       const near = write.timeS - at.timeS <= channel.startBoostS + BOOST_SLACK_S;
       if (afterLast && near && at.offset < write.offset && at.timeS <= write.timeS - channel.startBoostS + SAME)
         out.push({ ...at, duty: limits.maxDuty, tag: "plan" });

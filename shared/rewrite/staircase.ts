@@ -49,7 +49,9 @@ export function staircase(
     const duties = duty(before, target.duty, rate.step);
     if (duties.length === 0) continue;
     const earliest = last ? boundaries.firstFrom(boundaries.list[last.at].timeS + rate.everyS, last.at) : from.at;
-    const places = onTime(boundaries, target.at, earliest, duties.length, rate.everyS) ?? late(boundaries, earliest, end, duties.length, rate.everyS);
+    const places =
+      onTime(boundaries, target.at, earliest, duties.length, rate.everyS) ??
+      late(boundaries, earliest, end, duties.length, rate.everyS);
     for (const [k, at] of places.entries()) steps.push({ at, duty: duties[k] });
   }
   return steps;
@@ -63,7 +65,13 @@ function duty(from: number, to: number, step: number): number[] {
 }
 
 /** Boundaries for `count` steps that end at `last`, or undefined when the first would stand before `earliest`. */
-function onTime(boundaries: Boundaries, last: number, earliest: number, count: number, everyS: number): number[] | undefined {
+function onTime(
+  boundaries: Boundaries,
+  last: number,
+  earliest: number,
+  count: number,
+  everyS: number,
+): number[] | undefined {
   if (last < earliest) return undefined;
   const places = [last];
   for (let k = 1; k < count; k++) {

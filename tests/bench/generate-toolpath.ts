@@ -25,7 +25,17 @@ export function* generateToolpath(bytes: number, dialect: Dialect = "plain"): Ge
     made += piece.length;
     return piece;
   };
-  yield out(format.lines(["M140 S120", "M104 S390", "G28", "M190 S120", "M109 S390", ...(dialect === "relative" ? ["G91", "M83"] : ["G90", "M83"]), "M107"]));
+  yield out(
+    format.lines([
+      "M140 S120",
+      "M104 S390",
+      "G28",
+      "M190 S120",
+      "M109 S390",
+      ...(dialect === "relative" ? ["G91", "M83"] : ["G90", "M83"]),
+      "M107",
+    ]),
+  );
   for (let layer = 1; made < bytes; layer++) yield out(layerText(layer, format, dialect));
   yield out(format.lines(["M107", "M104 S0", "M140 S0"]));
 }

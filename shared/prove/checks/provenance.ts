@@ -35,6 +35,7 @@ function lineProblem({ provenance, comparison, reading }: Evidence): string | un
   if (firstOwn !== line) return `Line ${firstOwn?.tunedLine} of the tuned file stands before the provenance line.`;
   if (line.from > offset || line.to < offset)
     return `The provenance line is line ${line.tunedLine} of the tuned file, not where the first layer begins.`;
+  if (line.oddEnd) return "The provenance line does not end as the lines of the file do.";
   return problem && `The provenance line ${problem}.`;
 }
 

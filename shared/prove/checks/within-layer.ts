@@ -2,6 +2,7 @@ import type { Channel } from "#shared/formats/machine.ts";
 import type { Check } from "#shared/formats/proof.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
+import { missingRaise } from "#shared/prove/missing-raise.ts";
 import { counted, dutyWords } from "#shared/prove/wording.ts";
 
 const TOLERANCE = 1e-9;
@@ -19,7 +20,8 @@ export function checkWithinLayer(evidence: Evidence): Check {
     for (const { source } of events) if (source === "kept" || source === "raise") count[source]++;
     const problem =
       hiddenProblem(evidence, channel, events) ??
-      raisesProblem(evidence, channel, events, keeps && channel.kind === "fan");
+      raisesProblem(evidence, channel, events, keeps && channel.kind === "fan") ??
+      (keeps && channel.kind === "fan" ? missingProblem(evidence, channel, index) : undefined);
     if (problem !== undefined) return verdict("within-layer", problem, "");
   }
   const found = keeps
@@ -36,6 +38,16 @@ function hiddenProblem(evidence: Evidence, { id }: Channel, events: readonly Dut
   return (
     hidden &&
     `\`${hidden.entry.code}\` at ${evidence.place(hidden.entry)} still sets ${id}, and does something else besides.`
+  );
+}
+
+function missingProblem(evidence: Evidence, channel: Channel, index: number): string | undefined {
+  const { reading, events } = evidence;
+  const limits = evidence.limits(channel);
+  const missing = missingRaise({ reading, limits }, channel, index, events[index]);
+  return (
+    missing &&
+    `\`${missing.code}\` at line ${missing.line} of the original (${evidence.layerText(missing.offset)}) raises ${channel.id}, and the tuned file does not.`
   );
 }
 

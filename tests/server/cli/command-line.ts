@@ -4,7 +4,7 @@ import { mkdtempSync, readdirSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
-import { onTestFinished } from "vitest";
+import { expect, onTestFinished } from "vitest";
 
 export const ROOT = fileURLToPath(new URL("../../..", import.meta.url));
 export const LAUNCH = join(ROOT, "server/cli/launch.mjs");
@@ -64,6 +64,9 @@ export function scratchFolder(): string {
 
 /** Names in a folder, hidden ones included, in order. */
 export const listFolder = (folder: string): string[] => readdirSync(folder).sort();
+
+/** Compares files byte by byte; comparing them as lists takes seconds. */
+export const expectSame = (bytes: Buffer, wanted: Buffer): void => expect(bytes.equals(wanted)).toBe(true);
 
 export const sha256 = (bytes: Uint8Array): string => createHash("sha256").update(bytes).digest("hex");
 

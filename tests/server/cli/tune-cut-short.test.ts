@@ -5,6 +5,7 @@ import { setTimeout as wait } from "node:timers/promises";
 import { beforeAll, describe, expect, test } from "vitest";
 import { parseProof } from "#shared/formats/proof.ts";
 import {
+  expectSame,
   LAUNCH,
   listFolder,
   outcome,
@@ -136,5 +137,5 @@ test("two runs that write the same OUT at the same time both succeed, and one wh
   expect(listFolder(folder)).toEqual(["tuned.gcode"]);
   const single = join(scratchFolder(), "tuned.gcode");
   await quenchline([...argv.slice(0, -1), single]);
-  expect(readFileSync(join(folder, "tuned.gcode"))).toEqual(readFileSync(single));
+  expectSame(readFileSync(join(folder, "tuned.gcode")), readFileSync(single));
 });

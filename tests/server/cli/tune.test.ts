@@ -5,6 +5,7 @@ import { describe, expect, test } from "vitest";
 import { parsePlan } from "#shared/formats/plan.ts";
 import { parseProof } from "#shared/formats/proof.ts";
 import {
+  expectSame,
   listFolder,
   outcome,
   quenchline,
@@ -70,12 +71,12 @@ describe("--out", () => {
       expect(status).toBe(0);
       return readFileSync(out);
     };
-    expect(await run("-", "1.gcode", readFileSync(SEAL_RING))).toEqual(tuned);
-    expect(await run("-", "2.gcode", readFileSync(packed))).toEqual(tuned);
-    expect(await run(packed, "3.gcode")).toEqual(tuned);
+    expectSame(await run("-", "1.gcode", readFileSync(SEAL_RING)), tuned);
+    expectSame(await run("-", "2.gcode", readFileSync(packed)), tuned);
+    expectSame(await run(packed, "3.gcode"), tuned);
     const once = await run(SEAL_RING, "4.gcode.gz");
-    expect(gunzipSync(once)).toEqual(tuned);
-    expect(await run("-", "5.gcode.gz", readFileSync(SEAL_RING))).toEqual(once);
+    expectSame(gunzipSync(once), tuned);
+    expectSame(await run("-", "5.gcode.gz", readFileSync(SEAL_RING)), once);
   });
 
   test("a named pipe is read as often as needed", async () => {
@@ -86,7 +87,7 @@ describe("--out", () => {
     const { status } = await quenchline(["tune", pipe, ...DOCUMENTS, "--out", out]);
     await writing;
     expect(status).toBe(0);
-    expect(readFileSync(out)).toEqual(tuned);
+    expectSame(readFileSync(out), tuned);
   });
 
   test("an older file is replaced and passes on its permissions; a link stays a link", async () => {
@@ -96,7 +97,7 @@ describe("--out", () => {
     chmodSync(older, 0o640);
     symlinkSync(older, link);
     expect((await quenchline(["tune", SEAL_RING, ...DOCUMENTS, "--out", link])).status).toBe(0);
-    expect(readFileSync(older)).toEqual(tuned);
+    expectSame(readFileSync(older), tuned);
     expect(statSync(older).mode & 0o777).toBe(0o640);
     expect(listFolder(folder)).toEqual(["link.gcode", "older.gcode", "tuned.gcode"]);
   });
@@ -112,7 +113,7 @@ describe("--in-place", () => {
       const { status, stderr } = await quenchline(["tune", part, ...DOCUMENTS, "--in-place"]);
       expect(stderr).toBe("");
       expect(status).toBe(0);
-      expect(readFileSync(part)).toEqual(tuned);
+      expectSame(readFileSync(part), tuned);
     }
     expect(statSync(part).mode & 0o777).toBe(0o664);
     expect(listFolder(folder)).toEqual(["part.gcode", "tuned.gcode"]);
@@ -123,7 +124,7 @@ describe("--in-place", () => {
     const part = join(folder, "part.gcode.gz");
     writeFileSync(part, gzipSync(readFileSync(SEAL_RING)));
     expect((await quenchline(["tune", part, ...DOCUMENTS, "--in-place"])).status).toBe(0);
-    expect(gunzipSync(readFileSync(part))).toEqual(tuned);
+    expectSame(gunzipSync(readFileSync(part)), tuned);
   });
 });
 
@@ -155,7 +156,7 @@ describe("what can't be right is told before any work is done, with status 2", (
     expect(stdout).toBe("");
     expect(status).toBe(2);
     expect(listFolder(cwd)).toEqual(["machine.json", "part.gcode", "same.gcode"]);
-    expect(readFileSync(join(cwd, "part.gcode"))).toEqual(readFileSync(SEAL_RING));
+    expectSame(readFileSync(join(cwd, "part.gcode")), readFileSync(SEAL_RING));
   });
 
   test("standard input has no place to be put back in", async () => {

@@ -47,7 +47,10 @@ function ownCommands(reading: Reading, machine: Machine, profile: Profile): Map<
   for (const [index, channel] of machine.channels.entries()) {
     if (!(channel.id in plan.layers[0].duty)) continue;
     const write = (duty: number): string => commandFor(channel.drive, duty);
-    const kept = profile.withinLayer === "keep-raises" && channel.kind === "fan" ? reading.controls.filter((line) => line.channel === index && line.layer >= 1 && Number.isFinite(line.layer)) : [];
+    const kept =
+      profile.withinLayer === "keep-raises" && channel.kind === "fan"
+        ? reading.controls.filter((line) => line.channel === index && line.layer >= 1 && Number.isFinite(line.layer))
+        : [];
     let inForce = -1;
     for (const [k, layer] of layers.entries()) {
       const duty = plan.layers[k].duty[channel.id];
@@ -55,7 +58,8 @@ function ownCommands(reading: Reading, machine: Machine, profile: Profile): Map<
       inForce = duty;
       let raised = false;
       for (const line of kept.filter((control) => control.layer === layer.index && control.offset > layer.firstByte)) {
-        if (line.duty > duty && line.duty > channel.maxDuty) put(line.offset, write(Math.floor(channel.maxDuty * 255) / 255), ";ql+");
+        if (line.duty > duty && line.duty > channel.maxDuty)
+          put(line.offset, write(Math.floor(channel.maxDuty * dutySteps(channel.drive)) / dutySteps(channel.drive)), ";ql+");
         else if (line.duty <= duty && raised) put(line.offset, write(duty), ";ql=");
         raised = line.duty > duty;
         if (raised) inForce = -1;
@@ -87,7 +91,8 @@ function goneLines(reading: Reading, machine: Machine, profile: Profile): Set<nu
     const { id, kind, maxDuty } = machine.channels[channel];
     if (layer < 1 || layer > reading.layers.length || does !== "duty" || !(id in plan.layers[0].duty)) continue;
     const inBody = offset > reading.layers[layer - 1].firstByte;
-    const stays = profile.withinLayer === "keep-raises" && kind === "fan" && inBody && duty > plan.layers[layer - 1].duty[id];
+    const stays =
+      profile.withinLayer === "keep-raises" && kind === "fan" && inBody && duty > plan.layers[layer - 1].duty[id];
     if (!stays || duty > maxDuty) gone.add(offset);
   }
   return gone;
@@ -113,7 +118,9 @@ export function renumbered(lines: readonly string[]): string[] {
 
 /** The lines with a provenance line that fits them. */
 export function sealed(lines: readonly string[], reading: Reading, machine: Machine, profile: Profile): string[] {
-  const driven = machine.channels.filter(({ id }) => profile.zones.some((zone) => [...zone.cooling, ...zone.heating].some((rule) => rule.channel === id)));
+  const driven = machine.channels.filter(({ id }) =>
+    profile.zones.some((zone) => [...zone.cooling, ...zone.heating].some((rule) => rule.channel === id)),
+  );
   const words = { plan: ";ql", raise: ";ql+", restore: ";ql=" };
   const raises = profile.withinLayer === "keep-raises" && /^(M106 S|SET_FAN_SPEED FAN=part )/;
   let begun = false;
@@ -124,9 +131,16 @@ export function sealed(lines: readonly string[], reading: Reading, machine: Mach
   for (const [k, line] of lines.entries()) {
     begun ||= isProvenance(line);
     if (isProvenance(line)) continue;
-    const code = line.replace(/[\r\n]+$/, "").replace(/;.*$/, "").trim().replace(/^N\d+ /, "").replace(/\*\d+$/, "");
+    const code = line
+      .replace(/[\r\n]+$/, "")
+      .replace(/;.*$/, "")
+      .trim()
+      .replace(/^N\d+ /, "")
+      .replace(/\*\d+$/, "");
     if (isOwn(line)) {
-      const tag = Object.entries(words).find(([, comment]) => line.replace(/[\r\n]+$/, "").endsWith(` ${comment}`))?.[0];
+      const tag = Object.entries(words).find(([, comment]) =>
+        line.replace(/[\r\n]+$/, "").endsWith(` ${comment}`),
+      )?.[0];
       text += `${kept} ${tag} ${code}\n`;
       commands++;
       continue;

@@ -34,7 +34,14 @@ export interface Files {
   expected?: ProveInput["expected"];
 }
 
-export function proveFiles({ original, tuned, machine, profile, chunk = 1 << 16, ...rest }: Files): Promise<ProofDocument> {
+export function proveFiles({
+  original,
+  tuned,
+  machine,
+  profile,
+  chunk = 1 << 16,
+  ...rest
+}: Files): Promise<ProofDocument> {
   return prove({
     original: chunksOf(original, chunk),
     tuned: chunksOf(tuned, chunk),

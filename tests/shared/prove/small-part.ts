@@ -27,9 +27,20 @@ export function smallPart(dialect: Dialect = {}): string {
 
 function partLines({ pause, named = false, bareEnd = false }: Dialect): string[] {
   const fan = (s: number): string => (named ? `SET_FAN_SPEED FAN=part SPEED=${s / 256}` : `M106 S${s}`);
-  const lines = ["; a small square, caf\xe9", "G21", "G90", "M82", "M104 S250", "G28", "M109 S400", "M106 P1 S90", fan(0), "G92 E0"];
+  const lines = [
+    "; a small square, caf\xe9",
+    "G21",
+    "G90",
+    "M82",
+    "M104 S250",
+    "G28",
+    "M109 S400",
+    "M106 P1 S90",
+    fan(0),
+    "G92 E0",
+  ];
   let e = 0;
-  const lay = (x: number, y: number): number => lines.push(`G1 X${x} Y${y} E${(e += 0.8).toFixed(2)} F1500`);
+  const lay = (x: number, y: number): number => lines.push(`G1 X${x} Y${y} E${((e += 0.8)).toFixed(2)} F1500`);
   for (let layer = 1; layer <= LAYERS; layer++) {
     lines.push(`;LAYER:${layer - 1}`, `G0 X10 Y10 Z${(layer * 0.2).toFixed(1)} F6000`);
     lay(40, 10);
@@ -45,7 +56,8 @@ function partLines({ pause, named = false, bareEnd = false }: Dialect): string[]
     lines.push("M117 layer done, M106 S1", "G0 X20 Y20");
     lay(30, 30);
   }
-  if (!bareEnd) lines.push("G0 Z20", named ? "SET_FAN_SPEED FAN=part SPEED=0" : "M107", "M104 S0", "; filament used: 1 m");
+  if (!bareEnd)
+    lines.push("G0 Z20", named ? "SET_FAN_SPEED FAN=part SPEED=0" : "M107", "M104 S0", "; filament used: 1 m");
   return lines;
 }
 

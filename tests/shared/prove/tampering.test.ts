@@ -1,0 +1,58 @@
+import { describe, expect, test } from "vitest";
+import { plainTuning } from "#tests/shared/prove/plain-tuning.ts";
+import { bytesOf, failures, proveFiles, readBytes } from "#tests/shared/prove/proving.ts";
+import { type Dialect, smallMachine, smallPart, smallProfile } from "#tests/shared/prove/small-part.ts";
+import { provenanceTamperings, resealedTamperings, type Tampering, tamperings } from "#tests/shared/prove/tampering.ts";
+
+type Case = Dialect & { withinLayer?: "replace" | "keep-raises" };
+
+const CASES: [string, Case][] = [
+  ["line feeds", {}],
+  ["carriage returns and line feeds", { newline: "\r\n" }],
+  ["carriage returns alone", { newline: "\r" }],
+  ["numbered", { numbered: true }],
+  ["numbered, with carriage returns", { numbered: true, newline: "\r\n", withinLayer: "keep-raises" }],
+  ["no final line end", { finalNewline: false }],
+  ["no final line end, and our line is the last", { finalNewline: false, bareEnd: true }],
+  ["a byte order mark", { byteOrderMark: true }],
+  ["raises kept", { withinLayer: "keep-raises" }],
+  ["a blocking pause", { pause: "M0" }],
+  ["a pause that does not block", { pause: "M600" }],
+  ["named outputs", { named: true, withinLayer: "keep-raises" }],
+];
+
+describe.each(CASES)("%s", (_, { withinLayer = "replace", ...dialect }) => {
+  const machine = smallMachine(dialect);
+  const profile = smallProfile({ withinLayer });
+  const original = smallPart(dialect);
+  const tuned = plainTuning(original, machine, profile);
+  const reading = readBytes(bytesOf(original), machine);
+
+  const proofOf = (text: string) =>
+    proveFiles({ original: bytesOf(original), tuned: bytesOf(text), machine, profile, reading });
+
+  const missed = async (list: readonly Tampering[]): Promise<string[]> => {
+    const names: string[] = [];
+    for (const tampering of list) if ((await proofOf(tampering.tuned)).passed) names.push(tampering.name);
+    return names;
+  };
+
+  test("the tuned file as it was written passes", async () => {
+    expect(failures(await proofOf(tuned))).toEqual([]);
+  });
+
+  const single = tamperings(tuned, dialect.numbered === true);
+  test(`all ${single.length} tamperings with a single line are caught`, async () => {
+    expect(await missed(single)).toEqual([]);
+  });
+
+  const resealed = resealedTamperings(original, tuned, machine, profile);
+  test(`all ${resealed.length} tamperings with a line of ours are caught though the seal fits`, async () => {
+    expect(await missed(resealed)).toEqual([]);
+  });
+
+  const provenance = provenanceTamperings(tuned);
+  test(`all ${provenance.length} changes of one character of the provenance line are caught`, async () => {
+    expect(await missed(provenance)).toEqual([]);
+  });
+});
