@@ -31,6 +31,8 @@ export async function bundle(entries, outDir) {
     target: "node20",
     packages: "external",
     sourcemap: true,
+    // Named constants become literals: the reader runs a third slower without.
+    minifySyntax: true,
     logLevel: "silent",
   });
 }

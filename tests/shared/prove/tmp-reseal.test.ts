@@ -14,7 +14,7 @@ test("x", async () => {
     const original = readFileSync(new URL(`samples/${f}.gcode`, ROOT));
     const tuned = tuneBytes(original, machine, profile);
     const reading = readBytes(original, machine);
-    console.log(f, failures(await proveFiles({ original, tuned, machine, profile, reading })), reading.travels.count);
+    console.log(linesOf(tuned.toString("latin1")).map((l,k)=>[k+1,l.trim()]).filter(([k,l])=>/P2.*;ql/.test(l as string)).slice(0,60).map(x=>x.join(" ")).join("\n")); console.log(f, failures(await proveFiles({ original, tuned, machine, profile, reading })), reading.travels.count);
     if (reading.file.numbered) continue;
     const lines = linesOf(tuned.toString("latin1"));
     const own = lines.map((l, k) => (/;ql[+=]?[\r\n]*$/.test(l) ? k : -1)).filter((k) => k >= 0);

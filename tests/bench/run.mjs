@@ -1,0 +1,12 @@
+// `npm run bench`: bundles the bench as the product is bundled, and runs it. `-- --quick` leaves the 1 GB rows out.
+import { spawnSync } from "node:child_process";
+import { join } from "node:path";
+import { bundle, ROOT } from "../../server/bundle.mjs";
+
+const folder = join(ROOT, "node_modules", ".cache", "quenchline-bench");
+await bundle({ bench: "tests/bench/bench.ts", job: "tests/bench/job.ts" }, folder);
+const { status } = spawnSync(process.execPath, ["--expose-gc", join(folder, "bench.mjs"), ...process.argv.slice(2)], {
+  cwd: ROOT,
+  stdio: "inherit",
+});
+process.exit(status ?? 1);
