@@ -21,7 +21,7 @@ export async function* gunzipped(
   rest: AsyncIterable<Uint8Array>,
 ): AsyncGenerator<Uint8Array, void, undefined> {
   if (!isGzip(head)) throw broken("it does not begin as gzip does");
-  const gunzip = createGunzip({ chunkSize: 256 * 1024 });
+  const gunzip = createGunzip({ chunkSize: 64 * 1024 });
   const feeding = pipeline(Readable.from(copies(head, rest), { highWaterMark: 1 }), gunzip);
   // Its errors also end the loop below.
   feeding.catch(() => {});

@@ -84,6 +84,13 @@ export class Evidence {
     return offset >= start.offset && offset < end.offset;
   }
 
+  /** What the file itself has set a channel to before the window; 0 where it sets nothing. */
+  dutyBefore(index: number): number {
+    const { offset } = this.reading.window.start;
+    const before = this.events[index].filter(({ entry }) => entry.what === "file" && entry.from < offset);
+    return before[before.length - 1]?.duty ?? 0;
+  }
+
   /** The machine's limits, narrowed by the profile where there is one. */
   limits(channel: Channel): DutyLimits {
     if (this.profile) {

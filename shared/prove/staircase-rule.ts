@@ -20,6 +20,7 @@ export class StaircaseRule {
   readonly step: number;
   readonly everyS: number;
 
+  private readonly initial: number;
   private readonly events: readonly DutyEvent[];
   private readonly targets: readonly Target[];
   private readonly instants: Instants;
@@ -27,12 +28,14 @@ export class StaircaseRule {
   private readonly halfStep: number;
 
   /**
+   * @param initial duty before the first event
    * @param events what the plan's lines set, in order
    * @param targets ascending
    * @param pauses bytes at which pauses stand
    */
   constructor(
     rate: { maxDutyPerS: number; driveSteps: number },
+    initial: number,
     events: readonly DutyEvent[],
     targets: readonly Target[],
     instants: Instants,
@@ -42,34 +45,48 @@ export class StaircaseRule {
     this.step = Math.max(1, Math.floor(maxDutyPerS * driveSteps + SAME_S)) / driveSteps;
     this.everyS = Math.max(1, this.step / maxDutyPerS);
     this.halfStep = 0.5 / driveSteps;
+    this.initial = initial;
     this.events = events;
     this.targets = targets;
     this.instants = instants;
     this.pauses = pauses;
   }
 
-  /** The duty that event `k` sets is in force where target `i` wants another. */
+  /** The duty that event `k` sets is in force where target `i` wants another, and every step to it is made at once. */
   behind(k: number, i: number): boolean {
-    const now = this.events[k];
-    const { offset, duty } = this.targets[i];
-    const first = this.firstAfter(k);
-    const pause = this.pauses.find((at) => at >= offset) ?? this.instants.end;
-    const until = Math.min(this.targets[i + 1]?.offset ?? this.instants.end, pause);
-    if (first === undefined || first >= until) return true;
-    const next = this.events[k + 1];
-    if (!next || next.entry.from > first || next.entry.to < first) return false;
-    const wanted = duty - now.duty;
-    const change = next.duty - now.duty;
+    const { events, targets, instants } = this;
+    const { offset, duty } = targets[i];
+    const { from, to } = events[k].entry;
+    if (from <= offset && offset <= to && !this.isFullStep(this.dutyBefore(k), k, duty)) return false;
+    const pause = this.pauses.find((at) => at >= offset) ?? instants.end;
+    const until = Math.min(targets[i + 1]?.offset ?? instants.end, pause);
+    for (let at = k; Math.abs(events[at].duty - duty) > this.halfStep; at++) {
+      const first = this.firstAfter(at);
+      if (first === undefined || first >= until) return true;
+      const next = events[at + 1];
+      if (!next || next.entry.from > first || next.entry.to < first) return false;
+      if (!this.isFullStep(events[at].duty, at + 1, duty)) return false;
+    }
+    return true;
+  }
+
+  /** Event `k` goes from a duty toward the wanted one by as much as is allowed at once. */
+  private isFullStep(from: number, k: number, wanted: number): boolean {
+    const change = this.events[k].duty - from;
+    const all = wanted - from;
     return (
-      Math.sign(change) === Math.sign(wanted) &&
-      Math.abs(change) > Math.min(this.step, Math.abs(wanted)) - this.halfStep
+      Math.sign(change) === Math.sign(all) && Math.abs(change) > Math.min(this.step, Math.abs(all)) - this.halfStep
     );
+  }
+
+  private dutyBefore(k: number): number {
+    return k === 0 ? this.initial : this.events[k - 1].duty;
   }
 
   /** Event `k`, at or behind target `i`, leads to what a later target wants. */
   ahead(k: number, i: number): boolean {
     const { events, targets } = this;
-    const direction = Math.sign(events[k].duty - (events[k - 1]?.duty ?? 0));
+    const direction = Math.sign(events[k].duty - this.dutyBefore(k));
     if (direction === 0) return false;
     let at = k;
     for (let later = i + 1; later < targets.length; later++) {

@@ -24,7 +24,8 @@ export function checkPlan(evidence: Evidence, profile: Profile, plan: Plan | str
   for (const { channel, index } of evidence.channels()) {
     const targets = targetsOf(channel, { reading, machine, profile, plan, instants });
     const events = evidence.events[index].filter(({ source }) => source === "plan");
-    const problem = new Course(evidence, channel, events, targets, instants).problem();
+    const initial = evidence.dutyBefore(index);
+    const problem = new Course(evidence, channel, initial, events, targets, instants).problem();
     if (problem !== undefined) return verdict("plan", problem, "");
   }
   const names = evidence.channels().map(({ channel }) => channel.id);
@@ -45,6 +46,7 @@ class Course {
   constructor(
     evidence: Evidence,
     channel: Channel,
+    initial: number,
     events: readonly DutyEvent[],
     targets: readonly Target[],
     instants: Instants,
@@ -59,7 +61,7 @@ class Course {
     this.halfStep = 0.5 / driveSteps;
     this.maxDuty = maxDuty;
     this.staircase = Number.isFinite(maxDutyPerS)
-      ? new StaircaseRule({ maxDutyPerS, driveSteps }, events, targets, instants, pauses)
+      ? new StaircaseRule({ maxDutyPerS, driveSteps }, initial, events, targets, instants, pauses)
       : undefined;
   }
 
@@ -112,9 +114,8 @@ class Course {
       if (this.evidence.pauses.some(({ from }) => entry.from <= from && from <= entry.to)) return true;
     }
     if (!this.staircase) return false;
-    const toward = (wanted: number | undefined): boolean =>
-      wanted !== undefined && Math.abs(duty - wanted) < Math.abs(before - wanted);
-    return toward(this.targets[i].duty) || toward(this.targets[i + 1]?.duty) || this.staircase.ahead(k, i);
+    const wanted = this.targets[i].duty;
+    return Math.abs(duty - wanted) < Math.abs(before - wanted) || this.staircase.ahead(k, i);
   }
 
   /** A fan that starts from standstill runs at its highest duty for a moment, before the duty that is wanted. */

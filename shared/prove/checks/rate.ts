@@ -10,10 +10,9 @@ const SAME_S = 1e-6;
 const SAME = 1e-9;
 
 /**
- * The largest change per second is held, from command to command and over every second as a whole, to half a step of
- * the output; where it is less than one step, single steps stand further apart. A heater may fall at once, to idle at a
- * pause and off behind the last layer. A fan may jump over its dead band, to its start boost, and into and out of a
- * raise of the file.
+ * The largest change per second is held, over every second as a whole; where it is less than a step of the output,
+ * single steps stand further apart. A heater may fall at once, to idle at a pause and off behind the last layer. A fan
+ * may jump over its dead band, to its start boost, and into and out of a raise of the file.
  */
 export function checkRate(evidence: Evidence): Check {
   const said: string[] = [];
@@ -34,28 +33,32 @@ function problemOf(
   maxDutyPerS: number,
 ): string | undefined {
   const step = 1 / dutySteps(channel.drive);
-  const atOnce = Math.max(maxDutyPerS, step) + step / 2 + SAME;
   let duty = 0;
   let sinceS = Number.NEGATIVE_INFINITY;
-  /** what was set within the last second, oldest first, and the duty in force before that */
-  let recent: { timeS: number; before: number }[] = [];
+  /** the file's own duty may lie between two steps */
+  let slack = step / 2;
+  let recent: { timeS: number; change: number }[] = [];
   for (const event of events) {
     const { entry, timeS, source } = event;
     const before = duty;
     if (source === "file") duty = event.duty;
     if (source !== "plan" || event.duty === before) continue;
     duty = event.duty;
-    const elapsedS = Math.max(1, timeS - sinceS);
+    const elapsedS = timeS - sinceS;
     sinceS = timeS;
     if (isExempt(evidence, channel, event, before)) {
       recent = [];
+      slack = 0;
       continue;
     }
-    recent = recent.filter((change) => change.timeS > timeS - 1 + SAME_S);
-    recent.push({ timeS, before });
-    const inASecond = Math.abs(duty - recent[0].before);
-    if (inASecond > atOnce || Math.abs(duty - before) > maxDutyPerS * (elapsedS + SAME_S) + step / 2 + SAME)
-      return `${channel.id} changes from ${dutyWords(recent[0].before)} to ${dutyWords(duty)} within a second at ${evidence.place(entry)}; at most ${maxDutyPerS} a second is allowed.`;
+    const change = Math.abs(duty - before);
+    recent = recent.filter((earlier) => earlier.timeS > timeS - 1 + SAME_S);
+    recent.push({ timeS, change });
+    const inASecond = recent.reduce((sum, earlier) => sum + earlier.change, 0);
+    const slowSteps = change < step + SAME && maxDutyPerS * (elapsedS + SAME_S) >= change;
+    if (inASecond > maxDutyPerS + slack + SAME && !slowSteps)
+      return `${channel.id} changes from ${dutyWords(before)} to ${dutyWords(duty)} at ${evidence.place(entry)}, together ${dutyWords(inASecond)} within a second; ${maxDutyPerS} is allowed.`;
+    slack = 0;
   }
   return undefined;
 }

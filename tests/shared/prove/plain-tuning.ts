@@ -59,7 +59,11 @@ function ownCommands(reading: Reading, machine: Machine, profile: Profile): Map<
       let raised = false;
       for (const line of kept.filter((control) => control.layer === layer.index && control.offset > layer.firstByte)) {
         if (line.duty > duty && line.duty > channel.maxDuty)
-          put(line.offset, write(Math.floor(channel.maxDuty * dutySteps(channel.drive)) / dutySteps(channel.drive)), ";ql+");
+          put(
+            line.offset,
+            write(Math.floor(channel.maxDuty * dutySteps(channel.drive)) / dutySteps(channel.drive)),
+            ";ql+",
+          );
         else if (line.duty <= duty && raised) put(line.offset, write(duty), ";ql=");
         raised = line.duty > duty;
         if (raised) inForce = -1;
