@@ -1,7 +1,6 @@
-import { Readable } from "node:stream";
-import { pipeline } from "node:stream/promises";
-import { createGunzip } from "node:zlib";
+import { createGunzip, type Gunzip } from "node:zlib";
 import { errorCode } from "#server/cli/exit.ts";
+import { writeWhole } from "#server/cli/write-whole.ts";
 import { Refusal } from "#shared/refusal.ts";
 
 /** Whether a file begins as gzip does. */
@@ -22,22 +21,25 @@ export async function* gunzipped(
 ): AsyncGenerator<Uint8Array, void, undefined> {
   if (!isGzip(head)) throw broken("it does not begin as gzip does");
   const gunzip = createGunzip({ chunkSize: 64 * 1024 });
-  const feeding = pipeline(Readable.from(copies(head, rest), { highWaterMark: 1 }), gunzip);
-  // Its errors also end the loop below.
-  feeding.catch(() => {});
+  const feeding = feed(gunzip, head, rest);
   try {
     for await (const chunk of gunzip) yield chunk;
   } catch (error) {
     throw errorCode(error)?.startsWith("Z_") ? broken((error as Error).message) : error;
   } finally {
-    await feeding.catch(() => {});
+    await feeding;
   }
 }
 
-/** The unpacker works on a chunk while the next one is read. */
-async function* copies(head: Uint8Array, rest: AsyncIterable<Uint8Array>): AsyncGenerator<Uint8Array, void, undefined> {
-  yield head.slice();
-  for await (const chunk of rest) yield chunk.slice();
+/** Never throws: what goes wrong ends the stream for its reader, and a reader that has left ends the feeding. */
+async function feed(gunzip: Gunzip, head: Uint8Array, rest: AsyncIterable<Uint8Array>): Promise<void> {
+  try {
+    await writeWhole(gunzip, head);
+    for await (const chunk of rest) await writeWhole(gunzip, chunk);
+    gunzip.end();
+  } catch (error) {
+    gunzip.destroy(error as Error);
+  }
 }
 
 function broken(why: string): Refusal {

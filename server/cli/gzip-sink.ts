@@ -1,6 +1,6 @@
-import { once } from "node:events";
 import { pipeline } from "node:stream/promises";
 import { createGzip } from "node:zlib";
+import { writeWhole } from "#server/cli/write-whole.ts";
 
 /** Offset of the byte that names the operating system, and its value for "unknown": the same bytes everywhere. */
 const SYSTEM_AT = 9;
@@ -12,7 +12,8 @@ const LEVEL = 4;
 export class GzipSink {
   private readonly gzip = createGzip({ level: LEVEL, chunkSize: 64 * 1024 });
   private readonly finished: Promise<void>;
-  private full = false;
+  private staged = new Uint8Array(1 << 20);
+  private filled = 0;
 
   /** @param write takes the packed bytes */
   constructor(write: (bytes: Uint8Array) => void) {
@@ -24,22 +25,36 @@ export class GzipSink {
         write(chunk);
       }
     });
-    // Reported by ready() or end().
+    // Thrown by ready() or end().
     this.finished.catch(() => {});
   }
 
   /** @param bytes are copied */
   write(bytes: Uint8Array): void {
-    this.full = !this.gzip.write(bytes.slice());
+    const filled = this.filled + bytes.length;
+    if (filled > this.staged.length) {
+      const wider = new Uint8Array(2 * filled);
+      wider.set(this.staged.subarray(0, this.filled));
+      this.staged = wider;
+    }
+    this.staged.set(bytes, this.filled);
+    this.filled = filled;
   }
 
-  /** Waits until there is room for more. */
+  /** Packs what was written so far; to be awaited before more is written. */
   async ready(): Promise<void> {
-    if (this.full) await Promise.race([once(this.gzip, "drain"), this.finished]);
-    this.full = false;
+    if (this.filled === 0) return;
+    try {
+      await writeWhole(this.gzip, this.staged.subarray(0, this.filled));
+    } catch {
+      // The reason is what stopped the taker.
+      await this.finished;
+    }
+    this.filled = 0;
   }
 
   async end(): Promise<void> {
+    await this.ready();
     this.gzip.end();
     await this.finished;
   }

@@ -74,7 +74,8 @@ function raisesProblem(
     if (source === "restore" && (!raised || Math.abs(duty - planned) > TOLERANCE))
       return `${place} should end a raise of ${id} at ${dutyWords(planned)}.`;
     const raises = source === "kept" || source === "raise";
-    if (raises && !(duty > planned + TOLERANCE))
+    // Where the plan is at the limit already, a raise that is cut to the limit does not lie above it.
+    if (raises && !(duty > planned + (source === "kept" ? TOLERANCE : -TOLERANCE)))
       return `${place} does not lie above ${dutyWords(planned)}, which is the plan of ${id} there.`;
     raised = raises ? event : undefined;
   }

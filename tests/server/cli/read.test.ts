@@ -158,6 +158,13 @@ describe("a refused input ends with status 3 and says what, where and what to do
     expect(refusal.stderr).toContain("where: standard input, line 100");
   });
 
+  test("a packed file that goes on long after the damaged line ends at once, too", async () => {
+    const lines = readFileSync(sample("valve-plate.gcode"), "latin1").repeat(5).split("\n");
+    lines[999] = lines[999].replace(/\d(?= ?\*|\*)/, (digit) => String((Number(digit) + 1) % 10));
+    const input = gzipSync(Buffer.from(lines.join("\n"), "latin1"), { level: 1 });
+    expect(await refused("-", { input })).toMatchObject({ code: "checksum", line: 1000 });
+  });
+
   test("what is not G-code, or empty, or extrudes nothing", async () => {
     expect(await refused("-", { input: "PK\u0003\u0004 and so on" })).toMatchObject({ code: "not-gcode" });
     expect(await refused("-", { input: "" })).toMatchObject({ code: "empty" });

@@ -1,0 +1,24 @@
+import { readFileSync } from "node:fs";
+import { type Machine, parseMachine } from "#shared/formats/machine.ts";
+
+/** A machine document with every optional field written out. */
+const document = JSON.parse(readFileSync(new URL("../../samples/machines/tern.json", import.meta.url), "utf8"));
+
+/** What a test changes of the machine: fields of `motion`, and the channels or pauses as a whole. */
+export interface Changes {
+  motion?: object;
+  channels?: object[];
+  pauses?: object[];
+}
+
+/** The sample machine that the reference timings were made with, or one that differs from it in a few fields. */
+export const tern = ({ motion = {}, ...lists }: Changes = {}): Machine =>
+  parseMachine({ ...document, ...lists, motion: { ...document.motion, ...motion } });
+
+/** The same machine cornering by another rule. */
+export const ternCornering = (cornering: object, motion: object = {}): Machine =>
+  tern({ motion: { cornering, ...motion } });
+
+export const SQUARE_CORNER = { rule: "square-corner-velocity", speedMmS: 5, cruiseRatio: 0, extruderStepMmS: 1 };
+export const DEVIATION = { rule: "junction-deviation", deviationMm: 0.013 };
+export const JERK = { rule: "axis-jerk", jerkMmS: { x: 8, y: 8, z: 0.4, e: 5 } };
