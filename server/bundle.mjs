@@ -41,7 +41,7 @@ export async function bundle(entries, outDir) {
  * The bundled command line, made anew only when a source has changed. A bundle is named after the state of the sources
  * it was made from and appears under that name complete: launches at the same time can't disturb one another.
  *
- * @returns {Promise<string>} path of the module to import
+ * @returns {Promise<string>} path of the program, which runs when it is imported
  */
 export async function freshCommandLine() {
   const folder = join(CACHE, fingerprint());

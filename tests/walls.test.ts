@@ -50,23 +50,30 @@ test("shared/ imports only shared/ and zod", () => {
 });
 
 test("in shared/ the order is the pipeline: a folder imports only from those before it", () => {
-  const backward = importsBelow("shared").filter(({ file, from }) => from.startsWith("#shared/") && stage(from) > stage(file));
+  const backward = importsBelow("shared").filter(
+    ({ file, from }) => from.startsWith("#shared/") && stage(from) > stage(file),
+  );
   expect(backward.map(show)).toEqual([]);
 });
 
 test("the proof shares no code with the rewriter, and the rewriter none with the proof", () => {
   const crossing = [...importsBelow("shared/prove"), ...importsBelow("shared/rewrite")].filter(
-    ({ file, from }) => (file.includes("prove") && from.includes("/rewrite/")) || (file.includes("rewrite") && from.includes("/prove/")),
+    ({ file, from }) =>
+      (file.includes("prove") && from.includes("/rewrite/")) || (file.includes("rewrite") && from.includes("/prove/")),
   );
   expect(crossing.map(show)).toEqual([]);
 });
 
 test("every folder of shared/ has its place in the pipeline", () => {
-  const folders = readdirSync(join(root, "shared")).filter((name) => statSync(join(root, "shared", name)).isDirectory());
+  const folders = readdirSync(join(root, "shared")).filter((name) =>
+    statSync(join(root, "shared", name)).isDirectory(),
+  );
   expect(folders.filter((name) => stage(name) < 0)).toEqual([]);
 });
 
 test("the product never imports its tests or samples", () => {
-  const wrong = [...importsBelow("shared"), ...importsBelow("server")].filter(({ from }) => /^#(tests|samples)\//.test(from));
+  const wrong = [...importsBelow("shared"), ...importsBelow("server")].filter(({ from }) =>
+    /^#(tests|samples)\//.test(from),
+  );
   expect(wrong.map(show)).toEqual([]);
 });

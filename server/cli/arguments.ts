@@ -4,7 +4,7 @@ import { UsageError } from "#server/cli/exit.ts";
 const TEXT = { type: "string" } as const;
 const FLAG = { type: "boolean" } as const;
 
-/** The options of every command, as in the table of the README. */
+/** What each command knows, and no other option. */
 const OPTIONS = {
   read: { machine: TEXT, json: FLAG },
   tune: {
@@ -26,7 +26,7 @@ type Values<Options> = {
   [Name in keyof Options]?: Options[Name] extends { type: "string" } ? string : boolean;
 };
 
-/** A command's arguments; those that are not named `string` may be left out. */
+/** A command's arguments as they were given: files in their order, options by name. */
 export interface Arguments<Name extends Command> {
   files: string[];
   values: Values<(typeof OPTIONS)[Name]>;

@@ -7,8 +7,7 @@ import { installMissing } from "../install.mjs";
 if (process.env.DEBUG) process.setSourceMapsEnabled(true);
 try {
   await installMissing();
-  const { main } = await import(pathToFileURL(await freshCommandLine()));
-  process.exitCode = await main(process.argv.slice(2));
+  await import(pathToFileURL(await freshCommandLine()));
 } catch (error) {
   process.stderr.write(`quenchline could not start: ${process.env.DEBUG ? error.stack : error.message}\n`);
   process.exitCode = 1;

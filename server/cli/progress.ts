@@ -25,7 +25,7 @@ export class Progress {
     const of = this.totalBytes === undefined ? "" : ` of ${sizeText(this.totalBytes)}`;
     const layersText = layers === undefined ? "" : `, ${layers} layers`;
     const line = `${this.what}: ${sizeText(bytes)}${of}${layersText}`;
-    process.stderr.write(`\r\u001b[K${line.slice(0, (process.stderr.columns ?? 80) - 1)}`);
+    process.stderr.write(`\r\u001b[K${line.slice(0, (process.stderr.columns || 80) - 1)}`);
   }
 
   /** Takes the line away again. */

@@ -14,13 +14,9 @@ const RUN: Record<Command, () => Promise<Run>> = {
   prove: async () => (await import("#server/cli/commands/prove.ts")).prove,
 };
 
-/**
- * The command line.
- *
- * @param argv arguments without the program's own name
- * @returns the exit status
- */
-export async function main(argv: string[]): Promise<ExitStatus> {
+process.exitCode = await main(process.argv.slice(2));
+
+async function main(argv: string[]): Promise<ExitStatus> {
   // Without a listener a closed pipe would end the process with a stack trace; print() learns of it by itself.
   process.stdout.on("error", () => {});
   process.stderr.on("error", () => {});

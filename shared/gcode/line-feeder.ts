@@ -33,6 +33,12 @@ export class LineFeeder {
   push(bytes: Uint8Array): void {
     // One kind of array, whatever subclass the platform reads into: the scanner's inner loop stays monomorphic.
     const chunk = new Uint8Array(bytes.buffer, bytes.byteOffset, bytes.byteLength);
+    // No piece is longer than the longest line, so that a longer line is met by `keep` however the file was cut.
+    for (let at = 0; at < chunk.length; at += MAX_LINE_BYTES) this.pushPiece(chunk.subarray(at, at + MAX_LINE_BYTES));
+  }
+
+  private pushPiece(chunk: Uint8Array): void {
+    if (this.carried > 0 && this.carry[this.carried - 1] === CR && chunk[0] !== LF) this.flush();
     const end = lastLineEnd(chunk);
     if (end === 0) {
       this.keep(chunk);

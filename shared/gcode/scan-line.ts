@@ -170,8 +170,9 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
       read += p - fraction;
       number = whole / powers[(p - fraction) & 15];
     }
-    // Nine digits fit an int32; more, or a blank inside the number, take the careful way.
-    if (read > 9 || (classes[c] === BLANK && buf[p + 1] < 65 && read > 0 && continuesNumber(buf, p))) {
+    // Nine digits fit an int32; more, or a blank inside the number, take the careful way. What follows an M word after
+    // a blank is never more of its number: `M117 5 layers left`.
+    if (read > 9 || (classes[c] === BLANK && buf[p + 1] < 65 && letter !== M && continuesNumber(buf, p))) {
       p = scanLongNumber(buf, digits);
       c = buf[p];
       number = longNumber;
@@ -408,7 +409,7 @@ function scanLongNumber(buf: Uint8Array, start: number): number {
       if (significant > 0 || c !== 48) significant++;
       mantissa = mantissa * 10 + (c - 48);
       if (scale >= 0) scale++;
-      if (longDigits <= 400) text += String.fromCharCode(c);
+      if (text.length < 400 && (significant > 0 || scale >= 0)) text += String.fromCharCode(c);
     } else if (c === 46 && scale < 0) {
       scale = 0;
       text += ".";

@@ -96,6 +96,8 @@ class Course {
     let i = 0;
     for (let k = 1; k < events.length; k++) {
       const { entry, duty } = events[k];
+      // Of several at one place only the last has an effect.
+      if (events[k + 1]?.entry.from === entry.from) continue;
       while (i + 1 < targets.length && targets[i + 1].offset <= entry.to) i++;
       const atTarget = targets[i].offset >= entry.from && targets[i].offset <= entry.to;
       if (atTarget || this.hasReason(k, i)) continue;

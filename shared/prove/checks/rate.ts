@@ -2,6 +2,7 @@ import type { Channel } from "#shared/formats/machine.ts";
 import type { Check } from "#shared/formats/proof.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
+import { pauseForms } from "#shared/prove/pause-line.ts";
 import { dutyWords } from "#shared/prove/wording.ts";
 import { dutySteps } from "#shared/units/duty.ts";
 
@@ -37,6 +38,7 @@ function problemOf(
   let sinceS = Number.NEGATIVE_INFINITY;
   /** the file's own duty may lie between two steps */
   let slack = step / 2;
+  let lastLine = 0;
   let recent: { timeS: number; change: number }[] = [];
   for (const event of events) {
     const { entry, timeS, source } = event;
@@ -44,8 +46,14 @@ function problemOf(
     if (source === "file") duty = event.duty;
     if (source !== "plan" || event.duty === before) continue;
     duty = event.duty;
+    // While a pause blocks, time goes on that is no print time.
+    if (pauseBetween(evidence, lastLine, entry.tunedLine)) {
+      recent = [];
+      sinceS = Number.NEGATIVE_INFINITY;
+    }
     const elapsedS = timeS - sinceS;
     sinceS = timeS;
+    lastLine = entry.tunedLine;
     if (isExempt(evidence, channel, event, before)) {
       recent = [];
       slack = 0;
@@ -61,6 +69,13 @@ function problemOf(
     slack = 0;
   }
   return undefined;
+}
+
+function pauseBetween({ machine, pauses }: Evidence, firstLine: number, lastLine: number): boolean {
+  const forms = pauseForms(machine);
+  return pauses.some(
+    ({ tunedLine, command }) => tunedLine > firstLine && tunedLine < lastLine && forms.get(command) === "blocking",
+  );
 }
 
 function isExempt(evidence: Evidence, channel: Channel, { entry, duty }: DutyEvent, before: number): boolean {

@@ -25,8 +25,8 @@ function part(): string {
       if (rnd() < 0.3) lines.push(`G0 X${(rnd() * 100).toFixed(2)} Y${(rnd() * 100).toFixed(2)}`);
       if (rnd() < 0.1) lines.push(rnd() < 0.5 ? `M106 S${Math.floor(rnd() * 256)}` : "M107");
       if (rnd() < 0.03) lines.push(`M106 P2 S${Math.floor(rnd() * 256)}`);
-      if (rnd() < 0.04) lines.push(pick("M0", "M600"));
-      if (rnd() < 0.02) lines.push("M0", "M600", "M0");
+      if (rnd() < 0.04) lines.push(...(process.env.NOPAUSE ? [] : [pick("M0", "M600"), "T0"]));
+      if (rnd() < 0.02 && process.env.ADJ) lines.push("M0", "M600", "M0");
       if (rnd() < 0.05) lines.push("; comment", "", "T0");
     }
   }
@@ -58,6 +58,7 @@ test("fuzz", async () => {
     let tuned: Buffer;
     try { tuned = tuneBytes(bytesOf(o), machine, profile); } catch (e) { const c = (e as any).code ?? String(e); refused[c] = (refused[c] ?? 0) + 1; continue; }
     const p = await proveFiles({ original: bytesOf(o), tuned, machine, profile });
+    if (process.env.DUMP) { const reading = readBytes(bytesOf(o), machine); console.log(JSON.stringify(machine.channels), JSON.stringify(machine.pauses)); console.log(JSON.stringify(profile)); console.log(reading.layers.map((l) => [l.index, l.writeAt.line, l.writeAt.timeS.toFixed(3), l.startsAtS.toFixed(3)].join(" ")).join("\n")); console.log(Array.from(reading.travels.line).map((l, k) => `${l}@${reading.travels.timeS[k].toFixed(3)}`).join(" ")); console.log(o.split(/\r\n|\r|\n/).map((l,k)=>`${k+1} ${l}`).filter(l=>/M106|M107|M0|M600|SET|M42|LAYER/.test(l)).join("\n")); console.log(tuned.toString().split(/\r\n|\r|\n/).map((l, k) => `${k + 1} ${l}`).filter((l) => process.env.DUMP === "2" || /;ql|M106|LAYER|M0|M600|G0|M42/.test(l)).map((l) => l.slice(0, 100)).join("\n")); console.log(failures(p)); }
     if (p.passed) ok++; else for (const f of failures(p)) { const id = f.split(":")[0]; const key = id; by[key] = [(by[key]?.[0] ?? 0) + 1, by[key]?.[1] ?? `${start} ${f}`]; }
     let again: Buffer;
     try { again = tuneBytes(tuned, machine, profile); } catch (e) { const c = "again " + ((e as any).code ?? String(e)); refused[c] = (refused[c] ?? 0) + 1; continue; }
