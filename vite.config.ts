@@ -1,6 +1,17 @@
+import tailwindcss from "@tailwindcss/vite";
+import react from "@vitejs/plugin-react";
 import { defineConfig } from "vitest/config";
 
 export default defineConfig({
+  plugins: [react(), tailwindcss()],
+  publicDir: "src/public",
+  build: {
+    outDir: "dist/client",
+    emptyOutDir: true,
+    // The diff's editor is one lazy chunk of its own and known to be large.
+    chunkSizeWarningLimit: 4_000,
+  },
+  server: { proxy: { "/api": "http://localhost:8080" } },
   test: {
     projects: [
       {
@@ -14,6 +25,15 @@ export default defineConfig({
           include: ["tests/server/**/*.test.ts", "tests/golden/**/*.test.ts"],
           environment: "node",
           testTimeout: 120_000,
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: "src",
+          include: ["tests/src/**/*.test.{ts,tsx}"],
+          environment: "happy-dom",
+          setupFiles: ["tests/src/setup.ts"],
         },
       },
     ],

@@ -11,7 +11,7 @@ export function proofText(originalName: string, tunedName: string, proof: ProofD
     ...checkLines(checks),
     "",
     `Lines  ${lineCounts(proof)}`,
-    passed ? `Proof passed: ${counted(checks.length, "check")}.` : failure(checks),
+    passed ? `Proof passed: ${counted(checks.length, "check")}.` : `${failure(checks)} Do not print this file.`,
   ];
   return `${lines.join("\n")}\n`;
 }
@@ -42,5 +42,5 @@ function oneLine(text: string): string {
 
 function failure(checks: readonly Check[]): string {
   const failed = checks.filter(({ passed }) => !passed).length;
-  return `Proof failed: ${failed} of ${counted(checks.length, "check")}. Do not print this file.`;
+  return `Proof failed: ${failed} of ${counted(checks.length, "check")}.`;
 }

@@ -38,10 +38,12 @@ export function checkTargets(outputs: readonly NamedFile[], inputs: readonly Nam
   });
 }
 
-/** The target that is the input itself. */
+/** The target that is the input itself; whether it can be read is found out when it is opened. */
 export function targetInPlace(name: string): Target {
   if (name === "-") throw new UsageError("--in-place needs FILE: standard input has no place", "tune");
-  return checkTarget({ role: "FILE", name });
+  const path = callerPath(name);
+  const stat = statOf(path);
+  return stat === undefined || stat.isDirectory() ? { path } : checkTarget({ role: "--in-place", name });
 }
 
 function checkTarget({ role, name }: NamedFile): Target {

@@ -20,7 +20,7 @@ export function missingRaise(
 ): ControlLine | undefined {
   const { layers, window, controls } = reading;
   const steps = dutySteps(channel.drive);
-  const most = Math.floor((limits.maxDuty + TOLERANCE / steps) * steps) / steps;
+  const highest = Math.floor((limits.maxDuty + TOLERANCE / steps) * steps) / steps;
   let layer = 0;
   let base = 0;
   let fileDuty = 0;
@@ -35,16 +35,20 @@ export function missingRaise(
       base = fileDuty;
     }
     fileDuty = line.duty;
-    for (; next < events.length && stands(events[next]) <= line.offset; next++) {
-      inForce = events[next].duty;
-      if (events[next].source === "plan") planned = inForce;
+    let most = 0;
+    let abovePlan = planned;
+    for (; next < events.length && events[next].entry.from <= line.offset; next++) {
+      const { entry, source, duty } = events[next];
+      inForce = duty;
+      if (source === "plan") planned = duty;
+      // Where another duty of the plan is written at the very place, the raise may be set and ended there.
+      if (entry.to < line.offset) abovePlan = planned;
+      else most = Math.max(most, duty);
     }
     const inBody = layer > 0 && line.offset < (layers[layer]?.writeAt.offset ?? window.end.offset);
-    const raises = line.duty > base + TOLERANCE && line.duty > planned + TOLERANCE;
-    if (inBody && raises && line.ours !== "plan" && inForce < Math.min(line.duty, most) - TOLERANCE) return line;
+    const raises = line.duty > base + TOLERANCE && line.duty > Math.max(abovePlan, planned) + TOLERANCE;
+    if (inBody && raises && line.ours !== "plan" && Math.max(inForce, most) < Math.min(line.duty, highest) - TOLERANCE)
+      return line;
   }
   return undefined;
 }
-
-/** Byte of the original from which an event holds. */
-const stands = ({ entry }: DutyEvent): number => entry.from;

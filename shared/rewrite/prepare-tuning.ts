@@ -54,7 +54,11 @@ export function prepareTuning(input: TuningInput): Tuning {
   const advice: Advice[] = [];
   refuseUnsafe(reading, machine, driven, advice);
   const plan = planDuties({ layers: reading.layers, machine, profile });
-  const boundaries = new Boundaries(reading);
+  const channels = new Set(driven.map((channel) => machine.channels.indexOf(channel)));
+  const going = reading.controls.filter(
+    (line) => line.does === "duty" && (line.ours || (channels.has(line.channel) && isInside(line))),
+  );
+  const boundaries = new Boundaries(reading, going);
   const kept = new Set<ControlLine>();
   const commands = driven.flatMap((channel) => {
     const planned = scheduleChannel(channel, { reading, boundaries, machine, profile, plan }, advice);
@@ -72,10 +76,7 @@ export function prepareTuning(input: TuningInput): Tuning {
       message: `${kept.size} raises of the fan inside layers are kept as the file has them.`,
     });
 
-  const channels = new Set(driven.map((channel) => machine.channels.indexOf(channel)));
-  const removed = reading.controls.filter(
-    (line) => line.ours || (channels.has(line.channel) && isInside(line) && line.does === "duty" && !kept.has(line)),
-  );
+  const removed = going.filter((line) => !kept.has(line));
   const provenance: Provenance = {
     v: 1,
     profile: named(profile.name, writeProfile(profile), input.digest, input.versions?.profile),

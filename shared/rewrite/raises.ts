@@ -1,7 +1,7 @@
 import type { Channel, Machine } from "#shared/formats/machine.ts";
 import type { ControlLine, Reading } from "#shared/layers/reading.ts";
 import type { DutyLimits } from "#shared/plan/limits.ts";
-import type { Write } from "#shared/rewrite/write.ts";
+import { highestDuty, type Write } from "#shared/rewrite/write.ts";
 
 /** What stays of a fan's own commands, and what is written because of them. */
 export interface Raises {
@@ -27,7 +27,10 @@ export function keepRaises(
   planned: readonly Write[],
 ): Raises {
   const index = machine.channels.indexOf(channel);
+  const mostDuty = highestDuty(channel, limits);
   const lines = reading.controls.filter((line) => line.channel === index && line.does === "duty");
+  // Of a file tuned before, what was no raise is gone, and with it what its raises rose from.
+  const tunedBefore = lines.some(({ ours }) => ours);
   const kept = new Set<ControlLine>();
   const writes: Write[] = [];
   let next = 0;
@@ -46,9 +49,10 @@ export function keepRaises(
   const handle = (line: ControlLine, baseDuty: number): void => {
     planUpTo(line.offset);
     if (line.ours === "plan") return;
-    const raises = line.duty > baseDuty + SAME && line.duty > inForce + SAME;
+    const duty = Math.min(line.duty, mostDuty);
+    const raises = line.duty > baseDuty + SAME && duty > inForce + SAME;
     if (raises && line.duty <= limits.maxDuty + SAME && line.ours === false) kept.add(line);
-    else if (raises) writes.push({ ...placeOf(line), duty: Math.min(line.duty, limits.maxDuty), tag: "raise" });
+    else if (raises) writes.push({ ...placeOf(line), duty, tag: "raise" });
     else if (raised) writes.push({ ...placeOf(line), duty: inForce, tag: "restore" });
     raised = raises;
   };
@@ -60,7 +64,7 @@ export function keepRaises(
     raised = false;
     // Commands before the layer's first laying move set the base that its raises rise from.
     for (; next < lines.length && lines[next].offset < layer.firstByte; next++) fileDuty = lines[next].duty;
-    const baseDuty = fileDuty;
+    const baseDuty = tunedBefore ? 0 : fileDuty;
     const bodyEnd = reading.layers[k + 1]?.writeAt.offset ?? reading.window.end.offset;
     for (; next < lines.length && lines[next].offset < bodyEnd; next++) {
       handle(lines[next], baseDuty);

@@ -6,8 +6,8 @@ import { type DutyLimits, effectiveLimits } from "#shared/plan/limits.ts";
 import type { Advice, Plan } from "#shared/plan/plan.ts";
 import type { Boundaries } from "#shared/rewrite/boundaries.ts";
 import { rateOf, staircase } from "#shared/rewrite/staircase.ts";
-import type { Target, Write } from "#shared/rewrite/write.ts";
-import { dutySteps } from "#shared/units/duty.ts";
+import { highestDuty, type Target, type Write } from "#shared/rewrite/write.ts";
+import { dutySteps, roundDutyInward } from "#shared/units/duty.ts";
 
 export interface ScheduleInput {
   reading: Reading;
@@ -26,16 +26,16 @@ const SAME = 1e-6;
  * after the last laying move.
  */
 export function scheduleChannel(channel: Channel, input: ScheduleInput, advice: Advice[]): Write[] {
-  const targets = wantedAt(channel, input);
   const limits = effectiveLimits(channel, input.profile);
-  if (channel.kind === "heater") return followHeater(channel, targets, limits, input);
   const from = { duty: dutyBefore(channel, input), at: 0 };
-  const { boundaries } = input;
-  const writes = follow(channel, limits, boundaries, { from, targets, end: boundaries.list.length });
-  return withStartBoost(channel, limits, atWindowStart(writes, targets, boundaries), input, advice);
+  const stretch: Stretch = { from, targets: wantedAt(channel, input), end: input.boundaries.list.length };
+  if (channel.kind === "heater")
+    return fromWindowStart(followHeater(channel, limits, stretch, input), from.duty, input.boundaries);
+  const writes = fromWindowStart(follow(channel, limits, stretch, input.boundaries), from.duty, input.boundaries);
+  return withStartBoost(channel, limits, writes, input, advice);
 }
 
-/** The boundary of every layer's duty; of several that fall on one boundary the last stands. */
+/** The boundary of every layer's duty, the first layer's being the window's start; of several at one the last stands. */
 function wantedAt(channel: Channel, { reading, boundaries, profile, plan }: ScheduleInput): Target[] {
   const leadS = resolveLeadS(channel, profile);
   const targets: Target[] = [];
@@ -44,7 +44,7 @@ function wantedAt(channel: Channel, { reading, boundaries, profile, plan }: Sche
     const duty = plan.layers[k].duty[channel.id];
     const last = targets[targets.length - 1];
     if (last && last.at >= at) last.duty = duty;
-    else targets.push({ at, duty });
+    else targets.push({ at: k === 0 ? 0 : at, duty });
   }
   return targets;
 }
@@ -61,38 +61,39 @@ export function dutyBefore(channel: Channel, { machine, reading }: Pick<Schedule
 /** Part of the window without a pause in it: positions in the list of boundaries, [from.at, end). */
 interface Stretch {
   from: { duty: number; at: number };
-  targets: Target[];
+  targets: readonly Target[];
   end: number;
 }
 
-function followHeater(channel: Channel, targets: Target[], limits: DutyLimits, input: ScheduleInput): Write[] {
+/** Behind a pause that blocks, the lamp is lit again at once, behind any other with the next layer. */
+function followHeater(channel: Channel, limits: DutyLimits, whole: Stretch, input: ScheduleInput): Write[] {
   const { reading, boundaries, machine } = input;
-  const { list } = boundaries;
+  const idleDuty = roundDutyInward(channel.idleDuty, dutySteps(channel.drive), 0, channel.idleDuty);
   const writes: Write[] = [];
-  let from = { duty: dutyBefore(channel, input), at: 0 };
-  let resumed: Target[] = [];
+  let { from, targets } = whole;
   for (const pause of reading.pauses) {
     if (pause.layer < 1 || pause.layer > reading.layers.length) continue;
     const end = boundaries.at(pause.offset);
-    const inside = targets.filter(({ at }) => at >= from.at && at < end);
-    writes.push(...follow(channel, limits, boundaries, { from, targets: merged(resumed, inside), end }));
+    writes.push(...follow(channel, limits, { from, targets, end }, boundaries));
     const inForce = writes[writes.length - 1]?.duty ?? from.duty;
-    const idle = Math.min(channel.idleDuty, inForce);
-    if (inForce - idle > SAME) writes.push({ ...list[end], duty: idle, tag: "plan" });
-    const after = boundaries.at(pause.offset + pause.length);
-    const wanted = targets.filter(({ at }) => at < after).pop();
-    resumed = wanted && blocks(machine, pause.command) ? [{ at: after, duty: wanted.duty }] : [];
-    from = { duty: idle, at: after };
+    const idle = Math.min(idleDuty, inForce);
+    if (inForce - idle > SAME) writes.push({ ...boundaries.list[end], duty: idle, tag: "plan" });
+    const nextLayer = reading.layers.find(({ writeAt }) => writeAt.offset > pause.offset)?.writeAt ?? reading.window.end;
+    const resumes = blocks(machine, pause.command) ? boundaries.behind(pause) : nextLayer;
+    const resumesAt = Math.max(from.at, boundaries.at(resumes.offset));
+    from = { duty: idle, at: resumesAt };
+    targets = wantedFrom(targets, resumesAt);
   }
-  const inside = targets.filter(({ at }) => at >= from.at);
-  writes.push(...follow(channel, limits, boundaries, { from, targets: merged(resumed, inside), end: list.length }));
-  writes.push({ ...reading.window.end, duty: 0, tag: "plan" });
-  return atWindowStart(writes, targets, boundaries);
+  writes.push(...follow(channel, limits, { from, targets, end: whole.end }, boundaries));
+  return [...writes, { ...reading.window.end, duty: 0, tag: "plan" }];
 }
 
-/** A target at the very place of the resumed one replaces it. */
-const merged = (resumed: Target[], inside: Target[]): Target[] =>
-  resumed.length > 0 && inside[0]?.at === resumed[0].at ? inside : [...resumed, ...inside];
+/** The targets from a boundary on; what is wanted there is the first. */
+function wantedFrom(targets: readonly Target[], at: number): Target[] {
+  const later = targets.filter((target) => target.at > at);
+  const wanted = targets[targets.length - later.length - 1];
+  return wanted ? [{ at, duty: wanted.duty }, ...later] : later;
+}
 
 const blocks = (machine: Machine, command: string): boolean =>
   machine.pauses.some((pause) => pause.blocking && pause.command.toUpperCase() === command.toUpperCase());
@@ -100,27 +101,26 @@ const blocks = (machine: Machine, command: string): boolean =>
 function follow(
   channel: Channel,
   limits: DutyLimits,
-  boundaries: Boundaries,
   { from, targets, end }: Stretch,
+  boundaries: Boundaries,
 ): Write[] {
-  const { list } = boundaries;
-  const driveSteps = dutySteps(channel.drive);
+  const reached = targets.filter(({ at }) => at < end);
   const steps = Number.isFinite(limits.maxDutyPerS)
-    ? staircase(boundaries, from, targets, end, rateOf(limits.maxDutyPerS, driveSteps))
-    : targets;
+    ? staircase(boundaries, from, reached, end, rateOf(channel, limits))
+    : reached;
   const writes: Write[] = [];
   let inForce = from.duty;
   for (const { at, duty } of steps) {
-    if (Math.abs(duty - inForce) > SAME) writes.push({ ...list[at], duty, tag: "plan" });
+    if (Math.abs(duty - inForce) > SAME) writes.push({ ...boundaries.list[at], duty, tag: "plan" });
     inForce = duty;
   }
   return writes;
 }
 
-/** The file's own state before the window is only what its plain commands say: the first duty is always written. */
-function atWindowStart(writes: Write[], targets: readonly Target[], { list }: Boundaries): Write[] {
+/** What is in force before the window is only what the file's plain commands say: the first duty is always written. */
+function fromWindowStart(writes: Write[], dutyBefore: number, { list }: Boundaries): Write[] {
   if (writes[0]?.offset === list[0].offset) return writes;
-  return [{ ...list[0], duty: targets[0].duty, tag: "plan" }, ...writes];
+  return [{ ...list[0], duty: dutyBefore, tag: "plan" }, ...writes];
 }
 
 /** Longest time that a fan may run at its start boost beyond what the machine asks for, s. */
@@ -139,19 +139,19 @@ function withStartBoost(
 ): Write[] {
   if (channel.startBoostS === 0) return writes;
   const { boundaries, reading } = input;
+  const fullDuty = highestDuty(channel, limits);
   const out: Write[] = [];
   const skipped: number[] = [];
   let before = dutyBefore(channel, input);
   for (const write of writes) {
-    const starts = before < SAME && write.duty > SAME && write.duty < limits.maxDuty - SAME;
+    const starts = before < SAME && write.duty > SAME && write.duty < fullDuty - SAME;
     before = write.duty;
     if (starts) {
       const at = boundaries.list[boundaries.lastBefore(write.timeS - channel.startBoostS)];
-      const afterLast =
-        out.length === 0 ? at.offset >= reading.window.start.offset : at.offset > out[out.length - 1].offset;
-      const near = write.timeS - at.timeS <= channel.startBoostS + BOOST_SLACK_S;
-      if (afterLast && near && at.offset < write.offset && at.timeS <= write.timeS - channel.startBoostS + SAME)
-        out.push({ ...at, duty: limits.maxDuty, tag: "plan" });
+      const sinceS = write.timeS - at.timeS;
+      const near = sinceS >= channel.startBoostS - SAME && sinceS <= channel.startBoostS + BOOST_SLACK_S;
+      const last = out[out.length - 1];
+      if (near && last && at.offset > last.offset) out.push({ ...at, duty: fullDuty, tag: "plan" });
       else skipped.push(layerAt(reading, write.offset));
     }
     out.push(write);

@@ -1,22 +1,37 @@
+import type { Channel } from "#shared/formats/machine.ts";
+import type { DutyLimits } from "#shared/plan/limits.ts";
 import type { Boundaries } from "#shared/rewrite/boundaries.ts";
-import type { Target } from "#shared/rewrite/write.ts";
+import { highestDuty, type Target } from "#shared/rewrite/write.ts";
+import { dutySteps, roundDutyInward } from "#shared/units/duty.ts";
+
+/** Two duties closer than this are the same, and so are two instants, s. */
+const SAME = 1e-6;
 
 /** How fast a channel may change: at most `step` at once, and then not again for `everyS`. */
 export interface Rate {
   step: number;
   everyS: number;
+  /** below leastDuty a fan stalls: between off and it nothing is written, nor above mostDuty; 0-1 */
+  leastDuty: number;
+  mostDuty: number;
 }
 
 /**
  * The steps that a channel may make: changes of at most the duty allowed in one second, a second apart; where that is
  * less than the drive can resolve, single steps of the drive, further apart.
  *
- * @param maxDutyPerS largest change per second, > 0
- * @param driveSteps steps of the drive from off to full power
+ * @param maxDutyPerS finite
  */
-export function rateOf(maxDutyPerS: number, driveSteps: number): Rate {
+export function rateOf(channel: Channel, limits: DutyLimits): Rate {
+  const { maxDutyPerS, minDuty, maxDuty } = limits;
+  const driveSteps = dutySteps(channel.drive);
   const steps = Math.max(1, Math.floor(maxDutyPerS * driveSteps + 1e-9));
-  return { step: steps / driveSteps, everyS: Math.max(1, steps / driveSteps / maxDutyPerS) };
+  return {
+    step: steps / driveSteps,
+    everyS: Math.max(1, steps / driveSteps / maxDutyPerS),
+    leastDuty: channel.kind === "fan" ? roundDutyInward(minDuty, driveSteps, minDuty, maxDuty) : 0,
+    mostDuty: highestDuty(channel, limits),
+  };
 }
 
 /**
@@ -46,7 +61,7 @@ export function staircase(
     while (steps.length > 0 && steps[steps.length - 1].at >= target.at) steps.pop();
     const last = steps[steps.length - 1];
     const before = last ? last.duty : from.duty;
-    const duties = duty(before, target.duty, rate.step);
+    const duties = dutiesBetween(before, target.duty, rate);
     if (duties.length === 0) continue;
     const earliest = last ? boundaries.firstFrom(boundaries.list[last.at].timeS + rate.everyS, last.at) : from.at;
     const places =
@@ -58,10 +73,19 @@ export function staircase(
 }
 
 /** The duties of a staircase, the last one being the wanted one. */
-function duty(from: number, to: number, step: number): number[] {
-  const count = Math.ceil(Math.abs(to - from) / step - 1e-6);
-  const sign = to > from ? 1 : -1;
-  return Array.from({ length: count }, (_, k) => (k === count - 1 ? to : from + sign * step * (k + 1)));
+function dutiesBetween(from: number, to: number, rate: Rate): number[] {
+  const duties: number[] = [];
+  for (let duty = from; Math.abs(to - duty) > SAME; duties.push(duty)) duty = nextDuty(duty, to, rate);
+  return duties;
+}
+
+/** A fan's dead band is crossed at once, and so is what lies above the limit: a file may have set that before. */
+function nextDuty(duty: number, to: number, { step, leastDuty, mostDuty }: Rate): number {
+  if (Math.abs(to - duty) <= step + SAME) return to;
+  if (to > duty) return Math.max(duty + step, leastDuty);
+  const lower = Math.min(duty - step, mostDuty);
+  if (lower >= leastDuty) return lower;
+  return duty > leastDuty + SAME ? leastDuty : to;
 }
 
 /** Boundaries for `count` steps that end at `last`, or undefined when the first would stand before `earliest`. */
@@ -77,7 +101,7 @@ function onTime(
   for (let k = 1; k < count; k++) {
     const wanted = boundaries.list[places[0]].timeS - everyS;
     const at = boundaries.lastBefore(wanted);
-    if (at < earliest || boundaries.list[at].timeS > wanted + 1e-6) return undefined;
+    if (at < earliest || boundaries.list[at].timeS > wanted + SAME) return undefined;
     places.unshift(at);
   }
   return places;

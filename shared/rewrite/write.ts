@@ -1,5 +1,8 @@
+import type { Channel } from "#shared/formats/machine.ts";
 import type { OwnTag } from "#shared/gcode/own-lines.ts";
 import type { Boundary } from "#shared/layers/reading.ts";
+import type { DutyLimits } from "#shared/plan/limits.ts";
+import { dutySteps, roundDutyInward } from "#shared/units/duty.ts";
 
 /** One command of ours: a duty written at a line boundary. */
 export interface Write extends Boundary {
@@ -13,3 +16,7 @@ export interface Target {
   at: number;
   duty: number;
 }
+
+/** The highest duty within the limits that the channel's drive can express. */
+export const highestDuty = ({ drive }: Channel, { maxDuty }: DutyLimits): number =>
+  roundDutyInward(maxDuty, dutySteps(drive), 0, maxDuty);

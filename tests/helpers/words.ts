@@ -57,11 +57,15 @@ export const parenthesis: fc.Arbitrary<string> = fc.oneof(
   fc.tuple(commentText, commentText).map(([a, b]) => `(${a}(${b})${a})`),
 );
 
+/** Blanks inside a word; the number of an M word stands in one piece. */
+const apart = (one: string): fc.Arbitrary<string> =>
+  /^m/i.test(one) ? fc.constantFrom(` ${one}`, `${one[0]}\t ${one.slice(1)}`) : strewn(one);
+
 /** A whole line of words: number, blanks anywhere, comments between words, checksum, comment at the end. */
 export const wordLine: fc.Arbitrary<string> = fc
   .record({
     number: fc.option(fc.nat(99_999), { nil: undefined }),
-    parts: words.chain((made) => fc.tuple(...made.map((one) => fc.oneof(fc.constant(one), strewn(one))))),
+    parts: words.chain((made) => fc.tuple(...made.map((one) => fc.oneof(fc.constant(one), apart(one))))),
     gaps: fc.array(fc.oneof(blanks, blanks, blanks, parenthesis), { minLength: 10, maxLength: 10 }),
     checksum: fc.option(fc.nat(255), { nil: undefined }),
     comment: fc.option(commentText, { nil: undefined }),

@@ -1,11 +1,12 @@
-import { type Arguments, parseArguments, required } from "#server/cli/arguments.ts";
+import { parseArguments, required } from "#server/cli/arguments.ts";
+import { type TuneTargets, tuneTargets } from "#server/cli/commands/tune-targets.ts";
 import { documentDigest, loadMachine, loadPolymer, loadProfile } from "#server/cli/documents.ts";
-import { aboutFile, EXIT, type ExitStatus, InputRefused, UsageError } from "#server/cli/exit.ts";
+import { aboutFile, EXIT, type ExitStatus, InputRefused } from "#server/cli/exit.ts";
 import { ToolpathInput } from "#server/cli/input-stream.ts";
 import { failedChecks } from "#server/cli/proof-text.ts";
 import { proveInputs } from "#server/cli/prove-inputs.ts";
 import { readInput } from "#server/cli/read-input.ts";
-import { checkTargets, type NamedFile, type Target, targetInPlace } from "#server/cli/targets.ts";
+import type { Target } from "#server/cli/targets.ts";
 import { TemporaryFile } from "#server/cli/temporary-file.ts";
 import { complain, print, printable } from "#server/cli/terminal.ts";
 import { tuningText } from "#server/cli/tuning-text.ts";
@@ -24,13 +25,6 @@ import { prepareTuning, type Tuning } from "#shared/rewrite/prepare-tuning.ts";
 /** Approval is for the team's own server to give. */
 const STATUS = "trial-only" as const;
 
-/** Where the results go. */
-interface Targets {
-  out: Target;
-  plan?: Target;
-  proof?: Target;
-}
-
 interface Documents {
   machine: Machine;
   profile: Profile;
@@ -44,7 +38,7 @@ export async function tune(argv: string[]): Promise<ExitStatus> {
   const { files, values } = parseArguments("tune", argv, ["FILE"]);
   const machineName = required(values.machine, "machine", "tune");
   const profileName = required(values.profile, "profile", "tune");
-  const targets = readTargets(files[0], values);
+  const targets = tuneTargets(files[0], values);
   const documents = await loadDocuments(machineName, profileName, values.polymer);
   const input = await ToolpathInput.open(files[0], "several times");
   const temporary: TemporaryFile[] = [];
@@ -59,7 +53,7 @@ export async function tune(argv: string[]): Promise<ExitStatus> {
 async function tuneInput(
   input: ToolpathInput,
   documents: Documents,
-  targets: Targets,
+  targets: TuneTargets,
   inPlace: boolean,
   temporary: TemporaryFile[],
 ): Promise<ExitStatus> {
@@ -94,31 +88,6 @@ async function tuneInput(
   for (const file of [...planFile, ...proofFile, out]) file.place();
   await print(printable(tuningText({ ...documents, reading, tuning, proof, path: targets.out.path })));
   return EXIT.done;
-}
-
-function readTargets(fileName: string, values: Arguments<"tune">["values"]): Targets {
-  const inPlace = values["in-place"] === true;
-  if (inPlace === (values.out !== undefined))
-    throw new UsageError(
-      inPlace ? "--out and --in-place exclude each other" : "--out or --in-place is missing",
-      "tune",
-    );
-  const named = (roles: [role: string, name: string | undefined][]): NamedFile[] =>
-    roles.flatMap(([role, name]) => (name === undefined ? [] : [{ role, name }]));
-  const inputs = named([
-    ["FILE", fileName],
-    ["--machine", values.machine],
-    ["--profile", values.profile],
-    ["--polymer", values.polymer],
-  ]);
-  const outputs = named([
-    ["--out", values.out],
-    ["--plan", values.plan],
-    ["--proof", values.proof],
-  ]);
-  const targets = checkTargets(outputs, inputs);
-  const of = (role: string) => targets[outputs.findIndex((output) => output.role === role)] as Target | undefined;
-  return { out: of("--out") ?? targetInPlace(fileName), plan: of("--plan"), proof: of("--proof") };
 }
 
 async function loadDocuments(machineName: string, profileName: string, polymerName?: string): Promise<Documents> {

@@ -86,6 +86,7 @@ class Course {
       if (i + 1 < targets.length && targets[i + 1].offset <= entry.to) continue;
       if (Math.abs(inForce - duty) < this.halfStep || this.isBoost(k)) continue;
       if (this.staircase?.behind(k, i) || this.staircase?.ahead(k, i)) continue;
+      if ((globalThis as any).DBG) console.log("DBG", i, this.targets[i], k, events.slice(Math.max(0,k-2), k + 3).map((e) => [e.entry.tunedLine, e.entry.from, e.entry.to, e.duty, e.timeS]), evidence.pauses.map((p) => [p.from, p.tunedLine, p.command]), this.targets.slice(-3));
       return `Layer ${layer} wants ${channel.id} at ${dutyWords(duty)}, but ${dutyWords(inForce)} is in force, set at ${evidence.place(entry)}.`;
     }
     return undefined;

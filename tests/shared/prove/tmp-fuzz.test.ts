@@ -25,8 +25,8 @@ function part(): string {
       if (rnd() < 0.3) lines.push(`G0 X${(rnd() * 100).toFixed(2)} Y${(rnd() * 100).toFixed(2)}`);
       if (rnd() < 0.1) lines.push(rnd() < 0.5 ? `M106 S${Math.floor(rnd() * 256)}` : "M107");
       if (rnd() < 0.03) lines.push(`M106 P2 S${Math.floor(rnd() * 256)}`);
-      if (rnd() < 0.04) lines.push(...(process.env.NOPAUSE ? [] : [pick("M0", "M600"), "T0"]));
-      if (rnd() < 0.02 && process.env.ADJ) lines.push("M0", "M600", "M0");
+      if (rnd() < 0.04) lines.push(...(process.env.NOPAUSE ? [] : [pick("M601", "M600"), "T0"]));
+      if (rnd() < 0.02 && process.env.ADJ) lines.push("M601", "M600", "M601");
       if (rnd() < 0.05) lines.push("; comment", "", "T0");
     }
   }
@@ -42,7 +42,7 @@ function docs() {
       { id: "part-fan", kind: "fan", drive: { by: "fan-index", index: 0, fullScale: pick(255, 1) }, minDuty: min, maxDuty: max, startBoostS: pick(0, 0, 0.2), settleS: pick(0, 3) , ...(rnd() < Number(process.env.FANRATE ?? 0.1) ? { maxDutyPerS: 0.2 } : {})},
       { id: "lamp", kind: "heater", drive: pick<object>({ by: "fan-index", index: 2, fullScale: 255 }, { by: "pin", pin: 4, fullScale: 255 }, { by: "named-pin", name: "lamp", fullScale: pick(1, 255) }), maxDuty: process.env.GRID ? pick(1, 0.8) : pick(1, 0.85, 0.7), idleDuty: process.env.GRID ? pick(0, 0, 0.2) : pick(0, 0, 0.1), minDuty: pick(0, 0, 0.1), settleS: pick(0, 2, 20), ...(rnd() < 0.6 ? { maxDutyPerS: pick(0.05, 0.02, 0.2, 0.003) } : {}), acts: pick<any>("queued", { immediate: 1 }) },
     ],
-    pauses: [{ command: "M0", blocking: true }, { command: "M600", blocking: process.env.NB ? rnd() < 0.5 : true }] });
+    pauses: [{ command: "M601", blocking: true }, { command: "M600", blocking: process.env.NB ? rnd() < 0.5 : true }] });
   const curve = (channel: string) => ({ channel, rule: "curve", over: pick("height", "layer-time"), points: [[0.2, r3(0, 1)], [1, r3(0, 1)], [3, r3(0, 1)]] });
   const profile = parseProfile({ format: "quenchline.profile/1", name: "P", polymer: "PEEK", bedLayers: { count: pick(0, 1, 2), duty: { "part-fan": 0, lamp: r3(0, 1) } },
     zones: [{ name: "a", from: 0, to: 1, unit: "mm", target: "none", cooling: curve("part-fan"), heating: curve("lamp") }, { name: "b", from: 1, unit: "mm", target: "none", rampMm: pick(0, 0.6), cooling: curve("part-fan"), heating: curve("lamp") }],
@@ -50,6 +50,7 @@ function docs() {
     lead: { "part-fan": pick<any>(0, 0, 1, "settle"), lamp: pick<any>(0, "settle", 5, 0.3, 30) }, withinLayer: pick("replace", "keep-raises") });
   return { machine, profile };
 }
+(globalThis as any).DBG = process.env.DUMP;
 test("fuzz", async () => {
   const N = Number(process.env.N ?? 300); let ok = 0; const refused: Record<string, number> = {}; const by: Record<string, [number, string]> = {};
   for (let i = 0; i < N; i++) {
@@ -62,6 +63,7 @@ test("fuzz", async () => {
     if (p.passed) ok++; else for (const f of failures(p)) { const id = f.split(":")[0]; const key = id; by[key] = [(by[key]?.[0] ?? 0) + 1, by[key]?.[1] ?? `${start} ${f}`]; }
     let again: Buffer;
     try { again = tuneBytes(tuned, machine, profile); } catch (e) { const c = "again " + ((e as any).code ?? String(e)); refused[c] = (refused[c] ?? 0) + 1; continue; }
+    if (!again.equals(tuned) && process.env.DUMP) { const a = tuned.toString().split(/\r\n|\r|\n/), b = again.toString().split(/\r\n|\r|\n/); const k = a.findIndex((l, i) => l !== b[i]); console.log("T1", k, a.slice(k - 3, k + 5), "T2", b.slice(k - 3, k + 5)); }
     if (!again.equals(tuned)) by["retune differs"] = [(by["retune differs"]?.[0] ?? 0) + 1, by["retune differs"]?.[1] ?? String(start)];
     const p2 = await proveFiles({ original: tuned, tuned: again, machine, profile });
     if (p.passed && !p2.passed) for (const f of failures(p2)) { const id = "again " + f.split(":")[0]; by[id] = [(by[id]?.[0] ?? 0) + 1, by[id]?.[1] ?? `${start} ${f}`]; }

@@ -25,8 +25,9 @@ export function withNumbers(lines: readonly string[], first: number): string[] {
   return lines.map((line) => (/^\s*(;|\(|$)/.test(line) ? line : withChecksum(`N${number++} ${line}`)));
 }
 
-/** A checksum stands behind the command and before a comment. */
+/** A checksum stands behind the command and before a comment; a message is text to the line's end. */
 export function withChecksum(line: string): string {
+  if (/\bM117\b/.test(line)) return `${line}*${hostChecksum(line)}`;
   const [, command, comment] = /^([^;]*?)(\s*;.*)?$/s.exec(line)!;
   return `${command}*${hostChecksum(command)}${comment ?? ""}`;
 }

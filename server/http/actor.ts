@@ -1,0 +1,12 @@
+import type { Role } from "#shared/contract/roles.ts";
+
+/** Who makes a request. */
+export interface Actor {
+  userId: string;
+  email: string;
+  name: string | null;
+  role: Role;
+  teamId: string;
+  teamName: string;
+  sessionId: string;
+}

@@ -1,0 +1,12 @@
+import type { Logger } from "pino";
+import type { Db } from "#server/db/client.ts";
+import type { Env } from "#server/env.ts";
+
+/** What the server is put together from. Routes take the parts they need, so that tests can put in their own. */
+export interface Parts {
+  env: Env;
+  log: Logger;
+  db: Db;
+  /** aborted when the server begins to stop: streams of events end, nothing new is begun */
+  closing: AbortSignal;
+}
