@@ -22,9 +22,23 @@ export default defineConfig({
         extends: true,
         test: {
           name: "server",
-          include: ["tests/server/**/*.test.ts", "tests/golden/**/*.test.ts"],
+          include: ["tests/server/cli/**/*.test.ts", "tests/golden/**/*.test.ts"],
           environment: "node",
           testTimeout: 120_000,
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: "app",
+          include: ["tests/server/**/*.test.ts"],
+          exclude: ["tests/server/cli/**"],
+          environment: "node",
+          globalSetup: ["tests/helpers/migrated-database.ts"],
+          // Each file has a database of its own, some hundred megabytes large.
+          maxWorkers: 2,
+          testTimeout: 60_000,
+          hookTimeout: 120_000,
         },
       },
       {

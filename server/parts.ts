@@ -7,6 +7,10 @@ export interface Parts {
   env: Env;
   log: Logger;
   db: Db;
+  /** signs the session cookies */
+  sessionSecret: string;
+  /** where the built client stands */
+  clientFolder: string;
   /** aborted when the server begins to stop: streams of events end, nothing new is begun */
   closing: AbortSignal;
 }

@@ -155,18 +155,17 @@ export class ToolpathReader {
     const { scan } = this;
     if (buf[scan.textEnd] === CR && scan.next - scan.textEnd === 1) this.cr++;
     if (scan.starAt >= 0) this.checkSum(buf, start);
+    if ((scan.mask & N_BIT) !== 0) this.lineNumber();
     switch (scan.kind) {
       case LineKind.blank:
         if (scan.commentStart >= 0) this.comment(buf);
         return;
       case LineKind.words:
-        if ((scan.mask & N_BIT) !== 0) this.lineNumber();
         if ((scan.mask & M_BIT) !== 0) this.mLine(buf);
         this.interpreter.run(scan);
         return;
       case LineKind.text:
-        this.outputs.numbered(buf, scan, false);
-        if (scan.value[12] === 0 || scan.value[12] === 1) this.pauseIfNew();
+        this.mLine(buf);
         return;
       case LineKind.named:
         this.namedLine(buf);

@@ -66,22 +66,24 @@ const INCH = 25.4;
 /** places in `program` */
 const ZERO_X = 0;
 const AT_E = 3;
+const UNIT = 4;
+const FLOW = 5;
 
 /** Modal state of the program: words in, moves in absolute millimetres out. */
 export class Interpreter {
   private readonly sink: MotionSink;
   private readonly row: Float64Array;
   private readonly motion: Motion;
-  /** machine position of the program's zero in X Y Z, mm, and the program's extruder position, mm */
-  private readonly program = new Float64Array(4);
+  /**
+   * Machine position of the program's zero in X Y Z, mm; the program's extruder position, mm; millimetres in its unit; and
+   * its flow override. Doubles of the hot path, kept unboxed.
+   */
+  private readonly program = Float64Array.of(0, 0, 0, 0, 1, 1);
   private absolute = true;
   private extruderAbsolute = true;
   /** E words are absolute: see extruderMode */
   private absoluteE = true;
-  /** factors: units to mm, feed override, flow override */
-  private unit = 1;
   private feedFactor = 1;
-  private flow = 1;
   /** programmed speed before the override */
   private feedMmMin: number;
   private plane: 17 | 18 | 19 = 17;
@@ -99,13 +101,14 @@ export class Interpreter {
   /** Runs one line of words. Output commands (M106 …) are not looked at here. */
   run(scan: LineScan): void {
     if (scan.plain) {
-      this.motionWord = scan.value[6];
+      if (this.motionWord !== 1) this.motionWord = 1;
       this.straight(scan.value, scan.mask);
     } else this.command(scan);
   }
 
   private straight(value: Float64Array, mask: number): void {
-    const { row, program, unit } = this;
+    const { row, program } = this;
+    const unit = program[UNIT];
     if ((mask & F_BIT) !== 0) this.setFeed(value[F]);
     const x0 = row[X1];
     const y0 = row[Y1];
@@ -130,7 +133,7 @@ export class Interpreter {
         fed -= program[AT_E];
         program[AT_E] = e;
       } else program[AT_E] += fed;
-      fed *= this.flow;
+      fed *= program[FLOW];
     }
     row[X0] = x0;
     row[Y0] = y0;
@@ -144,7 +147,7 @@ export class Interpreter {
 
   private setFeed(value: number): void {
     if (value > 0) {
-      this.feedMmMin = value * this.unit;
+      this.feedMmMin = value * this.program[UNIT];
       this.updateSpeed();
     } else this.sink.odd("feed-not-positive", `F${value} is no feed rate; the one before it stays in force`);
   }
@@ -213,10 +216,10 @@ export class Interpreter {
         this.plane = g;
         return;
       case 20:
-        this.unit = INCH;
+        this.program[UNIT] = INCH;
         return;
       case 21:
-        this.unit = 1;
+        this.program[UNIT] = 1;
         return;
       case 28:
         this.home(allWords);
@@ -271,7 +274,7 @@ export class Interpreter {
         this.updateSpeed();
         return;
       case 221:
-        if (s !== undefined && s > 0) this.flow = s / 100;
+        if (s !== undefined && s > 0) this.program[FLOW] = s / 100;
         return;
       case 201:
       case 203:
@@ -283,7 +286,7 @@ export class Interpreter {
   }
 
   private fileLimits(m: number, value: Float64Array, mask: number): void {
-    const unit = this.unit;
+    const unit = this.program[UNIT];
     const word = (letterBit: number, index: number): number | undefined =>
       (mask & letterBit) !== 0 && value[index] > 0 ? value[index] * unit : undefined;
     const axes = { x: word(X_BIT, X), y: word(Y_BIT, Y), z: word(Z_BIT, Z), e: word(E_BIT, E) };
@@ -316,7 +319,8 @@ export class Interpreter {
 
   private setPosition(value: Float64Array, mask: number): void {
     const all = (mask & (X_BIT | Y_BIT | Z_BIT | E_BIT)) === 0;
-    const { row, program, unit } = this;
+    const { row, program } = this;
+    const unit = program[UNIT];
     for (const [axis, letter, word] of [
       [0, X_BIT, X],
       [1, Y_BIT, Y],
@@ -357,7 +361,8 @@ export class Interpreter {
   }
 
   private arc(clockwise: boolean, value: Float64Array, mask: number): void {
-    const { row, program, unit } = this;
+    const { row, program } = this;
+    const unit = program[UNIT];
     // first and second axis of the plane, the axis along it, and their centre words
     const axes = this.plane === 17 ? [0, 1, 2] : this.plane === 18 ? [2, 0, 1] : [1, 2, 0];
     const words = [X, Y, Z];
@@ -384,7 +389,7 @@ export class Interpreter {
     let fed = 0;
     if ((mask & E_BIT) !== 0) {
       const e = value[E] * unit;
-      fed = (this.absoluteE ? e - program[AT_E] : e) * this.flow;
+      fed = (this.absoluteE ? e - program[AT_E] : e) * program[FLOW];
       program[AT_E] = this.absoluteE ? e : program[AT_E] + e;
     }
     this.chords(arc, axes, from, to, fed);

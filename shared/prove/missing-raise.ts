@@ -35,20 +35,20 @@ export function missingRaise(
       base = fileDuty;
     }
     fileDuty = line.duty;
-    let most = 0;
-    let abovePlan = planned;
-    for (; next < events.length && events[next].entry.from <= line.offset; next++) {
-      const { entry, source, duty } = events[next];
-      inForce = duty;
-      if (source === "plan") planned = duty;
-      // Where another duty of the plan is written at the very place, the raise may be set and ended there.
-      if (entry.to < line.offset) abovePlan = planned;
-      else most = Math.max(most, duty);
+    for (; next < events.length && events[next].entry.to < line.offset; next++) {
+      inForce = events[next].duty;
+      if (events[next].source === "plan") planned = inForce;
+    }
+    // Where another duty of the plan is written at the very place, a raise may end there as it begins.
+    let most = inForce;
+    let mostPlanned = planned;
+    for (let k = next; k < events.length && events[k].entry.from <= line.offset; k++) {
+      most = Math.max(most, events[k].duty);
+      if (events[k].source === "plan") mostPlanned = Math.max(mostPlanned, events[k].duty);
     }
     const inBody = layer > 0 && line.offset < (layers[layer]?.writeAt.offset ?? window.end.offset);
-    const raises = line.duty > base + TOLERANCE && line.duty > Math.max(abovePlan, planned) + TOLERANCE;
-    if (inBody && raises && line.ours !== "plan" && Math.max(inForce, most) < Math.min(line.duty, highest) - TOLERANCE)
-      return line;
+    const raises = line.duty > base + TOLERANCE && line.duty > mostPlanned + TOLERANCE;
+    if (inBody && raises && line.ours !== "plan" && most < Math.min(line.duty, highest) - TOLERANCE) return line;
   }
   return undefined;
 }

@@ -20,6 +20,7 @@ export class StaircaseRule {
   readonly step: number;
   readonly everyS: number;
 
+  private readonly minDuty: number;
   private readonly initial: number;
   private readonly events: readonly DutyEvent[];
   private readonly targets: readonly Target[];
@@ -34,17 +35,18 @@ export class StaircaseRule {
    * @param pauses bytes at which pauses stand
    */
   constructor(
-    rate: { maxDutyPerS: number; driveSteps: number },
+    rate: { maxDutyPerS: number; minDuty: number; driveSteps: number },
     initial: number,
     events: readonly DutyEvent[],
     targets: readonly Target[],
     instants: Instants,
     pauses: readonly number[],
   ) {
-    const { maxDutyPerS, driveSteps } = rate;
+    const { maxDutyPerS, minDuty, driveSteps } = rate;
     this.step = Math.max(1, Math.floor(maxDutyPerS * driveSteps + SAME_S)) / driveSteps;
     this.everyS = Math.max(1, this.step / maxDutyPerS);
     this.halfStep = 0.5 / driveSteps;
+    this.minDuty = minDuty;
     this.initial = initial;
     this.events = events;
     this.targets = targets;
@@ -72,11 +74,13 @@ export class StaircaseRule {
 
   /** Event `k` goes from a duty toward the wanted one by as much as is allowed at once. */
   private isFullStep(from: number, k: number, wanted: number): boolean {
-    const change = this.events[k].duty - from;
+    const { duty } = this.events[k];
+    const change = duty - from;
     const all = wanted - from;
-    return (
-      Math.sign(change) === Math.sign(all) && Math.abs(change) > Math.min(this.step, Math.abs(all)) - this.halfStep
-    );
+    if (Math.sign(change) !== Math.sign(all)) return false;
+    // A fan that falls to off comes to its least duty first.
+    const onLeastDuty = change < 0 && duty > 0 && duty < this.minDuty + 2 * this.halfStep;
+    return onLeastDuty || Math.abs(change) > Math.min(this.step, Math.abs(all)) - this.halfStep;
   }
 
   private dutyBefore(k: number): number {

@@ -3,7 +3,7 @@ import type { Profile } from "#shared/formats/profile.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import type { Plan } from "#shared/plan/plan.ts";
 import type { Instants } from "#shared/prove/instants.ts";
-import { type PauseForms, pauseForms } from "#shared/prove/pause-line.ts";
+import { pauseForms } from "#shared/prove/pause-line.ts";
 
 /** A duty that has to be in force from a line boundary on. */
 export interface Target {
@@ -45,19 +45,20 @@ function put(targets: Target[], target: Target): void {
 }
 
 function aroundPauses(targets: readonly Target[], { reading, machine }: TargetInput): Target[] {
-  const forms: PauseForms = pauseForms(machine);
+  const forms = pauseForms(machine);
   const { layers, window } = reading;
   let left = [...targets];
+  let idleUntil = 0;
   for (const { offset, length, command } of reading.pauses) {
     if (offset < window.start.offset || offset >= window.end.offset) continue;
-    const resumesAt =
-      forms.get(command.toUpperCase()) === "blocking"
-        ? offset + length
-        : layers.find(({ writeAt }) => writeAt.offset > offset)?.writeAt.offset;
-    const wanted = left.filter((target) => target.offset <= (resumesAt ?? offset)).pop();
-    left = left.filter((target) => target.offset < offset || target.offset > (resumesAt ?? Number.POSITIVE_INFINITY));
-    if (wanted && resumesAt !== undefined) left.push({ ...wanted, offset: resumesAt });
-    left.sort((a, b) => a.offset - b.offset);
+    const blocks = forms.get(command.toUpperCase()) === "blocking";
+    const nextLayer = layers.find(({ writeAt }) => writeAt.offset > offset)?.writeAt ?? window.end;
+    idleUntil = Math.max(idleUntil, blocks ? offset + length : nextLayer.offset);
+    const later = left.filter((target) => target.offset > idleUntil);
+    const wanted = left[left.length - later.length - 1];
+    left = left.filter((target) => target.offset < offset);
+    if (wanted && idleUntil < window.end.offset) left.push({ ...wanted, offset: idleUntil });
+    left.push(...later);
   }
   return left;
 }

@@ -1,38 +1,36 @@
-import type { Boundary, ControlLine, PauseLine, Reading } from "#shared/layers/reading.ts";
+import type { Boundary, ControlLine, Reading } from "#shared/layers/reading.ts";
 
 /** All line boundaries of the window at which a command may stand, ascending: layer starts, travels, both sides of pauses. */
 export class Boundaries {
   readonly list: readonly Boundary[];
 
-  private readonly going: ReadonlyMap<number, ControlLine>;
+  /**
+   * Byte behind a pause by the byte behind the lines that follow it and go: without those lines the two are one
+   * boundary, and so they are one here. The file then has the same boundaries before and after it was tuned.
+   */
+  private readonly behindPause = new Map<number, number>();
 
   /** @param going lines that the tuning may take out */
-  constructor(reading: Reading, going: readonly ControlLine[]) {
-    const { travels, layers, window, pauses } = reading;
-    this.going = new Map(going.map((line) => [line.offset, line]));
+  constructor({ travels, layers, window, pauses }: Reading, going: readonly ControlLine[]) {
+    const lengthAt = new Map(going.map(({ offset, length }) => [offset, length]));
     const list: Boundary[] = layers.map(({ writeAt }) => writeAt);
-    for (const pause of pauses)
-      list.push({ offset: pause.offset, line: pause.line, timeS: pause.timeS }, this.behind(pause));
+    for (const { offset, length, line, timeS } of pauses) {
+      const behind = offset + length;
+      let next = behind;
+      while (lengthAt.has(next)) next += lengthAt.get(next)!;
+      this.behindPause.set(next, behind);
+      list.push({ offset, line, timeS }, { offset: behind, line: line + 1, timeS });
+    }
     for (let k = 0; k < travels.count; k++)
       list.push({ offset: travels.offset[k], line: travels.line[k], timeS: travels.timeS[k] });
-    list.sort((a, b) => a.offset - b.offset);
-    this.list = list.filter(
-      ({ offset }, k) => offset >= window.start.offset && offset < window.end.offset && offset !== list[k - 1]?.offset,
-    );
+    this.list = list
+      .filter(({ offset }) => offset >= window.start.offset && offset < window.end.offset && this.one(offset) === offset)
+      .sort((a, b) => a.offset - b.offset)
+      .filter(({ offset }, k, sorted) => offset !== sorted[k - 1]?.offset);
   }
 
-  /**
-   * The boundary behind a pause and behind the lines after it that go: what stands next, a layer's start for one, is at
-   * the same boundary whether or not the file was tuned before.
-   */
-  behind({ offset, length, line, timeS }: PauseLine): Boundary {
-    let end = offset + length;
-    let next = line + 1;
-    for (let gone = this.going.get(end); gone; gone = this.going.get(end)) {
-      end += gone.length;
-      next++;
-    }
-    return { offset: end, line: next, timeS };
+  private one(offset: number): number {
+    return this.behindPause.get(offset) ?? offset;
   }
 
   /** Position in `list` of the last boundary at or before an instant; 0 when there is none. */
@@ -50,7 +48,8 @@ export class Boundaries {
 
   /** Position in `list` of the first boundary at or after a byte; list.length when there is none. */
   at(offset: number): number {
-    return this.count((boundary) => boundary.offset < offset);
+    const one = this.one(offset);
+    return this.count((boundary) => boundary.offset < one);
   }
 
   /** How many boundaries, from the first on, something holds for. */

@@ -6,7 +6,6 @@ import { OWN_TAGS } from "#shared/gcode/own-lines.ts";
 import { writeDuty } from "#shared/gcode/write-command.ts";
 import type { ControlLine, Reading } from "#shared/layers/reading.ts";
 import { drivenChannels } from "#shared/plan/driven-channels.ts";
-import { effectiveLimits } from "#shared/plan/limits.ts";
 import type { Advice, Plan } from "#shared/plan/plan.ts";
 import { planDuties } from "#shared/plan/plan-duties.ts";
 import { Boundaries } from "#shared/rewrite/boundaries.ts";
@@ -43,8 +42,7 @@ export interface Tuning {
  *
  * @throws Refusal when profile, machine and polymer don't fit, or when the file can't be tuned safely
  */
-export function prepareTuning(input: TuningInput): Tuning {
-  const { reading, machine, profile, polymer } = input;
+export function prepareTuning({ reading, machine, profile, polymer, ...about }: TuningInput): Tuning {
   checkFit(machine, profile, polymer);
   const driven = drivenChannels(machine, profile);
   const earlier = earlierTuning(
@@ -61,14 +59,15 @@ export function prepareTuning(input: TuningInput): Tuning {
   const boundaries = new Boundaries(reading, going);
   const kept = new Set<ControlLine>();
   const commands = driven.flatMap((channel) => {
-    const planned = scheduleChannel(channel, { reading, boundaries, machine, profile, plan }, advice);
-    const raises =
-      channel.kind === "fan" && profile.withinLayer === "keep-raises"
-        ? keepRaises(channel, machine, reading, effectiveLimits(channel, profile), planned)
-        : undefined;
+    const input = { reading, boundaries, machine, profile, plan };
+    const planned = scheduleChannel(channel, input, advice);
+    const keeps = channel.kind === "fan" && profile.withinLayer === "keep-raises";
+    const raises = keeps ? keepRaises(channel, input, planned) : undefined;
     for (const line of raises?.kept ?? []) kept.add(line);
     return (raises?.writes ?? planned).map((write) => ({ ...write, text: writeDuty(channel.drive, write.duty) }));
   });
+  // At one place the plan's come first: what raises a fan stands where the file's own line stood.
+  commands.sort((a, b) => a.offset - b.offset || Number(a.tag !== "plan") - Number(b.tag !== "plan"));
   if (kept.size > 0)
     advice.push({
       layer: 1,
@@ -79,15 +78,15 @@ export function prepareTuning(input: TuningInput): Tuning {
   const removed = going.filter((line) => !kept.has(line));
   const provenance: Provenance = {
     v: 1,
-    profile: named(profile.name, writeProfile(profile), input.digest, input.versions?.profile),
-    machine: named(machine.name, writeMachine(machine), input.digest, input.versions?.machine),
+    profile: named(profile.name, writeProfile(profile), about.digest, about.versions?.profile),
+    machine: named(machine.name, writeMachine(machine), about.digest, about.versions?.machine),
     original: earlier?.original ?? reading.file.sha256,
-    engine: input.engine,
-    status: input.status,
+    engine: about.engine,
+    status: about.status,
     channels: driven.map(({ id }) => id),
     withinLayer: profile.withinLayer,
     lines: commands.length,
-    seal: input.digest(sealText(reading, commands, removed, kept)),
+    seal: about.digest(sealText(reading, commands, removed, kept)),
   };
   plan.advice = [...plan.advice, ...advice].sort((a, b) => a.layer - b.layer);
   return { plan, edits: layEdits(reading, commands, removed, provenance), provenance };

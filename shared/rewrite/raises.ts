@@ -1,6 +1,7 @@
-import type { Channel, Machine } from "#shared/formats/machine.ts";
-import type { ControlLine, Reading } from "#shared/layers/reading.ts";
-import type { DutyLimits } from "#shared/plan/limits.ts";
+import type { Channel } from "#shared/formats/machine.ts";
+import type { ControlLine } from "#shared/layers/reading.ts";
+import { effectiveLimits } from "#shared/plan/limits.ts";
+import type { ScheduleInput } from "#shared/rewrite/schedule.ts";
 import { highestDuty, type Write } from "#shared/rewrite/write.ts";
 
 /** What stays of a fan's own commands, and what is written because of them. */
@@ -19,13 +20,9 @@ const SAME = 1e-6;
  *
  * @param planned the channel's writes, in file order
  */
-export function keepRaises(
-  channel: Channel,
-  machine: Machine,
-  reading: Reading,
-  limits: DutyLimits,
-  planned: readonly Write[],
-): Raises {
+export function keepRaises(channel: Channel, input: ScheduleInput, planned: readonly Write[]): Raises {
+  const { reading, machine, profile, boundaries } = input;
+  const limits = effectiveLimits(channel, profile);
   const index = machine.channels.indexOf(channel);
   const mostDuty = highestDuty(channel, limits);
   const lines = reading.controls.filter((line) => line.channel === index && line.does === "duty");
@@ -36,14 +33,14 @@ export function keepRaises(
   let next = 0;
   let nextPlanned = 0;
   let inForce = 0; // the plan's duty
-  let raised = false;
+  let raisedAt = -1; // byte of the raise in force
 
   /** Takes over the plan's writes up to a byte; any of them ends a raise. */
   const planUpTo = (offset: number): void => {
     for (; nextPlanned < planned.length && planned[nextPlanned].offset <= offset; nextPlanned++) {
       writes.push(planned[nextPlanned]);
       inForce = planned[nextPlanned].duty;
-      raised = false;
+      raisedAt = -1;
     }
   };
   const handle = (line: ControlLine, baseDuty: number): void => {
@@ -53,15 +50,17 @@ export function keepRaises(
     const raises = line.duty > baseDuty + SAME && duty > inForce + SAME;
     if (raises && line.duty <= limits.maxDuty + SAME && line.ours === false) kept.add(line);
     else if (raises) writes.push({ ...placeOf(line), duty, tag: "raise" });
-    else if (raised) writes.push({ ...placeOf(line), duty: inForce, tag: "restore" });
-    raised = raises;
+    else if (raisedAt >= 0) writes.push({ ...placeOf(line), duty: inForce, tag: "restore" });
+    raisedAt = raises ? line.offset : -1;
   };
 
   let fileDuty = 0;
   for (const [k, layer] of reading.layers.entries()) {
-    planUpTo(layer.writeAt.offset);
-    if (raised) writes.push({ ...layer.writeAt, duty: inForce, tag: "plan" });
-    raised = false;
+    const start = boundaries.list[boundaries.at(layer.writeAt.offset)];
+    planUpTo(start.offset);
+    const end = raisedAt < start.offset ? start : layer.writeAt;
+    if (raisedAt >= 0) writes.push({ ...end, duty: inForce, tag: "plan" });
+    raisedAt = -1;
     // Commands before the layer's first laying move set the base that its raises rise from.
     for (; next < lines.length && lines[next].offset < layer.firstByte; next++) fileDuty = lines[next].duty;
     const baseDuty = tunedBefore ? 0 : fileDuty;

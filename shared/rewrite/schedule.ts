@@ -79,8 +79,8 @@ function followHeater(channel: Channel, limits: DutyLimits, whole: Stretch, inpu
     const idle = Math.min(idleDuty, inForce);
     if (inForce - idle > SAME) writes.push({ ...boundaries.list[end], duty: idle, tag: "plan" });
     const nextLayer = reading.layers.find(({ writeAt }) => writeAt.offset > pause.offset)?.writeAt ?? reading.window.end;
-    const resumes = blocks(machine, pause.command) ? boundaries.behind(pause) : nextLayer;
-    const resumesAt = Math.max(from.at, boundaries.at(resumes.offset));
+    const resumes = blocks(machine, pause.command) ? pause.offset + pause.length : nextLayer.offset;
+    const resumesAt = Math.max(from.at, boundaries.at(resumes));
     from = { duty: idle, at: resumesAt };
     targets = wantedFrom(targets, resumesAt);
   }

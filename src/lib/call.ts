@@ -26,8 +26,17 @@ interface LooseOptions {
  */
 export async function call<E extends Endpoint>(spec: E, ...rest: OptionalWhenEmpty<CallOptions<E>>): Promise<ReplyOutput<E>> {
   const options = (rest[0] ?? {}) as LooseOptions;
-  let response = await send(spec, options);
-  if (response.status === 401 && spec.allows !== "anyone" && (await waitForSignIn())) response = await send(spec, options);
+  const response = await send(spec, options);
+  if (response.status === 401 && spec.allows !== "anyone" && (await waitForSignIn())) return reply(spec, await send(spec, options));
+  return reply(spec, response);
+}
+
+/** The same, but a request that is turned away as signed out fails at once. */
+export async function callOnce<E extends Endpoint>(spec: E, ...rest: OptionalWhenEmpty<CallOptions<E>>): Promise<ReplyOutput<E>> {
+  return reply(spec, await send(spec, (rest[0] ?? {}) as LooseOptions));
+}
+
+async function reply<E extends Endpoint>(spec: E, response: Response): Promise<ReplyOutput<E>> {
   if (!response.ok) throw await problemOf(response);
   if (spec.reply === "nothing" || response.status === 204) return undefined as ReplyOutput<E>;
   return (await response.json()) as ReplyOutput<E>;

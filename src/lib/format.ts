@@ -1,25 +1,24 @@
-const MINUS = "\u2212";
+import { fixedText } from "#src/lib/number-text.ts";
+
 /** As wide as a digit where every sign is: keeps decimal points one under the other. */
 const BLANK = "\u00a0";
 
-/** A number with a fixed count of decimals; decimals line up wherever these are right-aligned. */
-export function fixed(value: number, decimals: number): string {
-  if (!Number.isFinite(value)) return "–";
-  const text = Math.abs(value).toFixed(decimals);
-  return value < 0 && Number(text) !== 0 ? MINUS + text : text;
-}
-
-/** A number without trailing zeros, padded so that its decimal point stands where `fixed` would put it. */
+/** A number without trailing zeros, padded so that its decimal point stands where `fixedText` would put it. */
 export function trimmed(value: number, decimals: number): string {
-  const text = fixed(value, decimals);
+  const text = fixedText(value, decimals);
   if (decimals === 0) return text;
   const short = text.replace(/\.?0+$/, "");
   return short + BLANK.repeat(text.length - short.length);
 }
 
+/** A number with its own count of decimals, padded as if it had `upTo`: for columns of unlike quantities. */
+export function aligned(value: number, decimals: number, upTo: number): string {
+  return fixedText(value, decimals) + BLANK.repeat(upTo - decimals + (decimals === 0 && upTo > 0 ? 1 : 0));
+}
+
 /** A span of time as a person would say it: 7.4 s, 4 min 12 s, 3 h 04 min. */
 export function duration(seconds: number): string {
-  if (seconds < 60) return `${fixed(seconds, 1)} s`;
+  if (seconds < 60) return `${fixedText(seconds, 1)} s`;
   const whole = Math.round(seconds);
   if (whole < 3600) return `${Math.floor(whole / 60)} min ${two(whole % 60)} s`;
   const minutes = Math.round(seconds / 60);

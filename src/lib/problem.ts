@@ -1,3 +1,5 @@
+import { Refusal } from "#shared/refusal.ts";
+
 /** What a server answers when it can't do what was asked (RFC 9457), as far as the client uses it. */
 export interface Problem {
   status: number;
@@ -50,6 +52,10 @@ export function problemFrom(status: number, text: string): ProblemError {
 /** Anything thrown, as a problem that can be shown. */
 export function asProblem(error: unknown): Problem {
   if (error instanceof ProblemError) return error.problem;
+  if (error instanceof Refusal) {
+    const { code, message, remedy, place } = error;
+    return { status: 422, code, title: "Not accepted", detail: message, remedy, place };
+  }
   return {
     status: -1,
     code: "page-fault",

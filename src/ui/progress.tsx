@@ -1,6 +1,6 @@
 import type { ReactNode } from "react";
 import { Button } from "#src/ui/button.tsx";
-import { fixed } from "#src/lib/format.ts";
+import { fixedText } from "#src/lib/number-text.ts";
 
 interface Props {
   label: string;
@@ -20,7 +20,7 @@ export function Progress({ label, share, detail, onCancel }: Props) {
       <div className="min-w-48 grow">
         <div className="flex justify-between gap-4 text-small">
           <span>{label}</span>
-          <span className="font-mono">{percent === undefined ? "" : `${fixed(percent, 0)} %`}</span>
+          <span className="font-mono">{percent === undefined ? "" : `${fixedText(percent, 0)} %`}</span>
         </div>
         <div
           role="progressbar"

@@ -1,7 +1,10 @@
 import { customType, timestamp, uuid } from "drizzle-orm/pg-core";
 
 /** Primary key made by the server, so that a row's id is known before it is stored. */
-export const rowId = () => uuid("id").primaryKey().$defaultFn(() => crypto.randomUUID());
+export const rowId = () =>
+  uuid("id")
+    .primaryKey()
+    .$defaultFn(() => crypto.randomUUID());
 
 export const moment = (name: string) => timestamp(name, { withTimezone: true, mode: "date" });
 

@@ -55,13 +55,13 @@ class Course {
     this.channel = channel;
     this.events = events;
     this.targets = targets;
-    const { maxDutyPerS, maxDuty } = evidence.limits(channel);
+    const { maxDutyPerS, minDuty, maxDuty } = evidence.limits(channel);
     const driveSteps = dutySteps(channel.drive);
     const pauses = evidence.pauses.map(({ from }) => from);
     this.halfStep = 0.5 / driveSteps;
     this.maxDuty = maxDuty;
     this.staircase = Number.isFinite(maxDutyPerS)
-      ? new StaircaseRule({ maxDutyPerS, driveSteps }, initial, events, targets, instants, pauses)
+      ? new StaircaseRule({ maxDutyPerS, minDuty, driveSteps }, initial, events, targets, instants, pauses)
       : undefined;
   }
 
@@ -86,7 +86,6 @@ class Course {
       if (i + 1 < targets.length && targets[i + 1].offset <= entry.to) continue;
       if (Math.abs(inForce - duty) < this.halfStep || this.isBoost(k)) continue;
       if (this.staircase?.behind(k, i) || this.staircase?.ahead(k, i)) continue;
-      if ((globalThis as any).DBG) console.log("DBG", i, this.targets[i], k, events.slice(Math.max(0,k-2), k + 3).map((e) => [e.entry.tunedLine, e.entry.from, e.entry.to, e.duty, e.timeS]), evidence.pauses.map((p) => [p.from, p.tunedLine, p.command]), this.targets.slice(-3));
       return `Layer ${layer} wants ${channel.id} at ${dutyWords(duty)}, but ${dutyWords(inForce)} is in force, set at ${evidence.place(entry)}.`;
     }
     return undefined;

@@ -1,5 +1,6 @@
 import type { Channel } from "#shared/formats/machine.ts";
 import type { Check } from "#shared/formats/proof.ts";
+import type { DutyLimits } from "#shared/plan/limits.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
 import { pauseForms } from "#shared/prove/pause-line.ts";
@@ -18,9 +19,10 @@ const SAME = 1e-9;
 export function checkRate(evidence: Evidence): Check {
   const said: string[] = [];
   for (const { channel, index } of evidence.channels()) {
-    const { maxDutyPerS } = evidence.limits(channel);
+    const limits = evidence.limits(channel);
+    const { maxDutyPerS } = limits;
     if (!Number.isFinite(maxDutyPerS)) continue;
-    const problem = problemOf(evidence, channel, evidence.events[index], maxDutyPerS);
+    const problem = problemOf(evidence, channel, evidence.events[index], limits);
     if (problem !== undefined) return verdict("rate", problem, "");
     said.push(`${channel.id} changes by at most ${maxDutyPerS} a second`);
   }
@@ -31,8 +33,9 @@ function problemOf(
   evidence: Evidence,
   channel: Channel,
   events: readonly DutyEvent[],
-  maxDutyPerS: number,
+  limits: DutyLimits,
 ): string | undefined {
+  const { maxDutyPerS } = limits;
   const step = 1 / dutySteps(channel.drive);
   let duty = 0;
   let sinceS = Number.NEGATIVE_INFINITY;
@@ -42,7 +45,8 @@ function problemOf(
   let recent: { timeS: number; change: number }[] = [];
   for (const event of events) {
     const { entry, timeS, source } = event;
-    const before = duty;
+    // What the file has set above the limit comes down to the limit at once.
+    const before = Math.min(duty, limits.maxDuty);
     if (source === "file") duty = event.duty;
     if (source !== "plan" || event.duty === before) continue;
     duty = event.duty;
@@ -56,6 +60,7 @@ function problemOf(
     lastLine = entry.tunedLine;
     if (isExempt(evidence, channel, event, before)) {
       recent = [];
+      sinceS = Number.NEGATIVE_INFINITY;
       slack = 0;
       continue;
     }

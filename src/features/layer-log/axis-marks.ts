@@ -1,8 +1,8 @@
 import { type HeightView, yOf } from "#src/features/layer-log/height-view.ts";
 import type { LayerStack } from "#src/features/layer-log/layer-stack.ts";
 import { shownPositions } from "#src/features/layer-log/trace.ts";
-import { decimalsOf, multiples, niceStep } from "#src/lib/scale.ts";
 import { fixedText } from "#src/lib/number-text.ts";
+import { decimalsOf, multiples, niceStep } from "#src/lib/scale.ts";
 
 export interface AxisMark {
   y: number;

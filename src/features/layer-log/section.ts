@@ -58,5 +58,7 @@ function reach(layers: readonly SectionLayer[], axis: 0 | 1) {
     to = Math.max(to, boxMm.max[axis]);
     narrowest = Math.min(narrowest, boxMm.max[axis] - boxMm.min[axis]);
   }
-  return layers.length === 0 ? { from: 0, to: 1, change: 0 } : { from, to, change: (to - from) / Math.max(narrowest, 1) };
+  return layers.length === 0
+    ? { from: 0, to: 1, change: 0 }
+    : { from, to, change: (to - from) / Math.max(narrowest, 1) };
 }

@@ -28,12 +28,18 @@ export function traceSeries(values: ArrayLike<number>, stack: LayerStack, view: 
     : traceSteps(values, stack, view, first, last);
 }
 
-function traceSteps(values: ArrayLike<number>, stack: LayerStack, view: HeightView, first: number, last: number): Trace {
+function traceSteps(
+  values: ArrayLike<number>,
+  stack: LayerStack,
+  view: HeightView,
+  first: number,
+  last: number,
+): Trace {
   const trace = new Float64Array(4 * Math.max(last - first + 1, 0));
   let n = 0;
   for (let i = first; i <= last; i++) {
     const value = values[i];
-    const known = value === value;
+    const known = !Number.isNaN(value);
     trace[n++] = value;
     trace[n++] = known ? yOf(view, Math.max(stack.bottomMm[i], view.fromMm)) : Number.NaN;
     trace[n++] = value;
@@ -65,7 +71,7 @@ function traceRows(
     let gap = false;
     for (; i <= last && (i === begin || rowOf(i) === row); i++) {
       const value = values[i];
-      if (value !== value) {
+      if (Number.isNaN(value)) {
         gap = true;
         continue;
       }

@@ -1,5 +1,5 @@
-import { niceStep, type Scale } from "#src/lib/scale.ts";
 import type { Track } from "#src/features/layer-log/track.ts";
+import { niceStep, type Scale } from "#src/lib/scale.ts";
 
 /** The scale of a track: as it says, else with room for every value and reference. */
 export function trackScale({ domain, scale = "linear", series, references = [] }: Track): Scale {

@@ -31,3 +31,9 @@ test("proof", () => tally("proof", generated(), async (g) => {
   const f = failures(await proveFiles({ original, tuned, machine: g.machine, profile: g.profile, expected: { engine: "0.0.0-test", status: "trial-only" } }));
   return f.length ? f.join(" | ") : undefined;
 }), 600000);
+test("proof again", () => tally("proof again", generated(), async (g) => {
+  const original = bytesOf(tune(g.text, g.machine, g.profile));
+  const tuned = bytesOf(tune(original.toString("latin1"), g.machine, g.profile));
+  const f = failures(await proveFiles({ original, tuned, machine: g.machine, profile: g.profile, expected: { engine: "0.0.0-test", status: "trial-only" } }));
+  return f.length ? f.join(" | ") : undefined;
+}), 600000);
