@@ -1,8 +1,4 @@
-// `npm run build`: bundles what runs outside the browser into dist/.
-import { rmSync } from "node:fs";
-import { join } from "node:path";
-import { bundle, ROOT } from "./bundle.mjs";
+// `npm run build`, first half: bundles the programs that run outside the browser into dist/. The second is `vite build`.
+import { buildPrograms } from "./built.mjs";
 
-const outDir = join(ROOT, "dist");
-rmSync(outDir, { recursive: true, force: true });
-await bundle({ quenchline: "server/cli/quenchline.ts" }, outDir);
+await buildPrograms();

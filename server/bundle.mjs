@@ -6,8 +6,8 @@ import { fileURLToPath } from "node:url";
 /** The project's folder, with a separator at its end. */
 export const ROOT = fileURLToPath(new URL("..", import.meta.url));
 const CACHE = join(ROOT, "node_modules", ".cache", "quenchline");
-const SOURCE_FOLDERS = ["shared", "server"];
-const SOURCE_FILES = ["package.json", "package-lock.json"];
+/** What a program outside the browser is made from. */
+export const PROGRAM_SOURCES = ["shared", "server", "package.json", "package-lock.json"];
 const DAY_MS = 86_400_000;
 
 /**
@@ -44,7 +44,7 @@ export async function bundle(entries, outDir) {
  * @returns {Promise<string>} path of the program, which runs when it is imported
  */
 export async function freshCommandLine() {
-  const folder = join(CACHE, fingerprint());
+  const folder = join(CACHE, fingerprint(PROGRAM_SOURCES));
   const program = join(folder, "quenchline.mjs");
   if (existsSync(program)) return program;
   const unfinished = `${folder}.${process.pid}-${randomBytes(4).toString("hex")}`;
@@ -60,22 +60,22 @@ export async function freshCommandLine() {
   return program;
 }
 
-/** Names, sizes and times of all sources; reading their contents would cost more than the bundle saves. */
-function fingerprint() {
+/**
+ * Names, sizes and times of all sources; reading their contents would cost more than the bundle saves.
+ *
+ * @param {readonly string[]} sources files and folders, relative to the project
+ */
+export function fingerprint(sources) {
   const hash = createHash("sha256");
   const add = (path) => {
     const { mtimeMs, size } = statSync(join(ROOT, path));
     hash.update(`${path}\0${mtimeMs}\0${size}\n`);
   };
-  const walk = (folder) => {
-    for (const entry of readdirSync(join(ROOT, folder), { withFileTypes: true })) {
-      const path = `${folder}/${entry.name}`;
-      if (entry.isDirectory()) walk(path);
-      else if (/\.(ts|mjs|json)$/.test(entry.name)) add(path);
-    }
+  const walk = (path) => {
+    if (!statSync(join(ROOT, path)).isDirectory()) return add(path);
+    for (const name of readdirSync(join(ROOT, path))) if (!name.endsWith(".tsbuildinfo")) walk(`${path}/${name}`);
   };
-  SOURCE_FOLDERS.forEach(walk);
-  SOURCE_FILES.forEach(add);
+  for (const path of sources) walk(path);
   return hash.digest("hex").slice(0, 16);
 }
 

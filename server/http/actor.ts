@@ -10,3 +10,12 @@ export interface Actor {
   teamName: string;
   sessionId: string;
 }
+
+declare global {
+  namespace Express {
+    interface Request {
+      /** who is signed in; set before any route runs */
+      actor?: Actor;
+    }
+  }
+}

@@ -20,6 +20,7 @@ export const PROBLEMS = {
   "email-taken": [409, "The e-mail address is taken"],
   "not-ready": [409, "Not ready yet"],
   "in-use": [409, "Still in use"],
+  "proof-failed": [409, "The proof failed"],
   "acknowledge-first": [409, "The cautions are not acknowledged yet"],
   "checklist-incomplete": [422, "The checklist is incomplete"],
   "storage-full": [507, "The disk is full"],

@@ -1,4 +1,5 @@
 import { createHash, randomBytes } from "node:crypto";
+import type { Stats } from "node:fs";
 import { type FileHandle, mkdir, open, readdir, rename, rm, stat } from "node:fs/promises";
 import { join } from "node:path";
 import type { Readable } from "node:stream";
@@ -78,12 +79,13 @@ export class LocalStorage implements Storage {
   }
 
   async has(sha256: string): Promise<boolean> {
-    try {
-      return (await stat(this.path(sha256))).isFile();
-    } catch (error) {
-      if (errorCode(error) === "ENOENT") return false;
-      throw error;
-    }
+    return (await this.find(sha256)) !== undefined;
+  }
+
+  async size(sha256: string): Promise<number> {
+    const found = await this.find(sha256);
+    if (found === undefined) throw new BytesMissing(sha256);
+    return found.size;
   }
 
   async remove(sha256: string): Promise<void> {
@@ -94,6 +96,15 @@ export class LocalStorage implements Storage {
     for (const folder of await readdir(this.root, { withFileTypes: true })) {
       if (!folder.isDirectory() || !/^[0-9a-f]{2}$/.test(folder.name)) continue;
       for (const name of await readdir(join(this.root, folder.name))) if (SHA256.test(name)) yield name;
+    }
+  }
+
+  private async find(sha256: string): Promise<Stats | undefined> {
+    try {
+      return await stat(this.path(sha256));
+    } catch (error) {
+      if (errorCode(error) === "ENOENT") return undefined;
+      throw error;
     }
   }
 

@@ -36,6 +36,8 @@ export interface Storage {
   /** @throws BytesMissing */
   open(sha256: string, range?: ByteRange): Promise<Readable>;
   has(sha256: string): Promise<boolean>;
+  /** @throws BytesMissing */
+  size(sha256: string): Promise<number>;
   /** Removing what isn't there is no error. */
   remove(sha256: string): Promise<void>;
   /** Every hash there is, in no particular order. */

@@ -1,15 +1,15 @@
 import { Refusal } from "#shared/refusal.ts";
 
+const LF = 10;
+const CR = 13;
+/** Longest line that is read; firmware cuts lines far shorter. */
+export const MAX_LINE_BYTES = 1 << 20;
+
 /**
  * Called with complete lines: `buf[from, to)` ends with a line terminator, and one more byte stands behind it. With
  * `open` it is the one last line of a file that ends without a terminator: a line feed is lent to it.
  */
 export type LinesHandler = (buf: Uint8Array, from: number, to: number, fileOffset: number, open: boolean) => void;
-
-const LF = 10;
-const CR = 13;
-/** Longest line that is read; firmware cuts lines far shorter. */
-export const MAX_LINE_BYTES = 1 << 20;
 
 /**
  * Cuts chunks at line ends. Whole lines are handed on inside the chunk they came in; only the line across a chunk

@@ -62,22 +62,21 @@ export const COMMENT_SHAPES: readonly CommentShape[] = [
 
 /**
  * A team's own marker, written as literal text with `{number}`, `{height}` and `{any}` in it. Literal text is matched
- * as such, so that no template can make a slow pattern.
+ * as such; a placeholder takes all it can and gives nothing back, `{any}` up to a blank or to what stands behind it: no
+ * template can make a slow pattern.
  *
  * @param template the comment without its delimiters, e.g. `slab {number} up to {height} mm`
  */
 export function markerShape(template: string): CommentShape {
   const keys: string[] = [];
-  const source = template
-    .trim()
-    .split(/(\{number\}|\{height\}|\{any\})/)
-    .map((part) => {
-      if (part === "{any}") return "[^\\s]*";
-      if (part === "{number}" || part === "{height}") {
-        keys.push(part);
-        return part === "{number}" ? NUMBER : LENGTH;
-      }
-      return part.replace(/[.*+?^${}()|[\]\\]/g, "\\$&").replace(/\s+/g, "\\s+");
+  const parts = bytesAsText(template.trim()).split(/((?:\{any\})+|\{number\}|\{height\})/);
+  const source = parts
+    .map((part, k) => {
+      if (k % 2 === 0) return literal(part).replace(/\s+/g, "\\s+");
+      const behind = parts[k + 1] ? literal(parts[k + 1][0]) : k + 2 < parts.length ? "\\d.+-" : "";
+      if (part.startsWith("{any}")) return `[^\\s${behind}]*`;
+      keys.push(part);
+      return `(?=${part === "{number}" ? NUMBER : LENGTH})(?:\\${keys.length})`;
     })
     .join("");
   return shape(`${source}$`, (groups) => ({
@@ -86,6 +85,14 @@ export function markerShape(template: string): CommentShape {
     topMm: optional(groups[keys.indexOf("{height}")]),
   }));
 }
+
+const literal = (text: string): string => text.replace(/[.*+?^${}()|[\]\\-]/g, "\\$&");
+
+/** Comments are looked at byte by byte, so a template is matched as its UTF-8 bytes. */
+const bytesAsText = (text: string): string =>
+  encodeURIComponent(text.replace(/\p{Cs}/gu, "\ufffd")).replace(/%(..)/g, (_, hex) =>
+    String.fromCharCode(Number.parseInt(hex, 16)),
+  );
 
 /** Longest comment that is looked at; a marker is short. */
 const LONGEST = 120;

@@ -1,3 +1,14 @@
+const LF = 10;
+const CR = 13;
+const TAB = 9;
+const SPACE = 32;
+/** classes of bytes that start no word */
+const BLANK = 253;
+const END = 254;
+const OTHER = 255;
+const G = 6;
+const M = 12;
+const N = 13;
 /**
  * The byte scanner: one line of G-code to numbers, without making a string.
  *
@@ -64,15 +75,6 @@ export class LineScan {
   }
 }
 
-const LF = 10;
-const CR = 13;
-const TAB = 9;
-const SPACE = 32;
-/** classes of bytes that start no word */
-const BLANK = 253;
-const END = 254;
-const OTHER = 255;
-
 /** 0-25 for a letter in either case, else the byte's class. */
 const CLASS = new Uint8Array(256).fill(OTHER);
 for (let k = 0; k < 26; k++) {
@@ -90,9 +92,6 @@ for (const letter of "XYZEF") {
   AXIS_BIT[letter.toLowerCase().charCodeAt(0)] = bit(letter);
 }
 const POW10 = Float64Array.from({ length: 23 }, (_, k) => 10 ** k);
-const G = 6;
-const M = 12;
-const N = 13;
 
 /** M commands whose rest of line is a message or a file name. */
 const TEXT_COMMANDS = new Set([0, 1, 16, 23, 28, 30, 32, 36, 38, 98, 117, 118, 486, 550, 551, 552, 587, 928]);

@@ -3,12 +3,14 @@ import type { CommentFact } from "#shared/gcode/markers.ts";
 import type { LineScan } from "#shared/gcode/scan-line.ts";
 import type { Findings } from "#shared/layers/findings.ts";
 import type { Boundary, Layer, Wait } from "#shared/layers/reading.ts";
+import { FILAMENT, LAST_Z, MAX_X, MAX_Y, MIN_X, MIN_Y, RUN_X, RUN_Y, SUMS } from "#shared/layers/sums.ts";
 import { Timeline } from "#shared/layers/timeline.ts";
 import type { LimitChange, MotionSink } from "#shared/machine/interpreter.ts";
 import { FED, newMove, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { applyLimits } from "#shared/motion/file-limits.ts";
 import { motionRules } from "#shared/motion/motion-rules.ts";
-import { FEEDS, LAYS, Planner, TRAVELS } from "#shared/motion/planner.ts";
+import { Planner } from "#shared/motion/planner.ts";
+import { FEEDS, LAYS, TRAVELS } from "#shared/motion/record.ts";
 import { Refusal } from "#shared/refusal.ts";
 
 /** More layers than this is no part that this trade prints. */
@@ -369,15 +371,3 @@ export class LayerBuilder implements MotionSink {
     this.sums[MAX_Y] = Number.NEGATIVE_INFINITY;
   }
 }
-
-const FILAMENT = 0;
-const MIN_X = 1;
-const MAX_X = 2;
-const MIN_Y = 3;
-const MAX_Y = 4;
-/** start of the open run of laying moves */
-const RUN_X = 5;
-const RUN_Y = 6;
-/** raw Z of the last laying move, to leave the common case at once */
-const LAST_Z = 7;
-const SUMS = 8;

@@ -20,9 +20,10 @@ const N_BIT = 1 << 13;
 const EQUALS = 61;
 const CR = 13;
 const HEAD_BYTES = 512;
-const BOM = [0xef, 0xbb, 0xbf];
 /** Longest text of a named command that is looked at. */
 const NAMED_BYTES = 2048;
+
+const BOM = [0xef, 0xbb, 0xbf];
 
 export interface ReadOptions {
   /** comment shapes of the team's own, tried before the built-in ones */

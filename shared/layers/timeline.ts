@@ -1,5 +1,17 @@
 import type { Layer, Travels } from "#shared/layers/reading.ts";
-import { LAYS, type Planner, TRAVELS } from "#shared/motion/planner.ts";
+import type { Planner } from "#shared/motion/planner.ts";
+import { LAYS, TRAVELS } from "#shared/motion/record.ts";
+
+const RUN = 5;
+const STAMP = 0;
+const LAYER = 1;
+const FORGET = 2;
+const TRAVEL = 3;
+const DWELL = 4;
+const OPEN_LIMIT = 16_384;
+/** closest spacing of kept boundaries, s, and growth of the spacing with distance from the layer's nearer border */
+const CLOSE_S = 0.05;
+const SPREAD = 0.05;
 
 /** Something that wants to know the print time at which it stands. */
 export interface Timed {
@@ -219,13 +231,6 @@ export class Timeline {
   }
 }
 
-const RUN = 5;
-const STAMP = 0;
-const LAYER = 1;
-const FORGET = 2;
-const TRAVEL = 3;
-const DWELL = 4;
-
 /**
  * Line boundaries before travel moves. Commands that lead a layer are placed near the end of the layer below, and a
  * lamp that is lit climbs at a layer's beginning; so boundaries are kept densely there and thinned by their distance in
@@ -286,8 +291,3 @@ function everySecond(triples: number[]): number[] {
   for (let i = 0; i < triples.length; i += 6) thinned.push(triples[i], triples[i + 1], triples[i + 2]);
   return thinned;
 }
-
-const OPEN_LIMIT = 16_384;
-/** closest spacing of kept boundaries, s, and growth of the spacing with distance from the layer's nearer border */
-const CLOSE_S = 0.05;
-const SPREAD = 0.05;

@@ -1,7 +1,46 @@
 import type { Machine, Motion } from "#shared/formats/machine.ts";
+import {
+  A,
+  A_BIT,
+  E,
+  E_BIT,
+  F,
+  F_BIT,
+  G_BIT,
+  I,
+  I_BIT,
+  J,
+  J_BIT,
+  K,
+  K_BIT,
+  L_BIT,
+  M_BIT,
+  N_BIT,
+  P,
+  P_BIT,
+  R,
+  R_BIT,
+  S,
+  S_BIT,
+  T,
+  T_BIT,
+  X,
+  X_BIT,
+  Y,
+  Y_BIT,
+  Z,
+  Z_BIT,
+} from "#shared/gcode/letters.ts";
 import type { LineScan } from "#shared/gcode/scan-line.ts";
 import { type Arc, arcFromCentre, arcFromRadius, arcLengthMm } from "#shared/machine/arc.ts";
 import { FED, SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
+import { AT_E, FLOW, newProgram, UNIT, ZERO_X } from "#shared/machine/program.ts";
+
+const INCH = 25.4;
+/** No machine moves this far or this fast; a damaged file may say so. A plain move's nine digits never reach it. */
+const LARGEST = 1e9;
+/** An arc is never cut finer than this, whatever radius a damaged file states. */
+const MAX_CHORDS = 100_000;
 
 /** What a line of words turns into. One receiver, so that the calls stay cheap. */
 export interface MotionSink {
@@ -30,55 +69,15 @@ export interface LimitChange {
   jerk?: Partial<Record<"x" | "y" | "z" | "e", number>>;
 }
 
-const A = 0;
-const E = 4;
-const F = 5;
-const I = 8;
-const J = 9;
-const K = 10;
-const P = 15;
-const R = 17;
-const S = 18;
-const T = 19;
-const X = 23;
-const Y = 24;
-const Z = 25;
-const A_BIT = 1 << 0;
-const E_BIT = 1 << 4;
-const F_BIT = 1 << 5;
-const G_BIT = 1 << 6;
-const I_BIT = 1 << 8;
-const J_BIT = 1 << 9;
-const K_BIT = 1 << 10;
-const L_BIT = 1 << 11;
-const M_BIT = 1 << 12;
-const P_BIT = 1 << 15;
-const R_BIT = 1 << 17;
-const S_BIT = 1 << 18;
-const T_BIT = 1 << 19;
-const X_BIT = 1 << 23;
-const Y_BIT = 1 << 24;
-const Z_BIT = 1 << 25;
 const AXIS_WORDS = X_BIT | Y_BIT | Z_BIT | E_BIT | I_BIT | J_BIT | K_BIT | R_BIT;
-const MOTION_LETTERS = [X, Y, Z, E, F, I, J, K, R];
-const INCH = 25.4;
-
-/** places in `program` */
-const ZERO_X = 0;
-const AT_E = 3;
-const UNIT = 4;
-const FLOW = 5;
+const MEASURES = [X, Y, Z, E, A, F, I, J, K, R, P, S];
 
 /** Modal state of the program: words in, moves in absolute millimetres out. */
 export class Interpreter {
   private readonly sink: MotionSink;
   private readonly row: Float64Array;
   private readonly motion: Motion;
-  /**
-   * Machine position of the program's zero in X Y Z, mm; the program's extruder position, mm; millimetres in its unit; and
-   * its flow override. Doubles of the hot path, kept unboxed.
-   */
-  private readonly program = Float64Array.of(0, 0, 0, 0, 1, 1);
+  private readonly program = newProgram();
   private absolute = true;
   private extruderAbsolute = true;
   /** E words are absolute: see extruderMode */
@@ -164,7 +163,7 @@ export class Interpreter {
   private command(scan: LineScan): void {
     const { value } = scan;
     const mask = scan.mask & ~scan.bare;
-    for (const letter of MOTION_LETTERS)
+    for (const letter of MEASURES)
       if ((mask & (1 << letter)) !== 0 && !(Math.abs(value[letter]) < LARGEST)) {
         this.sink.odd("number-too-large", "a number on this line is far beyond any machine; the line is not counted");
         return;
@@ -235,7 +234,7 @@ export class Interpreter {
         this.extruderMode();
         return;
       case 92:
-        this.setPosition(value, mask);
+        this.setPosition(value, allWords);
         return;
     }
   }
@@ -317,8 +316,9 @@ export class Interpreter {
       }
   }
 
-  private setPosition(value: Float64Array, mask: number): void {
-    const all = (mask & (X_BIT | Y_BIT | Z_BIT | E_BIT)) === 0;
+  /** A letter without a number is zero; no letter at all is zero for all of them. */
+  private setPosition(value: Float64Array, words: number): void {
+    const all = (words & ~(G_BIT | N_BIT)) === 0;
     const { row, program } = this;
     const unit = program[UNIT];
     for (const [axis, letter, word] of [
@@ -326,8 +326,9 @@ export class Interpreter {
       [1, Y_BIT, Y],
       [2, Z_BIT, Z],
     ])
-      if (all || (mask & letter) !== 0) program[ZERO_X + axis] = row[X1 + axis] - (all ? 0 : value[word] * unit);
-    if (all || (mask & E_BIT) !== 0) program[AT_E] = all ? 0 : value[E] * unit;
+      if (all || (words & letter) !== 0) program[ZERO_X + axis] = row[X1 + axis] - (all ? 0 : value[word] * unit);
+    const extruder = (words & E_BIT) !== 0 ? E : A;
+    if (all || (words & (1 << extruder)) !== 0) program[AT_E] = all ? 0 : value[extruder] * unit;
   }
 
   private firmwareRetract(retract: boolean): void {
@@ -410,7 +411,7 @@ export class Interpreter {
       row.copyWithin(X0, X1, X1 + 3);
       row[X1 + axes[0]] = last ? to[0] : arc.centreX + startX * cos - startY * sin;
       row[X1 + axes[1]] = last ? to[1] : arc.centreY + startX * sin + startY * cos;
-      row[X1 + axes[2]] = from[2] + rise * share;
+      row[X1 + axes[2]] = last ? to[2] : from[2] + rise * share;
       row[FED] = fed / count;
       this.sink.move();
     }
@@ -419,9 +420,3 @@ export class Interpreter {
 
 /** Whether a displacement is one: relative moves that cancel out leave rounding errors, mm. */
 const isTravel = (dx: number, dy: number, dz: number): boolean => dx * dx + dy * dy + dz * dz > 1e-18;
-
-/** No machine moves this far or this fast; a damaged file may say so, mm or mm/min. */
-const LARGEST = 1e8;
-
-/** An arc is never cut finer than this, whatever radius a damaged file states. */
-const MAX_CHORDS = 100_000;

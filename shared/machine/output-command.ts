@@ -51,14 +51,15 @@ export function numberedOutput(scan: LineScan): OutputCommand | undefined {
   const code = value[12];
   const index = (mask & P & ~bare) !== 0 ? value[15] : 0;
   const others = mask & ~PLAIN;
-  if (code === 107) return { output: `fan ${index}`, value: 0, does: others === 0 && whole(index) ? "duty" : "mixed" };
+  const alone = others === 0 && scan.repeated === 0 && scan.commands === 1;
+  if (code === 107) return { output: `fan ${index}`, value: 0, does: alone && whole(index) ? "duty" : "mixed" };
   if (code !== 106 && code !== 42) return undefined;
   const output = code === 106 ? `fan ${index}` : `pin ${index}`;
-  if (code === 42 && (mask & P) === 0) return undefined;
-  if (!whole(index)) return { output, value: Number.NaN, does: "mixed" };
   const hasS = (mask & S) !== 0 && (bare & S) === 0;
-  if (others === 0 && scan.repeated === 0 && scan.commands === 1)
-    return { output, value: hasS ? value[18] : Number.POSITIVE_INFINITY, does: "duty" };
+  // Without S a fan goes to full power; a pin is left as it is.
+  if (code === 42 && ((mask & P) === 0 || !hasS)) return undefined;
+  if (!whole(index)) return { output, value: Number.NaN, does: "mixed" };
+  if (alone) return { output, value: hasS ? value[18] : Number.POSITIVE_INFINITY, does: "duty" };
   if (code === 106 && !hasS && (others & ~FAN_CONFIGURATION) === 0 && others !== 0 && scan.commands === 1)
     return { output, value: Number.NaN, does: "configuration" };
   return { output, value: hasS ? value[18] : Number.NaN, does: "mixed" };
@@ -78,7 +79,7 @@ export function namedOutput(name: string, parameters: Map<string, string>): Outp
   const target = parameters.get(shape.of);
   if (target === undefined) return undefined;
   const text = parameters.get(shape.to);
-  const value = text === undefined ? Number.NaN : Number(text);
+  const value = text === undefined || text.trim() === "" ? Number.NaN : Number(text);
   const alone = parameters.size === 2 && Number.isFinite(value);
   return { output: `${shape.prefix} ${target.toUpperCase()}`, value, does: alone ? "duty" : "mixed" };
 }

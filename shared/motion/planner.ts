@@ -2,11 +2,32 @@ import type { Motion } from "#shared/formats/machine.ts";
 import { FED, SPEED as MOVE_SPEED, X0, X1, Y0, Y1, Z0, Z1 } from "#shared/machine/move.ts";
 import { type MotionRules, motionRules } from "#shared/motion/motion-rules.ts";
 import { deviationCornerSq, jerkCornerSq, limitByAxes, startFromRestSq } from "#shared/motion/move-limits.ts";
+import {
+  ACCEL,
+  AXIS_JERK,
+  CRUISE,
+  DE,
+  DX,
+  DY,
+  DZ,
+  EASY_LIMIT,
+  EASY_SPAN,
+  JUNCTION_DEVIATION,
+  LAST_CORNER,
+  LAST_EASY_LIMIT,
+  LAST_LIMIT,
+  LENGTH,
+  LIMIT,
+  NO_TRAVEL,
+  RECORD,
+  SPAN,
+  SPEED,
+  SQUARE_CORNER,
+  START,
+} from "#shared/motion/record.ts";
 
-/** what a move does: lays material, moves without laying, or only feeds or retracts material */
-export const LAYS = 1;
-export const TRAVELS = 2;
-export const FEEDS = 0;
+/** moves between two settlings */
+const BATCH = 512;
 
 /**
  * Look-ahead planner: moves in, duration of every move out, streamed.
@@ -64,8 +85,8 @@ export class Planner {
   private lastEasySpan = 0;
   private lastMoves = false;
   private hasLast = false;
-  /** state of the forward pass across batches */
-  private forwardCruiseSq = 0;
+  /** state of the forward pass across batches; nothing before the first move limits it */
+  private forwardCruiseSq = Number.POSITIVE_INFINITY;
   private forwardEntrySq = 0;
 
   /** @param onSettled called with the number of moves whose durations now stand in `timeS` */
@@ -267,7 +288,7 @@ export class Planner {
     }
     if (all || this.count === 0) {
       this.forwardEntrySq = 0;
-      this.forwardCruiseSq = 0;
+      this.forwardCruiseSq = Number.POSITIVE_INFINITY;
     }
     this.threshold = Math.min(this.count * 2 + BATCH, Planner.windowLimit);
     if (this.threshold > this.peakSq.length) this.grow(this.threshold);
@@ -337,7 +358,7 @@ export class Planner {
         const span = records[r + SPAN];
         spanSum += (i + blocks < held ? records[(i + blocks) * RECORD + SPAN] : 0) - span;
         next = Math.max(0, Math.min(next, i + 1 + blocks <= held ? spanSum : next, from + span));
-        top = Math.max(from, next, Math.min(top, (from + next + span) * 0.5));
+        top = Math.min(top, (from + next + span) * 0.5);
         entry = next;
       }
       if (from > top) from = top;
@@ -382,29 +403,3 @@ export class Planner {
     this.kind = kind;
   }
 }
-
-const BATCH = 512;
-/** a displacement below this is none, mm */
-const NO_TRAVEL = 1e-9;
-const SQUARE_CORNER = 0;
-const JUNCTION_DEVIATION = 1;
-const AXIS_JERK = 2;
-/** A record: as added, and (from the same places on) as prepared, squared speeds and spans in mm²/s². */
-const RECORD = 8;
-const DX = 0;
-const DY = 1;
-const DZ = 2;
-const DE = 3;
-const LENGTH = 4;
-const SPEED = 5;
-const LIMIT = 0;
-const SPAN = 1;
-const EASY_LIMIT = 2;
-const EASY_SPAN = 3;
-const CRUISE = 5;
-const ACCEL = 6;
-const START = 7;
-/** further places of `last` */
-const LAST_CORNER = 6;
-const LAST_LIMIT = 7;
-const LAST_EASY_LIMIT = 8;

@@ -5,14 +5,14 @@ export class Boundaries {
   readonly list: readonly Boundary[];
 
   /**
-   * Byte behind a pause by the byte behind the lines that follow it and go: without those lines the two are one
+   * Byte behind a pause by the byte behind the lines that follow it and may go: without those the two are one
    * boundary, and so they are one here. The file then has the same boundaries before and after it was tuned.
    */
   private readonly behindPause = new Map<number, number>();
 
-  /** @param going lines that the tuning may take out */
-  constructor({ travels, layers, window, pauses }: Reading, going: readonly ControlLine[]) {
-    const lengthAt = new Map(going.map(({ offset, length }) => [offset, length]));
+  /** @param removable lines that the tuning may take out */
+  constructor({ travels, layers, window, pauses }: Reading, removable: readonly ControlLine[]) {
+    const lengthAt = new Map(removable.map(({ offset, length }) => [offset, length]));
     const list: Boundary[] = layers.map(({ writeAt }) => writeAt);
     for (const { offset, length, line, timeS } of pauses) {
       const behind = offset + length;
@@ -24,7 +24,9 @@ export class Boundaries {
     for (let k = 0; k < travels.count; k++)
       list.push({ offset: travels.offset[k], line: travels.line[k], timeS: travels.timeS[k] });
     this.list = list
-      .filter(({ offset }) => offset >= window.start.offset && offset < window.end.offset && this.one(offset) === offset)
+      .filter(
+        ({ offset }) => offset >= window.start.offset && offset < window.end.offset && this.one(offset) === offset,
+      )
       .sort((a, b) => a.offset - b.offset)
       .filter(({ offset }, k, sorted) => offset !== sorted[k - 1]?.offset);
   }
@@ -66,4 +68,4 @@ export class Boundaries {
 }
 
 /** Print time is a sum of floating-point durations; instants this close are one, s. */
-const TOLERANCE_S = 1e-6;
+export const TOLERANCE_S = 1e-6;

@@ -24,53 +24,35 @@ export class EditList {
 
   /**
    * @param newline terminator of the file
-   * @param bytes length of the file, and whether its last line is terminated: what goes in behind an unterminated line
-   * gets its terminator in front
+   * @param bytes length of the file, and whether its last line is terminated: where it is not, a terminator stands
+   * before the lines at the end instead of behind them
    */
   end(newline: string, { bytes, finalNewline }: { bytes: number; finalNewline: boolean }): Edit[] {
-    const offsets = [...new Set([...this.removals.keys(), ...this.insertions.keys()])].sort((a, b) => a - b);
-    const lastRemoved =
-      !finalNewline &&
-      offsets.some((offset) => offset + (this.removals.get(offset) ?? 0) === bytes && this.removals.has(offset));
-    const edits = offsets.map((offset): Edit => {
-      const lines = this.insertions.get(offset) ?? [];
-      return { offset, remove: this.removals.get(offset) ?? 0, insert: lines.map((line) => line + newline).join("") };
-    });
-    if (finalNewline) return edits;
-    return lastRemoved ? withoutLastNewline(edits, newline, bytes) : atOpenEnd(edits, newline, bytes);
+    const edits = this.merged(newline);
+    const last = edits[edits.length - 1];
+    if (finalNewline || !last || last.offset + last.remove < bytes) return edits;
+    if (last.remove > 0) {
+      // Our own lines of an earlier tuning stood at the end: the terminator before them came with them.
+      last.offset -= newline.length;
+      last.remove += newline.length;
+    }
+    if (last.insert !== "") last.insert = newline + last.insert.slice(0, -newline.length);
+    return edits;
   }
-}
 
-/** Insertions at the end of a file without a final terminator: the terminator goes in front. */
-function atOpenEnd(edits: Edit[], newline: string, bytes: number): Edit[] {
-  return edits.map((edit) =>
-    edit.offset === bytes && edit.insert !== ""
-      ? { ...edit, insert: newline + edit.insert.slice(0, -newline.length) }
-      : edit,
-  );
-}
-
-/**
- * Our own lines stood at the very end, unterminated: the terminator before them came with them and goes with them. What
- * is put in their place gets one in front again.
- */
-function withoutLastNewline(edits: Edit[], newline: string, bytes: number): Edit[] {
-  let first = edits.length - 1;
-  while (
-    first > 0 &&
-    edits[first - 1].remove > 0 &&
-    edits[first - 1].offset + edits[first - 1].remove === edits[first].offset
-  )
-    first--;
-  const insert = edits
-    .slice(first)
-    .map((edit) => edit.insert)
-    .join("");
-  const offset = edits[first].offset - newline.length;
-  const last: Edit = {
-    offset,
-    remove: bytes - offset,
-    insert: insert === "" ? "" : newline + insert.slice(0, -newline.length),
-  };
-  return [...edits.slice(0, first), last];
+  /** Ascending; what is taken out in one piece is one edit. */
+  private merged(newline: string): Edit[] {
+    const offsets = [...new Set([...this.removals.keys(), ...this.insertions.keys()])].sort((a, b) => a - b);
+    const edits: Edit[] = [];
+    for (const offset of offsets) {
+      const remove = this.removals.get(offset) ?? 0;
+      const insert = (this.insertions.get(offset) ?? []).map((line) => line + newline).join("");
+      const before = edits[edits.length - 1];
+      if (before && before.offset + before.remove === offset) {
+        before.remove += remove;
+        before.insert += insert;
+      } else edits.push({ offset, remove, insert });
+    }
+    return edits;
+  }
 }

@@ -10,7 +10,7 @@ import type { Advice, Plan } from "#shared/plan/plan.ts";
 import { planDuties } from "#shared/plan/plan-duties.ts";
 import { Boundaries } from "#shared/rewrite/boundaries.ts";
 import { type Edit, EditList } from "#shared/rewrite/edits.ts";
-import { type Digest, earlierTuning, type Named, type Provenance, provenanceLine } from "#shared/rewrite/provenance.ts";
+import { type Digest, type Named, type Provenance, provenanceLine, untunedDigest } from "#shared/rewrite/provenance.ts";
 import { keepRaises } from "#shared/rewrite/raises.ts";
 import { refuseUnsafe } from "#shared/rewrite/refuse-unsafe.ts";
 import { scheduleChannel } from "#shared/rewrite/schedule.ts";
@@ -45,18 +45,19 @@ export interface Tuning {
 export function prepareTuning({ reading, machine, profile, polymer, ...about }: TuningInput): Tuning {
   checkFit(machine, profile, polymer);
   const driven = drivenChannels(machine, profile);
-  const earlier = earlierTuning(
-    reading,
-    driven.map(({ id }) => id),
-  );
+  const documents = {
+    profile: named(profile.name, writeProfile(profile), about.digest, about.versions?.profile),
+    machine: named(machine.name, writeMachine(machine), about.digest, about.versions?.machine),
+  };
+  const original = untunedDigest(reading, driven, { ...documents, withinLayer: profile.withinLayer });
   const advice: Advice[] = [];
   refuseUnsafe(reading, machine, driven, advice);
   const plan = planDuties({ layers: reading.layers, machine, profile });
   const channels = new Set(driven.map((channel) => machine.channels.indexOf(channel)));
-  const going = reading.controls.filter(
+  const removable = reading.controls.filter(
     (line) => line.does === "duty" && (line.ours || (channels.has(line.channel) && isInside(line))),
   );
-  const boundaries = new Boundaries(reading, going);
+  const boundaries = new Boundaries(reading, removable);
   const kept = new Set<ControlLine>();
   const commands = driven.flatMap((channel) => {
     const input = { reading, boundaries, machine, profile, plan };
@@ -75,12 +76,11 @@ export function prepareTuning({ reading, machine, profile, polymer, ...about }: 
       message: `${kept.size} raises of the fan inside layers are kept as the file has them.`,
     });
 
-  const removed = going.filter((line) => !kept.has(line));
+  const removed = removable.filter((line) => !kept.has(line));
   const provenance: Provenance = {
     v: 1,
-    profile: named(profile.name, writeProfile(profile), about.digest, about.versions?.profile),
-    machine: named(machine.name, writeMachine(machine), about.digest, about.versions?.machine),
-    original: earlier?.original ?? reading.file.sha256,
+    ...documents,
+    original,
     engine: about.engine,
     status: about.status,
     channels: driven.map(({ id }) => id),

@@ -1,3 +1,4 @@
+import type { Channel } from "#shared/formats/machine.ts";
 import { PROVENANCE_PREFIX } from "#shared/gcode/own-lines.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import { Refusal } from "#shared/refusal.ts";
@@ -37,12 +38,16 @@ export function provenanceLine(provenance: Provenance): string {
   return PROVENANCE_PREFIX + json;
 }
 
+/** What the next tuning is made with. */
+type Next = Pick<Provenance, "profile" | "machine" | "withinLayer">;
+
 /**
- * The untuned file's digest and channels, where the file was tuned before.
+ * The SHA-256 of the untuned file: of this one, or of the one that an earlier tuning was made from.
  *
+ * @param driven channels that the profile drives
  * @throws Refusal when the earlier tuning can't be taken back
  */
-export function earlierTuning(reading: Reading, driven: readonly string[]): { original: string } | undefined {
+export function untunedDigest(reading: Reading, driven: readonly Channel[], next: Next): string {
   const { provenance, controls, outputs, findings } = reading;
   const ownLine = controls.find((line) => line.ours);
   const refuse = (code: string, message: string, line: number | undefined): never => {
@@ -55,17 +60,28 @@ export function earlierTuning(reading: Reading, driven: readonly string[]): { or
   if (!provenance) {
     if (ownLine)
       refuse("provenance-missing", "this file holds lines of an earlier tuning but no provenance line", ownLine.line);
-    return undefined;
+    return reading.file.sha256;
   }
-  const { original, channels } = (provenance.data ?? {}) as Partial<Provenance>;
+  const earlier = (provenance.data ?? {}) as Partial<Provenance>;
+  const { original, channels } = earlier;
   if (typeof original !== "string" || !/^[0-9a-f]{64}$/.test(original) || !Array.isArray(channels))
     return refuse("provenance-broken", "the provenance line of this file is damaged", provenance.line);
-  const lost = channels.filter((id) => !driven.includes(id));
+  const lost = channels.filter((id) => !driven.some((channel) => channel.id === id));
   if (lost.length > 0)
     refuse(
       "tuned-for-other-channels",
       `the earlier tuning of this file replaced the commands of ${lost.join(", ")}, which this profile does not drive`,
       provenance.line,
     );
-  return { original };
+  const fan = driven.find(({ id, kind }) => kind === "fan" && channels.includes(id));
+  if (fan && next.withinLayer === "keep-raises" && !sameDocuments(earlier, next))
+    refuse(
+      "raises-lost",
+      `this profile keeps the raises of ${fan.id}, and the earlier tuning of this file, with another profile or machine, has taken some of them out`,
+      provenance.line,
+    );
+  return original;
 }
+
+const sameDocuments = (earlier: Partial<Provenance>, next: Next): boolean =>
+  earlier.profile?.sha256 === next.profile.sha256 && earlier.machine?.sha256 === next.machine.sha256;

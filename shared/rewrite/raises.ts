@@ -2,15 +2,13 @@ import type { Channel } from "#shared/formats/machine.ts";
 import type { ControlLine } from "#shared/layers/reading.ts";
 import { effectiveLimits } from "#shared/plan/limits.ts";
 import type { ScheduleInput } from "#shared/rewrite/schedule.ts";
-import { highestDuty, type Write } from "#shared/rewrite/write.ts";
+import { highestDuty, SAME, type Write } from "#shared/rewrite/write.ts";
 
 /** What stays of a fan's own commands, and what is written because of them. */
 export interface Raises {
   writes: Write[];
   kept: ReadonlySet<ControlLine>;
 }
-
-const SAME = 1e-6;
 
 /**
  * Keeps the raises of a fan inside layers (bridges, overhangs) that lie above the plan. A raise is a command after the

@@ -47,8 +47,8 @@ export class Renumberer {
     while (p < to) {
       const start = p;
       p = scanLine(buf, p, scan);
-      if ((scan.mask & N_BIT) === 0 || scan.starAt < 0) continue;
       const setsCounter = scan.kind === LineKind.words && (scan.mask & M_BIT) !== 0 && scan.value[M] === 110;
+      if ((scan.mask & N_BIT) === 0 || (scan.starAt < 0 && !setsCounter)) continue;
       const given = scan.value[N];
       if (offset + start - from < this.startsAt || setsCounter || given === this.last + 1) {
         this.last = given;

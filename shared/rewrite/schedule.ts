@@ -5,8 +5,8 @@ import { resolveLeadS } from "#shared/plan/lead.ts";
 import { type DutyLimits, effectiveLimits } from "#shared/plan/limits.ts";
 import type { Advice, Plan } from "#shared/plan/plan.ts";
 import type { Boundaries } from "#shared/rewrite/boundaries.ts";
-import { rateOf, staircase } from "#shared/rewrite/staircase.ts";
-import { highestDuty, type Target, type Write } from "#shared/rewrite/write.ts";
+import { rateOf, type Start, staircase } from "#shared/rewrite/staircase.ts";
+import { highestDuty, SAME, type Target, type Write } from "#shared/rewrite/write.ts";
 import { dutySteps, roundDutyInward } from "#shared/units/duty.ts";
 
 export interface ScheduleInput {
@@ -17,9 +17,6 @@ export interface ScheduleInput {
   plan: Plan;
 }
 
-/** Two duties closer than this are the same; a drive's step is far larger. */
-const SAME = 1e-6;
-
 /**
  * Where each duty of one channel's plan is written: a pure time shift of the whole duty curve by the channel's lead,
  * snapped back to a line boundary, never before the window. A heater goes to its idle duty before each pause and off
@@ -27,12 +24,11 @@ const SAME = 1e-6;
  */
 export function scheduleChannel(channel: Channel, input: ScheduleInput, advice: Advice[]): Write[] {
   const limits = effectiveLimits(channel, input.profile);
-  const from = { duty: dutyBefore(channel, input), at: 0 };
-  const stretch: Stretch = { from, targets: wantedAt(channel, input), end: input.boundaries.list.length };
-  if (channel.kind === "heater")
-    return fromWindowStart(followHeater(channel, limits, stretch, input), from.duty, input.boundaries);
-  const writes = fromWindowStart(follow(channel, limits, stretch, input.boundaries), from.duty, input.boundaries);
-  return withStartBoost(channel, limits, writes, input, advice);
+  const from = { duty: dutyBefore(channel, input), at: 0, sinceS: Number.NEGATIVE_INFINITY };
+  const whole: Stretch = { from, targets: wantedAt(channel, input), end: input.boundaries.list.length };
+  const writes =
+    channel.kind === "heater" ? followHeater(channel, limits, whole, input) : follow(channel, limits, whole, input);
+  return withStartBoost(channel, limits, fromWindowStart(writes, from.duty, input.boundaries), input, advice);
 }
 
 /** The boundary of every layer's duty, the first layer's being the window's start; of several at one the last stands. */
@@ -50,7 +46,7 @@ function wantedAt(channel: Channel, { reading, boundaries, profile, plan }: Sche
 }
 
 /** What the file itself has set before the window, 0 when nothing. */
-export function dutyBefore(channel: Channel, { machine, reading }: Pick<ScheduleInput, "machine" | "reading">): number {
+function dutyBefore(channel: Channel, { machine, reading }: ScheduleInput): number {
   const index = machine.channels.indexOf(channel);
   let duty = 0;
   for (const line of reading.controls)
@@ -60,7 +56,7 @@ export function dutyBefore(channel: Channel, { machine, reading }: Pick<Schedule
 
 /** Part of the window without a pause in it: positions in the list of boundaries, [from.at, end). */
 interface Stretch {
-  from: { duty: number; at: number };
+  from: Start;
   targets: readonly Target[];
   end: number;
 }
@@ -74,17 +70,19 @@ function followHeater(channel: Channel, limits: DutyLimits, whole: Stretch, inpu
   for (const pause of reading.pauses) {
     if (pause.layer < 1 || pause.layer > reading.layers.length) continue;
     const end = boundaries.at(pause.offset);
-    writes.push(...follow(channel, limits, { from, targets, end }, boundaries));
-    const inForce = writes[writes.length - 1]?.duty ?? from.duty;
-    const idle = Math.min(idleDuty, inForce);
-    if (inForce - idle > SAME) writes.push({ ...boundaries.list[end], duty: idle, tag: "plan" });
-    const nextLayer = reading.layers.find(({ writeAt }) => writeAt.offset > pause.offset)?.writeAt ?? reading.window.end;
+    writes.push(...follow(channel, limits, { from, targets, end }, input));
+    const last = writes[writes.length - 1] ?? { duty: from.duty, timeS: from.sinceS };
+    const idle = Math.min(idleDuty, last.duty);
+    const falls = last.duty - idle > SAME;
+    if (falls) writes.push({ ...boundaries.list[end], duty: idle, tag: "plan" });
+    const nextLayer =
+      reading.layers.find(({ writeAt }) => writeAt.offset > pause.offset)?.writeAt ?? reading.window.end;
     const resumes = blocks(machine, pause.command) ? pause.offset + pause.length : nextLayer.offset;
     const resumesAt = Math.max(from.at, boundaries.at(resumes));
-    from = { duty: idle, at: resumesAt };
+    from = { duty: idle, at: resumesAt, sinceS: falls ? Number.NEGATIVE_INFINITY : last.timeS };
     targets = wantedFrom(targets, resumesAt);
   }
-  writes.push(...follow(channel, limits, { from, targets, end: whole.end }, boundaries));
+  writes.push(...follow(channel, limits, { from, targets, end: whole.end }, input));
   return [...writes, { ...reading.window.end, duty: 0, tag: "plan" }];
 }
 
@@ -102,7 +100,7 @@ function follow(
   channel: Channel,
   limits: DutyLimits,
   { from, targets, end }: Stretch,
-  boundaries: Boundaries,
+  { boundaries }: ScheduleInput,
 ): Write[] {
   const reached = targets.filter(({ at }) => at < end);
   const steps = Number.isFinite(limits.maxDutyPerS)

@@ -1,11 +1,8 @@
 import type { Channel } from "#shared/formats/machine.ts";
 import type { DutyLimits } from "#shared/plan/limits.ts";
-import type { Boundaries } from "#shared/rewrite/boundaries.ts";
-import { highestDuty, type Target } from "#shared/rewrite/write.ts";
+import { type Boundaries, TOLERANCE_S } from "#shared/rewrite/boundaries.ts";
+import { highestDuty, SAME, type Target } from "#shared/rewrite/write.ts";
 import { dutySteps, roundDutyInward } from "#shared/units/duty.ts";
-
-/** Two duties closer than this are the same, and so are two instants, s. */
-const SAME = 1e-6;
 
 /** How fast a channel may change: at most `step` at once, and then not again for `everyS`. */
 export interface Rate {
@@ -34,6 +31,13 @@ export function rateOf(channel: Channel, limits: DutyLimits): Rate {
   };
 }
 
+/** Where a staircase starts: the duty in force and since when, and the position from which steps may stand. */
+export interface Start {
+  duty: number;
+  sinceS: number;
+  at: number;
+}
+
 /**
  * Turns duties wanted at instants into steps that a rate limit allows. Each staircase ends at the wanted boundary and
  * starts early, in the layer below; every step stands at a boundary at least one interval before the next. Where there
@@ -43,14 +47,13 @@ export function rateOf(channel: Channel, limits: DutyLimits): Rate {
  *             .-'                       .-'
  *     -------'  1 s steps, on time    |' starts late, arrives late
  *
- * @param from duty in force before the first target, and the position from which steps may stand
  * @param targets ascending in position
  * @param end first position at which no step may stand
  * @returns steps in order, at most one a boundary; empty when nothing changes
  */
 export function staircase(
   boundaries: Boundaries,
-  from: { duty: number; at: number },
+  from: Start,
   targets: readonly Target[],
   end: number,
   rate: Rate,
@@ -63,7 +66,9 @@ export function staircase(
     const before = last ? last.duty : from.duty;
     const duties = dutiesBetween(before, target.duty, rate);
     if (duties.length === 0) continue;
-    const earliest = last ? boundaries.firstFrom(boundaries.list[last.at].timeS + rate.everyS, last.at) : from.at;
+    const earliest = last
+      ? boundaries.firstFrom(boundaries.list[last.at].timeS + rate.everyS, last.at)
+      : boundaries.firstFrom(from.sinceS + rate.everyS, from.at - 1);
     const places =
       onTime(boundaries, target.at, earliest, duties.length, rate.everyS) ??
       late(boundaries, earliest, end, duties.length, rate.everyS);
@@ -101,7 +106,7 @@ function onTime(
   for (let k = 1; k < count; k++) {
     const wanted = boundaries.list[places[0]].timeS - everyS;
     const at = boundaries.lastBefore(wanted);
-    if (at < earliest || boundaries.list[at].timeS > wanted + SAME) return undefined;
+    if (at < earliest || boundaries.list[at].timeS > wanted + TOLERANCE_S) return undefined;
     places.unshift(at);
   }
   return places;

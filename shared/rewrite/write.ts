@@ -4,6 +4,9 @@ import type { Boundary } from "#shared/layers/reading.ts";
 import type { DutyLimits } from "#shared/plan/limits.ts";
 import { dutySteps, roundDutyInward } from "#shared/units/duty.ts";
 
+/** Two duties closer than this are the same; a drive's step is far larger. */
+export const SAME = 1e-6;
+
 /** One command of ours: a duty written at a line boundary. */
 export interface Write extends Boundary {
   duty: number;

@@ -1,3 +1,5 @@
+import { fixedText } from "#src/lib/number-text.ts";
+
 /** Numbers along an axis of a drawing: positions, and where marks with readable values stand. */
 
 /** The step of 1, 2 or 5 times a power of ten that cuts a span into at most `most` parts. */
@@ -50,7 +52,13 @@ export function valueAt({ kind, from, to }: Scale, share: number): number {
   return kind === "linear" ? from + share * (to - from) : from * (to / from) ** share;
 }
 
-/** Values at which marks stand: at most about `most`, on a logarithmic axis its decades. */
-export function marksOf({ kind, from, to }: Scale, most: number): number[] {
-  return kind === "log" ? decades(from, to) : multiples(from, to, niceStep(to - from, most));
+/**
+ * Values at which marks stand: at most about `most`, on a logarithmic axis its decades.
+ *
+ * @param most at least 2, so that a scale can be told
+ */
+export function marksOf({ kind, from, to }: Scale, most: number): { value: number; text: string }[] {
+  if (kind === "log") return decades(from, to).map((value) => ({ value, text: fixedText(value, decimalsOf(value)) }));
+  const step = niceStep(to - from, Math.max(most, 2));
+  return multiples(from, to, step).map((value) => ({ value, text: fixedText(value, decimalsOf(step)) }));
 }

@@ -23,7 +23,8 @@ export function checkPlan(evidence: Evidence, profile: Profile, plan: Plan | str
   const instants = new Instants(reading);
   for (const { channel, index } of evidence.channels()) {
     const targets = targetsOf(channel, { reading, machine, profile, plan, instants });
-    const events = evidence.events[index].filter(({ source }) => source === "plan");
+    const planned = evidence.events[index].filter(({ source }) => source === "plan");
+    const events = changes(withoutBoosts(planned, channel, evidence.limits(channel).maxDuty, targets));
     const initial = evidence.dutyBefore(index);
     const problem = new Course(evidence, channel, initial, events, targets, instants).problem();
     if (problem !== undefined) return verdict("plan", problem, "");
@@ -41,7 +42,6 @@ class Course {
   private readonly targets: readonly Target[];
   private readonly staircase: StaircaseRule | undefined;
   private readonly halfStep: number;
-  private readonly maxDuty: number;
 
   constructor(
     evidence: Evidence,
@@ -55,11 +55,10 @@ class Course {
     this.channel = channel;
     this.events = events;
     this.targets = targets;
-    const { maxDutyPerS, minDuty, maxDuty } = evidence.limits(channel);
+    const { maxDutyPerS, minDuty } = evidence.limits(channel);
     const driveSteps = dutySteps(channel.drive);
     const pauses = evidence.pauses.map(({ from }) => from);
     this.halfStep = 0.5 / driveSteps;
-    this.maxDuty = maxDuty;
     this.staircase = Number.isFinite(maxDutyPerS)
       ? new StaircaseRule({ maxDutyPerS, minDuty, driveSteps }, initial, events, targets, instants, pauses)
       : undefined;
@@ -84,7 +83,7 @@ class Course {
       const { entry, duty: inForce } = events[k];
       // Where the next layer's duty stands at the same place, that one counts.
       if (i + 1 < targets.length && targets[i + 1].offset <= entry.to) continue;
-      if (Math.abs(inForce - duty) < this.halfStep || this.isBoost(k)) continue;
+      if (Math.abs(inForce - duty) < this.halfStep) continue;
       if (this.staircase?.behind(k, i) || this.staircase?.ahead(k, i)) continue;
       return `Layer ${layer} wants ${channel.id} at ${dutyWords(duty)}, but ${dutyWords(inForce)} is in force, set at ${evidence.place(entry)}.`;
     }
@@ -109,7 +108,7 @@ class Course {
   private hasReason(k: number, i: number): boolean {
     const { entry, duty } = this.events[k];
     const before = this.events[k - 1].duty;
-    if (Math.abs(duty - before) < this.halfStep || this.isBoost(k)) return true;
+    if (Math.abs(duty - before) < this.halfStep) return true;
     if (this.channel.kind === "heater" && duty <= this.channel.idleDuty + this.halfStep) {
       const { end } = this.evidence.reading.window;
       if (entry.from <= end.offset && end.offset <= entry.to) return true;
@@ -119,14 +118,30 @@ class Course {
     const wanted = this.targets[i].duty;
     return Math.abs(duty - wanted) < Math.abs(before - wanted) || this.staircase.ahead(k, i);
   }
+}
 
-  /** A fan that starts from standstill runs at its highest duty for a moment, before the duty that is wanted. */
-  private isBoost(k: number): boolean {
-    const { kind, startBoostS } = this.channel;
-    const [boost, next] = [this.events[k], this.events[k + 1]];
-    if (kind !== "fan" || startBoostS === 0 || !next || !(next.duty > 0)) return false;
-    if (Math.abs(boost.duty - this.maxDuty) > 2 * this.halfStep || (this.events[k - 1]?.duty ?? 0) > 0) return false;
-    const lastsS = next.timeS - boost.timeS;
-    return lastsS > startBoostS - 1e-3 && lastsS < startBoostS + BOOST_SLACK_S;
-  }
+/** A fan that starts from standstill runs at its highest duty for a moment, before the duty that is wanted. */
+function withoutBoosts(
+  events: readonly DutyEvent[],
+  { kind, startBoostS, drive }: Channel,
+  maxDuty: number,
+  targets: readonly Target[],
+): readonly DutyEvent[] {
+  const step = 1 / dutySteps(drive);
+  const isWanted = ({ entry: { from, to }, duty }: DutyEvent): boolean =>
+    targets.some((target) => target.offset >= from && target.offset <= to && Math.abs(target.duty - duty) < step / 2);
+  if (kind !== "fan" || startBoostS === 0) return events;
+  return events.filter((event, k) => {
+    const { duty, timeS } = event;
+    const next = events[k + 1];
+    if (k === 0 || events[k - 1].duty > 0 || !next || !(next.duty > 0)) return true;
+    const lastsS = next.timeS - timeS;
+    const isBoost = Math.abs(duty - maxDuty) < step && lastsS > startBoostS - 1e-3;
+    return !isBoost || lastsS > startBoostS + BOOST_SLACK_S || isWanted(event);
+  });
+}
+
+/** Without the lines that repeat what is in force, such as those that only end a raise. */
+function changes(events: readonly DutyEvent[]): readonly DutyEvent[] {
+  return events.filter(({ duty }, k) => k === 0 || duty !== events[k - 1].duty);
 }

@@ -3,7 +3,6 @@ import type { Check } from "#shared/formats/proof.ts";
 import type { DutyLimits } from "#shared/plan/limits.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
-import { pauseForms } from "#shared/prove/pause-line.ts";
 import { dutyWords } from "#shared/prove/wording.ts";
 import { dutySteps } from "#shared/units/duty.ts";
 
@@ -50,7 +49,7 @@ function problemOf(
     if (source === "file") duty = event.duty;
     if (source !== "plan" || event.duty === before) continue;
     duty = event.duty;
-    // While a pause blocks, time goes on that is no print time.
+    // At a pause time goes on that is no print time.
     if (pauseBetween(evidence, lastLine, entry.tunedLine)) {
       recent = [];
       sinceS = Number.NEGATIVE_INFINITY;
@@ -76,11 +75,8 @@ function problemOf(
   return undefined;
 }
 
-function pauseBetween({ machine, pauses }: Evidence, firstLine: number, lastLine: number): boolean {
-  const forms = pauseForms(machine);
-  return pauses.some(
-    ({ tunedLine, command }) => tunedLine > firstLine && tunedLine < lastLine && forms.get(command) === "blocking",
-  );
+function pauseBetween({ pauses }: Evidence, firstLine: number, lastLine: number): boolean {
+  return pauses.some(({ tunedLine }) => tunedLine > firstLine && tunedLine < lastLine);
 }
 
 function isExempt(evidence: Evidence, channel: Channel, { entry, duty }: DutyEvent, before: number): boolean {

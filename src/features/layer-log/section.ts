@@ -27,6 +27,9 @@ export interface Section {
 /** Share of its box that a round solid covers: below it, something is open. */
 const ROUND = Math.PI / 4;
 
+/** Walls are never drawn so thin that their fill can't be told. */
+const MOST_OPEN = 0.84;
+
 export function sectionOf(layers: readonly SectionLayer[]): Section {
   const [x, y] = [reach(layers, 0), reach(layers, 1)];
   // The side that shows more of the part's form is the one whose width changes more, else the wider one.
@@ -46,7 +49,7 @@ function openShare({ boxMm: { min, max }, areaMm2 }: SectionLayer): number {
   const box = (max[0] - min[0]) * (max[1] - min[1]);
   if (!(box > 0)) return 0;
   const filled = areaMm2 / (box * ROUND);
-  return filled >= 0.9 ? 0 : Math.sqrt(1 - Math.max(filled, 0));
+  return filled >= 0.9 ? 0 : Math.min(Math.sqrt(1 - Math.max(filled, 0)), MOST_OPEN);
 }
 
 function reach(layers: readonly SectionLayer[], axis: 0 | 1) {

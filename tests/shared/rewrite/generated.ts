@@ -105,8 +105,9 @@ const layer = fc.record({
   begin: fc.array(quiet, { maxLength: 2 }),
   body: fc.array(item, { maxLength: 8 }),
   /** begins at the bed again, as the next object does */
-  falls: fc.boolean().map((b) => b),
-  markerLast: fc.boolean(),
+  falls: fc.boolean(),
+  /** the travel to the layer stands before its marker */
+  travelFirst: fc.boolean(),
 });
 
 const MARKERS: ((layer: number, zMm: number) => string[])[] = [
@@ -116,7 +117,7 @@ const MARKERS: ((layer: number, zMm: number) => string[])[] = [
   (n, z) => [`(stratum ${n + 1} top ${z.toFixed(3)})`],
 ];
 
-export const parts = fc.record({
+const parts = fc.record({
   layers: fc.array(layer, { minLength: 1, maxLength: 7 }),
   objects: fc.boolean(),
   spiral: fc.integer({ min: 0, max: 12 }),
@@ -222,16 +223,16 @@ function rowsOfPart(part: Part, machine: Machine): Pick<Generated, "rows" | "fir
   for (const item of part.start) put(item);
   let first = -1;
   let top = 0;
-  for (const [k, { before, begin, body, falls, markerLast }] of part.layers.entries()) {
+  for (const [k, { before, begin, body, falls, travelFirst }] of part.layers.entries()) {
     const z = falls && part.objects && top >= 0.4 ? 0.2 : Math.round((top + 0.2) * 1000) / 1000;
     top = z;
     if (k > 0) for (const item of before) put(item);
-    if (markerLast) go(false, 10, 10, ` Z${z}`);
+    if (travelFirst) go(false, 10, 10, ` Z${z}`);
     const marker = MARKERS[part.marker](k, z);
     if (first < 0 && marker.length > 0) first = rows.length;
     for (const text of marker) rows.push({ text });
     for (const item of begin) put(item);
-    if (!markerLast) go(false, 10, 10, ` Z${z}`);
+    if (!travelFirst) go(false, 10, 10, ` Z${z}`);
     if (first < 0) first = rows.length;
     go(true, 30, 10);
     for (const item of body) put(item);
@@ -248,10 +249,7 @@ function rowsOfPart(part: Part, machine: Machine): Pick<Generated, "rows" | "fir
 
 const cuts = fc.array(fc.integer({ min: 1, max: 400 }), { maxLength: 6 });
 
-/**
- * @param drives what the profile may drive
- * @param bareEnd whether the last laying move may be the last line
- */
+/** @param drives what the profile drives */
 export const generated = (drives: ("fan" | "lamp")[] = ["fan", "lamp"]): fc.Arbitrary<Generated> =>
   fc
     .record({ part: parts, ending: endings, machine: machines, profile: profiles(drives), cut: cuts, bare: fc.nat(3) })

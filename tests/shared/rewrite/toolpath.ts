@@ -14,9 +14,7 @@ export function written(lines: readonly string[], ending: Ending = {}): string {
   const { newline = "\n", finalNewline = true, numberedFrom } = ending;
   const ends = typeof newline === "string" ? [newline] : newline;
   const numbered = numberedFrom === undefined ? lines : withNumbers(lines, numberedFrom);
-  return numbered
-    .map((line, k) => line + (k < lines.length - 1 || finalNewline ? ends[k % ends.length] : ""))
-    .join("");
+  return numbered.map((line, k) => line + (k < lines.length - 1 || finalNewline ? ends[k % ends.length] : "")).join("");
 }
 
 /** Numbers and checksums on all lines but comments and empty ones. */
@@ -68,8 +66,7 @@ export function partLines({ layers, marker = defaultMarker, start = START, finis
     const comment = marker(k, top);
     if (comment !== undefined) lines.push(comment);
     lines.push(...begin, `G0 X10 Y10 Z${top} F6000`, "G1 X30 Y10 E1 F1200", ...middle, "G1 X30 Y30 E1");
-    for (let round = 1; round < rounds; round++)
-      lines.push("G0 X10 Y10 F6000", "G1 X30 Y10 E1 F1200", "G1 X30 Y30 E1");
+    for (let round = 1; round < rounds; round++) lines.push("G0 X10 Y10 F6000", "G1 X30 Y10 E1 F1200", "G1 X30 Y30 E1");
     lines.push(...end);
   }
   return [...lines, ...finish];

@@ -78,7 +78,8 @@ export const linesOf = (text: string): string[] => text.match(/[^\r\n]*(?:\r\n|\
 /** Lines without their terminators. */
 export const rowsOf = (text: string): string[] => linesOf(text).map((line) => line.replace(/[\r\n]+$/, ""));
 
-export const isOwnCommand = (line: string): boolean => / ;ql[+=]?[\r\n]*$/.test(line);
+export const isOwnCommand = (line: string): boolean =>
+  /^(N\d+ )?(M106|M42|SET_FAN_SPEED|SET_PIN) [^;]* ;ql[+=]?[\r\n]*$/.test(line);
 export const isProvenance = (line: string): boolean => line.startsWith(";quenchline {");
 export const isOwn = (line: string): boolean => isOwnCommand(line) || isProvenance(line);
 
@@ -89,6 +90,10 @@ export const commandOf = (line: string): string =>
     .replace(/^N\d+ /, "")
     .replace(/\*\d+\s*$/, "")
     .trim();
+
+/** A numbered line as it would stand without number and checksum; any other as it stands. */
+export const unnumbered = (line: string): string =>
+  line.replace(/^N\d+ /, "").replace(/\*\d+(?=\s*(;[^*]*)?[\r\n]*$)/, "");
 
 /** Our commands of a tuned file, in order, each as it stands without its tag. */
 export const ownCommands = (text: string): string[] => linesOf(text).filter(isOwnCommand).map(commandOf);
@@ -105,7 +110,11 @@ export function placesOf(text: string, command: RegExp = /./): { after: string; 
   const rows = rowsOf(text);
   return rows.flatMap((row, k) => {
     if (!isOwnCommand(row) || !command.test(commandOf(row))) return [];
-    const after = rows.slice(0, k).reverse().find((other) => !isOwn(other)) ?? "";
+    const after =
+      rows
+        .slice(0, k)
+        .reverse()
+        .find((other) => !isOwn(other)) ?? "";
     const before = rows.slice(k + 1).find((other) => !isOwn(other)) ?? "";
     return [{ after, command: commandOf(row), before }];
   });

@@ -1,0 +1,60 @@
+import { spawnSync } from "node:child_process";
+import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
+import { bundle, fingerprint, PROGRAM_SOURCES, ROOT } from "./bundle.mjs";
+
+const DIST = join(ROOT, "dist");
+/** The worker stands beside the server, which starts it under this name. */
+const PROGRAMS = {
+  quenchline: "server/cli/quenchline.ts",
+  index: "server/index.ts",
+  worker: "server/jobs/worker.ts",
+};
+const CLIENT_SOURCES = [
+  "shared",
+  "src",
+  "index.html",
+  "vite.config.ts",
+  "tailwind.config.ts",
+  "package.json",
+  "package-lock.json",
+];
+
+/** Bundles command line, server and worker into dist/, beside the client. */
+export async function buildPrograms() {
+  mkdirSync(DIST, { recursive: true });
+  for (const name of readdirSync(DIST)) if (/\.mjs(\.map)?$/.test(name)) rmSync(join(DIST, name));
+  await bundle(PROGRAMS, DIST);
+}
+
+function buildClient() {
+  const vite = join(ROOT, "node_modules", "vite", "bin", "vite.js");
+  const { status } = spawnSync(process.execPath, [vite, "build", "--logLevel", "warn"], {
+    cwd: ROOT,
+    // What the build says is for whoever waits for it, not part of the program's output.
+    stdio: ["ignore", 2, 2],
+  });
+  if (status !== 0) throw new Error('the client can\'t be built: run "npm run build" and see what it says');
+}
+
+/**
+ * Builds what is missing or older than its sources.
+ *
+ * @returns {Promise<string>} path of the server, which runs when it is imported
+ */
+export async function freshServer() {
+  const server = join(DIST, "index.mjs");
+  await unlessFresh("programs", PROGRAM_SOURCES, server, buildPrograms);
+  await unlessFresh("client", CLIENT_SOURCES, join(DIST, "client", "index.html"), buildClient);
+  return server;
+}
+
+/** Remembers from which state of the sources something was built. */
+async function unlessFresh(what, sources, result, build) {
+  const stamp = join(DIST, `${what}.built`);
+  const state = fingerprint(sources);
+  if (existsSync(result) && existsSync(stamp) && readFileSync(stamp, "utf8") === state) return;
+  process.stderr.write(`quenchline: building its ${what} …\n`);
+  await build();
+  writeFileSync(stamp, state);
+}

@@ -1,0 +1,9 @@
+import { Documents } from "#server/documents/service.ts";
+import { type Machine, parseMachine, writeMachine } from "#shared/formats/machine.ts";
+
+export const machines = new Documents<Machine>({
+  kind: "machine",
+  nameOf: ({ name }) => name,
+  parse: parseMachine,
+  write: writeMachine,
+});

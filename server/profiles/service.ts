@@ -1,0 +1,9 @@
+import { Documents } from "#server/documents/service.ts";
+import { type Profile, parseProfile, writeProfile } from "#shared/formats/profile.ts";
+
+export const profiles = new Documents<Profile>({
+  kind: "profile",
+  nameOf: ({ name }) => name,
+  parse: parseProfile,
+  write: writeProfile,
+});

@@ -1,0 +1,128 @@
+import { fitting, hairline, LOG_FONT, label } from "#src/features/layer-log/draw-kit.ts";
+import { strokes } from "#src/features/layer-log/draw-track.ts";
+import { yOf } from "#src/features/layer-log/height-view.ts";
+import { type LogPicture, SCALE_STRIP_PX } from "#src/features/layer-log/log-picture.ts";
+import { type Trace, traceSeries } from "#src/features/layer-log/trace.ts";
+import { fixedText } from "#src/lib/number-text.ts";
+
+/** The part from the side, filled with the states it is meant to be in. */
+export function drawSilhouette(context: CanvasRenderingContext2D, picture: LogPicture): void {
+  const { layout, section, stack, view, palette, ratio } = picture;
+  const { x, width } = layout.silhouette;
+  const inset = 8;
+  const scale = (width - 2 * inset) / (section.toMm - section.fromMm);
+  const xOf = (mm: number) => x + inset + (mm - section.fromMm) * scale;
+  const trace = (values: ArrayLike<number>) => traceSeries(values, stack, view, 1 / ratio);
+  const sides = [trace(section.left), trace(section.right)];
+  const walls = wallTraces(picture, trace);
+
+  const body = new Path2D();
+  ring(body, sides, xOf);
+  for (const wall of walls) ring(body, wall, xOf);
+  context.save();
+  context.clip(body, "evenodd");
+  fillStates(context, picture);
+  context.restore();
+
+  context.strokeStyle = palette.ink;
+  context.lineWidth = 1;
+  for (const side of [...sides, ...walls.flat()]) {
+    context.beginPath();
+    strokes(context, side, xOf);
+    context.stroke();
+  }
+  drawTop(context, picture, xOf);
+  drawWidth(context, picture, xOf);
+}
+
+/** The inner walls, a pair for every run of layers that are open in the middle. */
+function wallTraces({ section, stack }: LogPicture, trace: (values: ArrayLike<number>) => Trace): Trace[][] {
+  if (!section.open.some((share) => share > 0)) return [];
+  const wall = (side: -1 | 1) => {
+    const values = new Float64Array(stack.count);
+    for (let i = 0; i < stack.count; i++) {
+      const [left, right, open] = [section.left[i], section.right[i], section.open[i]];
+      values[i] = open > 0 ? (left + right + side * open * (right - left)) / 2 : Number.NaN;
+    }
+    return pieces(trace(values));
+  };
+  const [left, right] = [wall(-1), wall(1)];
+  return left.map((piece, i) => [piece, right[i] ?? piece]);
+}
+
+function pieces(trace: Trace): Trace[] {
+  const found: Trace[] = [];
+  let from = -1;
+  for (let n = 0; n <= trace.length; n += 2) {
+    const gap = n === trace.length || Number.isNaN(trace[n]);
+    if (!gap && from < 0) from = n;
+    if (gap && from >= 0) {
+      found.push(trace.subarray(from, n));
+      from = -1;
+    }
+  }
+  return found;
+}
+
+/** Up along one side and down along the other. */
+function ring(path: Path2D, [up, down]: readonly Trace[], xOf: (mm: number) => number): void {
+  for (let n = 0; n < up.length; n += 2) {
+    if (n === 0) path.moveTo(xOf(up[n]), up[n + 1]);
+    else path.lineTo(xOf(up[n]), up[n + 1]);
+  }
+  for (let n = down.length - 2; n >= 0; n -= 2) path.lineTo(xOf(down[n]), down[n + 1]);
+  path.closePath();
+}
+
+function fillStates(context: CanvasRenderingContext2D, { bands, layout, palette, patterns, view }: LogPicture): void {
+  const { x, width } = layout.silhouette;
+  if (bands.length === 0) {
+    context.globalAlpha = 0.16;
+    context.fillStyle = palette.ink;
+    context.fillRect(x, view.topPx, width, view.bottomPx - view.topPx);
+    context.globalAlpha = 1;
+  }
+  for (const { fromMm, toMm, target } of bands) {
+    const [top, bottom] = [Math.max(yOf(view, toMm), view.topPx), Math.min(yOf(view, fromMm), view.bottomPx)];
+    if (bottom <= top) continue;
+    context.fillStyle = patterns.state[target];
+    context.fillRect(x, top, width, bottom - top);
+  }
+}
+
+/** Where the part ends, above and below, and where one object ends and the next begins. */
+function drawTop(context: CanvasRenderingContext2D, picture: LogPicture, xOf: (mm: number) => number): void {
+  const { stack, section, view, palette, ratio, layout } = picture;
+  for (const { object, baseMm, topMm, first, last } of stack.objects) {
+    if (topMm <= view.toMm) {
+      const y = yOf(view, topMm);
+      hairline(context, ratio, palette.ink, [xOf(section.left[last]), y, xOf(section.right[last]), y]);
+    }
+    if (baseMm < view.fromMm || baseMm > view.toMm) continue;
+    const y = yOf(view, baseMm);
+    hairline(context, ratio, palette.ink, [xOf(section.left[first]), y, xOf(section.right[first]), y]);
+    if (stack.objects.length === 1) continue;
+    context.font = LOG_FONT;
+    context.fillStyle = palette.soft;
+    label(context, fitting(context, `object ${object}`, layout.silhouette.width), layout.silhouette.x + 4, y - 8);
+  }
+}
+
+/** How wide the part is at its widest, above the silhouette. */
+function drawWidth(context: CanvasRenderingContext2D, picture: LogPicture, xOf: (mm: number) => number): void {
+  const { section, palette, ratio } = picture;
+  const [left, right, y] = [xOf(section.fromMm), xOf(section.toMm), SCALE_STRIP_PX / 2];
+  context.font = LOG_FONT;
+  context.fillStyle = palette.soft;
+  const text = `${section.across} ${fixedText(section.toMm - section.fromMm, 1)} mm`;
+  const half = context.measureText(text).width / 2 + 4;
+  const middle = (left + right) / 2;
+  label(context, text, middle, y, "center");
+  for (const [from, to] of [
+    [left, middle - half],
+    [middle + half, right],
+  ]) {
+    if (to > from) hairline(context, ratio, palette.rule, [from, y, to, y]);
+  }
+  for (const end of [left, right]) hairline(context, ratio, palette.rule, [end, y - 4, end, y + 4]);
+}

@@ -1,0 +1,158 @@
+import { hairline, LOG_FONT, label } from "#src/features/layer-log/draw-kit.ts";
+import type { Column } from "#src/features/layer-log/log-layout.ts";
+import { type LogPicture, SCALE_STRIP_PX } from "#src/features/layer-log/log-picture.ts";
+import type { Palette } from "#src/features/layer-log/palette.ts";
+import { type Trace, traceSeries } from "#src/features/layer-log/trace.ts";
+import type { Tone, Track, TrackSeries } from "#src/features/layer-log/track.ts";
+import { marksOf, type Scale, shareOf } from "#src/lib/scale.ts";
+
+const DASHES: Record<TrackSeries["style"]["line"], number[]> = { solid: [], dashed: [5, 3], dotted: [1.5, 2.5] };
+
+export function toneColour(tone: Tone, palette: Palette): string {
+  return tone === "bone" ? palette.boneEdge : tone === "amber" ? palette.amberInk : palette[tone];
+}
+
+export function drawTrack(context: CanvasRenderingContext2D, picture: LogPicture, i: number): void {
+  const [track, scale, column] = [picture.tracks[i], picture.scales[i], picture.layout.tracks[i]];
+  drawScale(context, picture, track, scale, column);
+  context.save();
+  context.beginPath();
+  context.rect(column.x, picture.view.topPx - 1, column.width, picture.view.bottomPx - picture.view.topPx + 2);
+  context.clip();
+  const xOf = (value: number) => column.x + shareOf(scale, value) * column.width;
+  for (const series of track.series) drawRange(context, picture, series, xOf);
+  for (const series of track.series) drawSeries(context, picture, series, xOf, column);
+  context.restore();
+}
+
+/** Frame, marks with their numbers above, and the lines of reference. */
+function drawScale(
+  context: CanvasRenderingContext2D,
+  { palette, ratio, view }: LogPicture,
+  track: Track,
+  scale: Scale,
+  { x, width }: Column,
+): void {
+  const marks = marksOf(scale, Math.floor(width / 44));
+  context.font = LOG_FONT;
+  context.fillStyle = palette.soft;
+  let free = x - 6;
+  for (const { value, text } of marks) {
+    const at = x + shareOf(scale, value) * width;
+    hairline(context, ratio, palette.hair, [at, SCALE_STRIP_PX, at, view.bottomPx]);
+    const half = context.measureText(text).width / 2;
+    const middle = Math.min(Math.max(at, x + half), x + width - half);
+    if (middle - half < free + 6) continue;
+    label(context, text, middle, SCALE_STRIP_PX / 2, "center");
+    free = middle + half;
+  }
+  if (scale.kind === "log") drawLogTicks(context, ratio, palette.rule, scale, { x, width });
+  for (const edge of [x, x + width])
+    hairline(context, ratio, palette.rule, [edge, SCALE_STRIP_PX, edge, view.bottomPx]);
+  for (const { value, label: name } of track.references ?? []) {
+    const at = x + shareOf(scale, value) * width;
+    hairline(context, ratio, palette.ink, [at, SCALE_STRIP_PX, at, view.bottomPx]);
+    context.fillStyle = palette.ink;
+    label(context, name, Math.min(at + 3, x + width), view.topPx + 8);
+  }
+}
+
+/** Short ticks at 2 to 9 in every decade, which tell a logarithmic scale from a linear one at a glance. */
+function drawLogTicks(
+  context: CanvasRenderingContext2D,
+  ratio: number,
+  colour: string,
+  scale: Scale,
+  { x, width }: Column,
+): void {
+  for (let decade = scale.from; decade < scale.to; decade *= 10) {
+    for (let factor = 2; factor <= 9 && factor * decade < scale.to; factor++) {
+      const at = x + shareOf(scale, factor * decade) * width;
+      hairline(context, ratio, colour, [at, SCALE_STRIP_PX, at, SCALE_STRIP_PX + 4]);
+    }
+  }
+}
+
+/** The hatched strip between a series' low and high. */
+function drawRange(
+  context: CanvasRenderingContext2D,
+  { stack, view, ratio, palette, patterns }: LogPicture,
+  { low, high, style }: TrackSeries,
+  xOf: (value: number) => number,
+): void {
+  if (!low || !high) return;
+  const [up, down] = [traceSeries(low, stack, view, 1 / ratio), traceSeries(high, stack, view, 1 / ratio)];
+  context.beginPath();
+  for (let n = 0; n < up.length; n += 2) if (!Number.isNaN(up[n])) context.lineTo(xOf(up[n]), up[n + 1]);
+  for (let n = down.length - 2; n >= 0; n -= 2) if (!Number.isNaN(down[n])) context.lineTo(xOf(down[n]), down[n + 1]);
+  context.closePath();
+  const colour = toneColour(style.tone, palette);
+  context.fillStyle = patterns.hatch(colour);
+  context.fill();
+  // A raise of one layer only is too low for a hatch to show.
+  context.globalAlpha = 0.6;
+  context.strokeStyle = colour;
+  context.lineWidth = 1 / ratio;
+  context.stroke();
+  context.globalAlpha = 1;
+}
+
+function drawSeries(
+  context: CanvasRenderingContext2D,
+  picture: LogPicture,
+  { values, style }: TrackSeries,
+  xOf: (value: number) => number,
+  column: Column,
+): void {
+  const { stack, view, ratio, palette, patterns } = picture;
+  const trace = traceSeries(values, stack, view, 1 / ratio);
+  const colour = toneColour(style.tone, palette);
+  if (style.fill) {
+    context.beginPath();
+    outline(context, trace, xOf, column.x);
+    context.globalAlpha = style.fill === "wash" ? 0.13 : 1;
+    context.fillStyle = style.fill === "wash" ? colour : patterns.hatch(colour);
+    context.fill();
+    context.globalAlpha = 1;
+  }
+  context.beginPath();
+  strokes(context, trace, xOf);
+  context.strokeStyle = colour;
+  context.lineWidth = style.line === "solid" ? 1.5 : 1.25;
+  context.lineJoin = "miter";
+  context.setLineDash(DASHES[style.line]);
+  context.stroke();
+  context.setLineDash([]);
+}
+
+/** The line itself; a gap starts a new stroke. */
+export function strokes(context: CanvasRenderingContext2D, trace: Trace, xOf: (value: number) => number): void {
+  let down = false;
+  for (let n = 0; n < trace.length; n += 2) {
+    const x = xOf(trace[n]);
+    if (Number.isNaN(x)) {
+      down = false;
+      continue;
+    }
+    if (down) context.lineTo(x, trace[n + 1]);
+    else context.moveTo(x, trace[n + 1]);
+    down = true;
+  }
+}
+
+/** The area between the track's left edge and the line, piece by piece. */
+function outline(context: CanvasRenderingContext2D, trace: Trace, xOf: (value: number) => number, left: number): void {
+  let lastY = Number.NaN;
+  for (let n = 0; n < trace.length; n += 2) {
+    const x = xOf(trace[n]);
+    if (Number.isNaN(x)) {
+      if (!Number.isNaN(lastY)) context.lineTo(left, lastY);
+      lastY = Number.NaN;
+      continue;
+    }
+    if (Number.isNaN(lastY)) context.moveTo(left, trace[n + 1]);
+    context.lineTo(x, trace[n + 1]);
+    lastY = trace[n + 1];
+  }
+  if (!Number.isNaN(lastY)) context.lineTo(left, lastY);
+}

@@ -1,0 +1,246 @@
+import { type KeyboardEvent, type ReactNode, useMemo, useRef, useState } from "react";
+import {
+  fitRange,
+  type HeightRange,
+  type HeightView,
+  isWhole,
+  rangeShowing,
+  wholeRange,
+  zoomedAbout,
+} from "#src/features/layer-log/height-view.ts";
+import { LayerAnnouncer } from "#src/features/layer-log/layer-announcer.tsx";
+import { type LayerStack, objectAt, positionOfIndex, stackLayers } from "#src/features/layer-log/layer-stack.ts";
+import { LayerTable } from "#src/features/layer-log/layer-table.tsx";
+import { LogHead } from "#src/features/layer-log/log-head.tsx";
+import { logStep } from "#src/features/layer-log/log-keys.ts";
+import { logLayout } from "#src/features/layer-log/log-layout.ts";
+import { LogLegend } from "#src/features/layer-log/log-legend.tsx";
+import { type LogContent, viewOf } from "#src/features/layer-log/log-picture.ts";
+import type { LogLayer } from "#src/features/layer-log/reading-tracks.ts";
+import { sectionOf } from "#src/features/layer-log/section.ts";
+import { shownPositions } from "#src/features/layer-log/trace.ts";
+import type { LogMark, Track } from "#src/features/layer-log/track.ts";
+import { trackScale } from "#src/features/layer-log/track-scale.ts";
+import { useBoxSize } from "#src/features/layer-log/use-box-size.ts";
+import { useLogCanvas } from "#src/features/layer-log/use-log-canvas.ts";
+import { useLogPointer } from "#src/features/layer-log/use-log-pointer.ts";
+import { trackText } from "#src/features/layer-log/value-text.ts";
+import { type BandZone, zoneBands } from "#src/features/layer-log/zone-bands.ts";
+import { fixedText } from "#src/lib/number-text.ts";
+import { Button } from "#src/ui/button.tsx";
+
+/** What stands in the column at the right is told which heights are shown where. */
+export interface LogAsideView extends HeightView {
+  heightPx: number;
+  stack: LayerStack;
+}
+
+export interface LayerLogProps {
+  /** in print order */
+  layers: readonly LogLayer[];
+  /** from left to right; see readingTracks */
+  tracks: readonly Track[];
+  /** index of the pinned layer */
+  pinnedLayer: number | null;
+  onPin(layer: number): void;
+  /** index of the layer under the crosshair, null when it leaves */
+  onHover?(layer: number | null): void;
+  /** findings of the reading, advice of the plan */
+  marks?: readonly LogMark[];
+  /** the profile's zones: they fill the silhouette and stand as bands at the right */
+  zones?: readonly BandZone[];
+  /** draws the column at the right in place of the bands, for instance to edit them */
+  aside?: { title: string; widthPx: number; render(view: LogAsideView): ReactNode };
+  label?: string;
+  /** height of the plot; the log is as wide as its box */
+  heightPx?: number;
+}
+
+const NO_MARKS: readonly LogMark[] = [];
+const NO_ZONES: readonly BandZone[] = [];
+const BANDS_PX = 134;
+
+/**
+ * The layer log: narrow tracks over one height axis, as a borehole log is drawn, with one crosshair through all of them.
+ * Dragging over the silhouette zooms; a click or the arrow keys pin a layer.
+ */
+export function LayerLog(props: LayerLogProps) {
+  const { layers, tracks, pinnedLayer, onPin, onHover, aside, label = "Layer log", heightPx = 560 } = props;
+  const { marks = NO_MARKS, zones = NO_ZONES } = props;
+  const box = useRef<HTMLDivElement>(null);
+  const [base, over] = [useRef<HTMLCanvasElement>(null), useRef<HTMLCanvasElement>(null)];
+  const { width } = useBoxSize(box, { width: 960, height: heightPx });
+  const content = useContent(layers, tracks, zones, marks);
+  const { stack } = content;
+  const [wanted, setWanted] = useState<HeightRange>();
+  const [hovered, setHovered] = useState(-1);
+  const [asTable, setAsTable] = useState(false);
+
+  const range = useMemo(() => (wanted ? fitRange(stack, wanted) : wholeRange(stack)), [stack, wanted]);
+  const view = useMemo(() => viewOf(range, heightPx), [range, heightPx]);
+  const asidePx = aside?.widthPx ?? (zones.length > 0 ? BANDS_PX : 0);
+  const layout = useMemo(() => logLayout(width, tracks.length, asidePx), [width, tracks.length, asidePx]);
+  const pinned = pinnedLayer === null ? -1 : positionOfIndex(stack, pinnedLayer);
+  const zoomed = !isWhole(stack, range);
+
+  const pin = (position: number) => {
+    if (position < 0) return;
+    if (wanted) setWanted(rangeShowing(stack, range, stack.bottomMm[position], stack.topMm[position]));
+    onPin(stack.index[position]);
+  };
+  const hover = (position: number) => {
+    if (position === hovered) return;
+    setHovered(position);
+    onHover?.(position < 0 ? null : stack.index[position]);
+  };
+  const zoomOut = () => setWanted(undefined);
+  const pointer = useLogPointer({
+    stack,
+    view,
+    silhouette: layout.silhouette,
+    onPin: pin,
+    onZoom: (zoom) => setWanted(fitRange(stack, zoom)),
+    onHover: hover,
+  });
+  const { band } = pointer;
+  const marker = useMemo(() => ({ pinned, hovered, band }), [pinned, hovered, band]);
+  useLogCanvas(base, over, { content, layout, view, heightPx, bandColumn: aside === undefined, pointer: marker });
+
+  const onKeyDown = (event: KeyboardEvent) => {
+    if (event.ctrlKey || event.metaKey || event.altKey) return;
+    const [first, last] = shownPositions(stack, view);
+    const step = logStep(event.key, pinned, stack.count, Math.max(1, Math.round((last - first + 1) / 10)));
+    if (!step) return;
+    event.preventDefault();
+    if ("pin" in step) return pin(step.pin);
+    pointer.drop();
+    if (step.zoom === "whole") return zoomOut();
+    const about = pinned < 0 ? (range.fromMm + range.toMm) / 2 : stack.topMm[pinned];
+    setWanted(zoomedAbout(stack, range, about, step.zoom === "in" ? 0.5 : 2));
+  };
+
+  const shown = hovered >= 0 ? hovered : pinned;
+  return (
+    <section aria-label={label} className="bg-sheet">
+      <div ref={box} className="overflow-x-auto">
+        {asTable ? (
+          <LayerTable stack={stack} tracks={tracks} pinned={pinned} onPin={pin} heightPx={heightPx + 96} />
+        ) : (
+          <>
+            <LogHead
+              layout={layout}
+              tracks={tracks}
+              position={shown}
+              layerText={layerText(stack, shown)}
+              asideTitle={aside?.title ?? (zones.length > 0 ? "Zones" : undefined)}
+            />
+            <div className="relative" style={{ width: layout.width, height: heightPx }}>
+              <div
+                role="slider"
+                tabIndex={0}
+                aria-label={`${label}, pinned layer`}
+                aria-orientation="vertical"
+                aria-valuemin={1}
+                aria-valuemax={Math.max(stack.count, 1)}
+                aria-valuenow={pinned < 0 ? 1 : pinned + 1}
+                aria-valuetext={pinned < 0 ? "No layer pinned" : spoken(stack, pinned)}
+                className="absolute inset-y-0 left-0 cursor-crosshair outline-offset-[-2px] select-none"
+                style={{ width: layout.aside?.x ?? layout.width }}
+                onKeyDown={onKeyDown}
+                onDoubleClick={zoomOut}
+                {...pointer.handlers}
+              >
+                <canvas
+                  ref={base}
+                  className="pointer-events-none absolute inset-0"
+                  style={{ width: layout.width, height: heightPx }}
+                />
+                <canvas
+                  ref={over}
+                  className="pointer-events-none absolute inset-0"
+                  style={{ width: layout.width, height: heightPx }}
+                />
+                {/* A finger on the silhouette draws a band; elsewhere it scrolls the page. */}
+                <span
+                  aria-hidden="true"
+                  className="absolute inset-y-0 cursor-row-resize touch-none"
+                  style={{ left: layout.silhouette.x, width: layout.silhouette.width }}
+                />
+              </div>
+              {aside && layout.aside && (
+                <div className="absolute inset-y-0" style={{ left: layout.aside.x, width: layout.aside.width }}>
+                  {aside.render({ ...view, heightPx, stack })}
+                </div>
+              )}
+            </div>
+          </>
+        )}
+      </div>
+      <footer className="flex flex-wrap items-start justify-between gap-x-6 gap-y-1 border-t border-hair px-2 py-1.5">
+        <LogLegend tracks={tracks} zones={zones} marked={marks.length > 0} />
+        <span className="ml-auto flex gap-4">
+          {zoomed && !asTable && (
+            <Button weight="quiet" className="text-small" onClick={zoomOut}>
+              Whole part
+            </Button>
+          )}
+          <Button weight="quiet" className="text-small" aria-pressed={asTable} onClick={() => setAsTable(!asTable)}>
+            Layers as a table
+          </Button>
+        </span>
+      </footer>
+      <MarkNotes marks={marks} layer={shown < 0 ? undefined : stack.index[shown]} />
+      <LayerAnnouncer
+        text={
+          pinned < 0 ? "" : `${spoken(stack, pinned)}. ${tracks.map((track) => trackText(track, pinned)).join(". ")}.`
+        }
+      />
+    </section>
+  );
+}
+
+function useContent(
+  layers: readonly LogLayer[],
+  tracks: readonly Track[],
+  zones: readonly BandZone[],
+  marks: readonly LogMark[],
+): LogContent {
+  const stack = useMemo(() => stackLayers(layers), [layers]);
+  const section = useMemo(() => sectionOf(layers), [layers]);
+  const scales = useMemo(() => tracks.map(trackScale), [tracks]);
+  const bands = useMemo(() => zoneBands(zones, stack), [zones, stack]);
+  return useMemo(
+    () => ({ stack, section, tracks, scales, bands, marks }),
+    [stack, section, tracks, scales, bands, marks],
+  );
+}
+
+function layerText(stack: LayerStack, position: number) {
+  if (position < 0) return { number: "", height: "–", of: `${stack.count} layers` };
+  const height = fixedText(stack.topMm[position] - objectAt(stack, position).baseMm, 2);
+  return { number: String(stack.index[position]), height, of: `of ${stack.count}` };
+}
+
+function spoken(stack: LayerStack, position: number): string {
+  const { baseMm, object } = objectAt(stack, position);
+  const where = stack.objects.length > 1 ? ` of object ${object}` : "";
+  return `Layer ${stack.index[position]} of ${stack.count}, ${fixedText(stack.topMm[position] - baseMm, 2)} mm${where}`;
+}
+
+/** What was found at the layer one looks at. */
+function MarkNotes({ marks, layer }: { marks: readonly LogMark[]; layer: number | undefined }) {
+  const here = marks.filter((mark) => mark.layer === layer);
+  if (marks.length === 0) return null;
+  return (
+    <ul aria-label="At this layer" className="min-h-7 border-t border-hair px-2 py-1 text-small">
+      {here.length === 0 && (
+        <li className="text-soft">{`${marks.length} findings and advice, marked at their layers`}</li>
+      )}
+      {here.map(({ message, severity }) => (
+        <li key={message}>
+          <span className="font-semibold">{severity === "warning" ? "Warning" : "Note"}</span> {message}
+        </li>
+      ))}
+    </ul>
+  );
+}

@@ -1,0 +1,79 @@
+import type { Palette } from "#src/features/layer-log/palette.ts";
+import type { BandZone } from "#src/features/layer-log/zone-bands.ts";
+
+type Fill = CanvasPattern | string;
+
+/**
+ * Fills that tell states and ranges apart without colour, drawn as a lithology column is: a sparse stipple for
+ * amorphous, lamellae for semi-crystalline, a slanting hatch where nothing is decided.
+ */
+export interface Patterns {
+  state: Record<BandZone["target"], Fill>;
+  /** a slanting hatch in any colour of the sheet, for ranges */
+  hatch(colour: string): Fill;
+}
+
+const TILE_PX = 8;
+
+export function makePatterns(context: CanvasRenderingContext2D, palette: Palette, ratio: number): Patterns {
+  const pattern = (draw: (tile: CanvasRenderingContext2D) => void, fallback: string): Fill => {
+    const canvas = document.createElement("canvas");
+    canvas.width = Math.round(TILE_PX * ratio);
+    canvas.height = Math.round(TILE_PX * ratio);
+    const tile = canvas.getContext("2d");
+    if (!tile) return fallback;
+    tile.scale(canvas.width / TILE_PX, canvas.height / TILE_PX);
+    draw(tile);
+    const made = context.createPattern(canvas, "repeat");
+    made?.setTransform(new DOMMatrix().scale(TILE_PX / canvas.width, TILE_PX / canvas.height));
+    return made ?? fallback;
+  };
+  const hatches = new Map<string, Fill>();
+  return {
+    state: {
+      amorphous: pattern((tile) => stipple(tile, palette), palette.amber),
+      "semi-crystalline": pattern((tile) => lamellae(tile, palette), palette.bone),
+      none: pattern((tile) => slant(tile, palette.rule, 0.7), palette.well),
+    },
+    hatch(colour) {
+      const made = hatches.get(colour) ?? pattern((tile) => slant(tile, colour, 0.55), colour);
+      hatches.set(colour, made);
+      return made;
+    },
+  };
+}
+
+function stipple(tile: CanvasRenderingContext2D, { amber, amberInk }: Palette): void {
+  tile.globalAlpha = 0.5;
+  tile.fillStyle = amber;
+  tile.fillRect(0, 0, TILE_PX, TILE_PX);
+  tile.globalAlpha = 0.75;
+  tile.fillStyle = amberInk;
+  for (const [x, y] of [
+    [1, 1],
+    [5, 5],
+  ]) {
+    tile.fillRect(x, y, 1, 1);
+  }
+}
+
+function lamellae(tile: CanvasRenderingContext2D, { bone, boneEdge }: Palette): void {
+  tile.fillStyle = bone;
+  tile.fillRect(0, 0, TILE_PX, TILE_PX);
+  tile.globalAlpha = 0.55;
+  tile.fillStyle = boneEdge;
+  for (const y of [1, 5]) tile.fillRect(0, y, TILE_PX, 1);
+}
+
+function slant(tile: CanvasRenderingContext2D, colour: string, alpha: number): void {
+  tile.globalAlpha = alpha;
+  tile.strokeStyle = colour;
+  tile.lineWidth = 1;
+  tile.beginPath();
+  // The line once, and its neighbours in the corners, so that the tiles join.
+  for (const shift of [-TILE_PX, 0, TILE_PX]) {
+    tile.moveTo(shift, TILE_PX);
+    tile.lineTo(shift + TILE_PX, 0);
+  }
+  tile.stroke();
+}

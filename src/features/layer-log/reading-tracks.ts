@@ -1,0 +1,78 @@
+import type { PlanDocument } from "#shared/formats/plan.ts";
+import type { LayerReading } from "#shared/formats/reading.ts";
+import type { Track, TrackSeries } from "#src/features/layer-log/track.ts";
+import { spansDecades } from "#src/features/layer-log/track-scale.ts";
+
+/** A layer of the log: a layer of the reading. */
+export type LogLayer = LayerReading;
+
+/** One output of the machine, as far as the log cares. */
+export interface LogChannel {
+  id: string;
+  kind: "fan" | "heater";
+}
+
+/** What of a plan is drawn: a finished plan, or the one just computed while a profile is edited. */
+export type LogPlan = Pick<PlanDocument, "layers">;
+
+/** The tracks that a reading gives: layer time, deposited length, and one for every fan and heater. */
+export function readingTracks(layers: readonly LogLayer[], channels: readonly LogChannel[], plan?: LogPlan): Track[] {
+  return [...measureTracks(layers), ...channels.map((channel) => dutyTrack(channel, channels, layers, plan))];
+}
+
+function measureTracks(layers: readonly LogLayer[]): Track[] {
+  const measure = (
+    id: string,
+    title: string,
+    unit: string,
+    decimals: number,
+    of: (layer: LogLayer) => number,
+  ): Track => {
+    const values = Float64Array.from(layers, of);
+    return {
+      id,
+      title,
+      unit,
+      decimals,
+      scale: spansDecades(values) ? "log" : "linear",
+      series: [{ label: "in the file", values, style: { tone: "ink", line: "solid", fill: "wash" } }],
+    };
+  };
+  return [
+    measure("layer-time", "Layer time", "s", 1, ({ timeS }) => timeS),
+    measure("deposited-length", "Deposited length", "mm", 0, ({ depositedLengthMm }) => depositedLengthMm),
+  ];
+}
+
+function dutyTrack(
+  { id, kind }: LogChannel,
+  channels: readonly LogChannel[],
+  layers: readonly LogLayer[],
+  plan: LogPlan | undefined,
+): Track {
+  const tone = kind === "fan" ? "cool" : "heat";
+  const seen = (pick: "mean" | "min" | "max") =>
+    Float64Array.from(layers, ({ duty }) => duty[id]?.[pick] ?? Number.NaN);
+  const [low, high] = [seen("min"), seen("max")];
+  const sliced: TrackSeries = {
+    label: "as sliced",
+    values: seen("mean"),
+    style: { tone, line: "dashed" },
+    ...(low.some((least, i) => high[i] > least) ? { low, high } : {}),
+  };
+  const planned = plan && layers.length > 0 && plan.layers[0]?.duty[id] !== undefined && plannedSeries(id, tone, plan);
+  const alike = channels.filter((channel) => channel.kind === kind).length;
+  return {
+    id,
+    title: alike > 1 ? `${kind === "fan" ? "Fan" : "Heater"} ${id}` : kind === "fan" ? "Fan duty" : "Heater duty",
+    unit: "0–1",
+    decimals: 2,
+    domain: [0, 1],
+    series: planned ? [sliced, planned] : [sliced],
+  };
+}
+
+function plannedSeries(id: string, tone: "cool" | "heat", plan: LogPlan): TrackSeries {
+  const values = Float64Array.from(plan.layers, ({ duty }) => duty[id] ?? Number.NaN);
+  return { label: "as planned", values, style: { tone, line: "solid", fill: "wash" } };
+}

@@ -1,0 +1,85 @@
+import type { Polymer, Sourced } from "#shared/formats/polymer.ts";
+
+/** One number of a card: where it stands in the document, and how it is called and shown. */
+export interface CardField {
+  path: readonly string[];
+  label: string;
+  unit: string;
+  decimals: number;
+}
+
+export interface CardGroup {
+  title: string;
+  note?: string;
+  fields: CardField[];
+}
+
+const field = (path: string, label: string, unit: string, decimals: number): CardField => ({
+  path: path.split("."),
+  label,
+  unit,
+  decimals,
+});
+
+export const CARD_GROUPS: CardGroup[] = [
+  {
+    title: "Transitions",
+    fields: [
+      field("tgC", "Glass transition, Tg", "°C", 0),
+      field("tmC", "Melting, Tm", "°C", 0),
+      field("solidBelowC", "Keeps its shape below", "°C", 0),
+      field("solidAtRelativeCrystallinity", "or from relative crystallinity", "0–1", 2),
+      field("weldAboveC", "Layers weld above", "°C", 0),
+    ],
+  },
+  {
+    title: "Margins",
+    note: "a profile may set its own",
+    fields: [
+      field("margins.belowTgC", "Amorphous: below Tg by", "K", 0),
+      field("margins.aboveTgC", "Semi-crystalline: above Tg by", "K", 0),
+      field("margins.maxCrystallinity", "Amorphous: crystallinity at most", "0–1", 2),
+      field("margins.minCrystallinity", "Semi-crystalline: at least", "0–1", 2),
+    ],
+  },
+  {
+    title: "Heat",
+    fields: [
+      field("densityKgM3", "Density", "kg/m³", 0),
+      field("conductivityWMK", "Conductivity", "W/(m·K)", 2),
+      field("heatCapacityJKgK", "Heat capacity", "J/(kg·K)", 0),
+      field("emissivity", "Emissivity", "0–1", 2),
+      field("lampAbsorptivity.low", "Absorbs of the lamp, low", "0–1", 2),
+      field("lampAbsorptivity.typical", "typical", "0–1", 2),
+      field("lampAbsorptivity.high", "high", "0–1", 2),
+    ],
+  },
+  {
+    title: "Crystallinity",
+    fields: [
+      field("crystallinity.heatOfFusionJG", "Heat of fusion of the crystal", "J/g", 1),
+      field("crystallinity.attainable", "Attainable crystallinity", "0–1", 2),
+      field("crystallinity.avramiN", "Avrami exponent", "", 2),
+      field("crystallinity.fastestPerS", "Fastest rate", "1/s", 4),
+      field("crystallinity.fastestAtC", "at", "°C", 0),
+      field("crystallinity.halfWidthC", "Half-width at half height", "K", 0),
+    ],
+  },
+];
+
+export function sourcedAt(polymer: Polymer, path: readonly string[]): Sourced {
+  let value: unknown = polymer;
+  for (const key of path) value = Reflect.get(value as object, key);
+  return value as Sourced;
+}
+
+/** The card with one of its numbers replaced. */
+export function withSourced(polymer: Polymer, path: readonly string[], sourced: Sourced): Polymer {
+  return replaced(polymer, path, sourced) as Polymer;
+}
+
+function replaced(value: unknown, [key, ...rest]: readonly string[], leaf: Sourced): unknown {
+  if (key === undefined) return leaf;
+  const object = value as Record<string, unknown>;
+  return { ...object, [key]: replaced(object[key], rest, leaf) };
+}

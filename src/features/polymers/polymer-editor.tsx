@@ -1,0 +1,98 @@
+import { useState } from "react";
+import { Confidence, type Polymer, type Sourced } from "#shared/formats/polymer.ts";
+import { CARD_GROUPS, type CardField, sourcedAt, withSourced } from "#src/features/polymers/card-fields.ts";
+import { CheckField, TextField } from "#src/ui/field.tsx";
+import { Section } from "#src/ui/section.tsx";
+
+interface Props {
+  polymer: Polymer;
+  onChange(polymer: Polymer): void;
+}
+
+/** Every number of a card with its source; a number that changes should say where the new one comes from. */
+export function PolymerEditor({ polymer, onChange }: Props) {
+  return (
+    <>
+      <Section title="Name">
+        <div className="grid gap-4 md:grid-cols-2">
+          <TextField label="Polymer" value={polymer.name} onChange={({ target }) => onChange({ ...polymer, name: target.value })} />
+          <TextField
+            label="Variant"
+            hint="Grade, filler or colour; empty for the neat polymer."
+            value={polymer.variant}
+            onChange={({ target }) => onChange({ ...polymer, variant: target.value })}
+          />
+        </div>
+        <CheckField
+          className="mt-3"
+          label="Amorphous is within reach when it is printed"
+          checked={polymer.amorphousReachable}
+          onChange={({ target }) => onChange({ ...polymer, amorphousReachable: target.checked })}
+        />
+      </Section>
+      {CARD_GROUPS.map(({ title, note, fields }) => (
+        <Section key={title} title={title} note={note}>
+          <div className="flex flex-col">
+            {fields.map((one) => (
+              <NumberRow
+                key={one.label}
+                field={one}
+                sourced={sourcedAt(polymer, one.path)}
+                onChange={(sourced) => onChange(withSourced(polymer, one.path, sourced))}
+              />
+            ))}
+          </div>
+        </Section>
+      ))}
+    </>
+  );
+}
+
+const BOX = "min-h-9 rounded border border-rule bg-sheet px-2 hover:border-ink";
+
+interface RowProps {
+  field: CardField;
+  sourced: Sourced;
+  onChange(sourced: Sourced): void;
+}
+
+function NumberRow({ field: { label, unit }, sourced, onChange }: RowProps) {
+  // What is typed is kept as typed: "0." is on its way to a number.
+  const [text, setText] = useState(String(sourced.value));
+  const shown = Number(text) === sourced.value ? text : String(sourced.value);
+  return (
+    <fieldset className="grid grid-cols-[12rem_8rem_4.5rem_10rem_minmax(8rem,1fr)] items-center gap-x-3 border-b border-hair py-1.5 max-lg:grid-cols-2 max-lg:gap-y-1">
+      <legend className="sr-only">{label}</legend>
+      <span aria-hidden>{label}</span>
+      <input
+        aria-label={`${label}, value${unit && ` in ${unit}`}`}
+        className={`${BOX} text-right font-mono`}
+        inputMode="decimal"
+        value={shown}
+        onChange={({ target }) => {
+          setText(target.value);
+          const value = Number(target.value.replace(",", "."));
+          if (target.value.trim() !== "" && Number.isFinite(value)) onChange({ ...sourced, value });
+        }}
+        onBlur={() => setText(String(sourced.value))}
+      />
+      <span className="font-mono text-small text-soft">{unit}</span>
+      <select
+        aria-label={`${label}, confidence`}
+        className={BOX}
+        value={sourced.confidence}
+        onChange={({ target }) => onChange({ ...sourced, confidence: Confidence.parse(target.value) })}
+      >
+        {Confidence.options.map((each) => (
+          <option key={each}>{each}</option>
+        ))}
+      </select>
+      <input
+        aria-label={`${label}, source`}
+        className={`${BOX} w-full max-lg:col-span-2`}
+        value={sourced.source}
+        onChange={({ target }) => onChange({ ...sourced, source: target.value })}
+      />
+    </fieldset>
+  );
+}

@@ -1,0 +1,17 @@
+import type { Zone } from "#shared/formats/profile.ts";
+import { STATE_FILLS, STATE_NAMES } from "#src/lib/state-fill.ts";
+
+/** A target state, as it looks and by name. */
+export function TargetMark({ target }: { target: Zone["target"] }) {
+  return (
+    <span className="inline-flex items-center gap-2">
+      <span aria-hidden className="inline-block size-3.5 border border-bone-edge" style={STATE_FILLS[target]} />
+      {STATE_NAMES[target]}
+    </span>
+  );
+}
+
+/** The same as an upright band. */
+export function TargetBand({ target }: { target: Zone["target"] }) {
+  return <span aria-hidden className="w-5 shrink-0 self-stretch border-r border-bone-edge" style={STATE_FILLS[target]} />;
+}

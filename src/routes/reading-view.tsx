@@ -1,0 +1,95 @@
+import { useQuery } from "@tanstack/react-query";
+import { useMemo, useState } from "react";
+import type { Machine } from "#shared/formats/machine.ts";
+import type { ReadingDocument } from "#shared/formats/reading.ts";
+import { MACHINES, versionQuery } from "#src/features/documents/kinds.ts";
+import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
+import { findingMarks } from "#src/features/layer-log/log-marks.ts";
+import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
+import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
+import { Findings } from "#src/features/toolpaths/findings.tsx";
+import { LayerLines } from "#src/features/toolpaths/layer-lines.tsx";
+import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
+import { Waits } from "#src/features/toolpaths/waits.tsx";
+import { counted, duration } from "#src/lib/format.ts";
+import { fixedText } from "#src/lib/number-text.ts";
+import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
+import { Button } from "#src/ui/button.tsx";
+import { Facts } from "#src/ui/facts.tsx";
+import { Section } from "#src/ui/section.tsx";
+import { Loaded } from "#src/ui/states.tsx";
+import { LogBeside } from "#src/routes/log-beside.tsx";
+
+interface Props {
+  reading: { id: string; machineId: string; machineVersion: number };
+}
+
+/** A finished reading: its numbers, the layer log, what was found. */
+export function ReadingView({ reading }: Props) {
+  const document = useQuery(readingDocumentQuery(reading.id));
+  const machine = useQuery(versionQuery(MACHINES, reading.machineId, reading.machineVersion));
+  return (
+    <Loaded query={document} what="Fetching layers">
+      {(found) => (
+        <Loaded query={machine} what="Fetching the machine">
+          {(version) => <Read readingId={reading.id} document={found} machine={version.document} />}
+        </Loaded>
+      )}
+    </Loaded>
+  );
+}
+
+function Read({ readingId, document, machine }: { readingId: string; document: ReadingDocument; machine: Machine }) {
+  const [pinned, pin] = usePinnedLayer();
+  const [linesShown, showLines] = useState(false);
+  const { layers, findings, totals } = document;
+  const tracks = useMemo(() => readingTracks(layers, machine.channels), [layers, machine]);
+  const marks = useMemo(() => findingMarks(findings, layers), [findings, layers]);
+  const layer = layers.find(({ index }) => index === pinned);
+  const top = layers.at(-1);
+  return (
+    <>
+      <Facts
+        facts={[
+          { label: "Layers", value: totals.layers },
+          { label: "Height", value: top ? fixedText(Math.max(...layers.map(({ zMm }) => zMm)), 2) : "–", unit: "mm" },
+          { label: "Print time, without waits", value: duration(totals.printTimeS) },
+          { label: "Deposited", value: fixedText(totals.depositedLengthMm / 1000, 2), unit: "m" },
+          { label: "Travel", value: fixedText(totals.travelLengthMm / 1000, 2), unit: "m" },
+          { label: "Filament", value: fixedText(totals.filamentMm / 1000, 3), unit: "m" },
+          { label: "Lines", value: document.file.lines },
+        ]}
+      />
+      <LogBeside
+        log={<LayerLog layers={layers} tracks={tracks} marks={marks} pinnedLayer={pinned ?? null} onPin={pin} />}
+        beside={<PlanInspector layer={layer} channels={machine.channels} />}
+      />
+      {layer && (
+        <Section
+          title="Lines"
+          note={`layer ${layer.index}, ${counted(layer.lastLine - layer.firstLine + 1, "line")}`}
+          actions={
+            <Button weight="quiet" aria-expanded={linesShown} onClick={() => showLines(!linesShown)}>
+              {linesShown ? "Put away" : "Show"}
+            </Button>
+          }
+        >
+          {linesShown ? (
+            <LayerLines readingId={readingId} layer={layer.index} />
+          ) : (
+            <p className="text-soft">
+              From line <span className="font-mono">{layer.firstLine}</span> to line{" "}
+              <span className="font-mono">{layer.lastLine}</span> of the file.
+            </p>
+          )}
+        </Section>
+      )}
+      <Section title="Findings" note="what looks odd in the file">
+        <Findings findings={findings} onPin={pin} />
+      </Section>
+      <Section title="Waits">
+        <Waits layers={layers} />
+      </Section>
+    </>
+  );
+}

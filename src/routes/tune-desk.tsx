@@ -1,0 +1,182 @@
+import { useQuery } from "@tanstack/react-query";
+import { useMemo, useState } from "react";
+import type { Reading } from "#shared/contract/toolpaths.ts";
+import type { Machine } from "#shared/formats/machine.ts";
+import type { Polymer } from "#shared/formats/polymer.ts";
+import type { Profile } from "#shared/formats/profile.ts";
+import type { ReadingDocument } from "#shared/formats/reading.ts";
+import { useMay } from "#src/features/auth/session-context.tsx";
+import { historyQuery, MACHINES, PROFILES, type Version, versionQuery } from "#src/features/documents/kinds.ts";
+import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
+import { adviceMarks, findingMarks } from "#src/features/layer-log/log-marks.ts";
+import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
+import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
+import { undoKeys } from "#src/features/profiles/editor/profile-editor.tsx";
+import { ProfileForm } from "#src/features/profiles/editor/profile-form.tsx";
+import { useLivePlan } from "#src/features/profiles/editor/use-live-plan.ts";
+import { useProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
+import { ZoneBands } from "#src/features/profiles/editor/zone-bands.tsx";
+import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
+import { AdviceList } from "#src/features/tunings/advice-list.tsx";
+import { moment } from "#src/lib/format.ts";
+import { asProblem } from "#src/lib/problem.ts";
+import { useDraft } from "#src/lib/use-draft.ts";
+import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
+import { LogBeside } from "#src/routes/log-beside.tsx";
+import { usePolymerOf } from "#src/routes/use-polymers.ts";
+import { WriteTuned } from "#src/routes/write-tuned.tsx";
+import { Button } from "#src/ui/button.tsx";
+import { Notice, ProblemNotice } from "#src/ui/notice.tsx";
+import { Section } from "#src/ui/section.tsx";
+import { Loaded } from "#src/ui/states.tsx";
+
+interface Props {
+  reading: Reading;
+  profile: { id: string; version: number };
+}
+
+/** The reading, the machine and the profile version that were chosen, once all are here. */
+export function TuneDesk({ reading, profile: { id, version } }: Props) {
+  const document = useQuery(readingDocumentQuery(reading.id));
+  const machine = useQuery(versionQuery(MACHINES, reading.machineId, reading.machineVersion));
+  const profile = useQuery(versionQuery(PROFILES, id, version));
+  const history = useQuery(historyQuery(PROFILES, id));
+  return (
+    <Loaded query={document} what="Fetching layers">
+      {(read) => (
+        <Loaded query={machine} what="Fetching the machine">
+          {({ document: machineDocument }) => (
+            <Loaded query={profile} what="Fetching the profile">
+              {(chosen) => (
+                <Loaded query={history} what="Looking for the profile's versions">
+                  {({ versions }) => (
+                    <Desk
+                      reading={reading}
+                      document={read}
+                      machine={machineDocument}
+                      chosen={chosen}
+                      latest={versions[0].number}
+                    />
+                  )}
+                </Loaded>
+              )}
+            </Loaded>
+          )}
+        </Loaded>
+      )}
+    </Loaded>
+  );
+}
+
+interface DeskProps {
+  reading: Reading;
+  document: ReadingDocument;
+  machine: Machine;
+  chosen: Version<Profile>;
+  /** number of the profile's latest version: a changed draft is saved on top of it */
+  latest: number;
+}
+
+const BANDS_PX = 132;
+
+function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
+  const mayEdit = useMay()("edit");
+  const [begunFrom] = useState(latest);
+  const base = useMemo(() => ({ number: begunFrom, document: chosen.document }), [begunFrom, chosen]);
+  const draft = useDraft(`tune.${chosen.id}.${chosen.number}`, base);
+  const profile = mayEdit ? draft.document : chosen.document;
+  const { polymer, names } = usePolymerOf(profile.polymer);
+  const desk = useDesk(document, machine, profile, polymer, draft.change);
+  const { layers, findings, plan, editing, layer, pinned, pin, rugs, at } = desk;
+  const [selected, setSelected] = useState(0);
+  const tracks = useMemo(() => readingTracks(layers, machine.channels, plan), [layers, machine, plan]);
+  const marks = useMemo(
+    () => [...findingMarks(findings, layers), ...adviceMarks(plan?.advice ?? [])],
+    [findings, layers, plan],
+  );
+  return (
+    // biome-ignore lint/a11y/noStaticElementInteractions: the fields within it have the focus; this only hears undo
+    <div onKeyDown={mayEdit ? (event) => undoKeys(event, editing) : undefined}>
+      {draft.changed && draft.resumedFrom && (
+        <Notice kind="note" actions={<Button onClick={draft.discard}>Discard them</Button>}>
+          The profile has your changes from {moment(draft.resumedFrom)}, not saved yet.
+        </Notice>
+      )}
+      <LogBeside
+        log={
+          <LayerLog
+            layers={layers}
+            tracks={tracks}
+            marks={marks}
+            zones={profile.zones}
+            pinnedLayer={pinned ?? null}
+            onPin={pin}
+            aside={
+              mayEdit
+                ? {
+                    title: "Zones",
+                    widthPx: BANDS_PX,
+                    render: (axis) => (
+                      <ZoneBands editing={editing} axis={axis} selected={selected} onSelect={setSelected} />
+                    ),
+                  }
+                : undefined
+            }
+          />
+        }
+        beside={<PlanInspector layer={layer} channels={machine.channels} plan={plan} />}
+      />
+      {desk.problem && <ProblemNotice problem={{ ...asProblem(desk.problem), title: "This can't be planned yet" }} />}
+      <WriteTuned
+        readingId={reading.id}
+        profile={chosen}
+        draft={draft}
+        checked={editing.checked}
+        ready={plan !== undefined && desk.problem === undefined}
+      />
+      {mayEdit && (
+        <Section title="Profile" note={draft.changed ? "changed, not saved yet" : `as in version ${chosen.number}`}>
+          <ProfileForm
+            editing={editing}
+            selected={selected}
+            onSelect={setSelected}
+            polymers={names}
+            rugs={rugs}
+            at={at}
+          />
+        </Section>
+      )}
+      <Section title="Advice" note="what fan and heater can't put right">
+        <AdviceList advice={plan?.advice ?? []} onPin={pin} />
+      </Section>
+    </div>
+  );
+}
+
+/** The draft on the table, the plan it gives, and the pinned layer. */
+function useDesk(
+  { layers, findings }: ReadingDocument,
+  machine: Machine,
+  profile: Profile,
+  polymer: Polymer | undefined,
+  onChange: (profile: Profile) => void,
+) {
+  const [pinned, pin] = usePinnedLayer();
+  const part = useMemo(() => ({ layerTopsMm: firstObject(layers).map(({ zMm }) => zMm) }), [layers]);
+  const editing = useProfileEditing({ profile, onChange, machine, polymer, part });
+  const { plan, refusal } = useLivePlan(layers, machine, editing.checked);
+  const layer = layers.find(({ index }) => index === pinned);
+  const rugs = useMemo(
+    () => ({
+      "layer-time": layers.map(({ timeS }) => timeS),
+      "deposited-length": layers.map(({ depositedLengthMm }) => depositedLengthMm),
+      height: layers.map(({ zMm }) => zMm),
+    }),
+    [layers],
+  );
+  const at = layer && { "layer-time": layer.timeS, "deposited-length": layer.depositedLengthMm, height: layer.zMm };
+  return { layers, findings, plan, problem: refusal, editing, layer, pinned, pin, rugs, at };
+}
+
+/** Zones are laid over one object; those printed after it get the same ones. */
+const firstObject = (layers: ReadingDocument["layers"]) => layers.filter(({ object }) => object === layers[0].object);

@@ -1,0 +1,101 @@
+import { useMutation, useQueryClient } from "@tanstack/react-query";
+import { useState } from "react";
+import { useNavigate } from "react-router-dom";
+import type { Profile } from "#shared/formats/profile.ts";
+import { paths } from "#src/app/paths.ts";
+import { ConflictNotice } from "#src/features/documents/conflict-notice.tsx";
+import { PROFILES, type Version } from "#src/features/documents/kinds.ts";
+import { SaveDialog } from "#src/features/documents/save-dialog.tsx";
+import { writeTuning } from "#src/features/tunings/queries.ts";
+import { asProblem, isProblem } from "#src/lib/problem.ts";
+import type { Draft } from "#src/lib/use-draft.ts";
+import { Button } from "#src/ui/button.tsx";
+import { ProblemNotice } from "#src/ui/notice.tsx";
+
+interface Props {
+  readingId: string;
+  /** the version that was chosen */
+  profile: Version<Profile>;
+  /** what has become of it here */
+  draft: Draft<Profile>;
+  /** the draft once it has no problem */
+  checked: Profile | undefined;
+  /** a plan could be made */
+  ready: boolean;
+}
+
+/** Writes the tuned file. A profile that was changed here becomes a version first: a file is never made from less. */
+export function WriteTuned({ readingId, profile, draft, checked, ready }: Props) {
+  const client = useQueryClient();
+  const navigate = useNavigate();
+  const [asking, setAsking] = useState(false);
+  const write = useMutation({
+    mutationFn: async (note: string | undefined) => {
+      let { number } = profile;
+      if (draft.changed) {
+        if (!checked) throw new Error("The profile is not complete.");
+        ({ number } = await PROFILES.createVersion(profile.id, draft.basedOn, checked, note));
+        draft.discard();
+        client.invalidateQueries({ queryKey: [PROFILES.plural] });
+      }
+      return writeTuning(readingId, profile.id, number);
+    },
+    onSuccess: ({ id }) => {
+      client.invalidateQueries({ queryKey: ["tunings"] });
+      navigate(paths.tuning(id));
+    },
+  });
+  const conflict = isProblem(write.error, "version-conflict");
+  const fault = write.error && !conflict && <ProblemNotice problem={asProblem(write.error)} />;
+  return (
+    <div className="sticky bottom-0 z-10 flex flex-col gap-3 border-t border-ink bg-paper py-3">
+      {conflict && (
+        <ConflictNotice
+          kind={PROFILES}
+          id={profile.id}
+          draft={draft.document}
+          basedOn={draft.basedOn}
+          onRebase={(latest) => {
+            draft.rebase(latest);
+            write.reset();
+          }}
+        />
+      )}
+      {!asking && fault}
+      <div className="flex flex-wrap items-center gap-3">
+        <Button
+          weight="main"
+          disabled={!ready || write.isPending}
+          onClick={() => (draft.changed ? setAsking(true) : write.mutate(undefined))}
+        >
+          {write.isPending ? "Handing it over …" : "Write tuned file"}
+        </Button>
+        {draft.changed && <Button onClick={draft.discard}>Discard changes</Button>}
+        <p className="text-small text-soft">
+          {draft.changed
+            ? `Changed from version ${profile.number}: it is saved as version ${draft.basedOn + 1} first, and the file is for trials until that is approved.`
+            : profile.approvedAt
+              ? "With an approved version."
+              : "This version is not approved: the file is for trials only."}
+        </p>
+      </div>
+      {asking && !conflict && (
+        <SaveDialog
+          title="Save the changed profile, then write"
+          action="Write tuned file"
+          pending={write.isPending}
+          fault={fault}
+          onSave={(note) => write.mutate(note)}
+          onClose={() => {
+            setAsking(false);
+            write.reset();
+          }}
+        >
+          <p>
+            <span className="font-semibold">{draft.document.name}</span> becomes version {draft.basedOn + 1}.
+          </p>
+        </SaveDialog>
+      )}
+    </div>
+  );
+}

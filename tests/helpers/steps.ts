@@ -1,0 +1,102 @@
+import fc from "fast-check";
+import type { Step } from "#tests/helpers/planning.ts";
+
+/** Random paths of the kinds that toolpaths are made of, for the laws of planning. */
+
+const turned = (angle: number, length: number, more: Partial<Step>): Step => ({
+  dx: length * Math.cos(angle),
+  dy: length * Math.sin(angle),
+  dz: 0,
+  de: 0,
+  speedMmS: 50,
+  ...more,
+});
+
+const speedMmS = fc.constantFrom(5, 20, 60, 150, 400);
+const angle = fc.integer({ min: 0, max: 359 }).map((degrees) => (degrees * Math.PI) / 180);
+const length = fc.constantFrom(0.01, 0.05, 0.2, 0.7, 2, 9, 40);
+const perMm = fc.constantFrom(0, 0, 0.04, 0.04, 0.08);
+
+const line = fc
+  .record({ angle, length, speedMmS, perMm, count: fc.nat(12) })
+  .map((of): Step[] =>
+    Array.from({ length: of.count + 1 }, () =>
+      turned(of.angle, of.length, { speedMmS: of.speedMmS, de: of.perMm * of.length }),
+    ),
+  );
+
+const zigzag = fc
+  .record({ angle, length, pitch: fc.constantFrom(0.4, 1), speedMmS, perMm, count: fc.nat(40) })
+  .map((of): Step[] =>
+    Array.from({ length: of.count + 1 }, (_, k) =>
+      k % 2 === 0
+        ? turned(of.angle + (k % 4 === 0 ? 0 : Math.PI), of.length, { speedMmS: of.speedMmS, de: of.perMm * of.length })
+        : turned(of.angle + Math.PI / 2, of.pitch, { speedMmS: of.speedMmS, de: of.perMm * of.pitch }),
+    ),
+  );
+
+const circle = fc
+  .record({ angle, chord: fc.constantFrom(0.05, 0.3, 1.5), turn: fc.constantFrom(0.02, 0.1, -0.3, 0.9), speedMmS, perMm, count: fc.nat(120) })
+  .map((of): Step[] =>
+    Array.from({ length: of.count + 1 }, (_, k) =>
+      turned(of.angle + k * of.turn, of.chord, { speedMmS: of.speedMmS, de: of.perMm * of.chord }),
+    ),
+  );
+
+const retraction = fc
+  .record({ angle, length, mm: fc.constantFrom(0.8, 4), speedMmS })
+  .map((of): Step[] => [
+    { dx: 0, dy: 0, dz: 0, de: -of.mm, speedMmS: 35 },
+    turned(of.angle, of.length, { speedMmS: of.speedMmS }),
+    { dx: 0, dy: 0, dz: 0, de: of.mm, speedMmS: 35 },
+  ]);
+
+const hop = fc
+  .record({ angle, length, dz: fc.constantFrom(0.2, -0.2, 3), speedMmS })
+  .map((of): Step[] => [
+    { dx: 0, dy: 0, dz: of.dz, de: 0, speedMmS: 10 },
+    turned(of.angle, of.length, { speedMmS: of.speedMmS, dz: -of.dz }),
+  ]);
+
+const wipe = fc
+  .record({ angle, speedMmS })
+  .map((of): Step[] => [turned(of.angle, 1.5, { speedMmS: of.speedMmS, de: -0.6 })]);
+
+/** A path of up to a few thousand moves. */
+export const path = (most: number): fc.Arbitrary<Step[]> =>
+  fc
+    .array(fc.oneof(line, zigzag, circle, retraction, hop, wipe), { minLength: 1, maxLength: most })
+    .map((pieces) => pieces.flat());
+
+/** Moves of 4 to 30 mm with clear corners, and one of them to be cut at a share of its length. */
+export const cuttable = fc
+  .array(
+    fc.record({
+      degrees: fc.integer({ min: -11, max: 11 }).map((n) => n * 15),
+      length: fc.integer({ min: 4, max: 30 }),
+      speedMmS,
+      lays: fc.boolean(),
+    }),
+    { minLength: 1, maxLength: 40 },
+  )
+  .chain((turns) => {
+    let heading = 0;
+    const steps = turns.map(({ degrees, length: mm, speedMmS: speed, lays }) => {
+      heading += (degrees * Math.PI) / 180;
+      return turned(heading, mm, { speedMmS: speed, de: lays ? 0.04 * mm : 0 });
+    });
+    return fc.record({
+      steps: fc.constant(steps),
+      at: fc.nat(steps.length - 1),
+      share: fc.double({ min: 0.25, max: 0.75, noNaN: true }),
+    });
+  });
+
+/** The path with one of its moves cut in two. */
+export function cutOne(steps: readonly Step[], at: number, share: number): Step[] {
+  const part = (of: number): Step => {
+    const { dx, dy, dz, de, speedMmS: speed } = steps[at];
+    return { dx: dx * of, dy: dy * of, dz: dz * of, de: de * of, speedMmS: speed };
+  };
+  return [...steps.slice(0, at), part(share), part(1 - share), ...steps.slice(at + 1)];
+}
