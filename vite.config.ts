@@ -11,7 +11,8 @@ export default defineConfig({
     // The diff's editor is one lazy chunk of its own and known to be large.
     chunkSizeWarningLimit: 4_000,
   },
-  server: { proxy: { "/api": "http://localhost:8080" } },
+  // The same variable that the server reads.
+  server: { proxy: { "/api": `http://127.0.0.1:${process.env.PORT ?? 8080}` } },
   test: {
     projects: [
       {

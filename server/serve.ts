@@ -30,20 +30,25 @@ export async function serve(
 ): Promise<RunningServer> {
   const closing = new AbortController();
   const database = await openDatabase(env.DATA_DIR);
+  let parts: Parts | undefined;
+  const closeParts = async () => {
+    closing.abort();
+    await parts?.workshop.close();
+    await database.close();
+  };
   try {
-    const parts = await makeParts({ env, log, db: database.db, closing: closing.signal });
+    parts = await makeParts({ env, log, db: database.db, closing: closing.signal });
     await parts.workshop.start();
     await prepare(parts);
     const server = await listen(createServer(buildApp(parts)), env);
     const close = async () => {
       closing.abort();
       await stop(server);
-      await parts.workshop.close();
-      await database.close();
+      await closeParts();
     };
     return { url: urlOf(server, env), parts, close };
   } catch (error) {
-    await database.close();
+    await closeParts();
     throw error;
   }
 }

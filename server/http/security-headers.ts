@@ -15,6 +15,7 @@ export function securityHeaders(): RequestHandler {
         frameAncestors: ["'none'"],
       },
     },
+    xFrameOptions: { action: "deny" },
     // The server is often reached by plain HTTP inside a workshop's network; a proxy that adds TLS adds this too.
     strictTransportSecurity: false,
   });

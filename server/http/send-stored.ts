@@ -78,6 +78,9 @@ function matches(header: string | undefined, etag: string): boolean {
 /** RFC 6266: a plain name for old programs, and the real one. */
 function attachment(fileName: string): string {
   const plain = fileName.replace(/[^\x20-\x7e]|["\\%]/g, "_");
-  const encoded = encodeURIComponent(fileName).replace(/['()*!]/g, (c) => `%${c.charCodeAt(0).toString(16).toUpperCase()}`);
+  const encoded = encodeURIComponent(fileName).replace(
+    /['()*!]/g,
+    (c) => `%${c.charCodeAt(0).toString(16).toUpperCase()}`,
+  );
   return `attachment; filename="${plain}"; filename*=UTF-8''${encoded}`;
 }

@@ -66,7 +66,9 @@ class StagingEngine implements StorageEngine {
     done: (error?: unknown, info?: Partial<Express.Multer.File>) => void,
   ): void {
     const { storage, machine, maxBytes } = this.options;
-    const bytes = toolpathStream(file.stream as Readable, file.originalname, machine, maxBytes);
+    // A refusal leaves the rest of the stream unread; destroying it would look like a connection that broke off.
+    const source = (file.stream as Readable).iterator({ destroyOnReturn: false });
+    const bytes = toolpathStream(source, file.originalname, machine, maxBytes);
     storage.stage(bytes, `upload-${crypto.randomUUID()}`).then(
       (staged) => {
         this.staged.set(staged.name, staged);

@@ -92,28 +92,31 @@ export class Timeline {
     }
   }
 
-  /** Lets the moves [from, to) of the settled batch pass; no event stands between them. */
+  /**
+   * Lets the moves [from, to) of the settled batch pass; no event stands between them. Sums go on move by move, so that
+   * they are the same to the last bit wherever the moves are cut.
+   */
   private pass(from: number, to: number): void {
     const { timeS, lengthMm, kind } = this.planner;
     let clock = this.clockS;
     let lastLaid = this.lastLaidS;
-    let laidS = 0;
-    let laidMm = 0;
-    let travelledMm = 0;
+    let laidS = this.laidS;
+    let runMm = this.runMm;
+    let travelledMm = this.travelledMm;
     for (let i = from; i < to; i++) {
       const t = timeS[i];
       clock += t;
       if (kind[i] === LAYS) {
         laidS += t;
-        laidMm += lengthMm[i];
+        runMm += lengthMm[i];
         lastLaid = clock;
       } else if (kind[i] === TRAVELS) travelledMm += lengthMm[i];
     }
     this.clockS = clock;
     this.lastLaidS = lastLaid;
-    this.laidS += laidS;
-    this.runMm += laidMm;
-    this.travelledMm += travelledMm;
+    this.laidS = laidS;
+    this.runMm = runMm;
+    this.travelledMm = travelledMm;
   }
 
   /** Handles what is left once every move is settled, and closes the last layer at its last laying move. */

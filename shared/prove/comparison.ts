@@ -14,6 +14,8 @@ export interface Comparison {
   /** lines of ours, outputs and pauses of the tuned file, in its order */
   entries: Entry[];
   removals: Removal[];
+  /** bytes of the original at which runs of lines taken out begin, and at which the line behind each stands */
+  gaps: { from: number[]; to: number[] };
   numbering: { followed: number; wrong?: { tunedLine: number; message: string } };
   /** the first line that the reading and this reader take for different things */
   disagreement?: Difference;

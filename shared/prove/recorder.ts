@@ -29,6 +29,7 @@ export class Recorder {
     inserted: 0,
     entries: [],
     removals: [],
+    gaps: { from: [], to: [] },
     numbering: { followed: 0 },
     agreed: 0,
   };
@@ -196,8 +197,12 @@ export class Recorder {
 
   private closeGap(offset: number): void {
     if (this.gapFrom < 0) return;
+    const { entries, gaps } = this.found;
+    if (offset > this.gapFrom) {
+      gaps.from.push(this.gapFrom);
+      gaps.to.push(offset);
+    }
     this.gapFrom = -1;
-    const { entries } = this.found;
     for (let k = this.gapEntries; k < entries.length; k++) entries[k].to = offset;
   }
 }

@@ -44,7 +44,7 @@ function put(targets: Target[], target: Target): void {
   targets.push(target);
 }
 
-function aroundPauses(targets: readonly Target[], { reading, machine }: TargetInput): Target[] {
+function aroundPauses(targets: readonly Target[], { reading, machine, instants }: TargetInput): Target[] {
   const forms = pauseForms(machine);
   const { layers, window } = reading;
   let left = [...targets];
@@ -53,7 +53,7 @@ function aroundPauses(targets: readonly Target[], { reading, machine }: TargetIn
     if (offset < window.start.offset || offset >= window.end.offset) continue;
     const blocks = forms.get(command.toUpperCase()) === "blocking";
     const nextLayer = layers.find(({ writeAt }) => writeAt.offset > offset)?.writeAt ?? window.end;
-    idleUntil = Math.max(idleUntil, blocks ? offset + length : nextLayer.offset);
+    idleUntil = Math.max(idleUntil, instants.place(blocks ? offset + length : nextLayer.offset));
     const later = left.filter((target) => target.offset > idleUntil);
     const wanted = left[left.length - later.length - 1];
     left = left.filter((target) => target.offset < offset);

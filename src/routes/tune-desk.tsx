@@ -11,24 +11,25 @@ import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
 import { adviceMarks, findingMarks } from "#src/features/layer-log/log-marks.ts";
 import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
 import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
-import { undoKeys } from "#src/features/profiles/editor/profile-editor.tsx";
 import { ProfileForm } from "#src/features/profiles/editor/profile-form.tsx";
 import { useLivePlan } from "#src/features/profiles/editor/use-live-plan.ts";
 import { useProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { ZoneBands } from "#src/features/profiles/editor/zone-bands.tsx";
+import { ProfileSheet } from "#src/features/profiles/profile-sheet.tsx";
 import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
 import { AdviceList } from "#src/features/tunings/advice-list.tsx";
 import { moment } from "#src/lib/format.ts";
 import { asProblem } from "#src/lib/problem.ts";
+import { undoKeys } from "#src/lib/undo-keys.ts";
 import { useDraft } from "#src/lib/use-draft.ts";
 import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
-import { LogBeside } from "#src/routes/log-beside.tsx";
+import { useWindowHeight } from "#src/lib/use-window-height.ts";
 import { usePolymerOf } from "#src/routes/use-polymers.ts";
 import { WriteTuned } from "#src/routes/write-tuned.tsx";
 import { Button } from "#src/ui/button.tsx";
 import { Notice, ProblemNotice } from "#src/ui/notice.tsx";
-import { Section } from "#src/ui/section.tsx";
 import { Loaded } from "#src/ui/states.tsx";
+import { Tabs } from "#src/ui/tabs.tsx";
 
 interface Props {
   reading: Reading;
@@ -79,6 +80,9 @@ interface DeskProps {
 
 const BANDS_PX = 132;
 
+/** What stands beside the log. */
+type Beside = "profile" | "layer" | "advice";
+
 function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   const mayEdit = useMay()("edit");
   const [begunFrom] = useState(latest);
@@ -89,68 +93,91 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   const desk = useDesk(document, machine, profile, polymer, draft.change);
   const { layers, findings, plan, editing, layer, pinned, pin, rugs, at } = desk;
   const [selected, setSelected] = useState(0);
+  const [beside, showBeside] = useState<Beside>("profile");
   const tracks = useMemo(() => readingTracks(layers, machine.channels, plan), [layers, machine, plan]);
   const marks = useMemo(
     () => [...findingMarks(findings, layers), ...adviceMarks(plan?.advice ?? [])],
     [findings, layers, plan],
   );
+  const heightPx = useDeskHeight();
+  const log = (
+    <LayerLog
+      layers={layers}
+      tracks={tracks}
+      marks={marks}
+      zones={profile.zones}
+      pinnedLayer={pinned ?? null}
+      onPin={pin}
+      heightPx={heightPx}
+      aside={
+        mayEdit
+          ? {
+              title: "Zones",
+              widthPx: BANDS_PX,
+              render: (axis) => <ZoneBands editing={editing} axis={axis} selected={selected} onSelect={setSelected} />,
+            }
+          : undefined
+      }
+    />
+  );
+  const form = mayEdit ? (
+    <ProfileForm editing={editing} selected={selected} onSelect={setSelected} polymers={names} rugs={rugs} at={at} />
+  ) : (
+    <ProfileSheet profile={profile} />
+  );
   return (
     // biome-ignore lint/a11y/noStaticElementInteractions: the fields within it have the focus; this only hears undo
-    <div onKeyDown={mayEdit ? (event) => undoKeys(event, editing) : undefined}>
-      {draft.changed && draft.resumedFrom && (
-        <Notice kind="note" actions={<Button onClick={draft.discard}>Discard them</Button>}>
-          The profile has your changes from {moment(draft.resumedFrom)}, not saved yet.
-        </Notice>
-      )}
-      <LogBeside
-        log={
-          <LayerLog
-            layers={layers}
-            tracks={tracks}
-            marks={marks}
-            zones={profile.zones}
-            pinnedLayer={pinned ?? null}
-            onPin={pin}
-            aside={
-              mayEdit
-                ? {
-                    title: "Zones",
-                    widthPx: BANDS_PX,
-                    render: (axis) => (
-                      <ZoneBands editing={editing} axis={axis} selected={selected} onSelect={setSelected} />
-                    ),
-                  }
-                : undefined
-            }
-          />
-        }
-        beside={<PlanInspector layer={layer} channels={machine.channels} plan={plan} />}
-      />
-      {desk.problem && <ProblemNotice problem={{ ...asProblem(desk.problem), title: "This can't be planned yet" }} />}
-      <WriteTuned
-        readingId={reading.id}
-        profile={chosen}
-        draft={draft}
-        checked={editing.checked}
-        ready={plan !== undefined && desk.problem === undefined}
-      />
-      {mayEdit && (
-        <Section title="Profile" note={draft.changed ? "changed, not saved yet" : `as in version ${chosen.number}`}>
-          <ProfileForm
-            editing={editing}
-            selected={selected}
-            onSelect={setSelected}
-            polymers={names}
-            rugs={rugs}
-            at={at}
-          />
-        </Section>
-      )}
-      <Section title="Advice" note="what fan and heater can't put right">
-        <AdviceList advice={plan?.advice ?? []} onPin={pin} />
-      </Section>
+    <div
+      className="grid gap-x-8 gap-y-6 border-t border-rule pt-5 xl:grid-cols-[minmax(0,1fr)_33rem]"
+      onKeyDown={mayEdit ? (event) => undoKeys(event, editing) : undefined}
+    >
+      <div className="min-w-0 self-start xl:sticky xl:top-0">
+        <div className="border border-rule">{log}</div>
+        {desk.problem && <ProblemNotice problem={{ ...asProblem(desk.problem), title: "This can't be planned yet" }} />}
+        <WriteTuned
+          readingId={reading.id}
+          profile={chosen}
+          draft={draft}
+          checked={editing.checked}
+          ready={plan !== undefined && desk.problem === undefined && editing.checked !== undefined}
+        />
+      </div>
+      <div className="min-w-0">
+        {draft.changed && draft.resumedFrom && (
+          <div className="pb-4">
+            <Notice kind="note" actions={<Button onClick={draft.discard}>Discard them</Button>}>
+              The profile has your changes from {moment(draft.resumedFrom)}, not saved yet.
+            </Notice>
+          </div>
+        )}
+        <Tabs<Beside>
+          label="Beside the log"
+          shown={beside}
+          onShow={showBeside}
+          tabs={[
+            { id: "profile", name: "Profile", panel: form },
+            {
+              id: "layer",
+              name: layer ? `Layer ${layer.index}` : "Layer",
+              panel: <PlanInspector layer={layer} channels={machine.channels} plan={plan} />,
+            },
+            {
+              id: "advice",
+              name: plan && plan.advice.length > 0 ? `Advice, ${plan.advice.length}` : "Advice",
+              panel: <AdviceList advice={plan?.advice ?? []} onPin={pin} />,
+            },
+          ]}
+        />
+      </div>
     </div>
   );
+}
+
+/** Head, foot and the bar with the button stand in sight together with the plot. */
+const AROUND_PLOT_PX = 300;
+
+function useDeskHeight(): number {
+  return Math.min(Math.max(useWindowHeight() - AROUND_PLOT_PX, 340), 760);
 }
 
 /** The draft on the table, the plan it gives, and the pinned layer. */

@@ -48,7 +48,7 @@ export function WriteTuned({ readingId, profile, draft, checked, ready }: Props)
   const conflict = isProblem(write.error, "version-conflict");
   const fault = write.error && !conflict && <ProblemNotice problem={asProblem(write.error)} />;
   return (
-    <div className="sticky bottom-0 z-10 flex flex-col gap-3 border-t border-ink bg-paper py-3">
+    <div className="flex flex-col gap-3 py-3">
       {conflict && (
         <ConflictNotice
           kind={PROFILES}

@@ -21,6 +21,8 @@ export interface Planned {
   timeS: number[];
   lengthMm: number[];
   totalS: number;
+  /** times that some of the moves were settled */
+  batches: number;
   forcedStops: number;
 }
 
@@ -31,7 +33,9 @@ const kindOf = ({ dx, dy, dz, de }: Step): number =>
 export function plan(steps: Iterable<Step>, { motion }: Machine): Planned {
   const timeS: number[] = [];
   const lengthMm: number[] = [];
+  let batches = 0;
   const planner = new Planner(motion, (count) => {
+    batches++;
     for (let i = 0; i < count; i++) {
       timeS.push(planner.timeS[i]);
       lengthMm.push(planner.lengthMm[i]);
@@ -47,14 +51,16 @@ export function plan(steps: Iterable<Step>, { motion }: Machine): Planned {
     planner.add(row, kindOf(step));
   }
   planner.stop();
-  return { timeS, lengthMm, totalS: sum(timeS), forcedStops: planner.forcedStops };
+  return { timeS, lengthMm, totalS: sum(timeS), batches, forcedStops: planner.forcedStops };
 }
 
 /** Runs a program through interpreter and planner; its dwells are stops. */
 export function planProgram(lines: readonly string[], machine: Machine): Planned {
   const times: number[] = [];
   const lengths: number[] = [];
+  let batches = 0;
   const planner = new Planner(machine.motion, (count) => {
+    batches++;
     times.push(...planner.timeS.subarray(0, count));
     lengths.push(...planner.lengthMm.subarray(0, count));
   });
@@ -73,7 +79,7 @@ export function planProgram(lines: readonly string[], machine: Machine): Planned
     interpreter.run(scan);
   }
   planner.stop();
-  return { timeS: times, lengthMm: lengths, totalS: sum(times), forcedStops: planner.forcedStops };
+  return { timeS: times, lengthMm: lengths, totalS: sum(times), batches, forcedStops: planner.forcedStops };
 }
 
 export const sum = (numbers: readonly number[]): number => numbers.reduce((total, number) => total + number, 0);

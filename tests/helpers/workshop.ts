@@ -21,8 +21,12 @@ export const sampleJson = (path: string): unknown => JSON.parse(readFileSync(sam
 const ENDED = ["done", "refused", "failed", "cancelled"];
 
 /** Asks again and again until it is so. */
-export async function eventually<Value>(look: () => Promise<Value>, isSo: (value: Value) => boolean): Promise<Value> {
-  const until = Date.now() + 30_000;
+export async function eventually<Value>(
+  look: () => Promise<Value>,
+  isSo: (value: Value) => boolean,
+  withinMs = 45_000,
+): Promise<Value> {
+  const until = Date.now() + withinMs;
   for (;;) {
     const value = await look();
     if (isSo(value)) return value;

@@ -1,6 +1,7 @@
 import type { Channel } from "#shared/formats/machine.ts";
 import type { Profile } from "#shared/formats/profile.ts";
 import type { Check } from "#shared/formats/proof.ts";
+import type { DutyLimits } from "#shared/plan/limits.ts";
 import type { Plan } from "#shared/plan/plan.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
@@ -20,11 +21,11 @@ const BOOST_SLACK_S = 5;
 export function checkPlan(evidence: Evidence, profile: Profile, plan: Plan | string): Check {
   if (typeof plan === "string") return verdict("plan", plan, "");
   const { reading, machine } = evidence;
-  const instants = new Instants(reading);
+  const instants = new Instants(reading, evidence.comparison.gaps);
   for (const { channel, index } of evidence.channels()) {
     const targets = targetsOf(channel, { reading, machine, profile, plan, instants });
     const planned = evidence.events[index].filter(({ source }) => source === "plan");
-    const events = changes(withoutBoosts(planned, channel, evidence.limits(channel).maxDuty, targets));
+    const events = changes(withoutBoosts(planned, channel, evidence.limits(channel), targets));
     const initial = evidence.dutyBefore(index);
     const problem = new Course(evidence, channel, initial, events, targets, instants).problem();
     if (problem !== undefined) return verdict("plan", problem, "");
@@ -124,10 +125,11 @@ class Course {
 function withoutBoosts(
   events: readonly DutyEvent[],
   { kind, startBoostS, drive }: Channel,
-  maxDuty: number,
+  { maxDuty, maxDutyPerS }: DutyLimits,
   targets: readonly Target[],
 ): readonly DutyEvent[] {
   const step = 1 / dutySteps(drive);
+  // Without a largest change per second a layer may want that very duty.
   const isWanted = ({ entry: { from, to }, duty }: DutyEvent): boolean =>
     targets.some((target) => target.offset >= from && target.offset <= to && Math.abs(target.duty - duty) < step / 2);
   if (kind !== "fan" || startBoostS === 0) return events;
@@ -137,7 +139,9 @@ function withoutBoosts(
     if (k === 0 || events[k - 1].duty > 0 || !next || !(next.duty > 0)) return true;
     const lastsS = next.timeS - timeS;
     const isBoost = Math.abs(duty - maxDuty) < step && lastsS > startBoostS - 1e-3;
-    return !isBoost || lastsS > startBoostS + BOOST_SLACK_S || isWanted(event);
+    return (
+      !isBoost || lastsS > startBoostS + BOOST_SLACK_S || (maxDutyPerS === Number.POSITIVE_INFINITY && isWanted(event))
+    );
   });
 }
 

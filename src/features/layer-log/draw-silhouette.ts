@@ -2,18 +2,18 @@ import { fitting, hairline, LOG_FONT, label } from "#src/features/layer-log/draw
 import { strokes } from "#src/features/layer-log/draw-track.ts";
 import { yOf } from "#src/features/layer-log/height-view.ts";
 import { type LogPicture, SCALE_STRIP_PX } from "#src/features/layer-log/log-picture.ts";
-import { type Trace, traceSeries } from "#src/features/layer-log/trace.ts";
+import { shownPositions, traceRows, traceSteps } from "#src/features/layer-log/trace.ts";
 import { fixedText } from "#src/lib/number-text.ts";
 
 /** The part from the side, filled with the states it is meant to be in. */
 export function drawSilhouette(context: CanvasRenderingContext2D, picture: LogPicture): void {
-  const { layout, section, stack, view, palette, ratio } = picture;
+  const { layout, section, palette } = picture;
   const { x, width } = layout.silhouette;
   const inset = 8;
   const scale = (width - 2 * inset) / (section.toMm - section.fromMm);
   const xOf = (mm: number) => x + inset + (mm - section.fromMm) * scale;
-  const trace = (values: ArrayLike<number>) => traceSeries(values, stack, view, 1 / ratio);
-  const sides = [trace(section.left), trace(section.right)];
+  const trace = outlineTracer(picture);
+  const sides = [trace(section.left, "least"), trace(section.right, "most")];
   const walls = wallTraces(picture, trace);
 
   const body = new Path2D();
@@ -35,8 +35,25 @@ export function drawSilhouette(context: CanvasRenderingContext2D, picture: LogPi
   drawWidth(context, picture, xOf);
 }
 
+type Outline = (values: ArrayLike<number>, side: "least" | "most") => Float64Array;
+
+/** Pairs of coordinate and pixel row: a staircase, or one pair a row where layers are as thin as pixels. */
+function outlineTracer({ stack, view, ratio }: LogPicture): Outline {
+  const [first, last] = shownPositions(stack, view);
+  if (last - first + 1 <= view.bottomPx - view.topPx) return (values) => traceSteps(values, stack, view);
+  return (values, side) => {
+    const triples = traceRows(values, stack, view, 1 / ratio);
+    const pairs = new Float64Array((triples.length / 3) * 2);
+    for (let n = 0, m = 0; n < triples.length; n += 3) {
+      pairs[m++] = triples[n + (side === "least" ? 1 : 2)];
+      pairs[m++] = triples[n] + 0.5 / ratio;
+    }
+    return pairs;
+  };
+}
+
 /** The inner walls, a pair for every run of layers that are open in the middle. */
-function wallTraces({ section, stack }: LogPicture, trace: (values: ArrayLike<number>) => Trace): Trace[][] {
+function wallTraces({ section, stack }: LogPicture, trace: Outline): Float64Array[][] {
   if (!section.open.some((share) => share > 0)) return [];
   const wall = (side: -1 | 1) => {
     const values = new Float64Array(stack.count);
@@ -44,28 +61,33 @@ function wallTraces({ section, stack }: LogPicture, trace: (values: ArrayLike<nu
       const [left, right, open] = [section.left[i], section.right[i], section.open[i]];
       values[i] = open > 0 ? (left + right + side * open * (right - left)) / 2 : Number.NaN;
     }
-    return pieces(trace(values));
+    return pieces(trace(values, side < 0 ? "most" : "least"));
   };
   const [left, right] = [wall(-1), wall(1)];
   return left.map((piece, i) => [piece, right[i] ?? piece]);
 }
 
-function pieces(trace: Trace): Trace[] {
-  const found: Trace[] = [];
+/** A missing row or two is a gap; a staircase's own rises keep their value. */
+const JUMP_PX = 1.6;
+
+/** Runs without a gap: a missing value, or, where rows without one are left out, a jump in height. */
+function pieces(trace: Float64Array): Float64Array[] {
+  const found: Float64Array[] = [];
   let from = -1;
   for (let n = 0; n <= trace.length; n += 2) {
-    const gap = n === trace.length || Number.isNaN(trace[n]);
-    if (!gap && from < 0) from = n;
-    if (gap && from >= 0) {
+    const end = n === trace.length || Number.isNaN(trace[n]);
+    const jump = !end && from >= 0 && n > from && trace[n - 1] - trace[n + 1] > JUMP_PX && trace[n] !== trace[n - 2];
+    if (from >= 0 && (end || jump)) {
       found.push(trace.subarray(from, n));
       from = -1;
     }
+    if (!end && from < 0) from = n;
   }
   return found;
 }
 
 /** Up along one side and down along the other. */
-function ring(path: Path2D, [up, down]: readonly Trace[], xOf: (mm: number) => number): void {
+function ring(path: Path2D, [up, down]: readonly Float64Array[], xOf: (mm: number) => number): void {
   for (let n = 0; n < up.length; n += 2) {
     if (n === 0) path.moveTo(xOf(up[n]), up[n + 1]);
     else path.lineTo(xOf(up[n]), up[n + 1]);

@@ -2,7 +2,7 @@ import { hairline, LOG_FONT, label } from "#src/features/layer-log/draw-kit.ts";
 import type { Column } from "#src/features/layer-log/log-layout.ts";
 import { type LogPicture, SCALE_STRIP_PX } from "#src/features/layer-log/log-picture.ts";
 import type { Palette } from "#src/features/layer-log/palette.ts";
-import { type Trace, traceSeries } from "#src/features/layer-log/trace.ts";
+import { eachRun, traceSeries, traceSteps } from "#src/features/layer-log/trace.ts";
 import type { Tone, Track, TrackSeries } from "#src/features/layer-log/track.ts";
 import { marksOf, type Scale, shareOf } from "#src/lib/scale.ts";
 
@@ -81,16 +81,18 @@ function drawRange(
   xOf: (value: number) => number,
 ): void {
   if (!low || !high) return;
-  const [up, down] = [traceSeries(low, stack, view, 1 / ratio), traceSeries(high, stack, view, 1 / ratio)];
+  const [up, down] = [traceSteps(low, stack, view), traceSteps(high, stack, view)];
   context.beginPath();
-  for (let n = 0; n < up.length; n += 2) if (!Number.isNaN(up[n])) context.lineTo(xOf(up[n]), up[n + 1]);
-  for (let n = down.length - 2; n >= 0; n -= 2) if (!Number.isNaN(down[n])) context.lineTo(xOf(down[n]), down[n + 1]);
-  context.closePath();
+  // Most layers have one duty throughout: only those that change within are strips.
+  for (let n = 0; n < up.length; n += 4) {
+    if (!(down[n] > up[n])) continue;
+    context.rect(xOf(up[n]), up[n + 3], xOf(down[n]) - xOf(up[n]), up[n + 1] - up[n + 3]);
+  }
   const colour = toneColour(style.tone, palette);
   context.fillStyle = patterns.hatch(colour);
   context.fill();
   // A raise of one layer only is too low for a hatch to show.
-  context.globalAlpha = 0.6;
+  context.globalAlpha = 0.35;
   context.strokeStyle = colour;
   context.lineWidth = 1 / ratio;
   context.stroke();
@@ -108,51 +110,85 @@ function drawSeries(
   const trace = traceSeries(values, stack, view, 1 / ratio);
   const colour = toneColour(style.tone, palette);
   if (style.fill) {
-    context.beginPath();
-    outline(context, trace, xOf, column.x);
     context.globalAlpha = style.fill === "wash" ? 0.13 : 1;
     context.fillStyle = style.fill === "wash" ? colour : patterns.hatch(colour);
-    context.fill();
+    if (trace.kind === "rows") {
+      eachRun(trace, (y, height, least) => context.fillRect(column.x, y, xOf(least) - column.x, height));
+    } else {
+      context.beginPath();
+      area(context, trace.pairs, xOf, column.x);
+      context.fill();
+    }
     context.globalAlpha = 1;
   }
-  context.beginPath();
-  strokes(context, trace, xOf);
-  context.strokeStyle = colour;
-  context.lineWidth = style.line === "solid" ? 1.5 : 1.25;
-  context.lineJoin = "miter";
-  context.setLineDash(DASHES[style.line]);
-  context.stroke();
-  context.setLineDash([]);
+  const widthPx = style.line === "solid" ? 1.5 : 1.25;
+  if (trace.kind === "rows") drawRows(context, trace, style.line, colour, widthPx, xOf);
+  else {
+    context.beginPath();
+    strokes(context, trace.pairs, xOf);
+    context.strokeStyle = colour;
+    context.lineWidth = widthPx;
+    context.lineJoin = "miter";
+    context.setLineDash(DASHES[style.line]);
+    context.stroke();
+    context.setLineDash([]);
+  }
 }
 
-/** The line itself; a gap starts a new stroke. */
-export function strokes(context: CanvasRenderingContext2D, trace: Trace, xOf: (value: number) => number): void {
+/** Rows of pixels instead of a stroke: as many rectangles as rows, whatever the number of layers. */
+function drawRows(
+  context: CanvasRenderingContext2D,
+  trace: { triples: Float64Array; rowPx: number },
+  line: TrackSeries["style"]["line"],
+  colour: string,
+  widthPx: number,
+  xOf: (value: number) => number,
+): void {
+  context.fillStyle = colour;
+  const [dash, gap] = DASHES[line].length > 0 ? DASHES[line] : [1, 0];
+  const period = dash + gap;
+  eachRun(trace, (y, height, least, most) => {
+    const [x, width] = [xOf(least) - widthPx / 2, xOf(most) - xOf(least) + widthPx];
+    // A wide row is a step of the line: it is never left out.
+    if (gap === 0 || width > 5) {
+      context.fillRect(x, y, width, height);
+      return;
+    }
+    for (let from = Math.floor(y / period) * period; from < y + height; from += period) {
+      const [top, end] = [Math.max(from, y), Math.min(from + dash, y + height)];
+      if (end > top) context.fillRect(x, top, width, end - top);
+    }
+  });
+}
+
+/** A staircase as a line; a gap starts a new stroke. */
+export function strokes(context: CanvasPath, pairs: Float64Array, xOf: (value: number) => number): void {
   let down = false;
-  for (let n = 0; n < trace.length; n += 2) {
-    const x = xOf(trace[n]);
+  for (let n = 0; n < pairs.length; n += 2) {
+    const x = xOf(pairs[n]);
     if (Number.isNaN(x)) {
       down = false;
       continue;
     }
-    if (down) context.lineTo(x, trace[n + 1]);
-    else context.moveTo(x, trace[n + 1]);
+    if (down) context.lineTo(x, pairs[n + 1]);
+    else context.moveTo(x, pairs[n + 1]);
     down = true;
   }
 }
 
-/** The area between the track's left edge and the line, piece by piece. */
-function outline(context: CanvasRenderingContext2D, trace: Trace, xOf: (value: number) => number, left: number): void {
+/** The area between the track's left edge and the staircase, piece by piece. */
+function area(context: CanvasPath, pairs: Float64Array, xOf: (value: number) => number, left: number): void {
   let lastY = Number.NaN;
-  for (let n = 0; n < trace.length; n += 2) {
-    const x = xOf(trace[n]);
+  for (let n = 0; n < pairs.length; n += 2) {
+    const x = xOf(pairs[n]);
     if (Number.isNaN(x)) {
       if (!Number.isNaN(lastY)) context.lineTo(left, lastY);
       lastY = Number.NaN;
       continue;
     }
-    if (Number.isNaN(lastY)) context.moveTo(left, trace[n + 1]);
-    context.lineTo(x, trace[n + 1]);
-    lastY = trace[n + 1];
+    if (Number.isNaN(lastY)) context.moveTo(left, pairs[n + 1]);
+    context.lineTo(x, pairs[n + 1]);
+    lastY = pairs[n + 1];
   }
   if (!Number.isNaN(lastY)) context.lineTo(left, lastY);
 }

@@ -12,7 +12,15 @@ test("the migrations lead to the schema as it is in the source", () => {
   try {
     cpSync(MIGRATIONS, folder, { recursive: true });
     const tool = join(ROOT, "node_modules/drizzle-kit/bin.cjs");
-    const argv = ["generate", "--dialect", "postgresql", "--schema", "./server/db/schema/*.ts", "--out", relative(ROOT, folder)];
+    const argv = [
+      "generate",
+      "--dialect",
+      "postgresql",
+      "--schema",
+      "./server/db/schema/*.ts",
+      "--out",
+      relative(ROOT, folder),
+    ];
     const { stdout, status } = spawnSync(process.execPath, [tool, ...argv], { cwd: ROOT, encoding: "utf8" });
     // Paths are relative to the project for this tool. It ends with 0 even when it has a question that nobody answers, so what it says counts.
     expect(stdout).toContain("No schema changes, nothing to migrate");

@@ -29,30 +29,38 @@ function livelier(machine: Machine, factor: number): Machine {
 
 const ROUNDING = 1e-12;
 
+/** Largest relative difference of two lists of durations. */
+const apart = (a: readonly number[], b: readonly number[]): number =>
+  a.reduce((worst, seconds, k) => Math.max(worst, Math.abs(seconds / b[k] - 1)), 0);
+
+/** How much faster any move of the first list is than its twin, as a share of its duration. */
+const gain = (a: readonly number[], b: readonly number[]): number =>
+  a.reduce((worst, seconds, k) => Math.max(worst, 1 - seconds / b[k]), 0);
+
 describe.each(EVERY_RULE)("with %s", (_, machine) => {
   test("moves settled as they stream by take what they take when all are planned at once", () => {
+    let mostBatches = 0;
     fc.assert(
-      fc.property(path(100), (steps) => {
+      fc.property(path(160, 60), (steps) => {
         const expected = wholeFilePlan(steps, machine);
-        const { timeS, totalS } = plan(steps, machine);
+        const { timeS, totalS, batches } = plan(steps, machine);
+        mostBatches = Math.max(mostBatches, batches);
         expect(timeS).toHaveLength(expected.length);
-        for (const [k, seconds] of expected.entries()) expect(Math.abs(timeS[k] / seconds - 1)).toBeLessThan(1e-11);
+        expect(apart(timeS, expected)).toBeLessThan(1e-11);
         expect(Math.abs(totalS / sum(expected) - 1)).toBeLessThan(ROUNDING);
       }),
-      { numRuns: 25 },
+      { numRuns: 15 },
     );
+    expect(mostBatches).toBeGreaterThan(2);
   });
 
   test("no move is faster than distance over feed, and every duration is a number above zero", () => {
     fc.assert(
       fc.property(path(30), (steps) => {
         const { timeS, lengthMm } = plan(steps, machine);
-        for (const [k, step] of steps.entries()) {
-          expect(Number.isFinite(timeS[k])).toBe(true);
-          expect(timeS[k]).toBeGreaterThan(0);
-          expect(timeS[k] * (1 + ROUNDING)).toBeGreaterThanOrEqual(lengthOf(step) / step.speedMmS);
-          expect(lengthMm[k]).toBeCloseTo(lengthOf(step), 12);
-        }
+        expect(timeS.every((seconds) => seconds > 0 && Number.isFinite(seconds))).toBe(true);
+        expect(gain(timeS, steps.map((step) => lengthOf(step) / step.speedMmS))).toBeLessThan(ROUNDING);
+        expect(apart(lengthMm, steps.map(lengthOf))).toBeLessThan(ROUNDING);
       }),
       { numRuns: 40 },
     );
@@ -71,18 +79,16 @@ describe.each(EVERY_RULE)("with %s", (_, machine) => {
 
   test("a controller that sees fewer blocks is never faster in any move, and one that sees all is the same", () => {
     fc.assert(
-      fc.property(path(30), fc.integer({ min: 1, max: 40 }), (steps, blocks) => {
+      fc.property(path(60, 20), fc.integer({ min: 1, max: 40 }), (steps, blocks) => {
         const full = plan(steps, machine);
         const few = plan(steps, changed(machine, { lookAhead: blocks }));
         const more = plan(steps, changed(machine, { lookAhead: blocks + 1 }));
         const all = plan(steps, changed(machine, { lookAhead: 100_000 }));
-        for (const [k, seconds] of full.timeS.entries()) {
-          expect(few.timeS[k] * (1 + 1e-11)).toBeGreaterThanOrEqual(seconds);
-          expect(Math.abs(all.timeS[k] / seconds - 1)).toBeLessThan(1e-11);
-        }
+        expect(gain(few.timeS, full.timeS)).toBeLessThan(1e-11);
+        expect(apart(all.timeS, full.timeS)).toBeLessThan(1e-11);
         expect(more.totalS).toBeLessThanOrEqual(few.totalS * (1 + ROUNDING));
       }),
-      { numRuns: 25 },
+      { numRuns: 15 },
     );
   });
 
@@ -123,17 +129,17 @@ describe("very short moves", () => {
   }
 
   test("that never let a speed settle are planned in a bounded window, with a stop where it is full", () => {
-    const { totalS, forcedStops, timeS } = plan(crumbs(300_000), lazy);
-    expect(forcedStops).toBe(2);
-    expect(timeS).toHaveLength(300_000);
+    const { totalS, forcedStops, timeS } = plan(crumbs(150_000), lazy);
+    expect(forcedStops).toBe(1);
+    expect(timeS).toHaveLength(150_000);
     expect(timeS.every((seconds) => seconds > 0 && Number.isFinite(seconds))).toBe(true);
-    const free = plan([travel(300, 0, 200)], lazy).totalS;
+    const free = plan([travel(150, 0, 200)], lazy).totalS;
     expect(totalS).toBeGreaterThan(free);
     expect(totalS).toBeLessThan(2 * free);
   });
 
   test("that fit the window need no stop", () => {
-    const count = Planner.windowLimit - 1000;
+    const count = 100_000;
     const { totalS, forcedStops } = plan(crumbs(count), lazy);
     expect(forcedStops).toBe(0);
     expect(totalS / plan([travel(count / 1000, 0, 200)], lazy).totalS).toBeCloseTo(1, 9);

@@ -80,8 +80,8 @@ describe("limits of single axes", () => {
   test("print, travel and retraction have accelerations of their own", () => {
     const accelMmS2 = { print: 500, travel: 3000, retract: 800 };
     const own = { accelMmS2, axes: {} };
-    expect(timeOf({ dx: 10, de: 0.4 }, own)).toBeCloseTo(10 / 100 + 100 / 500 - 0.1 + 0.1 * 0 || 0, 9);
-    expect(timeOf({ dx: 10 }, own)).toBeCloseTo(10 / 100 + 100 / 3000, 9);
+    expect(timeOf({ dx: 20, de: 0.8 }, own)).toBeCloseTo(20 / 100 + 100 / 500, 9);
+    expect(timeOf({ dx: 20 }, own)).toBeCloseTo(20 / 100 + 100 / 3000, 9);
     expect(timeOf({ de: 10, speedMmS: 40 }, own)).toBeCloseTo(10 / 40 + 40 / 800, 9);
   });
 });

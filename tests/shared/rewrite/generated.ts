@@ -211,7 +211,7 @@ function rowsOfPart(part: Part, machine: Machine): Pick<Generated, "rows" | "fir
   const put = (item: Item): void => {
     if (item.kind === "keep") rows.push({ text: item.text });
     else if (item.kind === "pause") rows.push({ text: item.command, pauses: true });
-    else if (item.kind === "fan" || item.kind === "lamp") rows.push(setting(item.kind, item.duty, item.form));
+    else if ("duty" in item) rows.push(setting(item.kind, item.duty, item.form));
     else go(item.kind === "lay", item.x * 5, item.y * 5);
   };
   const go = (lays: boolean, toX: number, toY: number, z = ""): void => {
@@ -260,6 +260,10 @@ export const generated = (drives: ("fan" | "lamp")[] = ["fan", "lamp"]): fc.Arbi
         const off = commands(machine.channels[1].drive, 0)[0];
         if (rows.some(({ sets }) => sets === "lamp")) rows.push({ text: off, sets: "lamp" });
       } else if (bare === 0) rows.length = end;
+      // An empty line behind a carriage return would make a CRLF of the two.
+      if (Array.isArray(ending.newline)) for (const row of rows) if (row.text === "") row.text = " ";
+      // An empty last line without a terminator is none.
+      if (rows[rows.length - 1].text === "") rows.pop();
       const text = written(
         rows.map((row) => row.text),
         ending,

@@ -18,9 +18,8 @@ export const textOf = (bytes: Buffer): string => bytes.toString("latin1");
 export type Cut = readonly number[];
 
 function inPieces(bytes: Uint8Array, cut: Cut, take: (piece: Uint8Array) => void): void {
-  if (cut.length === 0) return take(bytes);
   for (let at = 0, k = 0; at < bytes.length; k++) {
-    const size = cut[k % cut.length];
+    const size = cut.length === 0 ? bytes.length : cut[k % cut.length];
     take(bytes.subarray(at, at + size));
     at += size;
   }

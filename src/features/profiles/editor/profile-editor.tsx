@@ -1,11 +1,7 @@
 import { useState } from "react";
 import { BandRuler } from "#src/features/profiles/editor/band-ruler.tsx";
 import { ProfileForm, type ProfileFormProps } from "#src/features/profiles/editor/profile-form.tsx";
-import {
-  type ProfileEditing,
-  type ProfileEditingInput,
-  useProfileEditing,
-} from "#src/features/profiles/editor/use-profile-editing.ts";
+import { type ProfileEditingInput, useProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { ZoneBands } from "#src/features/profiles/editor/zone-bands.tsx";
 import { undoKeys } from "#src/lib/undo-keys.ts";
 
