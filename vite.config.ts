@@ -36,7 +36,8 @@ export default defineConfig({
           exclude: ["tests/server/cli/**"],
           environment: "node",
           globalSetup: ["tests/helpers/migrated-database.ts"],
-          // Each file has a database of its own, some hundred megabytes large.
+          // The files that a worker runs share one database, some hundred megabytes large, and the modules.
+          isolate: false,
           maxWorkers: 2,
           testTimeout: 60_000,
           hookTimeout: 120_000,
@@ -49,6 +50,16 @@ export default defineConfig({
           include: ["tests/src/**/*.test.{ts,tsx}"],
           environment: "happy-dom",
           setupFiles: ["tests/src/setup.ts"],
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: "e2e",
+          include: ["tests/e2e/**/*.test.ts"],
+          environment: "node",
+          testTimeout: 240_000,
+          hookTimeout: 240_000,
         },
       },
     ],

@@ -17,6 +17,8 @@ import { Refusal } from "#shared/refusal.ts";
 const MAX_LAYERS = 100_000;
 /** Layers found before the first marker that are still taken for the start of the print. */
 const START_LAYERS = 2;
+/** No layer is thinner than this, µm: where nothing tells the nominal height of a spiral. */
+const THINNEST_UM = 50;
 /** A run of laying moves whose ends lie this close is a closed loop, mm. */
 const LOOP_GAP_MM = 0.6;
 
@@ -63,6 +65,8 @@ export class LayerBuilder implements MotionSink {
   /** whether a run of laying moves is open, and whether the run lies on the part's outline */
   private running = 0;
   private laidSinceTravel = false;
+  /** the next laying move begins the print: what was laid before a homing or a temperature wait was its start */
+  private startsOver = false;
   private outline = false;
   /** where the layer's marker stands, when one came after the last laying move */
   private mark: { boundary: Boundary; text: string } | undefined;
@@ -164,8 +168,10 @@ export class LayerBuilder implements MotionSink {
   wait(kind: Wait["kind"], seconds: number | null): void {
     this.planner.stop();
     if (seconds !== null && seconds > 0) this.timeline.dwell(seconds);
-    if ((kind === "home" || kind === "temperature") && this.markers === 0 && this.layers.length <= START_LAYERS)
-      this.forgetLayers();
+    if ((kind === "home" || kind === "temperature") && this.markers === 0 && this.layers.length <= START_LAYERS) {
+      this.startsOver = true;
+      this.sums[LAST_Z] = Number.NaN;
+    }
     if (kind === "dwell" && seconds === 0) return;
     this.current?.waits.push({ kind, line: this.scan.line, seconds });
   }
@@ -216,6 +222,7 @@ export class LayerBuilder implements MotionSink {
   }
 
   private forgetLayers(): void {
+    this.startsOver = false;
     this.layers.length = 0;
     this.current = undefined;
     this.object = 0;
@@ -226,6 +233,7 @@ export class LayerBuilder implements MotionSink {
   }
 
   private considerLayer(z0: number, z: number): void {
+    if (this.startsOver) this.forgetLayers();
     this.sums[LAST_Z] = z;
     this.layingMoves++;
     const zUm = Math.round(z * 1000);
@@ -233,16 +241,22 @@ export class LayerBuilder implements MotionSink {
     const ramps = fromUm !== zUm;
     if (!this.current) {
       const top = ramps ? Math.max(fromUm, zUm) : zUm;
-      this.nominalUm = this.statedNominalUm || (ramps ? Math.max(fromUm, 1) : top);
+      this.nominalUm = this.statedNominalUm || (ramps ? Math.max(fromUm, zUm - fromUm, THINNEST_UM) : top);
       this.beginLayer(zUm, 0);
       this.spiral ||= ramps;
+      return;
+    }
+    // Only chords of one arc share a line, and commands stand between lines: a layer is a line at least.
+    if (this.current.firstLine === this.scan.line) {
+      if (zUm > this.zUm) this.raise(zUm);
       return;
     }
     if (ramps) {
       if (zUm < this.baseUm) this.beginLayer(zUm, 0);
       else if (zUm > this.baseUm + this.ceilingUm()) {
-        this.spiral ||= fromUm === this.zUm;
-        this.beginLayer(zUm, fromUm < this.zUm ? this.zUm : Math.min(this.baseUm + this.ceilingUm(), zUm - 1));
+        // Behind a travel it is a seam that ramps up from the layer below.
+        this.spiral ||= fromUm === this.zUm && this.running !== 0;
+        this.beginLayer(zUm, fromUm < this.zUm ? this.zUm : Math.min(Math.max(this.baseUm + this.ceilingUm(), this.zUm), zUm - 1));
       } else if (zUm > this.zUm) this.raise(zUm);
       return;
     }

@@ -84,6 +84,13 @@ export class Evidence {
     return offset >= start.offset && offset < end.offset;
   }
 
+  /** Whether a pause stands between two bytes of the original, both included. */
+  pauseWithin(from: number, to: number): boolean {
+    const { pauses } = this;
+    const next = firstFrom(pauses.length, (k) => pauses[k].from, from);
+    return next < pauses.length && pauses[next].from <= to;
+  }
+
   /** What the file itself has set a channel to before the window; 0 where it sets nothing. */
   dutyBefore(index: number): number {
     const { offset } = this.reading.window.start;

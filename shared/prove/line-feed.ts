@@ -103,7 +103,9 @@ export class LineFeed {
     if (this.end + bytes + 2 <= this.buf.length) return;
     const { start } = this;
     const held = this.end - start;
-    const target = held + bytes + 2 <= this.buf.length / 2 ? this.buf : new Uint8Array(2 * (held + bytes + 2));
+    const needed = held + bytes + 2;
+    const fits = needed <= this.buf.length && held <= this.buf.length / 2;
+    const target = fits ? this.buf : new Uint8Array(2 * needed);
     if (target === this.buf) target.copyWithin(0, start, this.end);
     else target.set(this.buf.subarray(start, this.end));
     this.buf = target;

@@ -4,7 +4,7 @@ import type { LineFeed } from "#shared/prove/line-feed.ts";
 const N_BIT = 1 << 13;
 const M_BIT = 1 << 12;
 /** Longest command that is looked at; every command of an output is far shorter. */
-const CODE_BYTES = 2048;
+const CODE_BYTES = 512;
 
 /** One line taken apart, for the few that are looked at as a whole. The same object is filled again for every line. */
 export class LineLook {

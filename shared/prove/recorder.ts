@@ -12,7 +12,9 @@ import { pauseForms } from "#shared/prove/pause-line.ts";
 import type { Sameness } from "#shared/prove/same-line.ts";
 
 /** More lines of ours than this is no tuning. */
-const MAX_OWN_LINES = 2_000_000;
+const MAX_OWN_LINES = 1_000_000;
+/** Longest text of one that is kept; what is longer is none of ours. */
+const OWN_BYTES = 8192;
 
 /** Keeps the books of the comparison. Memory grows with lines of ours and output commands, not with bytes. */
 export class Recorder {
@@ -123,7 +125,7 @@ export class Recorder {
       found.entries.push({
         ...standing,
         what: "provenance",
-        text: tuned.text(tuned.start, tuned.textEnd),
+        text: tuned.text(tuned.start, Math.min(tuned.textEnd, tuned.start + OWN_BYTES)),
         oddEnd: this.endsOddly(tuned),
       });
     else found.entries.push({ ...this.ownCommand(tuned, own), ...standing });

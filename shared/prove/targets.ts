@@ -3,6 +3,7 @@ import type { Profile } from "#shared/formats/profile.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import type { Plan } from "#shared/plan/plan.ts";
 import type { Instants } from "#shared/prove/instants.ts";
+import { firstFrom } from "#shared/prove/known-times.ts";
 import { pauseForms } from "#shared/prove/pause-line.ts";
 
 /** A duty that has to be in force from a line boundary on. */
@@ -44,21 +45,31 @@ function put(targets: Target[], target: Target): void {
   targets.push(target);
 }
 
-function aroundPauses(targets: readonly Target[], { reading, machine, instants }: TargetInput): Target[] {
-  const forms = pauseForms(machine);
-  const { layers, window } = reading;
-  let left = [...targets];
-  let idleUntil = 0;
-  for (const { offset, length, command } of reading.pauses) {
-    if (offset < window.start.offset || offset >= window.end.offset) continue;
-    const blocks = forms.get(command.toUpperCase()) === "blocking";
-    const nextLayer = layers.find(({ writeAt }) => writeAt.offset > offset)?.writeAt ?? window.end;
-    idleUntil = Math.max(idleUntil, instants.place(blocks ? offset + length : nextLayer.offset));
-    const later = left.filter((target) => target.offset > idleUntil);
-    const wanted = left[left.length - later.length - 1];
-    left = left.filter((target) => target.offset < offset);
-    if (wanted && idleUntil < window.end.offset) left.push({ ...wanted, offset: idleUntil });
-    left.push(...later);
+function aroundPauses(targets: readonly Target[], input: TargetInput): Target[] {
+  const left: Target[] = [];
+  let next = 0;
+  for (const { from, until } of idleTimes(input)) {
+    for (; next < targets.length && targets[next].offset < from; next++) left.push(targets[next]);
+    while (next < targets.length && targets[next].offset <= until) next++;
+    if (next > 0 && until < input.reading.window.end.offset) left.push({ ...targets[next - 1], offset: until });
   }
-  return left;
+  return [...left, ...targets.slice(next)];
+}
+
+/** From a pause on to where the heater may be wanted again, both as bytes of the original; ascending, apart. */
+function idleTimes({ reading, machine, instants }: TargetInput): { from: number; until: number }[] {
+  const forms = pauseForms(machine);
+  const { layers, window, pauses } = reading;
+  const times: { from: number; until: number }[] = [];
+  for (const { offset, length, command } of pauses) {
+    if (offset < window.start.offset || offset >= window.end.offset) continue;
+    const nextLayer =
+      layers[firstFrom(layers.length, (k) => layers[k].writeAt.offset, offset + 1)]?.writeAt ?? window.end;
+    const blocks = forms.get(command.toUpperCase()) === "blocking";
+    const until = instants.place(blocks ? offset + length : nextLayer.offset);
+    const last = times[times.length - 1];
+    if (last && offset <= last.until) last.until = Math.max(last.until, until);
+    else times.push({ from: offset, until });
+  }
+  return times;
 }

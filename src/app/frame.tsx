@@ -25,7 +25,7 @@ export function Frame() {
         Skip to the page
       </a>
       <header className="border-b border-ink">
-        <div className="mx-auto flex max-w-[100rem] flex-wrap items-stretch gap-x-8 px-5">
+        <div className="mx-auto flex max-w-[100rem] flex-wrap items-stretch gap-x-5 px-5 xl:gap-x-8">
           <Wordmark />
           <nav aria-label="Pages" className="flex flex-wrap">
             {PAGES.map(({ to, name, end }) => (
@@ -39,8 +39,8 @@ export function Frame() {
               </NavLink>
             ))}
           </nav>
-          <div className="ml-auto flex flex-wrap items-center gap-x-5">
-            <span className="text-small text-soft">{team.name}</span>
+          <div className="ml-auto flex flex-wrap items-center gap-x-4 xl:gap-x-5">
+            <span className="hidden text-small text-soft xl:inline">{team.name}</span>
             <SheetSwitch />
             <PersonMenu />
           </div>

@@ -11,7 +11,7 @@ export function SheetSwitch() {
   const choice = useSheetChoice();
   return (
     <label className="flex items-center gap-2 text-small">
-      <span className="text-soft">Sheet</span>
+      <span className="text-soft max-xl:sr-only">Sheet</span>
       <select
         value={choice}
         onChange={(event) => chooseSheet(event.target.value as SheetChoice)}

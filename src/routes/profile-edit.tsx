@@ -1,6 +1,6 @@
-import { useQuery } from "@tanstack/react-query";
+import { useQueries, useQuery } from "@tanstack/react-query";
 import { useState } from "react";
-import type { Profile } from "#shared/formats/profile.ts";
+import type { Profile, Rule } from "#shared/formats/profile.ts";
 import { documentsQuery, MACHINES, PROFILES, versionQuery } from "#src/features/documents/kinds.ts";
 import { ProfileEditor } from "#src/features/profiles/editor/profile-editor.tsx";
 import { newProfile } from "#src/features/profiles/new-profile.ts";
@@ -15,13 +15,13 @@ interface EditorProps {
 
 /** A profile by itself. It is checked against the machine it is meant for, where one is chosen. */
 function Editor({ profile, onChange }: EditorProps) {
-  const machines = useQuery(documentsQuery(MACHINES));
+  const machines = useMachines();
   const [machineId, setMachineId] = useState<string>();
-  const chosen = machines.data?.find(({ id }) => id === machineId) ?? machines.data?.[0];
-  const machine = useQuery({
-    ...versionQuery(MACHINES, chosen?.id ?? "", chosen?.latest.number ?? 1),
-    enabled: chosen !== undefined && machineId !== "",
-  });
+  const [driven] = useState(() => new Set(rulesOf(profile).map(({ channel }) => channel)));
+  // To begin with: the machine that has the channels which the profile drives.
+  const chosen =
+    machines.find(({ id }) => id === machineId) ??
+    machines.find(({ document }) => [...driven].every((channel) => document.channels.some(({ id }) => id === channel)));
   const { polymer, names } = usePolymerOf(profile.polymer);
   return (
     <>
@@ -32,9 +32,9 @@ function Editor({ profile, onChange }: EditorProps) {
         value={machineId ?? chosen?.id ?? ""}
         onChange={({ target }) => setMachineId(target.value)}
       >
-        {machines.data?.map(({ id, name }) => (
+        {machines.map(({ id, document }) => (
           <option key={id} value={id}>
-            {name}
+            {document.name}
           </option>
         ))}
         <option value="">no machine</option>
@@ -42,13 +42,24 @@ function Editor({ profile, onChange }: EditorProps) {
       <ProfileEditor
         profile={profile}
         onChange={onChange}
-        machine={machineId === "" ? undefined : machine.data?.document}
+        machine={machineId === "" ? undefined : chosen?.document}
         polymer={polymer}
         polymers={names}
       />
     </>
   );
 }
+
+/** The latest version of each of the team's machines. */
+function useMachines() {
+  const list = useQuery(documentsQuery(MACHINES));
+  const versions = useQueries({
+    queries: (list.data ?? []).map(({ id, latest }) => versionQuery(MACHINES, id, latest.number)),
+  });
+  return versions.flatMap(({ data }) => data ?? []);
+}
+
+const rulesOf = ({ zones }: Profile): Rule[] => zones.flatMap(({ cooling, heating }) => [...cooling, ...heating]);
 
 const editor = (profile: Profile, onChange: (profile: Profile) => void) => <Editor profile={profile} onChange={onChange} />;
 

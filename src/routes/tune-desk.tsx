@@ -128,12 +128,10 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   return (
     // biome-ignore lint/a11y/noStaticElementInteractions: the fields within it have the focus; this only hears undo
     <div
-      className="grid gap-x-8 gap-y-6 border-t border-rule pt-5 xl:grid-cols-[minmax(0,1fr)_33rem]"
+      className="grid gap-x-8 gap-y-6 border-t border-rule pt-4 xl:grid-cols-[minmax(0,1fr)_33rem]"
       onKeyDown={mayEdit ? (event) => undoKeys(event, editing) : undefined}
     >
       <div className="min-w-0 self-start xl:sticky xl:top-0">
-        <div className="border border-rule">{log}</div>
-        {desk.problem && <ProblemNotice problem={{ ...asProblem(desk.problem), title: "This can't be planned yet" }} />}
         <WriteTuned
           readingId={reading.id}
           profile={chosen}
@@ -141,6 +139,8 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
           checked={editing.checked}
           ready={plan !== undefined && desk.problem === undefined && editing.checked !== undefined}
         />
+        <div className="border border-rule">{log}</div>
+        {desk.problem && <ProblemNotice problem={{ ...asProblem(desk.problem), title: "This can't be planned yet" }} />}
       </div>
       <div className="min-w-0">
         {draft.changed && draft.resumedFrom && (
@@ -173,8 +173,8 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   );
 }
 
-/** Head, foot and the bar with the button stand in sight together with the plot. */
-const AROUND_PLOT_PX = 300;
+/** Button, head and foot of the log, and most of the page's head stand in sight together with the plot. */
+const AROUND_PLOT_PX = 440;
 
 function useDeskHeight(): number {
   return Math.min(Math.max(useWindowHeight() - AROUND_PLOT_PX, 340), 760);

@@ -48,7 +48,7 @@ export function WriteTuned({ readingId, profile, draft, checked, ready }: Props)
   const conflict = isProblem(write.error, "version-conflict");
   const fault = write.error && !conflict && <ProblemNotice problem={asProblem(write.error)} />;
   return (
-    <div className="flex flex-col gap-3 py-3">
+    <div className="flex flex-col gap-3 bg-paper pb-4 xl:pt-2">
       {conflict && (
         <ConflictNotice
           kind={PROFILES}

@@ -8,14 +8,16 @@ interface NumberInput {
   onChange(value: number | undefined): void;
   /** what the arrow keys add and take away */
   step?: number;
+  /** at least so many decimals, so that points stand in line in a column */
+  decimals?: number;
 }
 
 const NO_NUMBER = "is no number. Type digits, with a point for decimals";
 
 /** What is typed stays as typed while it means the value ("0." is on its way to 0.5); a value set from outside replaces it. */
-function useNumberText({ value, onChange, step = 1 }: NumberInput) {
-  const [text, setText] = useState(() => textOf(value));
-  const shown = Object.is(numberOf(text), value ?? undefined) ? text : textOf(value);
+function useNumberText({ value, onChange, step = 1, decimals = 0 }: NumberInput) {
+  const [text, setText] = useState(() => textOf(value, decimals));
+  const shown = Object.is(numberOf(text), value ?? undefined) ? text : textOf(value, decimals);
   const give = (typed: string) => {
     setText(typed);
     onChange(numberOf(typed));
@@ -26,6 +28,8 @@ function useNumberText({ value, onChange, step = 1 }: NumberInput) {
       value: shown,
       inputMode: "decimal" as const,
       autoComplete: "off",
+      // What is no number stays to be seen and corrected.
+      onBlur: () => !Number.isNaN(value ?? 0) && setText(textOf(value, decimals)),
       onChange: ({ target }: { target: { value: string } }) => give(target.value),
       onKeyDown: (event: KeyboardEvent) => {
         const sign = event.key === "ArrowUp" ? 1 : event.key === "ArrowDown" ? -1 : 0;
@@ -38,8 +42,10 @@ function useNumberText({ value, onChange, step = 1 }: NumberInput) {
   };
 }
 
-function textOf(value: number | undefined | null): string {
-  return value === undefined || value === null || Number.isNaN(value) ? "" : String(value);
+function textOf(value: number | undefined | null, decimals = 0): string {
+  if (value === undefined || value === null || Number.isNaN(value)) return "";
+  const [text, padded] = [String(value), value.toFixed(decimals)];
+  return Number(padded) === value ? padded : text;
 }
 
 /** A decimal comma is taken for a point. */
@@ -85,8 +91,8 @@ export function NumberCell({
   className,
   ...rest
 }: NumberInput & Omit<ComponentProps<"input">, keyof NumberInput> & { label: string; problem?: string }) {
-  const { value, onChange, step, ...more } = rest;
-  const { input, isNumber } = useNumberText({ value, onChange, step });
+  const { value, onChange, step, decimals, ...more } = rest;
+  const { input, isNumber } = useNumberText({ value, onChange, step, decimals });
   return (
     <input
       aria-label={label}

@@ -7,6 +7,8 @@ export interface Column<Row> {
   unit?: string;
   /** numbers are set in the mono face and right-aligned: with fixed decimals their points stand in line */
   number?: boolean;
+  /** for tables that stand one above the other and should line up, e.g. `16rem` */
+  width?: string;
   cell(row: Row): ReactNode;
 }
 
@@ -27,10 +29,11 @@ export function Table<Row>({ label, columns, rows, keyOf, current }: Props<Row>)
       <table className="w-full border-collapse">
         <thead>
           <tr className="border-b border-ink">
-            {columns.map(({ head, unit, number }) => (
+            {columns.map(({ head, unit, number, width }) => (
               <th
                 key={head}
                 scope="col"
+                style={{ width }}
                 className={classNames("py-1.5 pr-6 align-bottom text-small font-semibold last:pr-0", number ? "text-right" : "text-left")}
               >
                 {head}

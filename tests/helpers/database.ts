@@ -9,11 +9,20 @@ export interface TestDatabase {
   db: Db;
   /** empties every table */
   clear(): Promise<void>;
-  close(): Promise<void>;
 }
 
-/** A real database of its own, in memory, migrated and empty. One for a test file is enough: clear it between tests. */
-export async function openTestDatabase(): Promise<TestDatabase> {
+let opened: Promise<TestDatabase> | undefined;
+
+/**
+ * A real database in memory, migrated. Starting one costs more than all tests of a file, so the files that one worker
+ * runs, one after the other, share it: clear it between tests.
+ */
+export function openTestDatabase(): Promise<TestDatabase> {
+  opened ??= open();
+  return opened;
+}
+
+async function open(): Promise<TestDatabase> {
   const snapshot = await readFile(inject("migratedDatabase"));
   const client = await PGlite.create({ loadDataDir: new Blob([new Uint8Array(snapshot)]) });
   const db = drizzle(client);
@@ -26,6 +35,5 @@ export async function openTestDatabase(): Promise<TestDatabase> {
     clear: async () => {
       await db.execute(sql.raw(`truncate ${tables} cascade`));
     },
-    close: () => client.close(),
   };
 }

@@ -6,13 +6,12 @@ import supertest from "supertest";
 import { afterAll, beforeAll, beforeEach } from "vitest";
 import { buildApp } from "#server/app.ts";
 import { hashPassword } from "#server/auth/passwords.ts";
-import { insertSession } from "#server/auth/queries.ts";
 import { SESSION_COOKIE, SessionCookie } from "#server/auth/session-cookie.ts";
+import { sessions, teams, users } from "#server/db/schema/teams.ts";
 import { readEnv } from "#server/env.ts";
 import { makeLog } from "#server/http/logging.ts";
 import { makeParts } from "#server/make-parts.ts";
 import type { Parts } from "#server/parts.ts";
-import { insertMember, insertTeam } from "#server/teams/queries.ts";
 import { Role } from "#shared/contract/roles.ts";
 import { openTestDatabase, type TestDatabase } from "./database.ts";
 
@@ -22,11 +21,16 @@ export const PASSWORD = "correct horse battery";
 export const TEAMS = ["alder", "birch"] as const;
 export type TeamName = (typeof TEAMS)[number];
 
+const EXPIRES_AT = new Date(Date.now() + 86_400_000);
+
 /** Somebody in a test, signed in. */
 export interface Person {
   userId: string;
+  sessionId: string;
+  team: TeamName;
   teamId: string;
   email: string;
+  role: Role;
   cookie: string;
 }
 
@@ -55,26 +59,33 @@ export class TestServer {
     const log = makeLog("debug", { write: (line) => this.logged.push(line) });
     this.parts = await makeParts({ env, log, db: this.database.db, closing: this.closing.signal });
     this.app = buildApp(this.parts);
+    for (const team of TEAMS) {
+      const teamId = crypto.randomUUID();
+      for (const role of Role.options) await this.invent(team, teamId, role);
+    }
   }
 
   async reset(): Promise<void> {
+    const { db } = this.parts;
     await this.database.clear();
     this.logged.length = 0;
-    for (const team of TEAMS) {
-      const teamId = await insertTeam(this.parts.db, team);
-      for (const role of Role.options) this.people.set(`${team} ${role}`, await this.addPerson(teamId, team, role));
-    }
+    const people = [...this.people.values()];
+    const { passwordHash } = this;
+    const ids = new Map(people.map(({ teamId, team }) => [teamId, team]));
+    await db.insert(teams).values([...ids].map(([id, name]) => ({ id, name })));
+    await db.insert(users).values(people.map(({ userId: id, ...person }) => ({ ...person, id, passwordHash })));
+    const times = { lastSeenAt: new Date(), expiresAt: EXPIRES_AT };
+    await db.insert(sessions).values(people.map(({ sessionId: id, userId }) => ({ id, userId, ...times })));
   }
 
   async close(): Promise<void> {
     this.closing.abort();
     await this.parts.workshop.close();
-    await this.database.close();
     await rm(this.dataDir, { recursive: true, force: true });
   }
 
   person(role: Role, team: TeamName = "alder"): Person {
-    return this.people.get(`${team} ${role}`)!;
+    return this.people.get(`${role}@${team}.example`)!;
   }
 
   /** Requests by the person with a role. */
@@ -88,14 +99,13 @@ export class TestServer {
     return cookie === undefined ? agent : agent.set("Cookie", cookie);
   }
 
-  private async addPerson(teamId: string, team: string, role: Role): Promise<Person> {
+  /** Everybody keeps ids and cookie through the file: only the rows are made anew. */
+  private async invent(team: TeamName, teamId: string, role: Role): Promise<void> {
+    const sessionId = crypto.randomUUID();
+    const token = await new SessionCookie(this.parts.sessionSecret).sign(sessionId, EXPIRES_AT);
+    const cookie = `${SESSION_COOKIE}=${token}`;
     const email = `${role}@${team}.example`;
-    const { db, sessionSecret } = this.parts;
-    const { id: userId } = (await insertMember(db, { teamId, email, role, passwordHash: this.passwordHash }))!;
-    const expiresAt = new Date(Date.now() + 86_400_000);
-    const sessionId = await insertSession(db, { userId, lastSeenAt: new Date(), expiresAt });
-    const token = await new SessionCookie(sessionSecret).sign(sessionId, expiresAt);
-    return { userId, teamId, email, cookie: `${SESSION_COOKIE}=${token}` };
+    this.people.set(email, { userId: crypto.randomUUID(), sessionId, team, teamId, email, role, cookie });
   }
 }
 

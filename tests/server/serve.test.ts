@@ -18,16 +18,16 @@ const envWith = (variables: Record<string, string> = {}) =>
 /** Signs the demo's lead in with the password that the start prints, and asks for lists. */
 async function countsOf(server: RunningServer): Promise<Record<string, number>> {
   const [, password] = /the password of each is (\S+)/.exec(await demoSignIns(server.parts))!;
-  const reply = await fetch(`${server.url}/api/session`, {
+  const signedIn = await fetch(`${server.url}/api/session`, {
     method: "POST",
     headers: { "Content-Type": "application/json" },
     body: JSON.stringify({ email: "lead@alderbay.example", password }),
   });
-  const headers = { Cookie: reply.headers.get("set-cookie")!.split(";")[0] };
+  const headers = { Cookie: signedIn.headers.get("set-cookie")!.split(";")[0] };
   const counts: Record<string, number> = {};
   for (const name of ["members", "machines", "polymers", "profiles", "toolpaths", "tunings"]) {
-    const list = await (await fetch(`${server.url}/api/${name}`, { headers })).json();
-    counts[name] = list.length;
+    const reply = await fetch(`${server.url}/api/${name}`, { headers });
+    counts[name] = ((await reply.json()) as unknown[]).length;
   }
   return counts;
 }

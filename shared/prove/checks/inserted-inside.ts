@@ -2,6 +2,9 @@ import type { Check } from "#shared/formats/proof.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { Evidence } from "#shared/prove/evidence.ts";
 
+/** Print times are sums of floating-point durations, s. */
+const SAME_S = 1e-6;
+
 /** Lines of ours stand between the start of the first layer and the end of the last, at boundaries that the reading knows. */
 export function checkInsertedInside(evidence: Evidence): Check {
   const { own, events, reading } = evidence;
@@ -14,7 +17,16 @@ export function checkInsertedInside(evidence: Evidence): Check {
       `\`${outside.code}\` at ${evidence.place(outside)} stands outside the layers.`,
       found,
     );
-  const lost = events.flat().find(({ entry, timeS }) => entry.what === "own" && Number.isNaN(timeS));
-  const problem = lost && `\`${lost.entry.code}\` at ${evidence.place(lost.entry)} stands where no command may be put.`;
-  return verdict("inserted-inside", problem, found);
+  for (const channelEvents of events) {
+    let beforeS = 0;
+    for (const { entry, timeS } of channelEvents) {
+      if (entry.what !== "own") continue;
+      const place = `\`${entry.code}\` at ${evidence.place(entry)}`;
+      if (Number.isNaN(timeS)) return verdict("inserted-inside", `${place} stands where no command may be put.`, found);
+      if (timeS < beforeS - SAME_S)
+        return verdict("inserted-inside", `${place} has an earlier print time than the line of ours before it.`, found);
+      beforeS = timeS;
+    }
+  }
+  return verdict("inserted-inside", undefined, found);
 }

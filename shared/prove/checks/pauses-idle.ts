@@ -3,6 +3,7 @@ import type { Check } from "#shared/formats/proof.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { PauseEntry } from "#shared/prove/comparison.ts";
 import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
+import { firstFrom } from "#shared/prove/known-times.ts";
 import { type PauseForms, pauseForms } from "#shared/prove/pause-line.ts";
 import { counted, dutyWords } from "#shared/prove/wording.ts";
 
@@ -41,14 +42,15 @@ function problemAt(
   const place = `the pause ${pause.command} at ${evidence.place(pause)}`;
   const form = forms.get(pause.command);
   if (form === undefined || form === "unlisted") return `The machine document does not list ${place}.`;
-  const before = events.filter(({ entry }) => entry.tunedLine < pause.tunedLine).pop();
+  const next = firstFrom(events.length, (k) => events[k].entry.tunedLine, pause.tunedLine);
+  const before = events[next - 1];
   if (before && !(before.duty <= idleDuty + TOLERANCE))
     return `${id} is at ${dutyWords(before.duty)} at ${place}, its idle duty is ${dutyWords(idleDuty)}.`;
   if (form === "blocking") return undefined;
   const nextLayer = evidence.reading.layers[evidence.layersBy(pause.from)]?.writeAt.offset ?? Number.POSITIVE_INFINITY;
-  const early = events.find(
-    ({ entry, duty }) => entry.tunedLine > pause.tunedLine && entry.to < nextLayer && !(duty <= idleDuty + TOLERANCE),
-  );
+  let k = next;
+  while (k < events.length && events[k].entry.to < nextLayer && events[k].duty <= idleDuty + TOLERANCE) k++;
+  const early = events[k]?.entry.to < nextLayer ? events[k] : undefined;
   return (
     early &&
     `${id} is set to ${dutyWords(early.duty)} at ${evidence.place(early.entry)}, behind ${place}, which does not block.`

@@ -1,18 +1,15 @@
 import type { Channel } from "#shared/formats/machine.ts";
 import type { Profile } from "#shared/formats/profile.ts";
 import type { Check } from "#shared/formats/proof.ts";
-import type { DutyLimits } from "#shared/plan/limits.ts";
 import type { Plan } from "#shared/plan/plan.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
 import { Instants } from "#shared/prove/instants.ts";
 import { StaircaseRule } from "#shared/prove/staircase-rule.ts";
+import { withoutBoosts } from "#shared/prove/start-boosts.ts";
 import { type Target, targetsOf } from "#shared/prove/targets.ts";
 import { counted, dutyWords, listed } from "#shared/prove/wording.ts";
 import { dutySteps } from "#shared/units/duty.ts";
-
-/** A start boost ends in time where a boundary allows it; this much longer at most, s. */
-const BOOST_SLACK_S = 5;
 
 /**
  * The plan, computed afresh from reading and profile, is what the lines of ours carry out: every layer's duty is in force
@@ -24,8 +21,14 @@ export function checkPlan(evidence: Evidence, profile: Profile, plan: Plan | str
   const instants = new Instants(reading, evidence.comparison.gaps);
   for (const { channel, index } of evidence.channels()) {
     const targets = targetsOf(channel, { reading, machine, profile, plan, instants });
+    const limits = evidence.limits(channel);
     const planned = evidence.events[index].filter(({ source }) => source === "plan");
-    const events = changes(withoutBoosts(planned, channel, evidence.limits(channel), targets));
+    const step = 1 / dutySteps(channel.drive);
+    // Without a largest change per second a layer may want the very duty of a boost.
+    const isWanted = ({ entry: { from, to }, duty }: DutyEvent): boolean =>
+      limits.maxDutyPerS === Number.POSITIVE_INFINITY &&
+      targets.some(({ offset, duty: wanted }) => offset >= from && offset <= to && Math.abs(wanted - duty) < step / 2);
+    const events = changes(withoutBoosts(planned, channel, limits, isWanted));
     const initial = evidence.dutyBefore(index);
     const problem = new Course(evidence, channel, initial, events, targets, instants).problem();
     if (problem !== undefined) return verdict("plan", problem, "");
@@ -113,36 +116,12 @@ class Course {
     if (this.channel.kind === "heater" && duty <= this.channel.idleDuty + this.halfStep) {
       const { end } = this.evidence.reading.window;
       if (entry.from <= end.offset && end.offset <= entry.to) return true;
-      if (this.evidence.pauses.some(({ from }) => entry.from <= from && from <= entry.to)) return true;
+      if (this.evidence.pauseWithin(entry.from, entry.to)) return true;
     }
     if (!this.staircase) return false;
     const wanted = this.targets[i].duty;
     return Math.abs(duty - wanted) < Math.abs(before - wanted) || this.staircase.ahead(k, i);
   }
-}
-
-/** A fan that starts from standstill runs at its highest duty for a moment, before the duty that is wanted. */
-function withoutBoosts(
-  events: readonly DutyEvent[],
-  { kind, startBoostS, drive }: Channel,
-  { maxDuty, maxDutyPerS }: DutyLimits,
-  targets: readonly Target[],
-): readonly DutyEvent[] {
-  const step = 1 / dutySteps(drive);
-  // Without a largest change per second a layer may want that very duty.
-  const isWanted = ({ entry: { from, to }, duty }: DutyEvent): boolean =>
-    targets.some((target) => target.offset >= from && target.offset <= to && Math.abs(target.duty - duty) < step / 2);
-  if (kind !== "fan" || startBoostS === 0) return events;
-  return events.filter((event, k) => {
-    const { duty, timeS } = event;
-    const next = events[k + 1];
-    if (k === 0 || events[k - 1].duty > 0 || !next || !(next.duty > 0)) return true;
-    const lastsS = next.timeS - timeS;
-    const isBoost = Math.abs(duty - maxDuty) < step && lastsS > startBoostS - 1e-3;
-    return (
-      !isBoost || lastsS > startBoostS + BOOST_SLACK_S || (maxDutyPerS === Number.POSITIVE_INFINITY && isWanted(event))
-    );
-  });
 }
 
 /** Without the lines that repeat what is in force, such as those that only end a raise. */

@@ -3,6 +3,7 @@ import type { Check } from "#shared/formats/proof.ts";
 import type { DutyLimits } from "#shared/plan/limits.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { DutyEvent, Evidence } from "#shared/prove/evidence.ts";
+import { withoutBoosts } from "#shared/prove/start-boosts.ts";
 import { dutyWords } from "#shared/prove/wording.ts";
 import { dutySteps } from "#shared/units/duty.ts";
 
@@ -21,7 +22,7 @@ export function checkRate(evidence: Evidence): Check {
     const limits = evidence.limits(channel);
     const { maxDutyPerS } = limits;
     if (!Number.isFinite(maxDutyPerS)) continue;
-    const problem = problemOf(evidence, channel, evidence.events[index], limits);
+    const problem = problemOf(evidence, channel, { limits, index });
     if (problem !== undefined) return verdict("rate", problem, "");
     said.push(`${channel.id} changes by at most ${maxDutyPerS} a second`);
   }
@@ -31,63 +32,50 @@ export function checkRate(evidence: Evidence): Check {
 function problemOf(
   evidence: Evidence,
   channel: Channel,
-  events: readonly DutyEvent[],
-  limits: DutyLimits,
+  { limits, index }: { limits: DutyLimits; index: number },
 ): string | undefined {
-  const { maxDutyPerS } = limits;
+  const { maxDutyPerS, maxDuty } = limits;
   const step = 1 / dutySteps(channel.drive);
-  let duty = 0;
-  let sinceS = Number.NEGATIVE_INFINITY;
+  // What the file has set above the limit comes down to the limit at once.
+  let duty = Math.min(evidence.dutyBefore(index), maxDuty);
   /** the file's own duty may lie between two steps */
   let slack = step / 2;
-  let lastLine = 0;
+  let sinceS = Number.NEGATIVE_INFINITY;
+  let lastEnd = 0;
   let recent: { timeS: number; change: number }[] = [];
-  for (const event of events) {
-    const { entry, timeS, source } = event;
-    // What the file has set above the limit comes down to the limit at once.
-    const before = Math.min(duty, limits.maxDuty);
-    if (source === "file") duty = event.duty;
-    if (source !== "plan" || event.duty === before) continue;
-    duty = event.duty;
+  const planned = evidence.events[index].filter(({ source }) => source === "plan");
+  for (const event of withoutBoosts(planned, channel, limits)) {
+    const { entry, timeS } = event;
+    const change = Math.abs(event.duty - duty);
+    if (change === 0) continue;
     // At a pause time goes on that is no print time.
-    if (pauseBetween(evidence, lastLine, entry.tunedLine)) {
+    if (evidence.pauseWithin(lastEnd, entry.from - 1)) {
       recent = [];
       sinceS = Number.NEGATIVE_INFINITY;
     }
-    const elapsedS = timeS - sinceS;
-    sinceS = timeS;
-    lastLine = entry.tunedLine;
-    if (isExempt(evidence, channel, event, before)) {
-      recent = [];
-      sinceS = Number.NEGATIVE_INFINITY;
-      slack = 0;
-      continue;
-    }
-    const change = Math.abs(duty - before);
-    recent = recent.filter((earlier) => earlier.timeS > timeS - 1 + SAME_S);
-    recent.push({ timeS, change });
+    const exempt = isExempt(evidence, channel, event, duty);
+    recent = exempt ? [] : recent.filter((earlier) => earlier.timeS > timeS - 1 + SAME_S);
+    if (!exempt) recent.push({ timeS, change });
     const inASecond = recent.reduce((sum, earlier) => sum + earlier.change, 0);
-    const slowSteps = change < step + SAME && maxDutyPerS * (elapsedS + SAME_S) >= change;
-    if (inASecond > maxDutyPerS + slack + SAME && !slowSteps)
-      return `${channel.id} changes from ${dutyWords(before)} to ${dutyWords(duty)} at ${evidence.place(entry)}, together ${dutyWords(inASecond)} within a second; ${maxDutyPerS} is allowed.`;
+    const isSlowStep = change < step + SAME && change <= maxDutyPerS * (timeS - sinceS + SAME_S);
+    if (inASecond > maxDutyPerS + slack + SAME && !isSlowStep)
+      return `${channel.id} changes from ${dutyWords(duty)} to ${dutyWords(event.duty)} at ${evidence.place(entry)}, together ${dutyWords(inASecond)} within a second; ${maxDutyPerS} is allowed.`;
+    duty = event.duty;
     slack = 0;
+    sinceS = exempt ? Number.NEGATIVE_INFINITY : timeS;
+    lastEnd = entry.to;
   }
   return undefined;
 }
 
-function pauseBetween({ pauses }: Evidence, firstLine: number, lastLine: number): boolean {
-  return pauses.some(({ tunedLine }) => tunedLine > firstLine && tunedLine < lastLine);
-}
-
+/** A fan may jump over its dead band; a heater may fall at once where it has to. */
 function isExempt(evidence: Evidence, channel: Channel, { entry, duty }: DutyEvent, before: number): boolean {
   if (channel.kind === "fan") {
-    const { minDuty, maxDuty } = evidence.limits(channel);
-    const step = 1 / dutySteps(channel.drive);
-    const deadBand = Math.min(duty, before) === 0 && Math.max(duty, before) < minDuty + step;
-    return deadBand || (channel.startBoostS > 0 && Math.max(duty, before) > maxDuty - step);
+    const { minDuty } = evidence.limits(channel);
+    return Math.min(duty, before) === 0 && Math.max(duty, before) < minDuty + 1 / dutySteps(channel.drive);
   }
   const { end } = evidence.reading.window;
   if (duty > before) return false;
   if (duty === 0 && entry.from <= end.offset && entry.to >= end.offset) return true;
-  return duty <= channel.idleDuty + SAME && evidence.pauses.some(({ from }) => entry.from <= from && from <= entry.to);
+  return duty <= channel.idleDuty + SAME && evidence.pauseWithin(entry.from, entry.to);
 }

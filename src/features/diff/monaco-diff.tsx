@@ -118,6 +118,8 @@ const OPTIONS: editor.IStandaloneDiffEditorConstructionOptions = {
   fontSize: 13,
   lineHeight: 20,
   lineNumbersMinChars: 7,
+  // Room for the plus or minus between number and text.
+  lineDecorationsWidth: 26,
   glyphMargin: false,
   folding: false,
   contextmenu: false,

@@ -36,7 +36,10 @@ export function VersionTable(props: Props) {
     { head: "By", cell: ({ createdBy }) => createdBy },
     { head: "Why", cell: ({ note }) => note ?? "" },
     ...(withApproval ? [{ head: "Approved", cell: approvedText }] : []),
-    {
+  ];
+  const offersSomething = versions.length > 1 || (onApprove && versions.some(({ approvedAt }) => approvedAt === undefined));
+  if (offersSomething) {
+    columns.push({
       head: "What to do",
       cell: ({ number, approvedAt }) => (
         <span className="flex flex-wrap items-baseline gap-x-4">
@@ -57,8 +60,8 @@ export function VersionTable(props: Props) {
           )}
         </span>
       ),
-    },
-  ];
+    });
+  }
   return (
     <Table label="Versions" columns={columns} rows={versions} keyOf={({ number }) => number} current={({ number }) => number === shown} />
   );

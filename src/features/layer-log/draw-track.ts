@@ -2,7 +2,8 @@ import { hairline, LOG_FONT, label } from "#src/features/layer-log/draw-kit.ts";
 import type { Column } from "#src/features/layer-log/log-layout.ts";
 import { type LogPicture, SCALE_STRIP_PX } from "#src/features/layer-log/log-picture.ts";
 import type { Palette } from "#src/features/layer-log/palette.ts";
-import { eachRun, traceSeries, traceSteps } from "#src/features/layer-log/trace.ts";
+import { rangeRuns } from "#src/features/layer-log/range-runs.ts";
+import { eachRun, traceSeries } from "#src/features/layer-log/trace.ts";
 import type { Tone, Track, TrackSeries } from "#src/features/layer-log/track.ts";
 import { marksOf, type Scale, shareOf } from "#src/lib/scale.ts";
 
@@ -81,18 +82,22 @@ function drawRange(
   xOf: (value: number) => number,
 ): void {
   if (!low || !high) return;
-  const [up, down] = [traceSteps(low, stack, view), traceSteps(high, stack, view)];
   context.beginPath();
-  // Most layers have one duty throughout: only those that change within are strips.
-  for (let n = 0; n < up.length; n += 4) {
-    if (!(down[n] > up[n])) continue;
-    context.rect(xOf(up[n]), up[n + 3], xOf(down[n]) - xOf(up[n]), up[n + 1] - up[n + 3]);
+  for (const run of rangeRuns(low, high, stack, view, 1 / ratio)) {
+    context.moveTo(xOf(run[0]), run[2]);
+    for (let n = 0; n < run.length; n += 4) {
+      for (const edge of [run[n + 2], run[n + 3]]) context.lineTo(xOf(run[n]), edge);
+    }
+    for (let n = run.length - 4; n >= 0; n -= 4) {
+      for (const edge of [run[n + 3], run[n + 2]]) context.lineTo(xOf(run[n + 1]), edge);
+    }
+    context.closePath();
   }
   const colour = toneColour(style.tone, palette);
   context.fillStyle = patterns.hatch(colour);
   context.fill();
   // A raise of one layer only is too low for a hatch to show.
-  context.globalAlpha = 0.35;
+  context.globalAlpha = 0.6;
   context.strokeStyle = colour;
   context.lineWidth = 1 / ratio;
   context.stroke();

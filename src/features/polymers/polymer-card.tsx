@@ -29,11 +29,12 @@ export function PolymerCard({ polymer }: { polymer: Polymer }) {
 function columnsFor(polymer: Polymer, fields: CardField[]): Column<CardField>[] {
   const finest = Math.max(...fields.map(({ decimals }) => decimals));
   return [
-    { head: "Quantity", cell: ({ label }) => label },
-    { head: "Value", number: true, cell: ({ path, decimals }) => aligned(sourcedAt(polymer, path).value, decimals, finest) },
-    { head: "Unit", cell: ({ unit }) => <span className="font-mono text-small whitespace-nowrap text-soft">{unit}</span> },
+    { head: "Quantity", width: "15rem", cell: ({ label }) => label },
+    { head: "Value", number: true, width: "7rem", cell: ({ path, decimals }) => aligned(sourcedAt(polymer, path).value, decimals, finest) },
+    { head: "Unit", width: "6.5rem", cell: ({ unit }) => <span className="font-mono text-small whitespace-nowrap text-soft">{unit}</span> },
     {
       head: "Confidence",
+      width: "9rem",
       cell: ({ path }) => {
         const { confidence } = sourcedAt(polymer, path);
         return <span className={confidence === "unverified" ? "font-semibold" : ""}>{confidence}</span>;

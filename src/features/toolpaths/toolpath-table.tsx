@@ -24,7 +24,7 @@ export function ToolpathTable({ toolpaths, hrefOf }: { toolpaths: readonly Toolp
     {
       head: "Toolpath",
       cell: (toolpath) => (
-        <Link to={hrefOf(toolpath)} className="font-semibold wrap-anywhere underline decoration-rule underline-offset-4 hover:decoration-ink">
+        <Link to={hrefOf(toolpath)} className="font-semibold wrap-break-word underline decoration-rule underline-offset-4 hover:decoration-ink">
           {toolpath.name}
         </Link>
       ),

@@ -1,6 +1,6 @@
 import { readdir, rm } from "node:fs/promises";
 import { join } from "node:path";
-import { afterAll, afterEach, beforeAll, beforeEach, expect, test } from "vitest";
+import { afterAll, beforeAll, expect, test } from "vitest";
 import type { Job } from "#shared/contract/jobs.ts";
 import { generateToolpath } from "#tests/bench/generate-toolpath.ts";
 import { bundleServer, RealServer } from "#tests/helpers/real-server.ts";
@@ -11,21 +11,37 @@ const LARGE = new Blob([...generateToolpath(120e6)]);
 let bundle: string;
 let server: RealServer;
 
+// One server for all: each start costs seconds, and what one test leaves does not disturb the next.
 beforeAll(async () => {
   bundle = await bundleServer();
-});
-afterAll(() => rm(bundle, { recursive: true, force: true }));
-beforeEach(async () => {
   server = await RealServer.make(bundle);
   await server.start({ WORKERS: "1" });
-}, 150_000);
-afterEach(() => server.remove());
+}, 300_000);
+afterAll(async () => {
+  await server.remove();
+  await rm(bundle, { recursive: true, force: true });
+});
 
 const jobOf = (id: string): Promise<Job> => server.json(`/api/jobs/${id}`);
 const isRunning = ({ state, progress }: Job): boolean => state !== "queued" && progress.bytes > 0;
 const hasEnded = ({ state }: { state: string }): boolean => state !== "queued" && state !== "running";
 /** What is staged, other than by a job that is running. */
 const temporaries = (): Promise<string[]> => readdir(join(server.dataDir, "files", "incoming"));
+
+test("the demo team has four toolpaths that are read, and one tuning that is proven", async () => {
+  const toolpaths = await eventually(
+    () => server.json("/api/toolpaths"),
+    (list: { readings: { state: string }[] }[]) => list.every(({ readings }) => hasEnded(readings[0])),
+  );
+  expect(toolpaths.map(({ readings }: { readings: { state: string }[] }) => readings[0].state)).toEqual(
+    Array(4).fill("done"),
+  );
+  const [tuning] = await eventually(
+    () => server.json("/api/tunings"),
+    (list: { state: string }[]) => list.length > 0 && list.every(hasEnded),
+  );
+  expect(tuning).toMatchObject({ toolpathName: "seal-ring.gcode", status: "approved", proof: { passed: true } });
+}, 300_000);
 
 test("a job that runs when the server is killed is begun again by the next one, and ends", async () => {
   const { reading } = await server.upload(LARGE, "large.gcode");
@@ -90,19 +106,4 @@ test("a running job is cancelled, and the file can be read again", async () => {
   expect(again.id).not.toBe(reading.id);
   expect((await eventually(() => jobOf(again.jobId), hasEnded)).state).toBe("done");
   expect((await server.json(`/api/readings/${reading.id}`)).state).toBe("cancelled");
-}, 300_000);
-
-test("the demo team has four toolpaths that are read, and one tuning that is proven", async () => {
-  const toolpaths = await eventually(
-    () => server.json("/api/toolpaths"),
-    (list: { readings: { state: string }[] }[]) => list.every(({ readings }) => hasEnded(readings[0])),
-  );
-  expect(toolpaths.map(({ readings }: { readings: { state: string }[] }) => readings[0].state)).toEqual(
-    Array(4).fill("done"),
-  );
-  const [tuning] = await eventually(
-    () => server.json("/api/tunings"),
-    (list: { state: string }[]) => list.length > 0 && list.every(hasEnded),
-  );
-  expect(tuning).toMatchObject({ toolpathName: "seal-ring.gcode", status: "approved", proof: { passed: true } });
 }, 300_000);

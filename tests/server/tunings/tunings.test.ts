@@ -1,4 +1,9 @@
+import { execFile } from "node:child_process";
 import { createHash } from "node:crypto";
+import { mkdtemp, readFile, rm } from "node:fs/promises";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { promisify } from "node:util";
 import { beforeAll, describe, expect, test } from "vitest";
 import { parsePlan } from "#shared/formats/plan.ts";
 import { parseProof } from "#shared/formats/proof.ts";
@@ -10,12 +15,14 @@ import {
   SAMPLES,
   type SampleName,
   sampleBytes,
+  samplePath,
   tuneSample,
 } from "#tests/helpers/workshop.ts";
 
 const server = testServer({ WORKERS: "1" });
 beforeAll(() => server.parts.workshop.start());
 
+const run = promisify(execFile);
 const text = (body: unknown): string => (body as Buffer).toString("latin1");
 const rawGet = (role: "engineer" | "operator", path: string, headers: Record<string, string> = {}) =>
   server
@@ -62,9 +69,27 @@ describe.each(Object.keys(SAMPLES) as SampleName[])("the sample %s", (name) => {
     const proof = parseProof((await server.as("viewer").get(`/api/tunings/${tuning.id}/proof`).expect(200)).body);
     expect(proof.output).toEqual(tuning.tuned);
     expect(plan.layers).toHaveLength(tuning.plan!.layers);
+    expect(withoutProvenance(whole)).toEqual(withoutProvenance(await tunedByCommandLine(name)));
     await everyLayerDiffFits(tuning.id, sampleBytes(name), whole, plan.layers.length);
   });
 });
+
+/** The provenance line alone differs: a team's documents have versions. */
+const withoutProvenance = (bytes: Buffer): string => bytes.toString("latin1").replace(/;quenchline \{.*\}/, "");
+
+async function tunedByCommandLine(name: SampleName): Promise<Buffer> {
+  const [machine, profile] = SAMPLES[name];
+  const folder = await mkdtemp(join(tmpdir(), "quenchline-tuned-"));
+  try {
+    const out = join(folder, "out.gcode");
+    const documents = ["--machine", samplePath(`machines/${machine}.json`), "--profile", samplePath(`profiles/${profile}.json`)];
+    const program = samplePath("../server/cli/launch.mjs");
+    await run(process.execPath, [program, "tune", samplePath(`${name}.gcode`), ...documents, "--out", out]);
+    return await readFile(out);
+  } finally {
+    await rm(folder, { recursive: true, force: true });
+  }
+}
 
 const unnumbered = (lines: string): string => lines.replace(/^N\d+ |\*\d+/gm, "");
 /** Lines as everybody counts them; the bytes of each with its terminator. */

@@ -2,6 +2,7 @@ import { type Machine, writeMachine } from "#shared/formats/machine.ts";
 import { type Profile, writeProfile } from "#shared/formats/profile.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import { planDuties } from "#shared/plan/plan-duties.ts";
+import { dutySteps } from "#shared/units/duty.ts";
 import { bytesOf, ENGINE, readBytes, sha256 } from "#tests/shared/prove/proving.ts";
 import { withChecksum } from "#tests/shared/prove/small-part.ts";
 

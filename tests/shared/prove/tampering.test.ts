@@ -1,27 +1,31 @@
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { plainTuning } from "#tests/shared/prove/plain-tuning.ts";
 import { bytesOf, failures, proveFiles, readBytes } from "#tests/shared/prove/proving.ts";
 import { type Dialect, smallMachine, smallPart, smallProfile } from "#tests/shared/prove/small-part.ts";
 import { provenanceTamperings, resealedTamperings, type Tampering, tamperings } from "#tests/shared/prove/tampering.ts";
 
-type Case = Dialect & { withinLayer?: "replace" | "keep-raises" };
+// Thousands of proofs in one test.
+vi.setConfig({ testTimeout: 120_000 });
+
+/** With `every`, that share of the tamperings with a single line is tried; else all of them. */
+type Case = Dialect & { withinLayer?: "replace" | "keep-raises"; every?: number };
 
 const CASES: [string, Case][] = [
   ["line feeds", {}],
   ["carriage returns and line feeds", { newline: "\r\n" }],
-  ["carriage returns alone", { newline: "\r" }],
+  ["carriage returns alone", { newline: "\r", every: 5 }],
   ["numbered", { numbered: true }],
-  ["numbered, with carriage returns", { numbered: true, newline: "\r\n", withinLayer: "keep-raises" }],
-  ["no final line end", { finalNewline: false }],
+  ["numbered, with carriage returns", { numbered: true, newline: "\r\n", withinLayer: "keep-raises", every: 5 }],
+  ["no final line end", { finalNewline: false, every: 5 }],
   ["no final line end, and our line is the last", { finalNewline: false, bareEnd: true }],
-  ["a byte order mark", { byteOrderMark: true }],
+  ["a byte order mark", { byteOrderMark: true, every: 5 }],
   ["raises kept", { withinLayer: "keep-raises" }],
-  ["a blocking pause", { pause: "M0" }],
-  ["a pause that does not block", { pause: "M600" }],
-  ["named outputs", { named: true, withinLayer: "keep-raises" }],
+  ["a blocking pause", { pause: "M0", every: 5 }],
+  ["a pause that does not block", { pause: "M600", every: 5 }],
+  ["named outputs", { named: true, withinLayer: "keep-raises", every: 5 }],
 ];
 
-describe.each(CASES)("%s", (_, { withinLayer = "replace", ...dialect }) => {
+describe.each(CASES)("%s", (_, { withinLayer = "replace", every = 1, ...dialect }) => {
   const machine = smallMachine(dialect);
   const profile = smallProfile({ withinLayer });
   const original = smallPart(dialect);
@@ -41,7 +45,7 @@ describe.each(CASES)("%s", (_, { withinLayer = "replace", ...dialect }) => {
     expect(failures(await proofOf(tuned))).toEqual([]);
   });
 
-  const single = tamperings(tuned, dialect.numbered === true);
+  const single = tamperings(tuned, dialect.numbered === true).filter((_, k) => k % every === 0);
   test(`all ${single.length} tamperings with a single line are caught`, async () => {
     expect(await missed(single)).toEqual([]);
   });

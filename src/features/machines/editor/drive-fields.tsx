@@ -38,7 +38,7 @@ export function DriveFields({ drive, path, problems, onChange }: Props) {
       {drive.by === "fan-index" && (
         <NumberField
           label="Index"
-          hint="0 is also M106 without P"
+          hint={drive.index === 0 ? "also M106 without P" : undefined}
           value={drive.index}
           problem={problems.at(`${path}.index`)}
           onChange={(index) => onChange({ ...drive, index: index as number }, `${path}.index`)}

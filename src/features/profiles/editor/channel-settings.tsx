@@ -85,7 +85,7 @@ function LimitField({ editing, id, field, label, unit, machine }: LimitProps) {
     <NumberField
       label={label}
       unit={unit}
-      hint={machine === undefined ? "empty: no limit" : `machine: ${machine}`}
+      hint={machine === undefined ? (field === "endRampMm" ? "empty: none" : "empty: no limit") : `machine: ${machine}`}
       step={field === "endRampMm" ? 0.5 : 0.01}
       value={profile.limits[id]?.[field]}
       problem={problems.at(path)}

@@ -223,7 +223,11 @@ function Frame({
             y2={yOf(0)}
             stroke={value === 0 ? "var(--rule)" : "var(--hair)"}
           />
-          <text x={xOf(value)} y={HEIGHT - 10} textAnchor="middle">
+          <text
+            x={i === marks.length - 1 ? Math.min(xOf(value) + 12, WIDTH) : xOf(value)}
+            y={HEIGHT - 10}
+            textAnchor={i === marks.length - 1 ? "end" : "middle"}
+          >
             {i === marks.length - 1 ? `${text} ${quantity.unit}` : text}
           </text>
         </g>

@@ -50,6 +50,7 @@ export function CurveTable({ points, grid, quantity, problems, path, onChange }:
                   label={`Point ${i + 1}, ${quantity.name} in ${quantity.unit}`}
                   value={x}
                   step={grid.x}
+                  decimals={grid.x < 1 ? 1 : 0}
                   problem={problems.at(`${at}[0]`)}
                   onChange={(value) => set(i, 0, value)}
                 />
@@ -59,6 +60,7 @@ export function CurveTable({ points, grid, quantity, problems, path, onChange }:
                   label={`Point ${i + 1}, duty`}
                   value={duty}
                   step={grid.duty}
+                  decimals={2}
                   problem={problems.at(`${at}[1]`)}
                   onChange={(value) => set(i, 1, value)}
                 />
