@@ -1,4 +1,6 @@
-// `npm run build`, first half: bundles the programs that run outside the browser into dist/. The second is `vite build`.
-import { buildPrograms } from "./built.mjs";
+// `npm run build`: bundles the programs that run outside the browser into dist/, and the client into dist/client/. With
+// `-- --programs` the client is left out.
+import { buildClient, buildPrograms } from "./built.mjs";
 
 await buildPrograms();
+if (!process.argv.includes("--programs")) await buildClient();

@@ -22,12 +22,16 @@ const CLIENT_SOURCES = [
 
 /** Bundles command line, server and worker into dist/, beside the client. */
 export async function buildPrograms() {
+  const state = fingerprint(PROGRAM_SOURCES);
   mkdirSync(DIST, { recursive: true });
   for (const name of readdirSync(DIST)) if (/\.mjs(\.map)?$/.test(name)) rmSync(join(DIST, name));
   await bundle(PROGRAMS, DIST);
+  writeFileSync(stampOf("programs"), state);
 }
 
-function buildClient() {
+/** Builds the pages and what they load into dist/client/. */
+export async function buildClient() {
+  const state = fingerprint(CLIENT_SOURCES);
   const vite = join(ROOT, "node_modules", "vite", "bin", "vite.js");
   const { status } = spawnSync(process.execPath, [vite, "build", "--logLevel", "warn"], {
     cwd: ROOT,
@@ -35,6 +39,7 @@ function buildClient() {
     stdio: ["ignore", 2, 2],
   });
   if (status !== 0) throw new Error('the client can\'t be built: run "npm run build" and see what it says');
+  writeFileSync(stampOf("client"), state);
 }
 
 /**
@@ -49,12 +54,12 @@ export async function freshServer() {
   return server;
 }
 
-/** Remembers from which state of the sources something was built. */
+/** From which state of the sources something was built. */
+const stampOf = (what) => join(DIST, `${what}.built`);
+
 async function unlessFresh(what, sources, result, build) {
-  const stamp = join(DIST, `${what}.built`);
-  const state = fingerprint(sources);
-  if (existsSync(result) && existsSync(stamp) && readFileSync(stamp, "utf8") === state) return;
+  const stamp = stampOf(what);
+  if (existsSync(result) && existsSync(stamp) && readFileSync(stamp, "utf8") === fingerprint(sources)) return;
   process.stderr.write(`quenchline: building its ${what} …\n`);
   await build();
-  writeFileSync(stamp, state);
 }

@@ -1,6 +1,6 @@
 import type { Db } from "#server/db/client.ts";
-import * as queries from "#server/jobs/queries.ts";
 import type { JobRow, NewJob } from "#server/jobs/queries.ts";
+import * as queries from "#server/jobs/queries.ts";
 import type { TaskProgress } from "#server/jobs/tasks.ts";
 import type { RefusalReport } from "#shared/contract/common.ts";
 

@@ -1,20 +1,17 @@
 import { setTimeout as wait } from "node:timers/promises";
-import type { Logger } from "pino";
-import type { Db } from "#server/db/client.ts";
 import type { JobEvents } from "#server/jobs/job-events.ts";
-import type { JobKind, JobKinds } from "#server/jobs/job-kind.ts";
-import type { JobQueue } from "#server/jobs/job-queue.ts";
 import { jobView } from "#server/jobs/job-view.ts";
 import type { JobRow } from "#server/jobs/queries.ts";
-import type { Task, TaskProgress, TaskResult } from "#server/jobs/tasks.ts";
+import { type SettleParts, type Stopped, settleJob } from "#server/jobs/settle-job.ts";
+import type { Task, TaskProgress } from "#server/jobs/tasks.ts";
 import type { Outcome, WorkerThread } from "#server/jobs/worker-thread.ts";
-import type { Shelf } from "#server/storage/shelf.ts";
-import type { RefusalReport } from "#shared/contract/common.ts";
 
 /** Rows are brought up to date this often while a job runs; events come more often. */
 const WRITE_EVERY_MS = 1_000;
 const RETRY_AFTER_MS = 1_000;
+/** How long a job may be claimed without being known here. */
 const CLAIM_MS = 20;
+const CLAIM_LOOKS = 100;
 
 interface Running {
   abort: AbortController;
@@ -22,14 +19,9 @@ interface Running {
   ended: Promise<void>;
 }
 
-export interface RunnerParts {
-  db: Db;
-  log: Logger;
-  queue: JobQueue;
-  shelf: Shelf;
+export interface RunnerParts extends SettleParts {
   events: JobEvents;
   threads: readonly WorkerThread[];
-  kinds: JobKinds;
 }
 
 /** Takes jobs from the queue as long as there are any, one for each thread, and sees every one of them to its end. */
@@ -71,9 +63,12 @@ export class JobRunner {
   /** Ends a job, waiting or running. One that has ended already stays as it is. */
   async cancel(id: string): Promise<void> {
     const { queue } = this.parts;
-    for (;;) {
+    for (let look = 0; look < CLAIM_LOOKS; look++) {
       const waiting = await queue.cancelWaiting(id);
-      if (waiting) return this.tell(waiting);
+      if (waiting) {
+        this.tell(waiting);
+        return;
+      }
       const running = this.running.get(id);
       running?.abort.abort();
       await running?.ended;
@@ -81,6 +76,9 @@ export class JobRunner {
       // It was being claimed this very moment, or went back into the queue.
       await wait(CLAIM_MS);
     }
+    // It says that it runs, but nobody is working on it.
+    const left = await queue.cancelRunning(id);
+    if (left) this.tell(left);
   }
 
   /** Stops working; what was running is put back and begun again by the next server. */
@@ -126,7 +124,7 @@ export class JobRunner {
     try {
       this.tell(job);
       const outcome = await this.work(job, thread, running);
-      const row = await this.settle(job, outcome, running.abort.signal);
+      const row = await settleJob(this.parts, job, outcome, this.stopped(running));
       this.running.delete(job.id);
       if (row) this.tell(row);
     } catch (error) {
@@ -152,44 +150,9 @@ export class JobRunner {
     });
   }
 
-  private async settle(job: JobRow, outcome: Outcome, { aborted }: AbortSignal): Promise<JobRow | undefined> {
-    const { queue, shelf, log } = this.parts;
-    switch (outcome.end) {
-      case "done":
-        return this.record(job, outcome.result);
-      case "refused":
-        return this.refuse(job, outcome.refusal);
-      case "cancelled":
-        await shelf.storage.discardOf(job.id);
-        return this.closing ? queue.giveBack(job.id) : queue.cancelRunning(job.id);
-      case "failed":
-        log.error({ job: job.id, kind: job.kind, attempt: job.attempts, reason: outcome.reason }, "a job failed");
-        await shelf.storage.discardOf(job.id);
-        return aborted && !this.closing ? queue.cancelRunning(job.id) : queue.fail(job);
-    }
-  }
-
-  private record(job: JobRow, result: TaskResult): Promise<JobRow | undefined> {
-    const { db, queue, shelf, kinds } = this.parts;
-    // The worker answers a task of one kind with a result of that kind.
-    const kind = kinds[result.kind] as JobKind<TaskResult["kind"]>;
-    return shelf.keep(kind.staged(result), () =>
-      db.transaction(async (tx) => {
-        await kind.done(tx, job, result);
-        return queue.finish(tx, job.id);
-      }),
-    );
-  }
-
-  private async refuse(job: JobRow, refusal: RefusalReport): Promise<JobRow | undefined> {
-    const { db, queue, shelf, kinds } = this.parts;
-    let unused: string[] = [];
-    const row = await db.transaction(async (tx) => {
-      unused = (await kinds[job.kind].refused?.(tx, job)) ?? [];
-      return queue.refuse(tx, job.id, refusal);
-    });
-    await shelf.release(unused);
-    return row;
+  private stopped({ abort }: Running): Stopped {
+    if (!abort.signal.aborted) return undefined;
+    return this.closing ? "server stops" : "cancelled";
   }
 
   private async setBack(job: JobRow): Promise<void> {
@@ -208,4 +171,3 @@ export class JobRunner {
     if (job.state === "queued") this.wake();
   }
 }
-

@@ -1,4 +1,4 @@
-import { and, asc, eq, gt, inArray, lt, or, sql } from "drizzle-orm";
+import { and, asc, eq, gt, inArray, or, sql } from "drizzle-orm";
 import type { Db } from "#server/db/client.ts";
 import { jobs } from "#server/db/schema/jobs.ts";
 import type { RefusalReport } from "#shared/contract/common.ts";
@@ -39,14 +39,24 @@ export async function claimOldest(db: Db): Promise<JobRow | undefined> {
   const now = new Date();
   const [row] = await db
     .update(jobs)
-    .set({ state: "running", attempts: sql`${jobs.attempts} + 1`, startedAt: now, changedAt: now, bytes: 0, layers: null })
+    .set({
+      state: "running",
+      attempts: sql`${jobs.attempts} + 1`,
+      startedAt: now,
+      changedAt: now,
+      bytes: 0,
+      layers: null,
+    })
     .where(inArray(jobs.id, oldest))
     .returning();
   return row;
 }
 
 export async function updateProgress(db: Db, id: string, progress: { bytes: number; layers?: number }): Promise<void> {
-  await db.update(jobs).set(progress).where(and(eq(jobs.id, id), eq(jobs.state, "running")));
+  await db
+    .update(jobs)
+    .set(progress)
+    .where(and(eq(jobs.id, id), eq(jobs.state, "running")));
 }
 
 /** @param from the states it may be in; @returns undefined when it is in another one */
@@ -98,17 +108,10 @@ export function listRecent(db: Db, teamId: string, since: Date): Promise<JobRow[
   return db
     .select()
     .from(jobs)
-    .where(
-      and(eq(jobs.teamId, teamId), or(inArray(jobs.state, ["queued", "running"]), gt(jobs.changedAt, since))),
-    )
+    .where(and(eq(jobs.teamId, teamId), or(inArray(jobs.state, ["queued", "running"]), gt(jobs.changedAt, since))))
     .orderBy(asc(jobs.changedAt));
 }
 
 export async function removeJobs(db: Db, ids: string[]): Promise<void> {
   if (ids.length > 0) await db.delete(jobs).where(inArray(jobs.id, ids));
-}
-
-/** How many wait before this one. */
-export async function countBefore(db: Db, job: Pick<JobRow, "createdAt">): Promise<number> {
-  return db.$count(jobs, and(eq(jobs.state, "queued"), lt(jobs.createdAt, job.createdAt)));
 }

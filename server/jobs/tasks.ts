@@ -1,10 +1,9 @@
-import type { RefusalReport } from "#shared/contract/common.ts";
-import type { StoredFile } from "#shared/contract/common.ts";
+import type { Staged } from "#server/storage/storage.ts";
+import type { RefusalReport, StoredFile } from "#shared/contract/common.ts";
 import type { Reading as ReadingRow } from "#shared/contract/toolpaths.ts";
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Polymer } from "#shared/formats/polymer.ts";
 import type { Profile } from "#shared/formats/profile.ts";
-import type { Staged } from "#server/storage/storage.ts";
 
 /** Everything a worker needs for one job: it has the stored bytes and this, and no database. */
 export type Task = ReadTask | TuneTask;

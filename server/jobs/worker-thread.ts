@@ -105,21 +105,8 @@ class Watch {
   private readonly onMessage = (message: FromWorker): void => {
     clearTimeout(this.silence);
     this.silence = this.waitForSign();
-    switch (message.say) {
-      case "ready":
-        return;
-      case "progress":
-        this.onProgress(message.progress);
-        return;
-      case "done":
-        return this.end({ end: "done", result: message.result });
-      case "refused":
-        return this.end({ end: "refused", refusal: message.refusal });
-      case "cancelled":
-        return this.end({ end: "cancelled" });
-      case "failed":
-        return this.end({ end: "failed", reason: message.reason });
-    }
+    if (message.say === "progress") this.onProgress(message.progress);
+    else if (message.say !== "ready") this.end(outcomeOf(message));
   };
 
   private readonly onError = (error: unknown): void => {
@@ -150,6 +137,19 @@ class Watch {
     this.worker.off("exit", this.onExit);
     this.signal.removeEventListener("abort", this.onAbort);
     this.resolve(outcome);
+  }
+}
+
+function outcomeOf(message: Exclude<FromWorker, { say: "ready" | "progress" }>): Outcome {
+  switch (message.say) {
+    case "done":
+      return { end: "done", result: message.result };
+    case "refused":
+      return { end: "refused", refusal: message.refusal };
+    case "cancelled":
+      return { end: "cancelled" };
+    case "failed":
+      return { end: "failed", reason: message.reason };
   }
 }
 

@@ -1,6 +1,6 @@
 import { join } from "node:path";
-import { DatabaseQueue, type JobQueue } from "#server/jobs/job-queue.ts";
 import { JobEvents } from "#server/jobs/job-events.ts";
+import { DatabaseQueue, type JobQueue } from "#server/jobs/job-queue.ts";
 import { JobRunner } from "#server/jobs/job-runner.ts";
 import { jobView } from "#server/jobs/job-view.ts";
 import type { JobRow } from "#server/jobs/queries.ts";

@@ -31,7 +31,8 @@ export async function usedHashes(db: Db, hashes: readonly string[]): Promise<Set
       .from(toolpaths)
       .where(and(inArray(toolpaths.sha256, wanted), isNull(toolpaths.refusedAt))),
   );
-  for (const column of READING_COLUMNS) add(await db.select({ sha256: column }).from(readings).where(inArray(column, wanted)));
+  for (const column of READING_COLUMNS)
+    add(await db.select({ sha256: column }).from(readings).where(inArray(column, wanted)));
   for (const column of TUNING_COLUMNS)
     add(await db.select({ sha256: column }).from(tunings).where(inArray(column, wanted)));
   return used;

@@ -25,7 +25,10 @@ const MEASURES: (keyof LayerReading & string)[] = [
  * The layers as a table, a row a layer: RFC 4180, a header line, decimal points. Duties are given by channel as the
  * file commands them.
  */
-export function* layersCsv({ layers }: ReadingDocument, channels: readonly string[]): Generator<string, void, undefined> {
+export function* layersCsv(
+  { layers }: ReadingDocument,
+  channels: readonly string[],
+): Generator<string, void, undefined> {
   const duties = channels.flatMap((id) => [`${id} mean`, `${id} min`, `${id} max`]);
   yield row([...MEASURES, ...duties, "waits"]);
   for (const layer of layers) {

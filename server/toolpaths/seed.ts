@@ -25,7 +25,12 @@ export async function seedToolpaths(parts: Parts, operator: toolpaths.Uploader):
   const { db, workshop } = parts;
   let reading: Reading | undefined;
   for (const [fileName, machineName] of PARTS)
-    reading = await seedToolpath(parts, operator, fileName, await named(machines.storedNamed(db, operator.teamId, machineName)));
+    reading = await seedToolpath(
+      parts,
+      operator,
+      fileName,
+      await named(machines.storedNamed(db, operator.teamId, machineName)),
+    );
   if (!reading) return;
   await whenEnded(db, workshop, operator.teamId, reading.jobId);
   const profile = await named(profiles.storedNamed(db, operator.teamId, PROFILE));

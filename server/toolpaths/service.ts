@@ -68,7 +68,9 @@ export async function readAgain(
 ): Promise<Reading> {
   const { toolpath } = await findToolpath(db, reader.teamId, toolpathId);
   if (toolpath.refusedAt !== null)
-    throw new AppError("not-found", "This file was refused, so its bytes were not kept.", { remedy: "Upload it again." });
+    throw new AppError("not-found", "This file was refused, so its bytes were not kept.", {
+      remedy: "Upload it again.",
+    });
   const machine = await machines.stored(db, reader.teamId, machineId, machineVersion);
   const { job, readingId, isNew } = await db.transaction((tx) =>
     enqueueReading(tx, workshop, reader, toolpath, machine),

@@ -80,8 +80,8 @@ class StagingEngine implements StorageEngine {
 
   _removeFile(_request: Request, { path }: Express.Multer.File, done: (error: Error | null) => void): void {
     const staged = this.staged.get(path);
-    if (staged === undefined) return done(null);
-    this.options.storage.discard(staged).then(() => done(null), done);
+    const discarded = staged ? this.options.storage.discard(staged) : Promise.resolve();
+    discarded.then(() => done(null), done);
   }
 }
 
@@ -106,7 +106,8 @@ function uploadError(error: unknown, { maxBytes }: UploadOptions): unknown {
 const BROKEN_OFF = /^(Request (aborted|closed|error)|Unexpected end of (form|file)|aborted|Premature close)$/;
 const MALFORMED = /^(Malformed (part header|content type)|Multipart: Boundary not found)$/;
 
-const tooLargeError = (message: string, remedy: string): AppError => new AppError("too-large", `${message}.`, { remedy });
+const tooLargeError = (message: string, remedy: string): AppError =>
+  new AppError("too-large", `${message}.`, { remedy });
 
 /** A name for lists and downloads: no folders, no control characters, no `.gz`, not too long. */
 function plainName(original: string): string {

@@ -2,8 +2,8 @@ import { notFound } from "#server/http/app-error.ts";
 import { readRows } from "#server/storage/number-table.ts";
 import { readStored, textOf } from "#server/storage/read-stored.ts";
 import type { Storage } from "#server/storage/storage.ts";
-import { LineStarts } from "#server/toolpaths/line-starts.ts";
 import { MOST_TEXT_BYTES, wholeLines } from "#server/toolpaths/layer-lines.ts";
+import { LineStarts } from "#server/toolpaths/line-starts.ts";
 import { type DoneTuning, tunedBytesOf } from "#server/tunings/service.ts";
 import {
   EDIT_WIDTH,

@@ -1,5 +1,5 @@
-import { tunedName } from "#server/tunings/tuned-name.ts";
 import type { TuningRow } from "#server/tunings/queries.ts";
+import { tunedName } from "#server/tunings/tuned-name.ts";
 import type { Tuning } from "#shared/contract/tunings.ts";
 
 /** @param acknowledged the caller has acknowledged the cautions of this version of the machine */

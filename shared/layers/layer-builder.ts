@@ -15,6 +15,8 @@ import { Refusal } from "#shared/refusal.ts";
 
 /** More layers than this is no part that this trade prints. */
 const MAX_LAYERS = 100_000;
+/** Nor does it wait this often: waits and pauses are kept one by one. */
+const MAX_WAITS = 1_000_000;
 /** Layers found before the first marker that are still taken for the start of the print. */
 const START_LAYERS = 2;
 /** No layer is thinner than this, µm: where nothing tells the nominal height of a spiral. */
@@ -45,6 +47,7 @@ export class LayerBuilder implements MotionSink {
   /** line after the last laying move */
   readonly lastLaid: Boundary = { offset: 0, line: 0, timeS: 0 };
   layingMoves = 0;
+  private waits = 0;
   /** set when a filament diameter is given in the file, mm */
   filamentDiameterMm: number;
 
@@ -173,6 +176,13 @@ export class LayerBuilder implements MotionSink {
       this.sums[LAST_Z] = Number.NaN;
     }
     if (kind === "dwell" && seconds === 0) return;
+    if (++this.waits > MAX_WAITS)
+      throw new Refusal(
+        "too-many-waits",
+        `more than ${MAX_WAITS} dwells, pauses and other waits`,
+        "Check that the file is a sliced part.",
+        { line: this.scan.line },
+      );
     this.current?.waits.push({ kind, line: this.scan.line, seconds });
   }
 
@@ -256,7 +266,8 @@ export class LayerBuilder implements MotionSink {
       else if (zUm > this.baseUm + this.ceilingUm()) {
         // Behind a travel it is a seam that ramps up from the layer below.
         this.spiral ||= fromUm === this.zUm && this.running !== 0;
-        this.beginLayer(zUm, fromUm < this.zUm ? this.zUm : Math.min(Math.max(this.baseUm + this.ceilingUm(), this.zUm), zUm - 1));
+        const below = Math.max(this.baseUm + this.ceilingUm(), this.zUm);
+        this.beginLayer(zUm, fromUm < this.zUm ? this.zUm : Math.min(below, zUm - 1));
       } else if (zUm > this.zUm) this.raise(zUm);
       return;
     }

@@ -15,7 +15,7 @@ import { checkNumbering } from "#shared/prove/checks/numbering.ts";
 import { checkOffAtEnd } from "#shared/prove/checks/off-at-end.ts";
 import { checkPausesIdle } from "#shared/prove/checks/pauses-idle.ts";
 import { checkPlan } from "#shared/prove/checks/plan.ts";
-import { checkProvenance, type Expected } from "#shared/prove/checks/provenance.ts";
+import { checkProvenance, type Documents, type Expected } from "#shared/prove/checks/provenance.ts";
 import { checkRate } from "#shared/prove/checks/rate.ts";
 import { checkReadersAgree } from "#shared/prove/checks/readers-agree.ts";
 import { checkRemovedOnlyDriven } from "#shared/prove/checks/removed-only-driven.ts";
@@ -56,8 +56,12 @@ export async function prove(input: ProveInput): Promise<ProofDocument> {
   const comparison = await compareStreams(input);
   const evidence = new Evidence(reading, machine, profile, comparison);
   const hashes = input.hashes();
+  const documents: Documents = {
+    profile: profile ? { name: profile.name, sha256: digest(writeProfile(profile)) } : null,
+    machine: { name: machine.name, sha256: digest(writeMachine(machine)) },
+  };
   const first = checkBytesKept(evidence, hashes.input);
-  const checks = [first, ...(comparison.difference ? [] : checksOf(evidence, input))];
+  const checks = [first, ...(comparison.difference ? [] : checksOf(evidence, documents, input))];
   if (!comparison.difference) checks.push(checkMotion(evidence, checks));
   return {
     format: "quenchline.proof/1",
@@ -69,20 +73,19 @@ export async function prove(input: ProveInput): Promise<ProofDocument> {
     renumbered: { lines: comparison.renumbered },
     checks,
     engine: input.engine,
-    profile: profile ? { name: profile.name, sha256: digest(writeProfile(profile)) } : null,
-    machine: { name: machine.name, sha256: digest(writeMachine(machine)) },
+    ...documents,
   };
 }
 
 /** Where the files part, nothing behind that place was looked at and no other check can be made. */
-function checksOf(evidence: Evidence, { profile, digest, expected = {} }: ProveInput): Check[] {
+function checksOf(evidence: Evidence, documents: Documents, { profile, digest, expected = {} }: ProveInput): Check[] {
   const plan = profile && planAfresh(evidence, profile);
   return [
     checkReadersAgree(evidence),
     checkRemovedOnlyDriven(evidence),
     checkInsertedLegal(evidence),
     checkInsertedInside(evidence),
-    checkProvenance(evidence, digest, expected),
+    checkProvenance(evidence, documents, expected),
     checkSeal(evidence, digest),
     checkWithinLayer(evidence),
     checkLimits(evidence),

@@ -20,14 +20,20 @@ export function runEqual(original: LineFeed, tuned: LineFeed, { within, first }:
   let p = original.pos;
   let start = original.start;
   let lines = 0;
-  scan: while (p < end) {
+  while (p < end) {
     if (p === start && first[a[p]] !== 0) break;
-    let c = a[p];
-    while (c === b[p + shift] && within[c] === 0) {
-      if (++p >= end) break scan;
-      c = a[p];
+    // Four bytes at a time with one branch, as long as they are equal and of no interest.
+    for (let q = p + shift; p < end - 3; p += 4, q += 4) {
+      const c0 = a[p];
+      const c1 = a[p + 1];
+      const c2 = a[p + 2];
+      const c3 = a[p + 3];
+      const differs = (c0 ^ b[q]) | (c1 ^ b[q + 1]) | (c2 ^ b[q + 2]) | (c3 ^ b[q + 3]);
+      if ((differs | within[c0] | within[c1] | within[c2] | within[c3]) !== 0) break;
     }
-    if (c !== b[p + shift]) break;
+    let c = a[p];
+    while (c === b[p + shift] && within[c] === 0 && ++p < end) c = a[p];
+    if (p >= end || c !== b[p + shift]) break;
     if (c === LF) p++;
     else if (c !== CR || p + 1 >= end) break;
     else if (a[p + 1] !== LF) p++;

@@ -3,14 +3,6 @@ import { fixedText } from "#src/lib/number-text.ts";
 /** As wide as a digit where every sign is: keeps decimal points one under the other. */
 const BLANK = "\u00a0";
 
-/** A number without trailing zeros, padded so that its decimal point stands where `fixedText` would put it. */
-export function trimmed(value: number, decimals: number): string {
-  const text = fixedText(value, decimals);
-  if (decimals === 0) return text;
-  const short = text.replace(/\.?0+$/, "");
-  return short + BLANK.repeat(text.length - short.length);
-}
-
 /** A number with its own count of decimals, padded as if it had `upTo`: for columns of unlike quantities. */
 export function aligned(value: number, decimals: number, upTo: number): string {
   return fixedText(value, decimals) + BLANK.repeat(upTo - decimals + (decimals === 0 && upTo > 0 ? 1 : 0));

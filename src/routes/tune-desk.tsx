@@ -174,7 +174,7 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
 }
 
 /** Button, head and foot of the log, and most of the page's head stand in sight together with the plot. */
-const AROUND_PLOT_PX = 440;
+const AROUND_PLOT_PX = 520;
 
 function useDeskHeight(): number {
   return Math.min(Math.max(useWindowHeight() - AROUND_PLOT_PX, 340), 760);

@@ -45,7 +45,7 @@ async function untilEnded(jobId: string): Promise<Job> {
   for (;;) {
     const job: Job = await server.json(`/api/jobs/${jobId}`);
     if (hasEnded(job)) return job;
-    await wait(10);
+    await wait(50);
   }
 }
 
@@ -77,7 +77,8 @@ async function latencies(work: Promise<unknown>): Promise<number[]> {
 
 function sayLatencies(what: string, taken: number[]): void {
   const sorted = taken.sort((a, b) => a - b);
-  const at = (share: number): string => `${sorted[Math.min(sorted.length - 1, Math.floor(share * sorted.length))].toFixed(1)} ms`;
+  const at = (share: number): string =>
+    `${sorted[Math.min(sorted.length - 1, Math.floor(share * sorted.length))].toFixed(1)} ms`;
   say(`${what}: median ${at(0.5)}, 95th percentile ${at(0.95)}, longest ${at(1)} (${sorted.length} requests)`);
 }
 
@@ -113,7 +114,9 @@ async function largeFile(): Promise<void> {
   const tuning = await server.json("/api/tunings", post(request));
   sayLatencies("others while it is tuned and proven", await latencies(untilEnded(tuning.jobId)));
   const { state, proof } = await server.json(`/api/tunings/${tuning.id}`);
-  say(`tuning ${state}, proof passed: ${proof?.passed}, ${seconds(performance.now() - began)}; peak memory ${peakMB().toFixed(0)} MB`);
+  say(
+    `tuning ${state}, proof passed: ${proof?.passed}, ${seconds(performance.now() - began)}; peak memory ${peakMB().toFixed(0)} MB`,
+  );
 }
 
 try {

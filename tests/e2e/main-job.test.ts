@@ -64,7 +64,7 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
     for (const path of await everyPage(page, app.url)) {
       await page.goto(app.url + path);
       await page.getByRole("heading", { level: 1 }).waitFor();
-      await page.getByText(/ …$/).waitFor({ state: "detached" });
+      await expect.poll(() => page.getByRole("status").filter({ hasText: /…$/ }).count(), { timeout: 20_000 }).toBe(0);
       if (path.startsWith("/tunings/")) await page.locator(".view-line").first().waitFor();
       found[path] = await inBothSheets(page);
     }

@@ -1,6 +1,6 @@
 import fc from "fast-check";
-import { latin } from "#tests/helpers/reading.ts";
 import { heights, marker, ring, START } from "#tests/helpers/part.ts";
+import { latin } from "#tests/helpers/reading.ts";
 import { moveLine, wordLine } from "#tests/helpers/words.ts";
 
 /** Files of any kind: text in every dialect, damage, and plain noise. */
@@ -84,4 +84,4 @@ export const anyFile: fc.Arbitrary<Uint8Array> = fc.oneof(
 );
 
 /** Places at which a file of this many bytes is cut, ascending. */
-export const cuts = fc.array(fc.nat(2000), { maxLength: 12 }).map((places) => places.toSorted((a, b) => a - b));
+export const cuts = fc.array(fc.nat(2000), { maxLength: 12 }).map((places) => places.sort((a, b) => a - b));

@@ -24,8 +24,10 @@ export function sides({ x = 50, y = 50, size = 20, e = 0.8 }: Ring = {}): string
 export const primeLine = (z: number): string[] => [`G0 X5 Y5 Z${z} F6000`, "G1 X40 E2 F1200"];
 
 /** Rings at these heights, each behind what `before` gives for it. */
-export const rings = (heights: readonly number[], before: (index: number, z: number) => string[] = () => []): string[] =>
-  heights.flatMap((z, k) => [...before(k, z), ...ring(z)]);
+export const rings = (
+  heights: readonly number[],
+  before: (index: number, z: number) => string[] = () => [],
+): string[] => heights.flatMap((z, k) => [...before(k, z), ...ring(z)]);
 
 /** Heights 0.2, 0.4, … */
 export const heights = (count: number, stepMm = 0.2): number[] =>

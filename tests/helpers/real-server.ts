@@ -36,9 +36,19 @@ export class RealServer {
 
   /** Starts it and signs the engineer in. */
   async start(variables: Record<string, string> = {}): Promise<void> {
-    const env = { ...process.env, DATA_DIR: this.dataDir, PORT: "0", DEMO_PASSWORD: PASSWORD, LOG_LEVEL: "warn", ...variables };
+    const env = {
+      ...process.env,
+      DATA_DIR: this.dataDir,
+      PORT: "0",
+      DEMO_PASSWORD: PASSWORD,
+      LOG_LEVEL: "warn",
+      ...variables,
+    };
     this.output = "";
-    const child = spawn(process.execPath, [join(this.bundleDir, "index.mjs")], { env, stdio: ["ignore", "pipe", "pipe"] });
+    const child = spawn(process.execPath, [join(this.bundleDir, "index.mjs")], {
+      env,
+      stdio: ["ignore", "pipe", "pipe"],
+    });
     this.process = child;
     for (const stream of [child.stdout, child.stderr]) stream.on("data", (text: Buffer) => (this.output += text));
     const ready = /ready at (\S+)/;

@@ -41,7 +41,14 @@ const zigzag = fc
   );
 
 const circle = fc
-  .record({ angle, chord: fc.constantFrom(0.05, 0.3, 1.5), turn: fc.constantFrom(0.02, 0.1, -0.3, 0.9), speedMmS, perMm, count: fc.nat(120) })
+  .record({
+    angle,
+    chord: fc.constantFrom(0.05, 0.3, 1.5),
+    turn: fc.constantFrom(0.02, 0.1, -0.3, 0.9),
+    speedMmS,
+    perMm,
+    count: fc.nat(120),
+  })
   .map((of): Step[] =>
     Array.from({ length: of.count + 1 }, (_, k) =>
       turned(of.angle + k * of.turn, of.chord, { speedMmS: of.speedMmS, de: of.perMm * of.chord }),

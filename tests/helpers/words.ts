@@ -88,7 +88,5 @@ export const moveLine: fc.Arbitrary<string> = fc
     fc.constantFrom("", " ", "  "),
   )
   .chain(([g, letters, gap]) =>
-    fc
-      .tuple(...letters.map((letter) => word(letter, signed(10))))
-      .map((made) => [g, ...made].join(gap)),
+    fc.tuple(...letters.map((letter) => word(letter, signed(10)))).map((made) => [g, ...made].join(gap)),
   );

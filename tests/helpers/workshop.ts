@@ -1,9 +1,9 @@
 import { readFileSync } from "node:fs";
 import { setTimeout as wait } from "node:timers/promises";
-import type { TeamName, TestServer } from "#tests/helpers/server.ts";
 import type { Role } from "#shared/contract/roles.ts";
 import type { Reading, Toolpath } from "#shared/contract/toolpaths.ts";
 import type { Tuning } from "#shared/contract/tunings.ts";
+import type { TeamName, TestServer } from "#tests/helpers/server.ts";
 
 export const SAMPLES = {
   "mast-bracket": ["tern", "mast-bracket-stiff-throughout"],
@@ -48,8 +48,13 @@ export async function addProfile(server: TestServer, name: string, team: TeamNam
   return body.id;
 }
 
-export const upload = (server: TestServer, machine: string, bytes: Buffer, name = "part.gcode", role: Role = "operator") =>
-  server.as(role).post(`/api/toolpaths?machine=${machine}`).attach("file", bytes, name);
+export const upload = (
+  server: TestServer,
+  machine: string,
+  bytes: Buffer,
+  name = "part.gcode",
+  role: Role = "operator",
+) => server.as(role).post(`/api/toolpaths?machine=${machine}`).attach("file", bytes, name);
 
 /** A toolpath of the team Alder and its reading, once that has ended. */
 export async function uploadAndRead(

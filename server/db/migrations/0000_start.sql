@@ -127,9 +127,9 @@ CREATE TABLE "tunings" (
 );
 --> statement-breakpoint
 ALTER TABLE "acknowledgements" ADD CONSTRAINT "acknowledgements_user_id_users_id_fk" FOREIGN KEY ("user_id") REFERENCES "public"."users"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
-ALTER TABLE "acknowledgements" ADD CONSTRAINT "acknowledgements_machine_id_machine_version_document_versions_document_id_number_fk" FOREIGN KEY ("machine_id","machine_version") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE "acknowledgements" ADD CONSTRAINT "acknowledgements_version" FOREIGN KEY ("machine_id","machine_version") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "approvals" ADD CONSTRAINT "approvals_approved_by_users_id_fk" FOREIGN KEY ("approved_by") REFERENCES "public"."users"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
-ALTER TABLE "approvals" ADD CONSTRAINT "approvals_document_id_number_document_versions_document_id_number_fk" FOREIGN KEY ("document_id","number") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE "approvals" ADD CONSTRAINT "approvals_version" FOREIGN KEY ("document_id","number") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "document_versions" ADD CONSTRAINT "document_versions_document_id_documents_id_fk" FOREIGN KEY ("document_id") REFERENCES "public"."documents"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "document_versions" ADD CONSTRAINT "document_versions_created_by_users_id_fk" FOREIGN KEY ("created_by") REFERENCES "public"."users"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "documents" ADD CONSTRAINT "documents_team_id_teams_id_fk" FOREIGN KEY ("team_id") REFERENCES "public"."teams"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
@@ -139,15 +139,15 @@ ALTER TABLE "users" ADD CONSTRAINT "users_team_id_teams_id_fk" FOREIGN KEY ("tea
 ALTER TABLE "readings" ADD CONSTRAINT "readings_toolpath_id_toolpaths_id_fk" FOREIGN KEY ("toolpath_id") REFERENCES "public"."toolpaths"("id") ON DELETE cascade ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "readings" ADD CONSTRAINT "readings_job_id_jobs_id_fk" FOREIGN KEY ("job_id") REFERENCES "public"."jobs"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "readings" ADD CONSTRAINT "readings_created_by_users_id_fk" FOREIGN KEY ("created_by") REFERENCES "public"."users"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
-ALTER TABLE "readings" ADD CONSTRAINT "readings_machine_id_machine_version_document_versions_document_id_number_fk" FOREIGN KEY ("machine_id","machine_version") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE "readings" ADD CONSTRAINT "readings_machine_version" FOREIGN KEY ("machine_id","machine_version") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "toolpaths" ADD CONSTRAINT "toolpaths_team_id_teams_id_fk" FOREIGN KEY ("team_id") REFERENCES "public"."teams"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "toolpaths" ADD CONSTRAINT "toolpaths_created_by_users_id_fk" FOREIGN KEY ("created_by") REFERENCES "public"."users"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "tunings" ADD CONSTRAINT "tunings_team_id_teams_id_fk" FOREIGN KEY ("team_id") REFERENCES "public"."teams"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "tunings" ADD CONSTRAINT "tunings_reading_id_readings_id_fk" FOREIGN KEY ("reading_id") REFERENCES "public"."readings"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "tunings" ADD CONSTRAINT "tunings_job_id_jobs_id_fk" FOREIGN KEY ("job_id") REFERENCES "public"."jobs"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 ALTER TABLE "tunings" ADD CONSTRAINT "tunings_created_by_users_id_fk" FOREIGN KEY ("created_by") REFERENCES "public"."users"("id") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
-ALTER TABLE "tunings" ADD CONSTRAINT "tunings_profile_id_profile_version_document_versions_document_id_number_fk" FOREIGN KEY ("profile_id","profile_version") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
-ALTER TABLE "tunings" ADD CONSTRAINT "tunings_polymer_id_polymer_version_document_versions_document_id_number_fk" FOREIGN KEY ("polymer_id","polymer_version") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE "tunings" ADD CONSTRAINT "tunings_profile_version" FOREIGN KEY ("profile_id","profile_version") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
+ALTER TABLE "tunings" ADD CONSTRAINT "tunings_polymer_version" FOREIGN KEY ("polymer_id","polymer_version") REFERENCES "public"."document_versions"("document_id","number") ON DELETE no action ON UPDATE no action;--> statement-breakpoint
 CREATE INDEX "acknowledgements_machine" ON "acknowledgements" USING btree ("machine_id","machine_version");--> statement-breakpoint
 CREATE UNIQUE INDEX "documents_name" ON "documents" USING btree ("team_id","kind","name");--> statement-breakpoint
 CREATE UNIQUE INDEX "jobs_key" ON "jobs" USING btree ("team_id","key") WHERE "jobs"."state" in ('queued', 'running', 'done');--> statement-breakpoint

@@ -56,6 +56,7 @@ export const approvals = pgTable(
   (table) => [
     primaryKey({ columns: [table.documentId, table.number] }),
     foreignKey({
+      name: "approvals_version",
       columns: [table.documentId, table.number],
       foreignColumns: [documentVersions.documentId, documentVersions.number],
     }),
@@ -78,6 +79,7 @@ export const acknowledgements = pgTable(
     primaryKey({ columns: [table.userId, table.machineId, table.machineVersion] }),
     index("acknowledgements_machine").on(table.machineId, table.machineVersion),
     foreignKey({
+      name: "acknowledgements_version",
       columns: [table.machineId, table.machineVersion],
       foreignColumns: [documentVersions.documentId, documentVersions.number],
     }),

@@ -54,6 +54,7 @@ export const readings = pgTable(
     index("readings_toolpath").on(table.toolpathId),
     index("readings_job").on(table.jobId),
     foreignKey({
+      name: "readings_machine_version",
       columns: [table.machineId, table.machineVersion],
       foreignColumns: [documentVersions.documentId, documentVersions.number],
     }),

@@ -47,10 +47,12 @@ export const tunings = pgTable(
     index("tunings_reading").on(table.readingId),
     index("tunings_job").on(table.jobId),
     foreignKey({
+      name: "tunings_profile_version",
       columns: [table.profileId, table.profileVersion],
       foreignColumns: [documentVersions.documentId, documentVersions.number],
     }),
     foreignKey({
+      name: "tunings_polymer_version",
       columns: [table.polymerId, table.polymerVersion],
       foreignColumns: [documentVersions.documentId, documentVersions.number],
     }),

@@ -1,6 +1,4 @@
-import { writeMachine } from "#shared/formats/machine.ts";
-import { writeProfile } from "#shared/formats/profile.ts";
-import type { Check } from "#shared/formats/proof.ts";
+import type { Check, ProofDocument } from "#shared/formats/proof.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { Evidence } from "#shared/prove/evidence.ts";
 import type { ProvenanceFacts } from "#shared/prove/provenance.ts";
@@ -13,15 +11,18 @@ export interface Expected {
   versions?: { profile?: number; machine?: number };
 }
 
+/** The documents that the proof is made with, as it names them. */
+export type Documents = Pick<ProofDocument, "machine" | "profile">;
+
 /** Exactly one provenance line, directly where the first layer begins, and everything it says is so. */
-export function checkProvenance(evidence: Evidence, digest: (text: string) => string, expected: Expected): Check {
+export function checkProvenance(evidence: Evidence, documents: Documents, expected: Expected): Check {
   const { facts } = evidence.provenance;
   const found =
     facts &&
     `One line, where the first layer begins: profile "${facts.profile.name}", machine "${facts.machine.name}", ${facts.status}, engine ${facts.engine}.`;
   return verdict(
     "provenance",
-    lineProblem(evidence) ?? (facts && factsProblem(evidence, facts, digest)) ?? expectedProblem(facts, expected),
+    lineProblem(evidence) ?? (facts && (factsProblem(evidence, facts, documents) ?? expectedProblem(facts, expected))),
     found ?? "",
   );
 }
@@ -39,17 +40,13 @@ function lineProblem({ provenance, comparison, reading }: Evidence): string | un
   return problem && `The provenance line ${problem}.`;
 }
 
-function factsProblem(
-  evidence: Evidence,
-  facts: ProvenanceFacts,
-  digest: (text: string) => string,
-): string | undefined {
-  const { machine, profile, reading, own } = evidence;
+function factsProblem(evidence: Evidence, facts: ProvenanceFacts, documents: Documents): string | undefined {
+  const { profile, reading, own } = evidence;
   const driven = evidence.channels().map(({ channel }) => channel.id);
-  if (facts.machine.name !== machine.name || facts.machine.sha256 !== digest(writeMachine(machine)))
-    return `The tuned file was made for the machine "${facts.machine.name}" in another version, not for this one.`;
-  if (profile && (facts.profile.name !== profile.name || facts.profile.sha256 !== digest(writeProfile(profile))))
-    return `The tuned file was made with the profile "${facts.profile.name}" in another version, not with this one.`;
+  const another =
+    anotherProblem("machine", facts.machine, documents.machine) ??
+    (documents.profile === null ? undefined : anotherProblem("profile", facts.profile, documents.profile));
+  if (another !== undefined) return another;
   if (profile && facts.withinLayer !== profile.withinLayer)
     return `The provenance line says "${facts.withinLayer}", the profile "${profile.withinLayer}".`;
   if (facts.channels.join() !== driven.join())
@@ -60,6 +57,18 @@ function factsProblem(
   return facts.original === original ? undefined : "The provenance line names another untuned file than this original.";
 }
 
+function anotherProblem(
+  kind: "machine" | "profile",
+  named: Documents["machine"],
+  given: Documents["machine"],
+): string | undefined {
+  if (named.name !== given.name)
+    return `The tuned file was made with the ${kind} "${named.name}", not "${given.name}".`;
+  return named.sha256 === given.sha256
+    ? undefined
+    : `The tuned file was made with another version of the ${kind} "${named.name}".`;
+}
+
 /** The original's own digest, or, where it was tuned before, that of the file it came from. */
 function untunedDigest({ provenance, file }: Evidence["reading"]): unknown {
   if (!provenance) return file.sha256;
@@ -67,11 +76,7 @@ function untunedDigest({ provenance, file }: Evidence["reading"]): unknown {
   return typeof data === "object" && data !== null && "original" in data ? data.original : undefined;
 }
 
-function expectedProblem(
-  facts: ProvenanceFacts | undefined,
-  { engine, status, versions }: Expected,
-): string | undefined {
-  if (!facts) return undefined;
+function expectedProblem(facts: ProvenanceFacts, { engine, status, versions }: Expected): string | undefined {
   if (engine !== undefined && facts.engine !== engine)
     return `The provenance line names engine ${facts.engine}, not ${engine}.`;
   if (status !== undefined && facts.status !== status)

@@ -20,7 +20,7 @@ export function markByChannel(diff: editor.IStandaloneDiffEditor, machine: Machi
         const kind = channelOf(model.getLineContent(line))?.kind ?? "other";
         decorations.push({
           range: { startLineNumber: line, startColumn: 1, endLineNumber: line, endColumn: 1 },
-          options: { isWholeLine: true, className: `diff-${kind}`, marginClassName: `diff-${kind}` },
+          options: { isWholeLine: true, className: `diff-${kind}`, marginClassName: `diff-${kind} diff-edge` },
         });
       }
     }

@@ -60,11 +60,11 @@ export function LayerDiff({ original, tuned, truncated, machine, layer, changedL
       </Suspense>
       <p className="flex flex-wrap gap-x-6 pt-2 text-small text-soft">
         <span>
-          <span aria-hidden className="diff-fan mr-2 inline-block h-3 w-5 align-middle" />
+          <span aria-hidden className="diff-fan diff-edge mr-2 inline-block h-3 w-5 align-middle" />
           drives a fan
         </span>
         <span>
-          <span aria-hidden className="diff-heater mr-2 inline-block h-3 w-5 align-middle" />
+          <span aria-hidden className="diff-heater diff-edge mr-2 inline-block h-3 w-5 align-middle" />
           drives a heater
         </span>
         {truncated && <span>The layer is long: shown are the lines around its changes.</span>}

@@ -87,7 +87,7 @@ export function MonacoDiff({ original, tuned, machine, handle, onChanges }: Prop
     },
   }));
 
-  return <div ref={box} className="h-[28rem] border border-rule" />;
+  return <div ref={box} className="h-[28rem] overflow-hidden border border-rule" />;
 }
 
 /** Line ends are the proof's business; here a line is a line. */

@@ -126,7 +126,8 @@ function drawTop(context: CanvasRenderingContext2D, picture: LogPicture, xOf: (m
     if (stack.objects.length === 1) continue;
     context.font = LOG_FONT;
     context.fillStyle = palette.soft;
-    label(context, fitting(context, `object ${object}`, layout.silhouette.width), layout.silhouette.x + 4, y - 8);
+    const middle = layout.silhouette.x + layout.silhouette.width / 2;
+    label(context, fitting(context, `object ${object}`, layout.silhouette.width), middle, y - 10, "center");
   }
 }
 

@@ -9,24 +9,24 @@ import {
   zoomedAbout,
 } from "#src/features/layer-log/height-view.ts";
 import { LayerAnnouncer } from "#src/features/layer-log/layer-announcer.tsx";
-import { type LayerStack, objectAt, positionOfIndex, stackLayers } from "#src/features/layer-log/layer-stack.ts";
+import { type LayerStack, positionOfIndex } from "#src/features/layer-log/layer-stack.ts";
 import { LayerTable } from "#src/features/layer-log/layer-table.tsx";
+import { layerText, spokenLayer } from "#src/features/layer-log/layer-text.ts";
 import { LogHead } from "#src/features/layer-log/log-head.tsx";
 import { logStep } from "#src/features/layer-log/log-keys.ts";
 import { logLayout } from "#src/features/layer-log/log-layout.ts";
 import { LogLegend } from "#src/features/layer-log/log-legend.tsx";
-import { type LogContent, viewOf } from "#src/features/layer-log/log-picture.ts";
+import { viewOf } from "#src/features/layer-log/log-picture.ts";
+import { MarkNotes } from "#src/features/layer-log/mark-notes.tsx";
 import type { LogLayer } from "#src/features/layer-log/reading-tracks.ts";
-import { sectionOf } from "#src/features/layer-log/section.ts";
 import { shownPositions } from "#src/features/layer-log/trace.ts";
 import type { LogMark, Track } from "#src/features/layer-log/track.ts";
-import { trackScale } from "#src/features/layer-log/track-scale.ts";
 import { useBoxSize } from "#src/features/layer-log/use-box-size.ts";
 import { useLogCanvas } from "#src/features/layer-log/use-log-canvas.ts";
+import { useLogContent } from "#src/features/layer-log/use-log-content.ts";
 import { useLogPointer } from "#src/features/layer-log/use-log-pointer.ts";
 import { trackText } from "#src/features/layer-log/value-text.ts";
-import { type BandZone, zoneBands } from "#src/features/layer-log/zone-bands.ts";
-import { fixedText } from "#src/lib/number-text.ts";
+import type { BandZone } from "#src/features/layer-log/zone-bands.ts";
 import { Button } from "#src/ui/button.tsx";
 
 /** What stands in the column at the right is told which heights are shown where. */
@@ -70,7 +70,7 @@ export function LayerLog(props: LayerLogProps) {
   const box = useRef<HTMLDivElement>(null);
   const [base, over] = [useRef<HTMLCanvasElement>(null), useRef<HTMLCanvasElement>(null)];
   const { width } = useBoxSize(box, { width: 960, height: heightPx });
-  const content = useContent(layers, tracks, zones, marks);
+  const content = useLogContent(layers, tracks, zones, marks);
   const { stack } = content;
   const [wanted, setWanted] = useState<HeightRange>();
   const [hovered, setHovered] = useState(-1);
@@ -143,7 +143,7 @@ export function LayerLog(props: LayerLogProps) {
                 aria-valuemin={1}
                 aria-valuemax={Math.max(stack.count, 1)}
                 aria-valuenow={pinned < 0 ? 1 : pinned + 1}
-                aria-valuetext={pinned < 0 ? "No layer pinned" : spoken(stack, pinned)}
+                aria-valuetext={pinned < 0 ? "No layer pinned" : spokenLayer(stack, pinned)}
                 className="absolute inset-y-0 left-0 cursor-crosshair outline-offset-[-2px] select-none"
                 style={{ width: layout.aside?.x ?? layout.width }}
                 onKeyDown={onKeyDown}
@@ -192,55 +192,11 @@ export function LayerLog(props: LayerLogProps) {
       <MarkNotes marks={marks} layer={shown < 0 ? undefined : stack.index[shown]} />
       <LayerAnnouncer
         text={
-          pinned < 0 ? "" : `${spoken(stack, pinned)}. ${tracks.map((track) => trackText(track, pinned)).join(". ")}.`
+          pinned < 0
+            ? ""
+            : `${spokenLayer(stack, pinned)}. ${tracks.map((track) => trackText(track, pinned)).join(". ")}.`
         }
       />
     </section>
-  );
-}
-
-function useContent(
-  layers: readonly LogLayer[],
-  tracks: readonly Track[],
-  zones: readonly BandZone[],
-  marks: readonly LogMark[],
-): LogContent {
-  const stack = useMemo(() => stackLayers(layers), [layers]);
-  const section = useMemo(() => sectionOf(layers), [layers]);
-  const scales = useMemo(() => tracks.map(trackScale), [tracks]);
-  const bands = useMemo(() => zoneBands(zones, stack), [zones, stack]);
-  return useMemo(
-    () => ({ stack, section, tracks, scales, bands, marks }),
-    [stack, section, tracks, scales, bands, marks],
-  );
-}
-
-function layerText(stack: LayerStack, position: number) {
-  if (position < 0) return { number: "", height: "–", of: `${stack.count} layers` };
-  const height = fixedText(stack.topMm[position] - objectAt(stack, position).baseMm, 2);
-  return { number: String(stack.index[position]), height, of: `of ${stack.count}` };
-}
-
-function spoken(stack: LayerStack, position: number): string {
-  const { baseMm, object } = objectAt(stack, position);
-  const where = stack.objects.length > 1 ? ` of object ${object}` : "";
-  return `Layer ${stack.index[position]} of ${stack.count}, ${fixedText(stack.topMm[position] - baseMm, 2)} mm${where}`;
-}
-
-/** What was found at the layer one looks at. */
-function MarkNotes({ marks, layer }: { marks: readonly LogMark[]; layer: number | undefined }) {
-  const here = marks.filter((mark) => mark.layer === layer);
-  if (marks.length === 0) return null;
-  return (
-    <ul aria-label="At this layer" className="min-h-7 border-t border-hair px-2 py-1 text-small">
-      {here.length === 0 && (
-        <li className="text-soft">{`${marks.length} findings and advice, marked at their layers`}</li>
-      )}
-      {here.map(({ message, severity }) => (
-        <li key={message}>
-          <span className="font-semibold">{severity === "warning" ? "Warning" : "Note"}</span> {message}
-        </li>
-      ))}
-    </ul>
   );
 }

@@ -99,8 +99,8 @@ function Filler({ rows }: { rows: number }) {
   return rows > 0 ? <tr style={{ height: rows * ROW_PX }} /> : null;
 }
 
+/** A row that is out of sight comes to the middle. */
 function scrollIntoView(box: HTMLElement, position: number): void {
   const [top, room] = [position * ROW_PX, box.clientHeight - 3 * ROW_PX];
-  if (top < box.scrollTop) box.scrollTop = top;
-  else if (top > box.scrollTop + room) box.scrollTop = top - room;
+  if (top < box.scrollTop || top > box.scrollTop + room) box.scrollTop = Math.max(top - room / 2, 0);
 }

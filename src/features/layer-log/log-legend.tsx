@@ -22,7 +22,7 @@ export function LogLegend({ tracks, zones, marked }: Props) {
     ({ style, label }) => style.line === "solid" && style.tone !== "ink" && label === "as planned",
   );
   return (
-    <ul aria-label="Legend" className="flex flex-wrap items-center gap-x-5 gap-y-1 text-fine text-soft">
+    <ul aria-label="Legend" className="flex min-w-0 flex-1 flex-wrap items-center gap-x-5 gap-y-1 text-fine text-soft">
       {targets.length > 0 && (
         <Entry sample={null}>
           <em>state, not appearance</em>

@@ -36,6 +36,7 @@ export function PlanInspector({ layer, channels, plan }: PlanInspectorProps) {
           key={channel.id}
           channel={channel}
           seen={layer.duty[channel.id]}
+          hasPlan={planned !== undefined}
           planned={planned?.duty[channel.id]}
           reasons={planned?.reason[channel.id]}
         />
@@ -78,11 +79,12 @@ function measures(layer: LogLayer) {
 interface ChannelProps {
   channel: LogChannel;
   seen: LogLayer["duty"][string] | undefined;
+  hasPlan: boolean;
   planned: number | undefined;
   reasons: readonly string[] | undefined;
 }
 
-function ChannelDuties({ channel: { id, kind }, seen, planned, reasons = [] }: ChannelProps) {
+function ChannelDuties({ channel: { id, kind }, seen, hasPlan, planned, reasons = [] }: ChannelProps) {
   const tone = kind === "fan" ? "cool" : "heat";
   return (
     <div className="flex flex-col gap-1">
@@ -105,11 +107,13 @@ function ChannelDuties({ channel: { id, kind }, seen, planned, reasons = [] }: C
             {seen ? fixedText(seen.mean, 3) : "–"}
           </dd>
         </div>
-        <div className="flex items-center gap-2 border-b border-hair py-1">
-          <LineSample style={{ tone, line: "solid" }} />
-          <dt className="grow text-soft">as planned</dt>
-          <dd className="font-mono">{planned === undefined ? "not driven" : fixedText(planned, 3)}</dd>
-        </div>
+        {hasPlan && (
+          <div className="flex items-center gap-2 border-b border-hair py-1">
+            <LineSample style={{ tone, line: "solid" }} />
+            <dt className="grow text-soft">as planned</dt>
+            <dd className="font-mono">{planned === undefined ? "not driven" : fixedText(planned, 3)}</dd>
+          </div>
+        )}
       </dl>
       {reasons.length > 0 && (
         <ol

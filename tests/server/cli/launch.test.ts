@@ -55,7 +55,9 @@ test("a source that can't be bundled ends with status 1 and a reason, with nothi
 
 test("npm run build puts a program into dist that runs", async () => {
   const root = copyOfProject();
-  expect(await outcome(start(process.execPath, [join(root, "server/build.mjs")]))).toMatchObject({ status: 0 });
+  expect(await outcome(start(process.execPath, [join(root, "server/build.mjs"), "--programs"]))).toMatchObject({
+    status: 0,
+  });
   const { version } = JSON.parse(readFileSync(join(root, "package.json"), "utf8"));
   const built = await outcome(start(process.execPath, [join(root, "dist/quenchline.mjs"), "--version"]));
   expect(built).toMatchObject({ status: 0, stdout: `${version}\n`, stderr: "" });

@@ -52,7 +52,11 @@ describe("the queue", () => {
     }
     await queue().claim();
     const [given] = await queue().recover();
-    expect(given).toMatchObject({ id: job.id, state: "failed", refusal: { code: "gave-up", remedy: expect.any(String) } });
+    expect(given).toMatchObject({
+      id: job.id,
+      state: "failed",
+      refusal: { code: "gave-up", remedy: expect.any(String) },
+    });
     expect(await queue().claim()).toBeUndefined();
   });
 
@@ -78,10 +82,18 @@ test("a waiting job is cancelled; operators may, viewers may not; a job that has
   });
   await server.as("viewer").delete(job).expect(403);
   await server.as("lead", "birch").delete(job).expect(404);
-  for (let k = 0; k < 2; k++) expect((await server.as("operator").delete(job).expect(200)).body.state).toBe("cancelled");
+  for (let k = 0; k < 2; k++)
+    expect((await server.as("operator").delete(job).expect(200)).body.state).toBe("cancelled");
   expect((await endedReading(server, body.reading.id)).state).toBe("cancelled");
   const { body: early } = await server.as("viewer").get(`/api/readings/${body.reading.id}/document`).expect(409);
   expect(early.code).toBe("not-ready");
+});
+
+test("a job that says it runs, but that nobody works on, can be cancelled", async () => {
+  const { body } = await upload(server, await addMachine(server), sampleBytes("seal-ring")).expect(201);
+  await queue().claim();
+  const cancelled = await server.as("operator").delete(`/api/jobs/${body.reading.jobId}`).expect(200);
+  expect(cancelled.body.state).toBe("cancelled");
 });
 
 test("a worker that falls silent is ended, and its job fails visibly after three tries", async () => {
@@ -128,14 +140,23 @@ test("a team hears of its own jobs only, from the waiting ones to the last event
     };
     const { body } = await upload(server, await addMachine(server), sampleBytes("seal-ring")).expect(201);
     const [own, strange] = [await listen("alder"), await listen("birch")];
-    await eventually(async () => own.jobs, (jobs) => jobs.some(({ state }) => state === "queued"));
+    await eventually(
+      async () => own.jobs,
+      (jobs) => jobs.some(({ state }) => state === "queued"),
+    );
     const workshop = server.parts.workshop;
     await workshop.start();
-    await eventually(async () => own.jobs, (jobs) => jobs.some(({ state }) => state === "done"));
+    await eventually(
+      async () => own.jobs,
+      (jobs) => jobs.some(({ state }) => state === "done"),
+    );
     expect(new Set(own.jobs.map(({ id }) => id))).toEqual(new Set([body.reading.jobId]));
     expect([...new Set(own.jobs.map(({ state }) => state))]).toEqual(["queued", "running", "done"]);
     const late = await listen("alder", { "Last-Event-ID": String(Date.now() - 1_000) });
-    await eventually(async () => late.jobs, (jobs) => jobs.some(({ state }) => state === "done"));
+    await eventually(
+      async () => late.jobs,
+      (jobs) => jobs.some(({ state }) => state === "done"),
+    );
     expect(strange.jobs).toEqual([]);
     await server.with().get("/api/events").expect(401);
   } finally {

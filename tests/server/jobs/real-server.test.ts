@@ -62,7 +62,7 @@ test("an upload that is cut off by a kill leaves nothing; the server stops when 
       await new Promise((resolve) => setTimeout(resolve, 5));
     },
   });
-  const boundary = "--b\r\nContent-Disposition: form-data; name=\"file\"; filename=\"half.gcode\"\r\n\r\n";
+  const boundary = '--b\r\nContent-Disposition: form-data; name="file"; filename="half.gcode"\r\n\r\n';
   const body = new ReadableStream({
     start: async (controller) => {
       controller.enqueue(new TextEncoder().encode(boundary));

@@ -25,7 +25,9 @@ async function* stream(...pieces: (string | Error)[]): AsyncGenerator<Uint8Array
 }
 const sha256 = (text: string): string => createHash("sha256").update(text).digest("hex");
 const files = async (): Promise<string[]> =>
-  (await readdir(root, { recursive: true, withFileTypes: true })).filter((file) => file.isFile()).map(({ name }) => name);
+  (await readdir(root, { recursive: true, withFileTypes: true }))
+    .filter((file) => file.isFile())
+    .map(({ name }) => name);
 
 async function textOf(hash: string, range?: { start: number; end: number }): Promise<string> {
   let text = "";

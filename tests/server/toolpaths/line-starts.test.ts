@@ -7,7 +7,10 @@ const TEXT = fc.array(fc.constantFrom("\n", "\r\n", "\r", "G1", ";")).map((parts
 const CUTS = fc.array(fc.nat(20)).map((cuts) => cuts.sort((a, b) => a - b));
 
 /** Offsets at which lines start, by a regular expression; a text that ends with a terminator has an empty last line. */
-const startsOf = (text: string): number[] => [0, ...[...text.matchAll(/\r\n|\r|\n/g)].map((m) => m.index + m[0].length)];
+const startsOf = (text: string): number[] => [
+  0,
+  ...[...text.matchAll(/\r\n|\r|\n/g)].map((m) => m.index + m[0].length),
+];
 
 test("lines start behind LF, CR LF and CR, wherever the bytes were cut", () => {
   fc.assert(

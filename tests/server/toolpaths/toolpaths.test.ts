@@ -74,7 +74,11 @@ test("an equal reading is answered with the one that is there; another version o
   await server.as("operator").post(readings).send({ machineId: machine, machineVersion: 2 }).expect(404);
   const document = sampleJson("machines/tern.json");
   await server.as("engineer").post(`/api/machines/${machine}/versions`).send({ basedOn: 1, document }).expect(201);
-  const { body } = await server.as("operator").post(readings).send({ machineId: machine, machineVersion: 2 }).expect(201);
+  const { body } = await server
+    .as("operator")
+    .post(readings)
+    .send({ machineId: machine, machineVersion: 2 })
+    .expect(201);
   expect(body.id).not.toBe(reading.id);
   expect((await endedReading(server, body.id)).state).toBe("done");
   expect((await get(`/api/toolpaths/${toolpath.id}`).expect(200)).body.readings).toHaveLength(2);

@@ -124,7 +124,11 @@ test("viewers, strangers and people who are signed out upload nothing", async ()
   const bytes = sampleBytes("seal-ring");
   await upload(server, machine, bytes, "a.gcode", "viewer").expect(403);
   await server.with().post(`/api/toolpaths?machine=${machine}`).attach("file", bytes, "a.gcode").expect(401);
-  await server.as("lead", "birch").post(`/api/toolpaths?machine=${machine}`).attach("file", bytes, "a.gcode").expect(404);
+  await server
+    .as("lead", "birch")
+    .post(`/api/toolpaths?machine=${machine}`)
+    .attach("file", bytes, "a.gcode")
+    .expect(404);
   await server.as("operator").post("/api/toolpaths").attach("file", bytes, "a.gcode").expect(422);
   await expectNothingStored();
 });

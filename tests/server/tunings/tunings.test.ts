@@ -71,7 +71,7 @@ describe.each(Object.keys(SAMPLES) as SampleName[])("the sample %s", (name) => {
     expect(plan.layers).toHaveLength(tuning.plan!.layers);
     expect(withoutProvenance(whole)).toEqual(withoutProvenance(await tunedByCommandLine(name)));
     await everyLayerDiffFits(tuning.id, sampleBytes(name), whole, plan.layers.length);
-  });
+  }, 240_000);
 });
 
 /** The provenance line alone differs: a team's documents have versions. */
@@ -82,7 +82,12 @@ async function tunedByCommandLine(name: SampleName): Promise<Buffer> {
   const folder = await mkdtemp(join(tmpdir(), "quenchline-tuned-"));
   try {
     const out = join(folder, "out.gcode");
-    const documents = ["--machine", samplePath(`machines/${machine}.json`), "--profile", samplePath(`profiles/${profile}.json`)];
+    const documents = [
+      "--machine",
+      samplePath(`machines/${machine}.json`),
+      "--profile",
+      samplePath(`profiles/${profile}.json`),
+    ];
     const program = samplePath("../server/cli/launch.mjs");
     await run(process.execPath, [program, "tune", samplePath(`${name}.gcode`), ...documents, "--out", out]);
     return await readFile(out);

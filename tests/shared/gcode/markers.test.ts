@@ -110,7 +110,18 @@ test("the letter table lets every known shape through: no marker is dismissed by
   const everything = new CommentReader([markerShape("\u0001")]);
   fc.assert(
     fc.property(
-      fc.constantFrom("LAYER:", "layer #", "Z:", "height:", "TYPE:", "feature: ", "'", "CHANGE_LAYER", "begin_layer z=", "stratum "),
+      fc.constantFrom(
+        "LAYER:",
+        "layer #",
+        "Z:",
+        "height:",
+        "TYPE:",
+        "feature: ",
+        "'",
+        "CHANGE_LAYER",
+        "begin_layer z=",
+        "stratum ",
+      ),
       fc.string({ unit: fc.constantFrom(..."0123456789.,: 'zZapth="), maxLength: 12 }),
       (head, tail) => {
         const bytes = latin(head + tail);

@@ -14,7 +14,14 @@ test("the provenance line is its word, one blank and an object", () => {
   const is = (comment: string): boolean => isProvenance(latin(comment), 0, comment.length);
   expect(is('quenchline {"engine":"1"}')).toBe(true);
   expect(is("quenchline {")).toBe(true);
-  for (const comment of ["quenchline", "quenchline ", "quenchline [1]", " quenchline {}", "quenchline  {}", "Quenchline {}"])
+  for (const comment of [
+    "quenchline",
+    "quenchline ",
+    "quenchline [1]",
+    " quenchline {}",
+    "quenchline  {}",
+    "Quenchline {}",
+  ])
     expect(is(comment)).toBe(false);
   expect(isProvenance(latin("G28"), -1, -1)).toBe(false);
 });

@@ -82,7 +82,11 @@ describe("the parser package loses", () => {
 
   test("the text of messages: it turns into words", () => {
     const line = "M117 Layer 3 of X120";
-    expect(parseLine(line).words).toEqual([["M", 117], ["R", 3], ["X", 120]]);
+    expect(parseLine(line).words).toEqual([
+      ["M", 117],
+      ["R", 3],
+      ["X", 120],
+    ]);
     expect(scanText(line)).toMatchObject({ kind: "text", words: { M: 117 } });
     expect(codeOf(line)).toBe(line);
   });

@@ -20,7 +20,11 @@ const machine = tern({
 /** A file's lines with their places, the plain way. */
 function linesOf(bytes: Uint8Array): { text: string; offset: number }[] {
   let offset = 0;
-  return (Buffer.from(bytes).toString("latin1").match(/[^\r\n]*(\r\n|\r|\n)|[^\r\n]+$/g) ?? []).map((text) => {
+  return (
+    Buffer.from(bytes)
+      .toString("latin1")
+      .match(/[^\r\n]*(\r\n|\r|\n)|[^\r\n]+$/g) ?? []
+  ).map((text) => {
     offset += text.length;
     return { text, offset: offset - text.length };
   });
@@ -53,7 +57,7 @@ function checkPlaces(reading: Reading, bytes: Uint8Array): void {
     must(layer.writeAt.offset >= before && layer.writeAt.offset <= layer.firstByte, `order of layer ${k + 1}`);
     must(layer.startsAtS >= layer.writeAt.timeS, `time of layer ${k + 1}`);
     must(k === 0 || layer.firstByte >= reading.layers[k - 1].endByte, `layers follow one another at ${k + 1}`);
-    must(layer.extrudingTimeS <= layer.timeS + 1e-12 * (1 + reading.window.end.timeS), `laying time of layer ${k + 1}`);
+    must(layer.extrudingTimeS <= layer.timeS + 1e-9 * (1 + reading.window.end.timeS), `laying time of layer ${k + 1}`);
     before = layer.writeAt.offset;
   }
   const { window, travels } = reading;
@@ -61,8 +65,14 @@ function checkPlaces(reading: Reading, bytes: Uint8Array): void {
   must(window.start.offset <= window.end.offset && window.start.timeS <= window.end.timeS, "order of the window");
   for (let i = 0; i < travels.count; i++) {
     must(travels.offset[i] === startOf(travels.line[i]), `travel before line ${travels.line[i]}`);
-    must(travels.offset[i] >= window.start.offset && travels.offset[i] < window.end.offset, "travels lie in the window");
-    must(i === 0 || (travels.offset[i] > travels.offset[i - 1] && travels.timeS[i] >= travels.timeS[i - 1]), "travels rise");
+    must(
+      travels.offset[i] >= window.start.offset && travels.offset[i] < window.end.offset,
+      "travels lie in the window",
+    );
+    must(
+      i === 0 || (travels.offset[i] > travels.offset[i - 1] && travels.timeS[i] >= travels.timeS[i - 1]),
+      "travels rise",
+    );
   }
   must(reading.totals.printTimeS >= 0 && reading.afterLastLayerS >= -1e-9, "times are not negative");
   expect(wrong).toEqual([]);
@@ -97,7 +107,9 @@ describe("any bytes whatever", () => {
   test.each(EVERY_RULE)("give a document that can be written and read back: %s", (_, other) => {
     fc.assert(
       fc.property(anyFile, (bytes) => {
-        const outcome = outcomeOf(() => readChunks([bytes], { ...machine, motion: { ...other.motion, honourFileLimits: true } }));
+        const outcome = outcomeOf(() =>
+          readChunks([bytes], { ...machine, motion: { ...other.motion, honourFileLimits: true } }),
+        );
         if (!isReading(outcome)) return;
         const document = readingDocument({ ...outcome, file: { ...outcome.file, sha256: "0".repeat(64) } });
         expect(parseReading(JSON.parse(writeReading(document)))).toEqual(document);

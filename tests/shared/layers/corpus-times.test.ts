@@ -105,20 +105,21 @@ describe.skipIf(!corpusIsHere)("layer times of real toolpaths", () => {
 describe.skipIf(!corpusIsHere)("one toolpath written in several dialects", () => {
   const plain = corpusIsHere ? read("d00-base-abs-e") : undefined;
 
-  test.each(
-    CORPUS_FILES.filter((name) => /^d0[24567]/.test(name)),
-  )("%s has the same layers and times to a microsecond", (name) => {
-    const reading = read(name);
-    expect(reading.layers).toHaveLength(6);
-    for (const [k, layer] of reading.layers.entries()) {
-      const same = plain!.layers[k];
-      expect(Math.abs(layer.timeS - same.timeS)).toBeLessThan(1e-6);
-      expect(Math.abs(layer.extrudingTimeS - same.extrudingTimeS)).toBeLessThan(1e-6);
-      expect(Math.abs(layer.filamentMm - same.filamentMm)).toBeLessThan(1e-4);
-      expect(Math.abs(layer.depositedLengthMm - same.depositedLengthMm)).toBeLessThan(1e-2);
-      expect([layer.zMm, layer.heightMm, layer.nozzleC, layer.bedC]).toEqual([same.zMm, same.heightMm, 200, 60]);
-    }
-  });
+  test.each(CORPUS_FILES.filter((name) => /^d0[24567]/.test(name)))(
+    "%s has the same layers and times to a microsecond",
+    (name) => {
+      const reading = read(name);
+      expect(reading.layers).toHaveLength(6);
+      for (const [k, layer] of reading.layers.entries()) {
+        const same = plain!.layers[k];
+        expect(Math.abs(layer.timeS - same.timeS)).toBeLessThan(1e-6);
+        expect(Math.abs(layer.extrudingTimeS - same.extrudingTimeS)).toBeLessThan(1e-6);
+        expect(Math.abs(layer.filamentMm - same.filamentMm)).toBeLessThan(1e-4);
+        expect(Math.abs(layer.depositedLengthMm - same.depositedLengthMm)).toBeLessThan(1e-2);
+        expect([layer.zMm, layer.heightMm, layer.nozzleC, layer.bedC]).toEqual([same.zMm, same.heightMm, 200, 60]);
+      }
+    },
+  );
 
   test("d02 is known as numbered, d05 by its mixed line ends", () => {
     expect(read("d02-numbered-checksum").file).toMatchObject({ numbered: true, newline: "lf" });

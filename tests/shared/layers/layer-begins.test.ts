@@ -58,7 +58,9 @@ describe("no layer of its own is made by", () => {
   test("a difference of less than half a micrometre", () => {
     expect(zs(read(rings([0.2, 0.2000004, 0.4])))).toEqual([0.2, 0.4]);
     expect(zs(read(rings([0.2, 0.201])))).toEqual([0.2, 0.201]);
-    expect(zs(read(["G91", "G0 X50 Y50 Z.2 F6000"], sides({ x: 0, y: 0 }), ["G90"], rings([0.1 + 0.1])))).toEqual([0.2]);
+    expect(zs(read(["G91", "G0 X50 Y50 Z.2 F6000"], sides({ x: 0, y: 0 }), ["G90"], rings([0.1 + 0.1])))).toEqual([
+      0.2,
+    ]);
   });
 });
 
@@ -71,11 +73,11 @@ test("heights may vary from layer to layer", () => {
 describe("where material is laid while Z rises", () => {
   /** Turns of a square that climbs by a quarter of the height at each side. */
   const climbing = (turns: number, before: (turn: number) => string[] = () => []): string[] => {
-    let z = 0.2;
+    const z = (steps: number): string => (0.2 + 0.05 * steps).toFixed(3);
     const corners = ["X70 Y50", "X70 Y70", "X50 Y70", "X50 Y50"];
     return Array.from({ length: turns }, (_, turn) => [
       ...before(turn),
-      ...corners.map((corner) => `G1 ${corner} Z${(z += 0.05).toFixed(3)} E0.8 F1800`),
+      ...corners.map((corner, side) => `G1 ${corner} Z${z(4 * turn + side + 1)} E0.8 F1800`),
     ]).flat();
   };
 
@@ -95,7 +97,11 @@ describe("where material is laid while Z rises", () => {
   });
 
   test("a spiral with a marker for each turn has its layers at the markers", () => {
-    const reading = read([";LAYER:0"], ring(0.2), climbing(5, (turn) => [`;LAYER:${turn + 1}`]));
+    const reading = read(
+      [";LAYER:0"],
+      ring(0.2),
+      climbing(5, (turn) => [`;LAYER:${turn + 1}`]),
+    );
     expect(reading.layers.map(({ marker }) => marker)).toEqual([0, 1, 2, 3, 4, 5].map((k) => `LAYER:${k}`));
     expect(findingsOf(reading)).toEqual(["spiral"]);
   });
@@ -135,7 +141,10 @@ describe("where material is laid while Z rises", () => {
 });
 
 describe("where Z falls a new object begins", () => {
-  const twice = read(rings(heights(3)), heights(2).flatMap((z) => ring(z, { x: 100 })));
+  const twice = read(
+    rings(heights(3)),
+    heights(2).flatMap((z) => ring(z, { x: 100 })),
+  );
 
   test("layers count on, objects count up, heights start again at the bed", () => {
     expect(twice.layers.map(({ index, object, zMm, heightMm }) => [index, object, zMm, heightMm])).toEqual([
@@ -149,7 +158,10 @@ describe("where Z falls a new object begins", () => {
   });
 
   test("an object may have another first layer", () => {
-    const reading = read(rings([0.2, 0.4]), [0.3, 0.5].flatMap((z) => ring(z, { x: 100 })));
+    const reading = read(
+      rings([0.2, 0.4]),
+      [0.3, 0.5].flatMap((z) => ring(z, { x: 100 })),
+    );
     expect(reading.layers[2]).toMatchObject({ object: 2, zMm: 0.3, heightMm: 0.3 });
     expect(reading.layers[3]).toMatchObject({ object: 2, zMm: 0.5, heightMm: 0.2 });
   });

@@ -25,7 +25,11 @@ describe("markers that agree with the geometry are no finding", () => {
 
 describe("geometry decides, and a disagreement is told with the numbers", () => {
   test("one marker a tool at each height", () => {
-    const tool = (z: number, k: number, t: number): string[] => [`;LAYER:${k}`, `T${t}`, ...ring(z, { x: 50 + 30 * t })];
+    const tool = (z: number, k: number, t: number): string[] => [
+      `;LAYER:${k}`,
+      `T${t}`,
+      ...ring(z, { x: 50 + 30 * t }),
+    ];
     const reading = read(heights(3).flatMap((z, k) => [...tool(z, k, 0), ...tool(z, k, 1)]));
     expect(reading.layers).toHaveLength(3);
     expect(messageOf(reading, "marker-count")).toBe("6 layer markers, 3 layers by geometry; geometry counts");

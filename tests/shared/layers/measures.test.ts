@@ -72,7 +72,13 @@ describe("the outline", () => {
   });
 
   test("a loop may end short of where it began", () => {
-    const open = (gap: number): string[] => ["G0 X50 Y50 Z0.2", "G1 X70 E1", "G1 Y70 E1", "G1 X50 E1", `G1 Y${50 + gap} E1`];
+    const open = (gap: number): string[] => [
+      "G0 X50 Y50 Z0.2",
+      "G1 X70 E1",
+      "G1 Y70 E1",
+      "G1 X50 E1",
+      `G1 Y${50 + gap} E1`,
+    ];
     expect(first(open(0.5)).outlineMm).toBeCloseTo(79.5, 9);
     expect(first(open(0.7)).outlineMm).toBeCloseTo(80, 9);
     expect(first(open(5)).outlineMm).toBeCloseTo(80, 9);
@@ -175,7 +181,16 @@ describe("waits", () => {
     for (const wait of ["M109 S390", "T1", "M600", "PAUSE", "M116"]) expect(timeOf(wait)).toBeCloseTo(stopped, 9);
     expect(timeOf("G4 P2500")).toBeCloseTo(stopped + 2.5, 9);
     expect(timeOf("G4 S2")).toBeCloseTo(stopped + 2, 9);
-    for (const line of ["M106 S128", "M104 S300", "G92 E0", "M117 text", ";LAYER:9", "M73 P5", "SET_PIN PIN=a VALUE=1", "/skip"])
+    for (const line of [
+      "M106 S128",
+      "M104 S300",
+      "G92 E0",
+      "M117 text",
+      ";LAYER:9",
+      "M73 P5",
+      "SET_PIN PIN=a VALUE=1",
+      "/skip",
+    ])
       expect(timeOf(line)).toBeCloseTo(through, 12);
   });
 

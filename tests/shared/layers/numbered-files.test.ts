@@ -50,12 +50,19 @@ describe("a wrong checksum is refused", () => {
     expect(message).toMatch(/^the checksum of line 9 is \d+, its bytes give \d+$/);
   });
 
-  test.each(["N1 M106 S255*101", "N1 M106 S255 *100", "N1 M106 S255*", "N1 M117 hello*1", "N1 SET_PIN PIN=a VALUE=1*1", "N1 M106 S255*355"])(
-    "%s",
-    (line) => {
-      expect(refusalOf(() => readText([...PART, line]))).toMatchObject({ code: "checksum", place: { line: PART.length + 1 } });
-    },
-  );
+  test.each([
+    "N1 M106 S255*101",
+    "N1 M106 S255 *100",
+    "N1 M106 S255*",
+    "N1 M117 hello*1",
+    "N1 SET_PIN PIN=a VALUE=1*1",
+    "N1 M106 S255*355",
+  ])("%s", (line) => {
+    expect(refusalOf(() => readText([...PART, line]))).toMatchObject({
+      code: "checksum",
+      place: { line: PART.length + 1 },
+    });
+  });
 
   test("a byte changed anywhere before the star is found", () => {
     const line = "N12 G1 X70.25 E0.8 F1800";
@@ -79,7 +86,9 @@ describe("line numbers", () => {
 
   test("in order are no finding, whatever the lines hold", () => {
     const lines = rings(heights(2), marker);
-    const reading = readText(numbered([...START, "M117 layer 1", ...lines, "SET_PIN PIN=x VALUE=1", "M118 done", ...END]));
+    const reading = readText(
+      numbered([...START, "M117 layer 1", ...lines, "SET_PIN PIN=x VALUE=1", "M118 done", ...END]),
+    );
     expect(findingsOf(reading)).toEqual([]);
     expect(reading.layers).toHaveLength(2);
     expect(reading.layers[1].timeS).toBeCloseTo(readText([...START, ...lines, ...END]).layers[1].timeS, 9);

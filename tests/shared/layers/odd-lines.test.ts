@@ -89,7 +89,15 @@ describe("what looks odd is read as the trade means it", () => {
 
   test("numbers beyond any machine are told, and every measure stays finite", () => {
     const huge = "9".repeat(400);
-    const reading = read(`G1 X${huge} E1`, `G4 S${huge}`, `M104 S${huge}`, `M140 S${huge}`, `G92 E${huge}`, "G1 X90 E1", ...ring(0.4));
+    const reading = read(
+      `G1 X${huge} E1`,
+      `G4 S${huge}`,
+      `M104 S${huge}`,
+      `M140 S${huge}`,
+      `G92 E${huge}`,
+      "G1 X90 E1",
+      ...ring(0.4),
+    );
     expect(findingsOf(reading)).toEqual([0, 1, 2, 3, 4].map((k) => `number-too-large ${at + k}`));
     for (const layer of reading.layers)
       for (const value of Object.values(layer)) if (typeof value === "number") expect(value).toBeLessThan(1e9);
@@ -98,13 +106,18 @@ describe("what looks odd is read as the trade means it", () => {
 
 describe("macros and conditions may hide anything", () => {
   test("a name not known is told once", () => {
-    const reading = read("CLEAN_NOZZLE X=5", "CLEAN_NOZZLE X=6", "clean_nozzle", "M98 P\"a.g\"", "IF {x > 2}", "@host");
+    const reading = read("CLEAN_NOZZLE X=5", "CLEAN_NOZZLE X=6", "clean_nozzle", 'M98 P"a.g"', "IF {x > 2}", "@host");
     expect(findingsOf(reading)).toEqual([`macro ${at}`, `macro ${at + 3}`, `macro ${at + 4}`, `macro ${at + 5}`]);
     expect(reading.findings[0].message).toContain("CLEAN_NOZZLE");
   });
 
   test("names known to drive no output are not", () => {
-    const known = ["SET_VELOCITY_LIMIT ACCEL=500", "EXCLUDE_OBJECT_START NAME=a", "SET_PRESSURE_ADVANCE ADVANCE=0.1", "SAVE_GCODE_STATE"];
+    const known = [
+      "SET_VELOCITY_LIMIT ACCEL=500",
+      "EXCLUDE_OBJECT_START NAME=a",
+      "SET_PRESSURE_ADVANCE ADVANCE=0.1",
+      "SAVE_GCODE_STATE",
+    ];
     expect(findingsOf(read(...known))).toEqual([]);
   });
 

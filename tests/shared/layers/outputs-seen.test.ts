@@ -93,7 +93,7 @@ describe("lines that drive the machine's outputs", () => {
 
   test("know the print time at which they act: the end of the move before them", () => {
     const times = reading.controls.map(({ timeS }) => timeS);
-    expect(times).toEqual(times.toSorted((a, b) => a - b));
+    expect(times).toEqual([...times].sort((a, b) => a - b));
     expect(times[0]).toBe(0);
     expect(times[5]).toBeCloseTo(reading.window.end.timeS, 9);
     expect(times[3]).toBeLessThan(times[5]);
@@ -191,7 +191,19 @@ describe("named outputs", () => {
 describe("pauses", () => {
   test("are those that firmware knows and those that the machine lists", () => {
     const machine = tern({ pauses: [{ command: "MY_BREAK" }, { command: "M777" }] });
-    const forms = ["M0", "M1 wait", "M25", "M226", "M600", "M601", "M125", "PAUSE", "@pause", "my_break A=1", "M777 S1"];
+    const forms = [
+      "M0",
+      "M1 wait",
+      "M25",
+      "M226",
+      "M600",
+      "M601",
+      "M125",
+      "PAUSE",
+      "@pause",
+      "my_break A=1",
+      "M777 S1",
+    ];
     const { pauses } = readText([...START, ";LAYER:0", ...ring(0.2), ...forms, "M776", ...ring(0.4)], machine);
     expect(pauses.map(({ command }) => command)).toEqual([
       "M0",
@@ -212,7 +224,8 @@ describe("pauses", () => {
     const lines = [...START, "M0", ";LAYER:0", ...ring(0.2), "M600 X0", "M0 Change", ...ring(0.4), "M0"];
     const { pauses, layers } = readText(lines);
     const text = `${lines.join("\n")}\n`;
-    for (const { offset, length, line } of pauses) expect(text.slice(offset, offset + length)).toBe(`${lines[line - 1]}\n`);
+    for (const { offset, length, line } of pauses)
+      expect(text.slice(offset, offset + length)).toBe(`${lines[line - 1]}\n`);
     expect(pauses.map(({ layer }) => layer)).toEqual([0, 1, 1, Number.POSITIVE_INFINITY]);
     expect(pauses[0].timeS).toBe(0);
     expect(pauses[1].timeS).toBeGreaterThan(layers[0].startsAtS);
@@ -237,7 +250,7 @@ describe("the window and its travels", () => {
     expect(travels.count).toBe(5);
     for (const list of [travels.offset, travels.line, travels.timeS]) {
       expect(list).toHaveLength(travels.count);
-      expect([...list]).toEqual([...list].toSorted((a, b) => a - b));
+      expect([...list]).toEqual([...list].sort((a, b) => a - b));
     }
     expect(travels.offset[0]).toBeGreaterThanOrEqual(window.start.offset);
     expect(travels.offset[travels.count - 1]).toBeLessThan(window.end.offset);

@@ -89,7 +89,12 @@ describe("a prime line is the start of the print, not a layer", () => {
 test("a skirt at the height of layer 1 belongs to layer 1, behind the marker as without one", () => {
   const skirt = ring(0.2, { x: 40, y: 40, size: 40, e: 1 });
   for (const reading of [
-    read([";LAYER:0"], skirt, sides(), rings([0.4, 0.6], (k) => marker(k + 1))),
+    read(
+      [";LAYER:0"],
+      skirt,
+      sides(),
+      rings([0.4, 0.6], (k) => marker(k + 1)),
+    ),
     read(skirt, rings(heights(3))),
   ]) {
     expect(reading.layers).toHaveLength(3);

@@ -30,7 +30,8 @@ describe("an arc", () => {
         const recorder = run(["G1 Z0.3", `${g} X${x} Y${y} Z${z} R60 E3`]);
         expect(recorder.position).toEqual([x, y, z].map((word) => Number(word) + 0));
         const [centreX, centreY] = centreOf(recorder);
-        for (const { to } of recorder.moves.slice(1)) expect(Math.hypot(to[0] - centreX, to[1] - centreY)).toBeCloseTo(60, 4);
+        for (const { to } of recorder.moves.slice(1))
+          expect(Math.hypot(to[0] - centreX, to[1] - centreY)).toBeCloseTo(60, 4);
         expect(fedMm(recorder)).toBeCloseTo(3, 9);
       }),
       { examples: [["5", "5", "-32", "G2"]] },
@@ -86,10 +87,16 @@ describe("an arc", () => {
     const zx = run(["G18", "G2 Z1 X1 K1"]);
     const yz = run(["G19", "G2 Y1 Z1 J1"]);
     const middle = tern({ motion: { arcSegmentMm: 0.7 } });
-    expect([xy, zx, yz].map(({ position }) => position)).toEqual([[1, 1, 0], [1, 0, 1], [0, 1, 1]]);
-    const [a, b, c] = [["G17", "G2 X1 Y1 I1"], ["G18", "G2 Z1 X1 K1"], ["G19", "G2 Y1 Z1 J1"]].map(
-      (lines) => run(lines, middle).moves[0].to,
-    );
+    expect([xy, zx, yz].map(({ position }) => position)).toEqual([
+      [1, 1, 0],
+      [1, 0, 1],
+      [0, 1, 1],
+    ]);
+    const [a, b, c] = [
+      ["G17", "G2 X1 Y1 I1"],
+      ["G18", "G2 Z1 X1 K1"],
+      ["G19", "G2 Y1 Z1 J1"],
+    ].map((lines) => run(lines, middle).moves[0].to);
     expect(a[0]).toBeCloseTo(1 - Math.SQRT1_2, 12);
     expect(a[1]).toBeCloseTo(Math.SQRT1_2, 12);
     expect([b[2], b[0], b[1]]).toEqual(a);
@@ -125,7 +132,10 @@ function centreOf({ moves }: Recorder): [number, number] {
   const [x, y] = last.to;
   const chord = Math.hypot(x, y);
   const height = Math.sqrt(60 * 60 - (chord * chord) / 4);
-  const sides = [-1, 1].map((side): [number, number] => [x / 2 - (side * height * y) / chord, y / 2 + (side * height * x) / chord]);
+  const sides = [-1, 1].map((side): [number, number] => [
+    x / 2 - (side * height * y) / chord,
+    y / 2 + (side * height * x) / chord,
+  ]);
   const miss = ([cx, cy]: [number, number]): number => Math.abs(Math.hypot(first.to[0] - cx, first.to[1] - cy) - 60);
   return miss(sides[0]) < miss(sides[1]) ? sides[0] : sides[1];
 }

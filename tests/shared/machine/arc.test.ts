@@ -5,7 +5,14 @@ import { type Arc, arcFromCentre, arcFromRadius, arcLengthMm } from "#shared/mac
 const degrees = (radians: number): number => (radians * 180) / Math.PI;
 
 describe("check values of the reference sheet", () => {
-  type Case = [name: string, arc: Arc | undefined, centre: [number, number], radius: number, sweep: number, length: number];
+  type Case = [
+    name: string,
+    arc: Arc | undefined,
+    centre: [number, number],
+    radius: number,
+    sweep: number,
+    length: number,
+  ];
   test.each<Case>([
     ["G5", arcFromCentre(7, 7, 10, 16, 3, 4, true), [10, 11], 5, -143.1301, 12.490458],
     ["G6 by centre", arcFromCentre(9, 6, 2, 7, -4, -3, false), [5, 3], 5, 90, 7.853982],
@@ -65,16 +72,23 @@ describe("by radius", () => {
   test("agrees with the form by centre: on the circle, and up to 180° for a positive radius only", () => {
     const coordinate = fc.double({ min: -100, max: 100, noNaN: true });
     fc.assert(
-      fc.property(coordinate, coordinate, fc.double({ min: 0.51, max: 20, noNaN: true }), fc.boolean(), fc.boolean(), (x, y, times, long, clockwise) => {
-        const chord = Math.hypot(x, y);
-        fc.pre(chord > 1);
-        const radius = chord * times * (long ? -1 : 1);
-        const arc = arcFromRadius(0, 0, x, y, radius, clockwise)!;
-        expect(Math.hypot(arc.centreX, arc.centreY)).toBeCloseTo(Math.abs(radius), 6);
-        expect(Math.hypot(arc.centreX - x, arc.centreY - y)).toBeCloseTo(Math.abs(radius), 6);
-        expect(Math.abs(arc.sweepRad) > Math.PI).toBe(long);
-        expect(arc.sweepRad < 0).toBe(clockwise);
-      }),
+      fc.property(
+        coordinate,
+        coordinate,
+        fc.double({ min: 0.51, max: 20, noNaN: true }),
+        fc.boolean(),
+        fc.boolean(),
+        (x, y, times, long, clockwise) => {
+          const chord = Math.hypot(x, y);
+          fc.pre(chord > 1);
+          const radius = chord * times * (long ? -1 : 1);
+          const arc = arcFromRadius(0, 0, x, y, radius, clockwise)!;
+          expect(Math.hypot(arc.centreX, arc.centreY)).toBeCloseTo(Math.abs(radius), 6);
+          expect(Math.hypot(arc.centreX - x, arc.centreY - y)).toBeCloseTo(Math.abs(radius), 6);
+          expect(Math.abs(arc.sweepRad) > Math.PI).toBe(long);
+          expect(arc.sweepRad < 0).toBe(clockwise);
+        },
+      ),
     );
   });
 });
@@ -87,7 +101,10 @@ test("a turn goes the way that was asked for, once around at most", () => {
       const { sweepRad } = arcFromCentre(sx, sy, ex, ey, -sx, -sy, clockwise)!;
       expect(Math.abs(sweepRad)).toBeLessThanOrEqual(2 * Math.PI);
       if (sweepRad !== 0) expect(sweepRad < 0).toBe(clockwise);
-      const turned = [sx * Math.cos(sweepRad) - sy * Math.sin(sweepRad), sx * Math.sin(sweepRad) + sy * Math.cos(sweepRad)];
+      const turned = [
+        sx * Math.cos(sweepRad) - sy * Math.sin(sweepRad),
+        sx * Math.sin(sweepRad) + sy * Math.cos(sweepRad),
+      ];
       expect(turned[0]).toBeCloseTo(ex, 6);
       expect(turned[1]).toBeCloseTo(ey, 6);
     }),

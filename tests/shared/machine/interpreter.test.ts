@@ -114,9 +114,9 @@ describe("the extruder", () => {
   });
 
   test("is scaled by M221, whatever its mode", () => {
-    expect(run(["M221 S50", "G1 X1 E1", "M83", "G1 X2 E1", "M221 S200", "G1 X3 E1", "M221 S0", "G1 X4 E1"]).fed).toEqual([
-      0.5, 0.5, 2, 2,
-    ]);
+    expect(
+      run(["M221 S50", "G1 X1 E1", "M83", "G1 X2 E1", "M221 S200", "G1 X3 E1", "M221 S0", "G1 X4 E1"]).fed,
+    ).toEqual([0.5, 0.5, 2, 2]);
     expect(run(["G1 X1 E1", "M221 S50", "G1 X2 E2", "M221 S100", "G1 X3 E3"]).fed).toEqual([1, 0.5, 1]);
   });
 
@@ -144,7 +144,9 @@ describe("the extruder", () => {
 
 describe("speed", () => {
   test("is the machine's own until the first F, then stays until the next", () => {
-    expect(run(["G1 X1", "G1 X2 F600", "G0 X3", "G1 X4 F1200"]).moves.map(({ speed }) => speed)).toEqual([25, 10, 10, 20]);
+    expect(run(["G1 X1", "G1 X2 F600", "G0 X3", "G1 X4 F1200"]).moves.map(({ speed }) => speed)).toEqual([
+      25, 10, 10, 20,
+    ]);
   });
 
   test("T2: F is units per minute", () => {
@@ -152,7 +154,17 @@ describe("speed", () => {
   });
 
   test("is scaled by M220, in force until the next, not compounded", () => {
-    const { moves } = run(["G1 X1 F600", "M220 S50", "G1 X2", "M220 S200", "G1 X3 F300", "M220", "G1 X4", "M220 S0", "G1 X5"]);
+    const { moves } = run([
+      "G1 X1 F600",
+      "M220 S50",
+      "G1 X2",
+      "M220 S200",
+      "G1 X3 F300",
+      "M220",
+      "G1 X4",
+      "M220 S0",
+      "G1 X5",
+    ]);
     expect(moves.map(({ speed }) => speed)).toEqual([10, 5, 10, 10, 10]);
   });
 
@@ -169,8 +181,15 @@ describe("waits", () => {
   test("G4: P500 is half a second on one firmware family and 500 s on another; S is seconds on both, and wins", () => {
     expect(waits(["G4 P500"])).toEqual([["dwell", 0.5]]);
     expect(waits(["G4 P500"], { dwellP: "s" })).toEqual([["dwell", 500]]);
-    expect(waits(["G4 S2", "G4 P500 S2"])).toEqual([["dwell", 2], ["dwell", 2]]);
-    expect(waits(["G4", "G4 S-3", "G4 P"])).toEqual([["dwell", 0], ["dwell", 0], ["dwell", 0]]);
+    expect(waits(["G4 S2", "G4 P500 S2"])).toEqual([
+      ["dwell", 2],
+      ["dwell", 2],
+    ]);
+    expect(waits(["G4", "G4 S-3", "G4 P"])).toEqual([
+      ["dwell", 0],
+      ["dwell", 0],
+      ["dwell", 0],
+    ]);
   });
 
   test("homing, levelling, temperatures, tools and an emptied queue are told", () => {
@@ -189,7 +208,10 @@ describe("waits", () => {
 
   test("T255 and T1000 are switches, not tools; a T word beside a command is its parameter", () => {
     expect(waits(["T255", "T1000", "T-1", "M104 T1 S200", "G10 P1 T0", "T"])).toEqual([]);
-    expect(waits(["T0", "t 3"])).toEqual([["tool", null], ["tool", null]]);
+    expect(waits(["T0", "t 3"])).toEqual([
+      ["tool", null],
+      ["tool", null],
+    ]);
   });
 
   test("set-points are heard with the wait or without, from S or R", () => {
@@ -239,7 +261,9 @@ describe("several commands on a line", () => {
 test("G3: the words of a line mean the same in all 120 orders", () => {
   const words = ["G1", "X-7.0", "(foo)", "F600", "E.5"];
   const orders = (rest: string[]): string[][] =>
-    rest.length === 0 ? [[]] : rest.flatMap((word) => orders(rest.filter((other) => other !== word)).map((tail) => [word, ...tail]));
+    rest.length === 0
+      ? [[]]
+      : rest.flatMap((word) => orders(rest.filter((other) => other !== word)).map((tail) => [word, ...tail]));
   const lines = orders(words).map((order) => order.join(" "));
   expect(lines).toHaveLength(120);
   const expected = run(["G1 X3 F900", "G1 X-7 E.5 F600"]).moves;
@@ -250,7 +274,15 @@ describe("numbers beyond any machine", () => {
   const huge = "9".repeat(400);
 
   test("make a line that is told and not counted, on the plain path as off it", () => {
-    for (const line of [`G1 X${huge}`, "G1 X2000000000 Y1", `G92 X${huge}`, `M104 S${huge}`, `G4 S${huge}`, `G4 P${huge}`, `G1 X2 A${huge}`]) {
+    for (const line of [
+      `G1 X${huge}`,
+      "G1 X2000000000 Y1",
+      `G92 X${huge}`,
+      `M104 S${huge}`,
+      `G4 S${huge}`,
+      `G4 P${huge}`,
+      `G1 X2 A${huge}`,
+    ]) {
       const recorder = run(["G1 X1", line, `${line} ;x`, "G1 Y1"]);
       expect(recorder.oddities).toEqual(["number-too-large", "number-too-large"]);
       expect(recorder.position).toEqual([1, 1, 0]);
@@ -270,8 +302,11 @@ test("G91 moves and their absolute twins are the same", () => {
   const step = fc.integer({ min: -4000, max: 4000 }).map((n) => n / 8);
   fc.assert(
     fc.property(fc.array(fc.tuple(step, step, step), { minLength: 1, maxLength: 20 }), (steps) => {
-      let [x, y, z] = [0, 0, 0];
-      const absolute = steps.map(([dx, dy, dz]) => `G1 X${(x += dx)} Y${(y += dy)} Z${(z += dz)}`);
+      const at = [0, 0, 0];
+      const absolute = steps.map((by) => {
+        for (const axis of [0, 1, 2]) at[axis] += by[axis];
+        return `G1 X${at[0]} Y${at[1]} Z${at[2]}`;
+      });
       const relative = ["G91", ...steps.map((by) => `G1 X${by[0]} Y${by[1]} Z${by[2]}`)];
       expect(run(relative).moves).toEqual(run(absolute).moves);
     }),

@@ -115,7 +115,10 @@ describe("which output a line sets", () => {
     ];
     const names = drives.map((drive) => outputOf(channelOn(drive)));
     expect(names).toEqual(["fan 3", "pin 3", "named fan A", "named pin A"]);
-    expect([...channelsByOutput(tern())]).toEqual([["fan 0", 0], ["fan 2", 1]]);
+    expect([...channelsByOutput(tern())]).toEqual([
+      ["fan 0", 0],
+      ["fan 2", 1],
+    ]);
     expect(channelsByOutput(parseMachine({ ...tern(), channels: [] })).size).toBe(0);
   });
 });
@@ -170,7 +173,12 @@ describe("lines that do more than set a duty", () => {
 test("a named command is taken apart into its name and parameters, in capitals, quotes off", () => {
   const { name, parameters } = parseNamed("start_print Extruder=210 bed='60' NOTE=\"a = b; c\" _x=1 =5");
   expect(name).toBe("START_PRINT");
-  expect([...parameters]).toEqual([["EXTRUDER", "210"], ["BED", "60"], ["NOTE", "a = b; c"], ["_X", "1"]]);
+  expect([...parameters]).toEqual([
+    ["EXTRUDER", "210"],
+    ["BED", "60"],
+    ["NOTE", "a = b; c"],
+    ["_X", "1"],
+  ]);
   expect(parseNamed("@pause").name).toBe("@PAUSE");
   expect(parseNamed("").name).toBe("");
 });

@@ -32,9 +32,13 @@ test("T6: deviations of 0.01 mm at 90° and of 0.05 mm at 60°", () => {
 
 test("a square corner is taken at its own speed, whatever the acceleration", () => {
   fc.assert(
-    fc.property(fc.double({ min: 0.1, max: 50, noNaN: true }), fc.double({ min: 10, max: 50_000, noNaN: true }), (v, a) => {
-      expect(Math.sqrt(junctionSpeedSq(a, deviationForSquareCorner(v, a), 0)) / v).toBeCloseTo(1, 9);
-    }),
+    fc.property(
+      fc.double({ min: 0.1, max: 50, noNaN: true }),
+      fc.double({ min: 10, max: 50_000, noNaN: true }),
+      (v, a) => {
+        expect(Math.sqrt(junctionSpeedSq(a, deviationForSquareCorner(v, a), 0)) / v).toBeCloseTo(1, 9);
+      },
+    ),
   );
 });
 

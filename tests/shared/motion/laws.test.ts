@@ -59,7 +59,12 @@ describe.each(EVERY_RULE)("with %s", (_, machine) => {
       fc.property(path(30), (steps) => {
         const { timeS, lengthMm } = plan(steps, machine);
         expect(timeS.every((seconds) => seconds > 0 && Number.isFinite(seconds))).toBe(true);
-        expect(gain(timeS, steps.map((step) => lengthOf(step) / step.speedMmS))).toBeLessThan(ROUNDING);
+        expect(
+          gain(
+            timeS,
+            steps.map((step) => lengthOf(step) / step.speedMmS),
+          ),
+        ).toBeLessThan(ROUNDING);
         expect(apart(lengthMm, steps.map(lengthOf))).toBeLessThan(ROUNDING);
       }),
       { numRuns: 40 },
@@ -95,7 +100,9 @@ describe.each(EVERY_RULE)("with %s", (_, machine) => {
   test("with every acceleration doubled nothing takes longer", () => {
     fc.assert(
       fc.property(path(30), (steps) => {
-        expect(plan(steps, livelier(machine, 2)).totalS).toBeLessThanOrEqual(plan(steps, machine).totalS * (1 + ROUNDING));
+        expect(plan(steps, livelier(machine, 2)).totalS).toBeLessThanOrEqual(
+          plan(steps, machine).totalS * (1 + ROUNDING),
+        );
       }),
       { numRuns: 40 },
     );

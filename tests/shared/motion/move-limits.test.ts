@@ -1,6 +1,6 @@
 import { describe, expect, test } from "vitest";
-import { deviationCornerSq, jerkCornerSq, limitByAxes, startFromRestSq } from "#shared/motion/move-limits.ts";
 import { motionRules } from "#shared/motion/motion-rules.ts";
+import { deviationCornerSq, jerkCornerSq, limitByAxes, startFromRestSq } from "#shared/motion/move-limits.ts";
 import { DEVIATION, JERK, tern, ternCornering } from "#tests/helpers/tern.ts";
 
 const xy = { x: { maxSpeedMmS: 60, maxAccelMmS2: 600 }, y: { maxSpeedMmS: 30, maxAccelMmS2: 900 } };

@@ -112,7 +112,8 @@ function cornerSq(a: Limited, b: Limited, motion: Machine["motion"]): number {
     const share = [x, y, z, e].map((jerk, axis) => jerk / Math.max(Math.abs(a.unit[axis] - b.unit[axis]) * v, 1e-300));
     return common * Math.min(1, ...share) ** 2;
   }
-  if (cornering.rule === "junction-deviation") return Math.min(common, deviationSq(a, b, motion, cornering.deviationMm));
+  if (cornering.rule === "junction-deviation")
+    return Math.min(common, deviationSq(a, b, motion, cornering.deviationMm));
   const bounds = [common];
   for (const { accel, base, length } of [a, b]) {
     const deviation = (cornering.speedMmS ** 2 * (Math.SQRT2 - 1)) / base;
@@ -120,7 +121,8 @@ function cornerSq(a: Limited, b: Limited, motion: Machine["motion"]): number {
     if (cosHalf > 0) bounds.push((accel * length * sinHalf) / cosHalf / 2);
   }
   const jump = Math.abs(a.ePerMm - b.ePerMm);
-  if (b.travels && jump > 0 && cornering.extruderStepMmS !== undefined) bounds.push((cornering.extruderStepMmS / jump) ** 2);
+  if (b.travels && jump > 0 && cornering.extruderStepMmS !== undefined)
+    bounds.push((cornering.extruderStepMmS / jump) ** 2);
   return Math.min(...bounds);
 }
 
@@ -135,7 +137,9 @@ function deviationSq(a: Limited, b: Limited, { axes }: Machine["motion"], deviat
     accel = Math.min(accel, ((axes[axis]?.maxAccelMmS2 ?? Number.POSITIVE_INFINITY) * norm) / Math.abs(change[k]));
   const sinHalf = Math.sqrt((1 + dot) / 2);
   const bound = (accel * deviation * sinHalf) / (1 - sinHalf);
-  return b.length < 1 && dot > Math.SQRT1_2 ? Math.min(bound, (b.length * accel) / Math.max(Math.acos(dot), 0.033)) : bound;
+  return b.length < 1 && dot > Math.SQRT1_2
+    ? Math.min(bound, (b.length * accel) / Math.max(Math.acos(dot), 0.033))
+    : bound;
 }
 
 /** Cosine of the change of direction; moves of material alone lie on an axis of their own. */

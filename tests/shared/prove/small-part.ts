@@ -13,6 +13,8 @@ export interface Dialect {
   named?: boolean;
   /** nothing stands behind the last laying move */
   bareEnd?: boolean;
+  /** moves of a few seconds each, so that a duty may change several times in a layer */
+  slow?: boolean;
 }
 
 const LAYERS = 6;
@@ -25,7 +27,7 @@ export function smallPart(dialect: Dialect = {}): string {
   return (byteOrderMark ? "\xef\xbb\xbf" : "") + written.join(newline) + (finalNewline ? newline : "");
 }
 
-function partLines({ pause, named = false, bareEnd = false }: Dialect): string[] {
+function partLines({ pause, named = false, bareEnd = false, slow = false }: Dialect): string[] {
   const fan = (s: number): string => (named ? `SET_FAN_SPEED FAN=part SPEED=${s / 256}` : `M106 S${s}`);
   const lines = [
     "; a small square, caf\xe9",
@@ -40,7 +42,10 @@ function partLines({ pause, named = false, bareEnd = false }: Dialect): string[]
     "G92 E0",
   ];
   let e = 0;
-  const lay = (x: number, y: number): number => lines.push(`G1 X${x} Y${y} E${((e += 0.8)).toFixed(2)} F1500`);
+  const lay = (x: number, y: number): void => {
+    e += 0.8;
+    lines.push(`G1 X${x} Y${y} E${e.toFixed(2)} F${slow ? 400 : 1500}`);
+  };
   for (let layer = 1; layer <= LAYERS; layer++) {
     lines.push(`;LAYER:${layer - 1}`, `G0 X10 Y10 Z${(layer * 0.2).toFixed(1)} F6000`);
     lay(40, 10);

@@ -2,7 +2,7 @@ import { readFileSync } from "node:fs";
 import { describe, expect, test } from "vitest";
 import { parseMachine } from "#shared/formats/machine.ts";
 import { parseProfile } from "#shared/formats/profile.ts";
-import { isOwn, linesOf, ownCommands, read, tuneWhole, unnumbered } from "#tests/shared/rewrite/tuning.ts";
+import { isOwn, linesOf, ownCommands, tuneWhole, unnumbered } from "#tests/shared/rewrite/tuning.ts";
 
 const sample = (name: string): string => readFileSync(new URL(`../../../samples/${name}`, import.meta.url), "latin1");
 const document = (name: string): unknown => JSON.parse(sample(name));
@@ -45,7 +45,7 @@ describe.each([
 
   test("ends with the lamp off, and lights it in between", () => {
     const lamp = machine.channels[1];
-    const commands = read(tuned, machine).controls.filter(({ channel, ours }) => channel === 1 && ours);
+    const commands = again.reading.controls.filter(({ channel, ours }) => channel === 1 && ours);
     expect(commands[commands.length - 1].duty).toBe(0);
     expect(Math.max(...commands.map(({ duty }) => duty))).toBeGreaterThan(0.05);
     expect(Math.max(...commands.map(({ duty }) => duty))).toBeLessThanOrEqual(lamp.maxDuty);

@@ -137,42 +137,39 @@ test("what the file has set above the limit comes down to it at once", () => {
 });
 
 test("whatever is wanted when, steps are small enough, far enough apart, and none stands in the dead band", () => {
-  const gaps = fc.array(fc.constantFrom(0, 0.2, 0.7, 1, 3), { minLength: 1, maxLength: 40 });
-  const wanted = fc.uniqueArray(fc.record({ at: fc.nat(60), thousandths: fc.nat(200) }), {
-    selector: ({ at }) => at,
-    maxLength: 8,
+  const task = fc.record({
+    gaps: fc.array(fc.constantFrom(0, 0.2, 0.7, 1, 3), { minLength: 1, maxLength: 40 }),
+    wanted: fc.uniqueArray(fc.record({ at: fc.nat(60), thousandths: fc.nat(200) }), {
+      selector: ({ at }) => at,
+      maxLength: 8,
+    }),
+    perS: fc.constantFrom(0.004, 0.05, 0.3),
+    minDuty: fc.constantFrom(0, 0.12),
+    first: fc.nat(200),
+    at: fc.nat(5),
   });
-  const perS = fc.constantFrom(0.004, 0.05, 0.3);
   fc.assert(
-    fc.property(
-      gaps,
-      wanted,
-      perS,
-      fc.constantFrom(0, 0.12),
-      fc.nat(200),
-      fc.nat(5),
-      (gap, all, most, minDuty, first, at) => {
-        const times = gap.map((_, k) => gap.slice(0, k).reduce((sum, g) => sum + g, 0));
-        const limit = rate(most, { kind: "fan", minDuty });
-        const allowed = (thousandths: number) => (thousandths < minDuty * 1000 ? 0 : thousandths / 1000);
-        const targets = all
-          .filter((target) => target.at >= at && target.at < times.length)
-          .sort((a, b) => a.at - b.at)
-          .map((target) => ({ at: target.at, duty: allowed(target.thousandths) }));
-        const from = { duty: allowed(first), sinceS: Number.NEGATIVE_INFINITY, at };
-        let before = { duty: from.duty, timeS: Number.NEGATIVE_INFINITY, at: at - 1 };
-        for (const step of staircase(boundariesAt(times), from, targets, times.length, limit)) {
-          const change = Math.abs(step.duty - before.duty);
-          const crosses = Math.min(step.duty, before.duty) < SAME && Math.max(step.duty, before.duty) <= minDuty + SAME;
-          expect(step.at).toBeGreaterThan(before.at);
-          expect(change).toBeGreaterThan(SAME);
-          expect(change <= limit.step + SAME || crosses).toBe(true);
-          expect(times[step.at] - before.timeS).toBeGreaterThan(limit.everyS - 2 * SAME);
-          expect(step.duty > SAME && step.duty < minDuty - SAME).toBe(false);
-          before = { duty: step.duty, timeS: times[step.at], at: step.at };
-        }
-      },
-    ),
+    fc.property(task, ({ gaps, wanted, perS, minDuty, first, at }) => {
+      const times = gaps.map((_, k) => gaps.slice(0, k).reduce<number>((sum, gap) => sum + gap, 0));
+      const limit = rate(perS, { kind: "fan", minDuty });
+      const allowed = (thousandths: number) => (thousandths < minDuty * 1000 ? 0 : thousandths / 1000);
+      const targets = wanted
+        .filter((target) => target.at >= at && target.at < times.length)
+        .sort((a, b) => a.at - b.at)
+        .map((target) => ({ at: target.at, duty: allowed(target.thousandths) }));
+      const from = { duty: allowed(first), sinceS: Number.NEGATIVE_INFINITY, at };
+      let before = { duty: from.duty, timeS: Number.NEGATIVE_INFINITY, at: at - 1 };
+      for (const step of staircase(boundariesAt(times), from, targets, times.length, limit)) {
+        const change = Math.abs(step.duty - before.duty);
+        const crosses = Math.min(step.duty, before.duty) < SAME && Math.max(step.duty, before.duty) <= minDuty + SAME;
+        expect(step.at).toBeGreaterThan(before.at);
+        expect(change).toBeGreaterThan(SAME);
+        expect(change <= limit.step + SAME || crosses).toBe(true);
+        expect(times[step.at] - before.timeS).toBeGreaterThan(limit.everyS - 2 * SAME);
+        expect(step.duty > SAME && step.duty < minDuty - SAME).toBe(false);
+        before = { duty: step.duty, timeS: times[step.at], at: step.at };
+      }
+    }),
     { numRuns: 300 },
   );
 });

@@ -10,7 +10,7 @@ import {
   pointAfter,
   pointRemoved,
 } from "#src/features/profiles/editor/curve-edits.ts";
-import { quantityScale, steppedPoint } from "#src/features/profiles/editor/curve-plot.tsx";
+import { quantityScale, steppedPoint } from "#src/features/profiles/editor/curve-view.ts";
 import { asRule } from "#src/features/profiles/editor/rule-editor.tsx";
 
 const grid = CURVE_GRIDS["layer-time"];

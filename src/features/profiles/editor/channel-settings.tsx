@@ -25,7 +25,7 @@ export function ChannelSettings({ editing, edited }: { editing: ProfileEditing; 
         onChange={({ target }) => editing.edit(drivingChannel(profile, side, id, target.checked))}
       />
       {driven && (
-        <div className="grid grid-cols-2 gap-3 pl-8 sm:grid-cols-3 xl:grid-cols-4">
+        <div className="grid grid-cols-2 gap-3 pl-8 sm:grid-cols-3 @3xl:grid-cols-4">
           {profile.bedLayers.count > 0 && <BedDuty editing={editing} id={id} />}
           <LimitField editing={editing} id={id} field="minDuty" label="Least" unit="0–1" machine={channel?.minDuty} />
           <LimitField editing={editing} id={id} field="maxDuty" label="Most" unit="0–1" machine={channel?.maxDuty} />

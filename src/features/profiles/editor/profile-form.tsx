@@ -23,7 +23,8 @@ export function ProfileForm({ editing, selected, onSelect, polymers, rugs, at }:
   const { profile } = editing;
   const z = Math.min(selected, profile.zones.length - 1);
   return (
-    <div className="flex flex-col gap-6">
+    // Beside the layer log it is narrow, on a page of its own wide: its columns go by its own width.
+    <div className="@container flex flex-col gap-6">
       <div className="flex flex-wrap items-center gap-3">
         <Button disabled={!editing.canUndo} onClick={editing.undo} aria-keyshortcuts="Control+Z">
           Undo
@@ -168,7 +169,7 @@ function MarginFields({ editing }: { editing: ProfileEditing }) {
     <details open={open} onToggle={({ currentTarget }) => setOpen(currentTarget.open)}>
       <summary className="text-small font-semibold">Margins of its own</summary>
       <p className="py-1 text-small text-soft">Empty: as the polymer card says.</p>
-      <div className="grid gap-3 sm:grid-cols-2 xl:grid-cols-4">
+      <div className="grid gap-3 sm:grid-cols-2 @3xl:grid-cols-4">
         {MARGINS.map(({ field, label, unit, step }) => (
           <NumberField
             key={field}

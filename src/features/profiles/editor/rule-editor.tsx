@@ -85,7 +85,7 @@ export function RuleEditor(props: RuleEditorProps) {
         )}
       </div>
       {rule.rule === "curve" && (
-        <div className="grid gap-x-6 gap-y-3 xl:grid-cols-[minmax(0,26rem)_auto]">
+        <div className="grid gap-x-6 gap-y-3 @2xl:grid-cols-[minmax(0,26rem)_auto]">
           <CurvePlot
             label={`Duty of ${channel.id} over ${OVER_NAMES[rule.over].name}, zone ${zoneName}`}
             points={rule.points}
