@@ -5,6 +5,8 @@ import { colourProperty, SHEETS, type SheetColour } from "./src/ui/sheet-colours
 const properties = (colours: Record<string, string>) =>
   Object.fromEntries(Object.entries(colours).map(([name, value]) => [colourProperty(name), value]));
 
+const TEXT_FACE = ['"Source Sans 3"', "Calibri", "Carlito", '"Noto Sans"', "system-ui", "sans-serif"];
+
 const names = Object.keys(SHEETS.light) as SheetColour[];
 
 export default {
@@ -16,7 +18,7 @@ export default {
       ...Object.fromEntries(names.map((name) => [colourProperty(name).slice(2), `var(${colourProperty(name)})`])),
     },
     fontFamily: {
-      text: ['"Source Sans 3"', "Calibri", "Carlito", '"Noto Sans"', "system-ui", "sans-serif"],
+      text: TEXT_FACE,
       mono: ['"JetBrains Mono"', "ui-monospace", "monospace"],
     },
     fontSize: {
@@ -32,7 +34,7 @@ export default {
     // The system's choice holds until a person makes one of their own (data-sheet on the root element).
     plugin(({ addBase }) =>
       addBase({
-        ":root": { ...properties(SHEETS.light), colorScheme: "light" },
+        ":root": { ...properties(SHEETS.light), colorScheme: "light", "--text-face": TEXT_FACE.join(", ") },
         "@media (prefers-color-scheme: dark)": {
           ":root:not([data-sheet=light])": { ...properties(SHEETS.dark), colorScheme: "dark" },
         },

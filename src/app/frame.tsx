@@ -21,7 +21,10 @@ export function Frame() {
   const online = useOnline();
   return (
     <div className="flex min-h-dvh flex-col">
-      <a href="#page" className="sr-only focus:not-sr-only focus:absolute focus:z-10 focus:bg-ink focus:px-3 focus:py-2 focus:text-paper">
+      <a
+        href="#page"
+        className="sr-only focus:not-sr-only focus:absolute focus:z-10 focus:bg-ink focus:px-3 focus:py-2 focus:text-paper"
+      >
         Skip to the page
       </a>
       <header className="border-b border-ink">
@@ -62,7 +65,11 @@ export function Frame() {
 /** The name with the line through it: Tg, and layers on either side. */
 function Wordmark() {
   return (
-    <NavLink to={paths.floor} className="flex items-center gap-2.5 py-2 font-semibold tracking-wide" aria-label="Quenchline, floor">
+    <NavLink
+      to={paths.floor}
+      className="flex items-center gap-2.5 py-2 font-semibold tracking-wide"
+      aria-label="Quenchline, floor"
+    >
       <svg aria-hidden width="26" height="24" viewBox="0 0 26 24" fill="none">
         <path d="M4 4h9M4 8h14M4 16h7M4 20h16" stroke="currentColor" strokeWidth="1.5" />
         <path d="M0 12h26" stroke="var(--amber)" strokeWidth="2" />

@@ -1,4 +1,11 @@
-import { type BodyInput, type Endpoint, type ParamsOf, pathOf, type QueryInput, type ReplyOutput } from "#shared/contract/endpoint.ts";
+import {
+  type BodyInput,
+  type Endpoint,
+  type ParamsOf,
+  pathOf,
+  type QueryInput,
+  type ReplyOutput,
+} from "#shared/contract/endpoint.ts";
 import { noAnswer, type ProblemError, problemFrom } from "#src/lib/problem.ts";
 import { waitForSignIn } from "#src/lib/sign-in-gate.ts";
 
@@ -8,7 +15,8 @@ type Part<Name extends string, Value> = [Value] extends [undefined]
     ? { [N in Name]?: Value }
     : { [N in Name]: Value };
 type ParamsPart<E> = keyof ParamsOf<E> extends never ? { params?: undefined } : { params: ParamsOf<E> };
-type QueryPart<E> = Record<never, never> extends QueryInput<E> ? { query?: QueryInput<E> } : Part<"query", QueryInput<E>>;
+type QueryPart<E> =
+  Record<never, never> extends QueryInput<E> ? { query?: QueryInput<E> } : Part<"query", QueryInput<E>>;
 export type CallOptions<E> = ParamsPart<E> & Part<"body", BodyInput<E>> & QueryPart<E> & { signal?: AbortSignal };
 type OptionalWhenEmpty<T> = Record<never, never> extends T ? [options?: T] : [options: T];
 
@@ -24,15 +32,22 @@ interface LooseOptions {
  *
  * @throws ProblemError with what the server said, or that it did not answer
  */
-export async function call<E extends Endpoint>(spec: E, ...rest: OptionalWhenEmpty<CallOptions<E>>): Promise<ReplyOutput<E>> {
+export async function call<E extends Endpoint>(
+  spec: E,
+  ...rest: OptionalWhenEmpty<CallOptions<E>>
+): Promise<ReplyOutput<E>> {
   const options = (rest[0] ?? {}) as LooseOptions;
   const response = await send(spec, options);
-  if (response.status === 401 && spec.allows !== "anyone" && (await waitForSignIn())) return reply(spec, await send(spec, options));
+  if (response.status === 401 && spec.allows !== "anyone" && (await waitForSignIn()))
+    return reply(spec, await send(spec, options));
   return reply(spec, response);
 }
 
 /** The same, but a request that is turned away as signed out fails at once. */
-export async function callOnce<E extends Endpoint>(spec: E, ...rest: OptionalWhenEmpty<CallOptions<E>>): Promise<ReplyOutput<E>> {
+export async function callOnce<E extends Endpoint>(
+  spec: E,
+  ...rest: OptionalWhenEmpty<CallOptions<E>>
+): Promise<ReplyOutput<E>> {
   return reply(spec, await send(spec, (rest[0] ?? {}) as LooseOptions));
 }
 

@@ -43,7 +43,9 @@ export function problemFrom(status: number, text: string): ProblemError {
     code: string("code") ?? `http-${status}`,
     title: string("title") ?? "The request failed",
     detail: string("detail") ?? `The server answered with status ${status} and no explanation.`,
-    remedy: string("remedy") ?? (status >= 500 ? "Try again in a moment. If it stays, tell whoever runs the server." : undefined),
+    remedy:
+      string("remedy") ??
+      (status >= 500 ? "Try again in a moment. If it stays, tell whoever runs the server." : undefined),
     errors: Array.isArray(said.errors) ? (said.errors as Problem["errors"]) : undefined,
     place: typeof said.place === "object" && said.place !== null ? (said.place as Problem["place"]) : undefined,
   });

@@ -27,7 +27,8 @@ function send({ url, file, signal, onBytes }: Upload): Promise<{ status: number;
     form.append("file", file, file.name);
     request.open("POST", url);
     request.setRequestHeader("accept", "application/json");
-    request.upload.onprogress = ({ loaded, total }) => onBytes(Math.min(loaded, file.size), total > 0 ? file.size : loaded);
+    request.upload.onprogress = ({ loaded, total }) =>
+      onBytes(Math.min(loaded, file.size), total > 0 ? file.size : loaded);
     request.onload = () => resolve({ status: request.status, text: request.responseText });
     request.onerror = () => reject(noAnswer());
     request.onabort = () => reject(new DOMException("The upload was given up.", "AbortError"));

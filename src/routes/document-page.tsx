@@ -4,7 +4,13 @@ import { useNavigate, useParams, useSearchParams } from "react-router-dom";
 import type { DocumentHistory } from "#shared/contract/documents.ts";
 import { paths } from "#src/app/paths.ts";
 import { useMay } from "#src/features/auth/session-context.tsx";
-import { approveProfile, type DocumentKind, historyQuery, type Version, versionQuery } from "#src/features/documents/kinds.ts";
+import {
+  approveProfile,
+  type DocumentKind,
+  historyQuery,
+  type Version,
+  versionQuery,
+} from "#src/features/documents/kinds.ts";
 import { SaveDialog } from "#src/features/documents/save-dialog.tsx";
 import { VersionTable } from "#src/features/documents/version-table.tsx";
 import { moment } from "#src/lib/format.ts";
@@ -65,7 +71,10 @@ function History<D extends { name: string }>({ kind, history, children }: Props<
           <>
             <Button
               disabled={!version.data}
-              onClick={() => version.data && saveFile(documentFileName(version.data.document.name), kind.write(version.data.document))}
+              onClick={() =>
+                version.data &&
+                saveFile(documentFileName(version.data.document.name), kind.write(version.data.document))
+              }
             >
               Export JSON
             </Button>

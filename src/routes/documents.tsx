@@ -11,7 +11,8 @@ import { PageHead } from "#src/ui/section.tsx";
 import { Empty, Loaded } from "#src/ui/states.tsx";
 
 const INTRODUCTIONS: Record<string, string> = {
-  machines: "What each printer can do: its motion limits, its fans and heaters with the commands that drive them, its pauses.",
+  machines:
+    "What each printer can do: its motion limits, its fans and heaters with the commands that drive them, its pauses.",
   profiles: "Heating and cooling rules by height: what a layer shall become, and how fan and heater bring it about.",
   polymers: "Cards of materials: transition temperatures and what else decides state, each number with its source.",
 };

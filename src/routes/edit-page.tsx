@@ -28,7 +28,12 @@ export function EditPage<D extends { name: string }>({ kind, editor }: EditorPro
   );
 }
 
-function EditVersion<D extends { name: string }>({ kind, id, latest, editor }: EditorProps<D> & { id: string; latest: number }) {
+function EditVersion<D extends { name: string }>({
+  kind,
+  id,
+  latest,
+  editor,
+}: EditorProps<D> & { id: string; latest: number }) {
   // A version that somebody else saves meanwhile must not exchange what one is editing.
   const [begun] = useState(latest);
   const version = useQuery(versionQuery(kind, id, begun));

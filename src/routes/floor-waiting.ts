@@ -43,21 +43,45 @@ function unreadItems({ id, name, readings }: Toolpath): WaitingItem[] {
 function tuningItems({ id, fileName, machineName, state, refusal, acknowledged }: Tuning): WaitingItem[] {
   const item = { key: `tuning-${id}`, what: fileName, href: paths.tuning(id) };
   if (state === "refused" || state === "failed") {
-    return [{ ...item, why: refusal ? `not written: ${refusal.message}` : "could not be written: a fault of ours", act: "Look" }];
+    return [
+      {
+        ...item,
+        why: refusal ? `not written: ${refusal.message}` : "could not be written: a fault of ours",
+        act: "Look",
+      },
+    ];
   }
   if (state !== "done" || acknowledged) return [];
-  return [{ ...item, why: `written; ${machineName} needs your checklist before you can download it`, act: "Go through it" }];
+  return [
+    { ...item, why: `written; ${machineName} needs your checklist before you can download it`, act: "Go through it" },
+  ];
 }
 
 function untunedItems({ id, name, readings }: Toolpath): WaitingItem[] {
   const reading = readings.find(({ state }) => state === "done");
   if (!reading) return [];
-  return [{ key: `tune-${id}`, what: name, why: `read for ${reading.machineName}, not tuned yet`, act: "Tune", href: paths.tune(reading.id) }];
+  return [
+    {
+      key: `tune-${id}`,
+      what: name,
+      why: `read for ${reading.machineName}, not tuned yet`,
+      act: "Tune",
+      href: paths.tune(reading.id),
+    },
+  ];
 }
 
 function approvalItems({ id, name, latest, approved = [] }: DocumentSummary): WaitingItem[] {
   if (approved.includes(latest.number)) return [];
   const before = approved.length === 0 ? "no version is approved" : `version ${approved.at(-1)} is the last approved`;
   const href = paths.document("profiles", id, latest.number);
-  return [{ key: `approve-${id}`, what: name, why: `version ${latest.number} by ${latest.createdBy}; ${before}`, act: "Review", href }];
+  return [
+    {
+      key: `approve-${id}`,
+      what: name,
+      why: `version ${latest.number} by ${latest.createdBy}; ${before}`,
+      act: "Review",
+      href,
+    },
+  ];
 }

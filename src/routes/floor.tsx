@@ -31,7 +31,9 @@ export function Floor() {
   const items = waitingItems({ toolpaths: toolpaths.data, tunings: tunings.data, profiles: profiles.data, may });
   const underWay = [
     ...(toolpaths.data ?? []).flatMap(({ name, readings }) =>
-      readings.filter(isUnderWay).map(({ jobId, machineName }) => ({ jobId, label: `Reading ${name} for ${machineName}` })),
+      readings
+        .filter(isUnderWay)
+        .map(({ jobId, machineName }) => ({ jobId, label: `Reading ${name} for ${machineName}` })),
     ),
     ...(tunings.data ?? []).filter(isUnderWay).map(({ jobId, fileName }) => ({ jobId, label: `Writing ${fileName}` })),
   ];
@@ -43,7 +45,11 @@ export function Floor() {
           <Loaded query={machines} what="Looking for machines">
             {(list) =>
               list.length === 0 ? (
-                <Empty actions={may("edit") && <ButtonLink to={paths.newDocument("machines")}>Describe a machine</ButtonLink>}>
+                <Empty
+                  actions={
+                    may("edit") && <ButtonLink to={paths.newDocument("machines")}>Describe a machine</ButtonLink>
+                  }
+                >
                   A toolpath is read for a machine, and there is none yet.
                   {!may("edit") && " Ask an engineer of your team to describe one."}
                 </Empty>

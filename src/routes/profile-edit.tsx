@@ -61,7 +61,9 @@ function useMachines() {
 
 const rulesOf = ({ zones }: Profile): Rule[] => zones.flatMap(({ cooling, heating }) => [...cooling, ...heating]);
 
-const editor = (profile: Profile, onChange: (profile: Profile) => void) => <Editor profile={profile} onChange={onChange} />;
+const editor = (profile: Profile, onChange: (profile: Profile) => void) => (
+  <Editor profile={profile} onChange={onChange} />
+);
 
 export const EditProfile = () => <EditPage kind={PROFILES} editor={editor} />;
 export const NewProfile = () => <NewPage kind={PROFILES} start={() => newProfile("PEEK")} editor={editor} />;

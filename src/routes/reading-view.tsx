@@ -14,11 +14,11 @@ import { Waits } from "#src/features/toolpaths/waits.tsx";
 import { counted, duration } from "#src/lib/format.ts";
 import { fixedText } from "#src/lib/number-text.ts";
 import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
+import { LogBeside } from "#src/routes/log-beside.tsx";
 import { Button } from "#src/ui/button.tsx";
 import { Facts } from "#src/ui/facts.tsx";
 import { Section } from "#src/ui/section.tsx";
 import { Loaded } from "#src/ui/states.tsx";
-import { LogBeside } from "#src/routes/log-beside.tsx";
 
 interface Props {
   reading: { id: string; machineId: string; machineVersion: number };

@@ -18,7 +18,8 @@ export function SignIn() {
         <Strip />
         <h1 className="mt-6 text-title font-semibold">Quenchline</h1>
         <p className="mt-2 max-w-sm text-soft">
-          Heating and cooling, layer by layer: every layer solid in shape, and on the chosen side of the glass transition.
+          Heating and cooling, layer by layer: every layer solid in shape, and on the chosen side of the glass
+          transition.
         </p>
       </div>
       <div className="border-t border-ink pt-5">
@@ -56,12 +57,7 @@ function Strip() {
       ))}
       <path d="M120 6v103M236 6v103" stroke="var(--hair)" />
       <path d="M178 6v103" stroke="var(--ink)" strokeDasharray="5 3" />
-      <path
-        d="M206 109v-40c0-6-2-9-14-12s-28-4-34-12-4-22-6-39"
-        fill="none"
-        stroke="var(--heat)"
-        strokeWidth="1.75"
-      />
+      <path d="M206 109v-40c0-6-2-9-14-12s-28-4-34-12-4-22-6-39" fill="none" stroke="var(--heat)" strokeWidth="1.75" />
     </svg>
   );
 }

@@ -72,7 +72,9 @@ function OneToolpath({ toolpath }: { toolpath: Toolpath }) {
                 ))}
               </SelectField>
             )}
-            {reading?.state === "done" && <FileLink href={urlOf(getLayersCsv, { id: reading.id })}>Layers as CSV</FileLink>}
+            {reading?.state === "done" && (
+              <FileLink href={urlOf(getLayersCsv, { id: reading.id })}>Layers as CSV</FileLink>
+            )}
             {may("operate") && (
               <>
                 <Button onClick={() => setDialog("read")} disabled={!machines.data?.length}>
@@ -145,8 +147,8 @@ function RemoveDialog({ toolpath, onClose }: { toolpath: Toolpath; onClose(): vo
   return (
     <Dialog title="Remove the toolpath" onClose={onClose}>
       <p>
-        <span className="font-semibold wrap-anywhere">{toolpath.name}</span> and its readings are removed for the whole team. A
-        toolpath from which a tuned file was written stays.
+        <span className="font-semibold wrap-anywhere">{toolpath.name}</span> and its readings are removed for the whole
+        team. A toolpath from which a tuned file was written stays.
       </p>
       {remove.error && <ProblemNotice problem={asProblem(remove.error)} />}
       <Actions>

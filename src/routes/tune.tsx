@@ -164,7 +164,9 @@ function ProfileChoice({ profileId, version, choose }: Choice) {
       <SelectField
         label="Profile"
         value={profileId}
-        hint={offered.length === 0 && profiles.data ? "No profile is approved yet. Ask the lead of your team." : undefined}
+        hint={
+          offered.length === 0 && profiles.data ? "No profile is approved yet. Ask the lead of your team." : undefined
+        }
         onChange={({ target }) => choose(target.value)}
       >
         {profileId === "" && <option value="">Choose …</option>}

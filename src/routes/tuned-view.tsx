@@ -15,7 +15,12 @@ import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
 import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
 import { AdviceList } from "#src/features/tunings/advice-list.tsx";
 import { ProofPanel } from "#src/features/tunings/proof-panel.tsx";
-import { layerDiffQuery, tuningChangesQuery, tuningPlanQuery, tuningProofQuery } from "#src/features/tunings/queries.ts";
+import {
+  layerDiffQuery,
+  tuningChangesQuery,
+  tuningPlanQuery,
+  tuningProofQuery,
+} from "#src/features/tunings/queries.ts";
 import { saveFile } from "#src/lib/save-file.ts";
 import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
 import { LogBeside } from "#src/routes/log-beside.tsx";

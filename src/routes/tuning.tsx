@@ -75,7 +75,13 @@ function TuningState({ tuning, mayOperate }: { tuning: Tuning; mayOperate: boole
     );
   }
   const change = `${paths.tune(readingId)}?profile=${profileId}&version=${profileVersion}`;
-  return <RefusalNotice title="Not written" refusal={refusal} actions={<ButtonLink to={change}>Change it and tune again</ButtonLink>} />;
+  return (
+    <RefusalNotice
+      title="Not written"
+      refusal={refusal}
+      actions={<ButtonLink to={change}>Change it and tune again</ButtonLink>}
+    />
+  );
 }
 
 /** The first download for a machine leads through its checklist. */
@@ -98,7 +104,9 @@ function Download({ tuning }: { tuning: Tuning }) {
       <Button weight="main" onClick={() => setOpen(true)}>
         Download …
       </Button>
-      {open && <ChecklistDialog machine={machine} onAcknowledged={() => setOpen(false)} onClose={() => setOpen(false)} />}
+      {open && (
+        <ChecklistDialog machine={machine} onAcknowledged={() => setOpen(false)} onClose={() => setOpen(false)} />
+      )}
     </>
   );
 }

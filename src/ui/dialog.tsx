@@ -16,7 +16,11 @@ export function Dialog({ title, onClose, wide = false, children }: Props) {
   const id = useId();
   useEffect(() => {
     const dialog = ref.current;
-    if (dialog && !dialog.open) dialog.showModal();
+    if (dialog && !dialog.open) {
+      dialog.showModal();
+      // The browser would begin at Close; whoever opens a form wants to fill it in.
+      dialog.querySelector<HTMLElement>("form :is(input:not([readonly]), select, textarea)")?.focus();
+    }
     return () => dialog?.close();
   }, []);
   return (

@@ -17,7 +17,10 @@ function Frame({
   error,
   className,
   control,
-}: Labelled & { className?: string; control(ids: { id: string; "aria-describedby"?: string; "aria-invalid"?: true }): ReactNode }) {
+}: Labelled & {
+  className?: string;
+  control(ids: { id: string; "aria-describedby"?: string; "aria-invalid"?: true }): ReactNode;
+}) {
   const id = useId();
   const said = [hint !== undefined && `${id}-hint`, error !== undefined && `${id}-error`].filter(Boolean).join(" ");
   return (
@@ -42,10 +45,7 @@ function Frame({
 
 export function TextField({ label, hint, error, className, ...rest }: Labelled & ComponentProps<"input">) {
   return (
-    <Frame
-      {...{ label, hint, error, className }}
-      control={(ids) => <input {...ids} className={BOX} {...rest} />}
-    />
+    <Frame {...{ label, hint, error, className }} control={(ids) => <input {...ids} className={BOX} {...rest} />} />
   );
 }
 
@@ -71,7 +71,11 @@ export function SelectField({ label, hint, error, className, children, ...rest }
   );
 }
 
-export function CheckField({ label, className, ...rest }: Omit<ComponentProps<"input">, "type"> & { label: ReactNode }) {
+export function CheckField({
+  label,
+  className,
+  ...rest
+}: Omit<ComponentProps<"input">, "type"> & { label: ReactNode }) {
   return (
     <label className={classNames("flex items-start gap-3 py-1", className)}>
       <input type="checkbox" className="mt-0.5 size-5 shrink-0 accent-ink" {...rest} />

@@ -22,7 +22,10 @@ interface Props {
 export function Notice({ kind, title, children, actions }: Props) {
   const { sign, word, edge } = MARKS[kind];
   return (
-    <div role={kind === "fault" ? "alert" : "status"} className={classNames("flex gap-3 border bg-sheet px-4 py-3", edge)}>
+    <div
+      role={kind === "fault" ? "alert" : "status"}
+      className={classNames("flex gap-3 border bg-sheet px-4 py-3", edge)}
+    >
       <span aria-hidden className="w-4 shrink-0 text-center font-mono font-bold">
         {sign}
       </span>
@@ -36,12 +39,15 @@ export function Notice({ kind, title, children, actions }: Props) {
   );
 }
 
+/** Messages of the engine go after a file's name and begin small. */
+const sentence = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
+
 /** What went wrong, where, and what to do about it. */
 export function ProblemNotice({ problem, actions }: { problem: Problem; actions?: ReactNode }) {
   const { title, detail, remedy, errors, place } = problem;
   return (
     <Notice kind="fault" title={title} actions={actions}>
-      <p>{detail}</p>
+      <p>{sentence(detail)}</p>
       {errors && errors.length > 0 && (
         <ul className="mt-1 list-inside list-['–_']">
           {errors.map(({ path, message }) => (

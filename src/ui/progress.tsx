@@ -1,6 +1,6 @@
 import type { ReactNode } from "react";
-import { Button } from "#src/ui/button.tsx";
 import { fixedText } from "#src/lib/number-text.ts";
+import { Button } from "#src/ui/button.tsx";
 
 interface Props {
   label: string;
@@ -30,7 +30,12 @@ export function Progress({ label, share, detail, onCancel }: Props) {
           aria-valuenow={percent === undefined ? undefined : Math.round(percent)}
           className="relative mt-1 h-3 border-b border-ink"
         >
-          <svg aria-hidden className="absolute inset-0 size-full text-rule" preserveAspectRatio="none" viewBox="0 0 100 10">
+          <svg
+            aria-hidden
+            className="absolute inset-0 size-full text-rule"
+            preserveAspectRatio="none"
+            viewBox="0 0 100 10"
+          >
             {TICKS.map((tick) => (
               <line
                 key={tick}

@@ -9,19 +9,21 @@ interface SectionProps {
   children: ReactNode;
 }
 
-/** One strip of a page: its title in the margin, a rule above, its contents beside. */
+/** One strip of a page: a rule above, its title in the margin where there is room for one, its contents beside. */
 export function Section({ title, note, actions, children }: SectionProps) {
   const id = useId();
   return (
-    <section aria-labelledby={id} className="grid gap-x-8 gap-y-3 border-t border-rule py-5 lg:grid-cols-[9.5rem_minmax(0,1fr)]">
-      <div className="flex flex-wrap items-baseline gap-x-4 gap-y-2 lg:flex-col lg:items-start">
-        <h2 id={id} className="text-base font-semibold">
-          {title}
-        </h2>
-        {note && <div className="text-small text-soft">{note}</div>}
-        {actions && <div className="flex flex-wrap gap-x-4 gap-y-2 lg:flex-col lg:items-start">{actions}</div>}
+    <section aria-labelledby={id} className="@container border-t border-rule py-5">
+      <div className="grid gap-x-8 gap-y-3 @4xl:grid-cols-[9.5rem_minmax(0,1fr)]">
+        <div className="flex flex-wrap items-baseline gap-x-4 gap-y-2 @4xl:flex-col @4xl:items-start">
+          <h2 id={id} className="text-base font-semibold">
+            {title}
+          </h2>
+          {note && <div className="text-small text-soft">{note}</div>}
+          {actions && <div className="flex flex-wrap gap-x-4 gap-y-2 @4xl:flex-col @4xl:items-start">{actions}</div>}
+        </div>
+        <div className="min-w-0">{children}</div>
       </div>
-      <div className="min-w-0">{children}</div>
     </section>
   );
 }
@@ -42,7 +44,7 @@ export function PageHead({ kind, title, note, actions }: PageHeadProps) {
         <h1 className="text-title font-semibold wrap-anywhere">{title}</h1>
         {note && <div className="text-small text-soft">{note}</div>}
       </div>
-      {actions && <div className="flex flex-wrap items-center gap-3">{actions}</div>}
+      {actions && <div className="flex flex-wrap items-end gap-3">{actions}</div>}
     </header>
   );
 }

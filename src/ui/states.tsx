@@ -41,7 +41,15 @@ interface QueryState<Data> {
 }
 
 /** The three states of a query; what is shown stays shown while it is fetched anew or when that fails. */
-export function Loaded<Data>({ query, what, children }: { query: QueryState<Data>; what?: string; children(data: Data): ReactNode }) {
+export function Loaded<Data>({
+  query,
+  what,
+  children,
+}: {
+  query: QueryState<Data>;
+  what?: string;
+  children(data: Data): ReactNode;
+}) {
   if (query.data !== undefined) return <>{children(query.data)}</>;
   if (query.error) return <Failed error={query.error} retry={() => query.refetch()} />;
   return <Loading what={what} />;

@@ -34,7 +34,10 @@ export function Table<Row>({ label, columns, rows, keyOf, current }: Props<Row>)
                 key={head}
                 scope="col"
                 style={{ width }}
-                className={classNames("py-1.5 pr-6 align-bottom text-small font-semibold last:pr-0", number ? "text-right" : "text-left")}
+                className={classNames(
+                  "py-1.5 pr-6 align-bottom text-small font-semibold last:pr-0",
+                  number ? "text-right" : "text-left",
+                )}
               >
                 {head}
                 {unit && <span className="pl-1.5 font-mono font-normal text-soft">{unit}</span>}

@@ -21,7 +21,6 @@ export function Tabs<Id extends string>({ label, tabs, shown, onShow }: Props<Id
   };
   return (
     <div>
-      {/* biome-ignore lint/a11y/useSemanticElements: there is no element for a list of tabs */}
       <div ref={list} role="tablist" aria-label={label} className="flex border-b border-ink" onKeyDown={onKeyDown}>
         {tabs.map((tab) => (
           <button

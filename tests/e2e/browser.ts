@@ -47,7 +47,9 @@ export async function barriers(page: Page): Promise<string[]> {
   await page.evaluate(axe);
   return page.evaluate(async () => {
     const tags = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa"];
-    const { violations } = await (window as unknown as { axe: AxeLike }).axe.run({ runOnly: { type: "tag", values: tags } });
+    const { violations } = await (window as unknown as { axe: AxeLike }).axe.run({
+      runOnly: { type: "tag", values: tags },
+    });
     return violations.map(({ id, nodes }) => `${id}: ${nodes.map(({ target }) => target.join(" ")).join(" | ")}`);
   });
 }

@@ -55,7 +55,7 @@ export class RealServer {
     await eventually(
       async () => this.output,
       (text) => ready.test(text) || child.exitCode !== null,
-      120_000,
+      240_000,
     );
     const url = ready.exec(this.output)?.[1];
     if (url === undefined) throw new Error(`the server did not start: ${this.output}`);

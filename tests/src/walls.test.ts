@@ -27,10 +27,17 @@ test("the client reaches the server through shared/contract only, and never impo
 });
 
 test("a feature that needs another gets it from the route", () => {
-  expect(wrong(({ file, from }) => featureOf(file) !== undefined && featureOf(from) !== undefined && featureOf(file) !== featureOf(from))).toEqual([]);
+  expect(
+    wrong(
+      ({ file, from }) =>
+        featureOf(file) !== undefined && featureOf(from) !== undefined && featureOf(file) !== featureOf(from),
+    ),
+  ).toEqual([]);
 });
 
 test("ui and lib know nothing of features, features nothing of pages", () => {
-  expect(wrong(({ file, from }) => /^src\/(ui|lib)\//.test(file) && /^#src\/(features|routes|app)\//.test(from))).toEqual([]);
+  expect(
+    wrong(({ file, from }) => /^src\/(ui|lib)\//.test(file) && /^#src\/(features|routes|app)\//.test(from)),
+  ).toEqual([]);
   expect(wrong(({ file, from }) => file.startsWith("src/features/") && /^#src\/(routes|app)\//.test(from))).toEqual([]);
 });

@@ -1,5 +1,12 @@
 import { queryOptions } from "@tanstack/react-query";
-import { type Credentials, getSession, type Session, signIn, signOut, signOutEverywhere } from "#shared/contract/session.ts";
+import {
+  type Credentials,
+  getSession,
+  type Session,
+  signIn,
+  signOut,
+  signOutEverywhere,
+} from "#shared/contract/session.ts";
 import { call, callOnce } from "#src/lib/call.ts";
 import { ProblemError } from "#src/lib/problem.ts";
 

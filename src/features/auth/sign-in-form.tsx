@@ -45,8 +45,6 @@ export function SignInForm({ email: fixedEmail, onSignedIn }: Props) {
         type="password"
         autoComplete="current-password"
         required
-        // The dialog opens over what one was doing: the password is all that is missing.
-        autoFocus={fixedEmail !== undefined}
         value={password}
         onChange={(event) => setPassword(event.target.value)}
       />

@@ -31,11 +31,15 @@ export function markByChannel(diff: editor.IStandaloneDiffEditor, machine: Machi
     show(changes: readonly editor.ILineChange[]) {
       decorate(
         sides[0],
-        changes.filter((change) => change.originalEndLineNumber > 0).map((change) => [change.originalStartLineNumber, change.originalEndLineNumber]),
+        changes
+          .filter((change) => change.originalEndLineNumber > 0)
+          .map((change) => [change.originalStartLineNumber, change.originalEndLineNumber]),
       );
       decorate(
         sides[1],
-        changes.filter((change) => change.modifiedEndLineNumber > 0).map((change) => [change.modifiedStartLineNumber, change.modifiedEndLineNumber]),
+        changes
+          .filter((change) => change.modifiedEndLineNumber > 0)
+          .map((change) => [change.modifiedStartLineNumber, change.modifiedEndLineNumber]),
       );
     },
     clear() {

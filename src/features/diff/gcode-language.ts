@@ -32,7 +32,11 @@ export function registerGcode(): void {
 
 function theme(sheet: Sheet): editor.IStandaloneThemeData {
   const { paper, sheet: surface, well, ink, soft, hair, rule } = SHEETS[sheet];
-  const token = (name: string, colour: string, fontStyle = "") => ({ token: name, foreground: colour.slice(1), fontStyle });
+  const token = (name: string, colour: string, fontStyle = "") => ({
+    token: name,
+    foreground: colour.slice(1),
+    fontStyle,
+  });
   return {
     base: sheet === "light" ? "vs" : "vs-dark",
     inherit: false,

@@ -34,7 +34,11 @@ export function LayerDiff({ original, tuned, truncated, machine, layer, changedL
           Next change
         </Button>
         <p role="status" className="min-w-44 text-small text-soft">
-          {count === undefined ? "" : count === 0 ? "Nothing changed in this layer." : `${count} place${count === 1 ? "" : "s"} changed`}
+          {count === undefined
+            ? ""
+            : count === 0
+              ? "Nothing changed in this layer."
+              : `${count} place${count === 1 ? "" : "s"} changed`}
         </p>
         <span className="ml-auto flex flex-wrap gap-3">
           <Button disabled={below === undefined} onClick={() => below !== undefined && onPin(below)}>
@@ -47,11 +51,15 @@ export function LayerDiff({ original, tuned, truncated, machine, layer, changedL
       </div>
       <div className="grid grid-cols-2 text-small">
         <p className="pb-1">
-          <span aria-hidden className="font-mono">− </span>
+          <span aria-hidden className="font-mono">
+            −{" "}
+          </span>
           Original, from line <span className="font-mono">{original.firstLine}</span>
         </p>
         <p className="pb-1">
-          <span aria-hidden className="font-mono">+ </span>
+          <span aria-hidden className="font-mono">
+            +{" "}
+          </span>
           Tuned, from line <span className="font-mono">{tuned.firstLine}</span>
         </p>
       </div>

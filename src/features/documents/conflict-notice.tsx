@@ -33,8 +33,8 @@ export function ConflictNotice<D extends { name: string }>({ kind, id, draft, ba
             </>
           }
         >
-          Yours began from version {basedOn} and is kept. Put on top, it replaces what version {latest.number} changed; that
-          version stays in the list.
+          Yours began from version {basedOn} and is kept. Put on top, it replaces what version {latest.number} changed;
+          that version stays in the list.
           {comparing && (
             <Dialog title="Both changes" wide onClose={() => setComparing(false)}>
               <Both kind={kind} id={id} latest={latest.number} draft={draft} />
@@ -46,7 +46,17 @@ export function ConflictNotice<D extends { name: string }>({ kind, id, draft, ba
   );
 }
 
-function Both<D extends { name: string }>({ kind, id, latest, draft }: { kind: DocumentKind<D>; id: string; latest: number; draft: D }) {
+function Both<D extends { name: string }>({
+  kind,
+  id,
+  latest,
+  draft,
+}: {
+  kind: DocumentKind<D>;
+  id: string;
+  latest: number;
+  draft: D;
+}) {
   const query = useQuery(versionQuery(kind, id, latest));
   return (
     <Loaded query={query} what="Fetching the version">

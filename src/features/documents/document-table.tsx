@@ -16,7 +16,10 @@ export function DocumentTable({ label, documents, hrefOf, withApproval }: Props)
     {
       head: "Name",
       cell: (document) => (
-        <Link to={hrefOf(document)} className="font-semibold wrap-break-word underline decoration-rule underline-offset-4 hover:decoration-ink">
+        <Link
+          to={hrefOf(document)}
+          className="font-semibold wrap-break-word underline decoration-rule underline-offset-4 hover:decoration-ink"
+        >
           {document.name}
         </Link>
       ),

@@ -63,7 +63,11 @@ export function EditDocument<D extends { name: string }>({ kind, base, editor, o
           />
         )}
         <div className="flex flex-wrap items-center gap-3">
-          <Button weight="main" disabled={wrong !== undefined || !(draft.changed || isNew)} onClick={() => setAsking(true)}>
+          <Button
+            weight="main"
+            disabled={wrong !== undefined || !(draft.changed || isNew)}
+            onClick={() => setAsking(true)}
+          >
             {isNew ? "Save" : "Save as a new version"}
           </Button>
           <Button disabled={!draft.changed} onClick={draft.discard}>

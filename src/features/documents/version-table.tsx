@@ -37,14 +37,15 @@ export function VersionTable(props: Props) {
     { head: "Why", cell: ({ note }) => note ?? "" },
     ...(withApproval ? [{ head: "Approved", cell: approvedText }] : []),
   ];
-  const offersSomething = versions.length > 1 || (onApprove && versions.some(({ approvedAt }) => approvedAt === undefined));
+  const offersSomething =
+    versions.length > 1 || (onApprove && versions.some(({ approvedAt }) => approvedAt === undefined));
   if (offersSomething) {
     columns.push({
       head: "What to do",
       cell: ({ number, approvedAt }) => (
         <span className="flex flex-wrap items-baseline gap-x-4">
           {number > 1 && (
-            <Link to={compareHref(number - 1, number)} className={`${LINK} py-1`}>
+            <Link to={compareHref(number - 1, number)} className={`${LINK} py-1 whitespace-nowrap`}>
               Compare with {number - 1}
             </Link>
           )}
@@ -63,7 +64,13 @@ export function VersionTable(props: Props) {
     });
   }
   return (
-    <Table label="Versions" columns={columns} rows={versions} keyOf={({ number }) => number} current={({ number }) => number === shown} />
+    <Table
+      label="Versions"
+      columns={columns}
+      rows={versions}
+      keyOf={({ number }) => number}
+      current={({ number }) => number === shown}
+    />
   );
 }
 

@@ -48,7 +48,9 @@ function Checklist({ machine, before, onAcknowledged, onClose }: Props & { befor
     <form onSubmit={submit}>
       <Cautions />
       <fieldset className="mt-4">
-        <legend className="pb-1 font-semibold">Tick what you have made sure of, for version {machine.version} of the machine.</legend>
+        <legend className="pb-1 font-semibold">
+          Tick what you have made sure of, for version {machine.version} of the machine.
+        </legend>
         {SAFETY_CHECKLIST.map(({ id, text }) => (
           <CheckField
             key={id}

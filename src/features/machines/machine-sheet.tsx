@@ -13,7 +13,10 @@ const CHANNELS: Column<Channel>[] = [
       <span className={kind === "fan" ? "font-semibold text-cool-ink" : "font-semibold text-heat-ink"}>{kind}</span>
     ),
   },
-  { head: "Command", cell: ({ drive }) => <code className="font-mono text-small whitespace-nowrap">{driveText(drive)}</code> },
+  {
+    head: "Command",
+    cell: ({ drive }) => <code className="font-mono text-small whitespace-nowrap">{driveText(drive)}</code>,
+  },
   { head: "Least", number: true, cell: ({ minDuty }) => fixedText(minDuty, 2) },
   { head: "Most", number: true, cell: ({ maxDuty }) => fixedText(maxDuty, 2) },
   { head: "Idle", number: true, cell: ({ idleDuty }) => fixedText(idleDuty, 2) },
@@ -65,12 +68,18 @@ export function MachineSheet({ machine: { motion, channels, pauses } }: { machin
           <FactList
             facts={[
               { label: "Look-ahead", value: motion.lookAhead === "full" ? "whole file" : `${motion.lookAhead} blocks` },
-              { label: "Extruder limits hold for", value: motion.extruderLimits === "every-move" ? "every move" : "extrude-only moves" },
+              {
+                label: "Extruder limits hold for",
+                value: motion.extruderLimits === "every-move" ? "every move" : "extrude-only moves",
+              },
               { label: "Stops at extrude-only moves", value: motion.stopAtExtrudeOnly ? "yes" : "no" },
               { label: "Obeys limits in the file", value: motion.honourFileLimits ? "yes" : "no" },
               { label: "Dwell P counts", value: motion.dwellP === "ms" ? "milliseconds" : "seconds" },
               { label: "Arc chords", value: `${motion.arcSegmentMm} mm` },
-              { label: "Firmware retraction", value: `${motion.firmwareRetract.lengthMm} mm at ${motion.firmwareRetract.speedMmS} mm/s` },
+              {
+                label: "Firmware retraction",
+                value: `${motion.firmwareRetract.lengthMm} mm at ${motion.firmwareRetract.speedMmS} mm/s`,
+              },
               { label: "Filament", value: `${fixedText(motion.filamentDiameterMm, 2)} mm` },
             ]}
           />

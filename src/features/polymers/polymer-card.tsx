@@ -30,8 +30,17 @@ function columnsFor(polymer: Polymer, fields: CardField[]): Column<CardField>[] 
   const finest = Math.max(...fields.map(({ decimals }) => decimals));
   return [
     { head: "Quantity", width: "15rem", cell: ({ label }) => label },
-    { head: "Value", number: true, width: "7rem", cell: ({ path, decimals }) => aligned(sourcedAt(polymer, path).value, decimals, finest) },
-    { head: "Unit", width: "6.5rem", cell: ({ unit }) => <span className="font-mono text-small whitespace-nowrap text-soft">{unit}</span> },
+    {
+      head: "Value",
+      number: true,
+      width: "7rem",
+      cell: ({ path, decimals }) => aligned(sourcedAt(polymer, path).value, decimals, finest),
+    },
+    {
+      head: "Unit",
+      width: "6.5rem",
+      cell: ({ unit }) => <span className="font-mono text-small whitespace-nowrap text-soft">{unit}</span>,
+    },
     {
       head: "Confidence",
       width: "9rem",
@@ -40,6 +49,9 @@ function columnsFor(polymer: Polymer, fields: CardField[]): Column<CardField>[] 
         return <span className={confidence === "unverified" ? "font-semibold" : ""}>{confidence}</span>;
       },
     },
-    { head: "Source", cell: ({ path }) => <span className="text-small text-soft">{sourcedAt(polymer, path).source}</span> },
+    {
+      head: "Source",
+      cell: ({ path }) => <span className="text-small text-soft">{sourcedAt(polymer, path).source}</span>,
+    },
   ];
 }

@@ -15,7 +15,11 @@ export function PolymerEditor({ polymer, onChange }: Props) {
     <>
       <Section title="Name">
         <div className="grid gap-4 md:grid-cols-2">
-          <TextField label="Polymer" value={polymer.name} onChange={({ target }) => onChange({ ...polymer, name: target.value })} />
+          <TextField
+            label="Polymer"
+            value={polymer.name}
+            onChange={({ target }) => onChange({ ...polymer, name: target.value })}
+          />
           <TextField
             label="Variant"
             hint="Grade, filler or colour; empty for the neat polymer."

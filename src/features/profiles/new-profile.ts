@@ -7,9 +7,7 @@ export function newProfile(polymer: string): Profile {
     name: "New profile",
     polymer,
     bedLayers: { count: 0, duty: {} },
-    zones: [
-      { name: "whole part", from: 0, unit: "mm", target: "none", rampMm: 0, cooling: [], heating: [] },
-    ],
+    zones: [{ name: "whole part", from: 0, unit: "mm", target: "none", rampMm: 0, cooling: [], heating: [] }],
     limits: {},
     lead: {},
     withinLayer: "replace",

@@ -7,7 +7,9 @@ import { Section } from "#src/ui/section.tsx";
 /** What a profile says. Zones stand as they lie in the part: the last one on top. */
 export function ProfileSheet({ profile }: { profile: Profile }) {
   const { zones, polymer, bedLayers, limits, lead, withinLayer, margins = {} } = profile;
-  const driven = [...new Set(zones.flatMap(({ cooling, heating }) => [...cooling, ...heating].map(({ channel }) => channel)))];
+  const driven = [
+    ...new Set(zones.flatMap(({ cooling, heating }) => [...cooling, ...heating].map(({ channel }) => channel))),
+  ];
   const overrides = Object.entries(margins).filter(([, value]) => value !== undefined);
   return (
     <>
@@ -46,7 +48,7 @@ function ZoneRow({ zone }: { zone: Zone }) {
   return (
     <li className="flex gap-4 border-b border-hair first:border-b-0">
       <TargetBand target={target} />
-      <div className="grid grow gap-x-8 gap-y-1 py-3 md:grid-cols-[14rem_minmax(0,1fr)]">
+      <div className="grid grow gap-x-8 gap-y-1 py-3 @3xl:grid-cols-[14rem_minmax(0,1fr)]">
         <div>
           <h3 className="font-semibold">{name}</h3>
           <p className="font-mono text-small">{bandText(zone)}</p>
@@ -68,9 +70,11 @@ function ZoneRow({ zone }: { zone: Zone }) {
 
 function RuleRow({ side, rule }: { side: "Cooling" | "Heating"; rule: Rule }) {
   return (
-    <div className="grid gap-x-4 md:grid-cols-[11rem_minmax(0,1fr)]">
+    <div className="grid gap-x-4 @xl:grid-cols-[11rem_minmax(0,1fr)]">
       <dt>
-        <span className={side === "Cooling" ? "font-semibold text-cool-ink" : "font-semibold text-heat-ink"}>{side}</span>{" "}
+        <span className={side === "Cooling" ? "font-semibold text-cool-ink" : "font-semibold text-heat-ink"}>
+          {side}
+        </span>{" "}
         <code className="font-mono text-small">{rule.channel}</code>
       </dt>
       <dd className="font-mono text-small leading-6">{ruleText(rule)}</dd>

@@ -1,6 +1,10 @@
 import type { Lead, Limits, Rule, Zone } from "#shared/formats/profile.ts";
 
-const OVER = { "layer-time": "s of layer time", "deposited-length": "mm of deposited length", height: "mm of height" } as const;
+const OVER = {
+  "layer-time": "s of layer time",
+  "deposited-length": "mm of deposited length",
+  height: "mm of height",
+} as const;
 
 /** A rule as one would say it. */
 export function ruleText(rule: Rule): string {
@@ -10,7 +14,9 @@ export function ruleText(rule: Rule): string {
     case "curve":
       return `${rule.points.map(([x, duty]) => `${duty.toFixed(2)} at ${x}`).join(", ")} ${OVER[rule.over]}`;
     case "hold":
-      return rule.baseDuty === undefined ? "solved from the target" : `solved from the target, above ${rule.baseDuty.toFixed(2)}`;
+      return rule.baseDuty === undefined
+        ? "solved from the target"
+        : `solved from the target, above ${rule.baseDuty.toFixed(2)}`;
   }
 }
 

@@ -13,5 +13,7 @@ export function TargetMark({ target }: { target: Zone["target"] }) {
 
 /** The same as an upright band. */
 export function TargetBand({ target }: { target: Zone["target"] }) {
-  return <span aria-hidden className="w-5 shrink-0 self-stretch border-r border-bone-edge" style={STATE_FILLS[target]} />;
+  return (
+    <span aria-hidden className="w-5 shrink-0 self-stretch border-r border-bone-edge" style={STATE_FILLS[target]} />
+  );
 }

@@ -12,7 +12,10 @@ export const ROLE_TEXTS: Record<Role, string> = {
 };
 
 const COLUMNS: Column<Member>[] = [
-  { head: "E-mail", cell: ({ email, name }) => <span className="wrap-break-word">{name ? `${name}, ${email}` : email}</span> },
+  {
+    head: "E-mail",
+    cell: ({ email, name }) => <span className="wrap-break-word">{name ? `${name}, ${email}` : email}</span>,
+  },
   { head: "Role", cell: ({ role }) => <span className="font-semibold">{role}</span> },
   { head: "May", cell: ({ role }) => ROLE_TEXTS[role] },
   { head: "Member since", number: true, cell: ({ createdAt }) => moment(createdAt) },

@@ -32,8 +32,8 @@ export function BringIn({ machines, onArrived }: Props) {
         <div className="min-w-60 grow">
           <p className="text-lead">Drop a toolpath anywhere on this page.</p>
           <p className="text-small text-soft">
-            Sliced G-code, as text or packed with gzip. It is read for the machine chosen here; you can read it again for
-            another.
+            Sliced G-code, as text or packed with gzip. It is read for the machine chosen here; you can read it again
+            for another.
           </p>
         </div>
         <SelectField
@@ -87,7 +87,12 @@ export function BringIn({ machines, onArrived }: Props) {
 
 function UploadLine({ upload: { file, sent, problem }, onCancel }: { upload: Underway; onCancel(): void }) {
   if (problem) {
-    return <ProblemNotice problem={{ ...problem, title: `${file.name}: ${problem.title}` }} actions={<Button onClick={onCancel}>Put away</Button>} />;
+    return (
+      <ProblemNotice
+        problem={{ ...problem, title: `${file.name}: ${problem.title}` }}
+        actions={<Button onClick={onCancel}>Put away</Button>}
+      />
+    );
   }
   return (
     <Progress

@@ -12,10 +12,17 @@ export function LayerLines({ readingId, layer }: { readingId: string; layer: num
         const numbers = lines.map((_, line) => firstLine + line).join("\n");
         return (
           <>
-            {/* biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable from the keyboard */}
-            <section aria-label={`Lines of layer ${layer}`} tabIndex={0} className="max-h-96 overflow-auto border border-hair bg-sheet">
+            <section
+              aria-label={`Lines of layer ${layer}`}
+              // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable from the keyboard
+              tabIndex={0}
+              className="max-h-96 overflow-auto border border-hair bg-sheet"
+            >
               <div className="flex w-max min-w-full font-mono text-small">
-                <pre aria-hidden className="sticky left-0 border-r border-hair bg-sheet px-3 py-2 text-right text-soft select-none">
+                <pre
+                  aria-hidden
+                  className="sticky left-0 border-r border-hair bg-sheet px-3 py-2 text-right text-soft select-none"
+                >
                   {numbers}
                 </pre>
                 <pre className="px-3 py-2">{lines.join("\n")}</pre>

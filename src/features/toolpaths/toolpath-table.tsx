@@ -19,12 +19,21 @@ const STATES: Record<Reading["state"], string> = {
   cancelled: "reading given up",
 };
 
-export function ToolpathTable({ toolpaths, hrefOf }: { toolpaths: readonly Toolpath[]; hrefOf(toolpath: Toolpath): string }) {
+export function ToolpathTable({
+  toolpaths,
+  hrefOf,
+}: {
+  toolpaths: readonly Toolpath[];
+  hrefOf(toolpath: Toolpath): string;
+}) {
   const columns: Column<Toolpath>[] = [
     {
       head: "Toolpath",
       cell: (toolpath) => (
-        <Link to={hrefOf(toolpath)} className="font-semibold wrap-break-word underline decoration-rule underline-offset-4 hover:decoration-ink">
+        <Link
+          to={hrefOf(toolpath)}
+          className="font-semibold wrap-break-word underline decoration-rule underline-offset-4 hover:decoration-ink"
+        >
           {toolpath.name}
         </Link>
       ),
@@ -32,8 +41,17 @@ export function ToolpathTable({ toolpaths, hrefOf }: { toolpaths: readonly Toolp
     { head: "Machine", cell: (toolpath) => latest(toolpath)?.machineName ?? "–" },
     { head: "State", cell: (toolpath) => stateText(latest(toolpath)) },
     { head: "Layers", number: true, cell: (toolpath) => measure(toolpath, ({ layers }) => String(layers)) },
-    { head: "Height", unit: "mm", number: true, cell: (toolpath) => measure(toolpath, ({ heightMm }) => fixedText(heightMm, 2)) },
-    { head: "Print time", number: true, cell: (toolpath) => measure(toolpath, ({ printTimeS }) => duration(printTimeS)) },
+    {
+      head: "Height",
+      unit: "mm",
+      number: true,
+      cell: (toolpath) => measure(toolpath, ({ heightMm }) => fixedText(heightMm, 2)),
+    },
+    {
+      head: "Print time",
+      number: true,
+      cell: (toolpath) => measure(toolpath, ({ printTimeS }) => duration(printTimeS)),
+    },
     { head: "Size", number: true, cell: (toolpath) => bytes(toolpath.bytes) },
     { head: "Brought in", number: true, cell: (toolpath) => moment(toolpath.createdAt) },
   ];

@@ -16,7 +16,12 @@ const COLUMNS: Column<Wait>[] = [
   { head: "Layer", number: true, cell: ({ layer }) => layer },
   { head: "Line", number: true, cell: ({ line }) => line },
   { head: "Wait", cell: ({ kind }) => KINDS[kind] },
-  { head: "Lasts", unit: "s", number: true, cell: ({ seconds }) => (seconds === null ? "not known" : fixedText(seconds, 1)) },
+  {
+    head: "Lasts",
+    unit: "s",
+    number: true,
+    cell: ({ seconds }) => (seconds === null ? "not known" : fixedText(seconds, 1)),
+  },
 ];
 
 /** Where the print stands still. Waits without a known length are not in the print time. */

@@ -11,7 +11,10 @@ export function AdviceList({ advice, onPin }: Props) {
   return (
     <ul className="border-t border-ink">
       {advice.map(({ layer, code, message }) => (
-        <li key={`${layer} ${code} ${message}`} className="grid grid-cols-[minmax(0,1fr)_auto] gap-x-4 border-b border-hair py-1.5">
+        <li
+          key={`${layer} ${code} ${message}`}
+          className="grid grid-cols-[minmax(0,1fr)_auto] gap-x-4 border-b border-hair py-1.5"
+        >
           <span className="wrap-anywhere">{message}</span>
           <button
             type="button"

@@ -9,7 +9,9 @@ export function ProofPanel({ proof }: { proof: ProofDocument }) {
   return (
     <div className="flex flex-col gap-4">
       <p className="text-lead">
-        {failed === 0 ? `All ${checks.length} checks passed.` : `${failed} of ${checks.length} checks failed. This file must not be printed.`}
+        {failed === 0
+          ? `All ${checks.length} checks passed.`
+          : `${failed} of ${checks.length} checks failed. This file must not be printed.`}
       </p>
       <Facts
         facts={[
@@ -23,7 +25,10 @@ export function ProofPanel({ proof }: { proof: ProofDocument }) {
       />
       <ul className="border-t border-ink">
         {checks.map(({ id, passed, detail }) => (
-          <li key={id} className="grid grid-cols-[1.25rem_11rem_minmax(0,1fr)] gap-x-3 border-b border-hair py-1.5 max-md:grid-cols-[1.25rem_minmax(0,1fr)]">
+          <li
+            key={id}
+            className="grid grid-cols-[1.25rem_11rem_minmax(0,1fr)] gap-x-3 border-b border-hair py-1.5 max-md:grid-cols-[1.25rem_minmax(0,1fr)]"
+          >
             <span className="text-center font-mono font-bold">
               <span aria-hidden>{passed ? "✓" : "×"}</span>
               <span className="sr-only">{passed ? "passed" : "failed"}</span>

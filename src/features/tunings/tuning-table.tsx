@@ -17,7 +17,10 @@ export function TuningTable({ tunings, hrefOf }: { tunings: readonly Tuning[]; h
     {
       head: "Tuning",
       cell: (tuning) => (
-        <Link to={hrefOf(tuning)} className="font-semibold wrap-break-word underline decoration-rule underline-offset-4 hover:decoration-ink">
+        <Link
+          to={hrefOf(tuning)}
+          className="font-semibold wrap-break-word underline decoration-rule underline-offset-4 hover:decoration-ink"
+        >
           {tuning.fileName}
         </Link>
       ),

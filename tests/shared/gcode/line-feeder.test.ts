@@ -1,7 +1,10 @@
 import fc from "fast-check";
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { LineFeeder, MAX_LINE_BYTES } from "#shared/gcode/line-feeder.ts";
 import { cutAt, cutEvery, latin, refusalOf } from "#tests/helpers/reading.ts";
+
+// Many runs, on a computer that may be busy with other things.
+vi.setConfig({ testTimeout: 60_000 });
 
 /** The lines that come out, each with its place; every block is checked to be whole lines with a byte behind them. */
 function feed(chunks: Iterable<Uint8Array>) {
@@ -9,8 +12,7 @@ function feed(chunks: Iterable<Uint8Array>) {
   const feeder = new LineFeeder((buf, from, to, fileOffset, open) => {
     expect(to).toBeGreaterThan(from);
     const text = Buffer.from(buf.subarray(from, to)).toString("latin1");
-    expect(text).toMatch(/[\r\n]$/);
-    if (text.endsWith("\r")) expect(buf.length).toBeGreaterThan(to);
+    expect(buf[to - 1] === 10 || (buf[to - 1] === 13 && buf.length > to)).toBe(true);
     let offset = fileOffset;
     for (const line of text.match(/[^\r\n]*(\r\n|\r|\n)/g)!) {
       lines.push({ text: open ? line.slice(0, -1) : line, offset });
@@ -41,7 +43,7 @@ test("however a file is cut, the same lines come out, and joined they are the fi
       expect(latin(whole.lines.map(({ text }) => text).join(""))).toEqual(bytes);
       expect(whole.bytes).toBe(bytes.length);
     }),
-    { numRuns: 300 },
+    { numRuns: 200 },
   );
 });
 

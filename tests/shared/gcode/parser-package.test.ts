@@ -1,10 +1,13 @@
 import fc from "fast-check";
 import { GCodeLineStream, parseLine } from "gcode-parser";
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { LineFeeder } from "#shared/gcode/line-feeder.ts";
 import { cutEvery, latin } from "#tests/helpers/reading.ts";
 import { codeOf, gWordsOf, scanText } from "#tests/helpers/scanning.ts";
 import { moveLine, wordLine } from "#tests/helpers/words.ts";
+
+// Many runs, on a computer that may be busy with other things.
+vi.setConfig({ testTimeout: 60_000 });
 
 /** The package's answer in the shape of our scan: of a letter that stands twice the last value counts. */
 function packageWords(line: string) {

@@ -1,8 +1,11 @@
 import fc from "fast-check";
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { LineScan } from "#shared/gcode/scan-line.ts";
 import { codeOf, gWordsOf, scanText } from "#tests/helpers/scanning.ts";
 import { decimal, moveLine, signed, strewn, wordLine } from "#tests/helpers/words.ts";
+
+// Many runs, on a computer that may be busy with other things.
+vi.setConfig({ testTimeout: 60_000 });
 
 describe("numbers", () => {
   const numberOf = (text: string): number => scanText(`G4 P${text}`).words.P;

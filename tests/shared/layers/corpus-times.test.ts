@@ -1,9 +1,12 @@
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import { CORPUS_FILES, type CorpusFile, corpusIsHere, corpusTiming, corpusToolpath } from "#tests/helpers/corpus.ts";
 import { cutEvery, readChunks } from "#tests/helpers/reading.ts";
 import { tern } from "#tests/helpers/tern.ts";
+
+// Many runs, on a computer that may be busy with other things.
+vi.setConfig({ testTimeout: 60_000 });
 
 const CHUNK = 1 << 16;
 

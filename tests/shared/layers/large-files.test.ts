@@ -1,8 +1,11 @@
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { ToolpathReader } from "#shared/layers/read-toolpath.ts";
 import { heights, marker, ring, rings, START } from "#tests/helpers/part.ts";
 import { latin, readChunks, readText, refusalOf } from "#tests/helpers/reading.ts";
 import { tern } from "#tests/helpers/tern.ts";
+
+// Many runs, on a computer that may be busy with other things.
+vi.setConfig({ testTimeout: 60_000 });
 
 function* repeated(head: readonly string[], line: string, count: number, tail: readonly string[] = []) {
   yield latin(`${head.join("\n")}\n`);
@@ -14,17 +17,17 @@ function* repeated(head: readonly string[], line: string, count: number, tail: r
 const PART = [...START, ";LAYER:0", ...ring(0.2)];
 
 describe("a file that is large in one way", () => {
-  test("50,000 fan lines in one layer are all kept, in order", { timeout: 30_000 }, () => {
-    const { controls, layers, travels } = readChunks(repeated(PART, "M106 S77", 50_000, ring(0.4)));
-    expect(controls).toHaveLength(50_000);
-    expect(controls[49_999]).toMatchObject({ line: PART.length + 50_000, layer: 1, duty: 77 / 255 });
-    expect(layers[0].duty["part-fan"]).toMatchObject({ commands: 50_000, max: 77 / 255 });
+  test("20,000 fan lines in one layer are all kept, in order", () => {
+    const { controls, layers, travels } = readChunks(repeated(PART, "M106 S77", 20_000, ring(0.4)));
+    expect(controls).toHaveLength(20_000);
+    expect(controls[19_999]).toMatchObject({ line: PART.length + 20_000, layer: 1, duty: 77 / 255 });
+    expect(layers[0].duty["part-fan"]).toMatchObject({ commands: 20_000, max: 77 / 255 });
     expect(travels.count).toBeLessThan(10);
   });
 
-  test("200,000 laying moves and travels in one layer keep a few hundred places to write at", () => {
-    const { totals, travels } = readChunks(repeated(PART, "G1 X70 E1\nG0 X50", 100_000, ring(0.4)));
-    expect(totals.depositedLengthMm).toBeCloseTo(100_000 * 20 + 160, 3);
+  test("100,000 laying moves and travels in one layer keep a few hundred places to write at", () => {
+    const { totals, travels } = readChunks(repeated(PART, "G1 X70 E1\nG0 X50", 50_000, ring(0.4)));
+    expect(totals.depositedLengthMm).toBeCloseTo(50_000 * 20 + 160, 3);
     expect(travels.count).toBeGreaterThan(50);
     expect(travels.count).toBeLessThan(2000);
   });
@@ -48,7 +51,7 @@ describe("a file that is large in one way", () => {
 });
 
 describe("what no sliced part has is refused, naming the line", () => {
-  test("more than a million waits", { timeout: 30_000 }, () => {
+  test("more than a million waits", () => {
     expect(refusalOf(() => readChunks(repeated(PART, "G4P1", 1_000_001)))).toMatchObject({
       code: "too-many-waits",
       place: { line: PART.length + 1_000_001 - 3 },

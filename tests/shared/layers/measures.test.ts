@@ -194,6 +194,19 @@ describe("waits", () => {
       expect(timeOf(line)).toBeCloseTo(through, 12);
   });
 
+  test("the file's own acceleration counts where the machine obeys it, and never above the machine's", () => {
+    const timeOf = (line: string, honourFileLimits: boolean): number =>
+      readText([...START, line, ...ring(0.2)], tern({ motion: { honourFileLimits } })).totals.printTimeS;
+    const plain = timeOf("", false);
+    for (const line of ["M204 S100", "M204 P100", "M201 X100 Y100", "SET_VELOCITY_LIMIT ACCEL=100"]) {
+      expect(timeOf(line, false)).toBe(plain);
+      expect(timeOf(line, true)).toBeGreaterThan(plain + 0.1);
+    }
+    for (const line of ["M204 S9000", "M201 X9000 Y9000 E9000", "M203 X900", "M205 X90", "SET_VELOCITY_LIMIT ACCEL=9000"])
+      expect(timeOf(line, true)).toBeCloseTo(plain, 9);
+    expect(timeOf("M203 X10 Y10", true)).toBeGreaterThan(8);
+  });
+
   test("dwells before the first layer are time before it", () => {
     const before = read(["G4 S7"], ring(0.2)).beforeFirstLayerS;
     expect(before).toBeCloseTo(read(ring(0.2)).beforeFirstLayerS + 7, 9);

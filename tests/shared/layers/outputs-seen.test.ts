@@ -258,6 +258,20 @@ describe("the window and its travels", () => {
     expect(travels.timeS[travels.count - 1]).toBeLessThanOrEqual(window.end.timeS);
   });
 
+  test("travels are kept densely near a layer's borders and sparsely far from them", () => {
+    const hop = Array.from({ length: 1500 }, (_, k) => [`G1 X${k % 2 ? 50 : 62} E0.4`, `G0 Y${50 + (k % 40)}`]).flat();
+    const long = read([";LAYER:0"], ring(0.2), hop, ["G0 X10"], ring(0.4), hop);
+    const [layer] = long.layers;
+    const times = [...long.travels.timeS].filter((timeS) => timeS < layer.startsAtS + layer.timeS);
+    const gaps = times.slice(1).map((timeS, k) => ({ gap: timeS - times[k], at: timeS - layer.startsAtS }));
+    const near = gaps.filter(({ at }) => at < 5 || at > layer.timeS - 5).map(({ gap }) => gap);
+    const far = gaps.filter(({ at }) => Math.abs(at - layer.timeS / 2) < layer.timeS / 8).map(({ gap }) => gap);
+    expect(layer.timeS).toBeGreaterThan(600);
+    expect(Math.max(...near)).toBeLessThan(1.5);
+    expect(Math.min(...far)).toBeGreaterThan(8);
+    expect(Math.max(...far)).toBeLessThan(0.06 * layer.timeS);
+  });
+
   test("a travel stands before the move that leaves what was laid, not before the ones behind it", () => {
     const hops = read([";LAYER:0"], ring(0.2), ["G1 E-1 F600", "G0 X5", "G0 X80 Y50", "G1 E1", "G1 X90 E1"], ring(0.4));
     const at = START.length + 8;

@@ -1,7 +1,10 @@
 import fc from "fast-check";
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { type Recorder, run } from "#tests/helpers/recorder.ts";
 import { tern } from "#tests/helpers/tern.ts";
+
+// Many runs, on a computer that may be busy with other things.
+vi.setConfig({ testTimeout: 60_000 });
 
 const pathMm = ({ moves }: Recorder): number =>
   moves.reduce((sum, { from, to }) => sum + Math.hypot(to[0] - from[0], to[1] - from[1], to[2] - from[2]), 0);

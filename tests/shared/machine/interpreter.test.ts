@@ -1,7 +1,10 @@
 import fc from "fast-check";
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { run } from "#tests/helpers/recorder.ts";
 import { tern } from "#tests/helpers/tern.ts";
+
+// Many runs, on a computer that may be busy with other things.
+vi.setConfig({ testTimeout: 60_000 });
 
 describe("positions", () => {
   test("are absolute after G90 and relative after G91, in X, Y and Z", () => {

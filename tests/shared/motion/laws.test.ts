@@ -1,11 +1,14 @@
 import fc from "fast-check";
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import type { Machine } from "#shared/formats/machine.ts";
 import { Planner } from "#shared/motion/planner.ts";
 import { lengthOf, plan, type Step, sum, travel } from "#tests/helpers/planning.ts";
 import { cutOne, cuttable, path } from "#tests/helpers/steps.ts";
 import { EVERY_RULE, SQUARE_CORNER, ternCornering } from "#tests/helpers/tern.ts";
 import { wholeFilePlan } from "#tests/shared/motion/whole-file-plan.ts";
+
+// Many runs, on a computer that may be busy with other things.
+vi.setConfig({ testTimeout: 60_000 });
 
 const changed = (machine: Machine, motion: Partial<Machine["motion"]>): Machine => ({
   ...machine,

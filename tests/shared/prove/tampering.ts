@@ -60,8 +60,8 @@ export function tamperings(tuned: string, numbered: boolean): Tampering[] {
 }
 
 /**
- * Tampering with our own lines by someone who knows the seal: every line of ours dropped, set to another duty or moved by
- * a line, and numbers, counts and seal made to fit again.
+ * Tampering with our own lines by someone who knows the seal: every line of ours dropped, set to another duty or moved
+ * over the next laying move, and numbers, counts and seal made to fit again.
  */
 export function resealedTamperings(original: string, tuned: string, machine: Machine, profile: Profile): Tampering[] {
   const reading = readBytes(bytesOf(original), machine);
@@ -78,11 +78,12 @@ export function resealedTamperings(original: string, tuned: string, machine: Mac
     add("dropped", k, [...before, ...behind]);
     for (const duty of line.includes("VALUE=") || line.includes("SPEED=") ? ["0.05", "0.5", "1"] : ["7", "121", "255"])
       add(`set to ${duty}`, k, [...before, line.replace(/(?<=[S=])[\d.]+(?=[ *])/, duty), ...behind]);
-    // Two lines of ours at one place may stand in either order.
-    const isOwn = (other: string | undefined): boolean =>
-      other === undefined || /;ql[+=]?[\r\n]*$|^;quenchline /.test(other);
-    if (!isOwn(behind[0])) add("moved down", k, [...before, behind[0], line, ...behind.slice(1)]);
-    if (!isOwn(before[k - 1])) add("moved up", k, [...before.slice(0, -1), line, before[k - 1], ...behind]);
+    // Where nothing moves between two places, a line may stand at either.
+    const lays = (other: string | undefined): boolean => other !== undefined && /G1 .*E/.test(other);
+    const down = behind.findIndex(lays);
+    const up = before.length - 1 - [...before].reverse().findIndex(lays);
+    if (down >= 0) add("moved down", k, [...before, ...behind.slice(0, down + 1), line, ...behind.slice(down + 1)]);
+    if (up < before.length) add("moved up", k, [...before.slice(0, up), line, ...before.slice(up), ...behind]);
   }
   return found;
 }

@@ -18,13 +18,25 @@ const failure = async (work: Promise<unknown>): Promise<ProblemError["problem"]>
 
 test("a problem document comes through whole", async () => {
   const errors = [{ path: "body.email", message: "is no e-mail address" }];
-  fakeServer({ "GET /api/members": () => problem(422, "bad-request", { errors, remedy: "Mend it.", place: { line: 3 } }) });
-  expect(await failure(call(listMembers))).toMatchObject({ status: 422, code: "bad-request", remedy: "Mend it.", errors, place: { line: 3 } });
+  fakeServer({
+    "GET /api/members": () => problem(422, "bad-request", { errors, remedy: "Mend it.", place: { line: 3 } }),
+  });
+  expect(await failure(call(listMembers))).toMatchObject({
+    status: 422,
+    code: "bad-request",
+    remedy: "Mend it.",
+    errors,
+    place: { line: 3 },
+  });
 });
 
 test("a reply that is no problem document says so in words", async () => {
   fakeServer({ "GET /api/members": () => new Response("<html>Bad gateway</html>", { status: 502 }) });
-  expect(await failure(call(listMembers))).toMatchObject({ status: 502, code: "http-502", detail: expect.stringContaining("502") });
+  expect(await failure(call(listMembers))).toMatchObject({
+    status: 502,
+    code: "http-502",
+    detail: expect.stringContaining("502"),
+  });
 });
 
 test("no answer is told apart from a refusal", async () => {

@@ -2,7 +2,15 @@ import { expect, test } from "vitest";
 import { may, type Role } from "#shared/contract/roles.ts";
 import { waitingItems } from "#src/routes/floor-waiting.ts";
 
-const reading = { id: "r1", toolpathId: "t1", machineId: "m", machineVersion: 1, machineName: "Tern", jobId: "j", createdAt: "" };
+const reading = {
+  id: "r1",
+  toolpathId: "t1",
+  machineId: "m",
+  machineVersion: 1,
+  machineName: "Tern",
+  jobId: "j",
+  createdAt: "",
+};
 const toolpath = (state: "done" | "refused" | "running", more: object = {}) => ({
   id: "t1",
   name: "part.gcode",

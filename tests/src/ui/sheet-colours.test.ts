@@ -17,9 +17,12 @@ function contrast(one: string, other: string): number {
 for (const [name, colours] of Object.entries(SHEETS)) {
   const surfaces = [colours.paper, colours.sheet, colours.well];
 
-  test.each(["ink", "soft", "amberInk", "coolInk", "heatInk"] as const)(`on the ${name} sheet %s is dark enough for text`, (colour) => {
-    for (const surface of surfaces) expect(contrast(colours[colour], surface)).toBeGreaterThanOrEqual(4.5);
-  });
+  test.each(["ink", "soft", "amberInk", "coolInk", "heatInk"] as const)(
+    `on the ${name} sheet %s is dark enough for text`,
+    (colour) => {
+      for (const surface of surfaces) expect(contrast(colours[colour], surface)).toBeGreaterThanOrEqual(4.5);
+    },
+  );
 
   test.each(["rule", "boneEdge", "cool", "heat"] as const)(`on the ${name} sheet %s can bound and draw`, (colour) => {
     for (const surface of surfaces) expect(contrast(colours[colour], surface)).toBeGreaterThanOrEqual(3);

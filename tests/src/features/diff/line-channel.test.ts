@@ -5,7 +5,9 @@ import { parseMachine } from "#shared/formats/machine.ts";
 import { lineChannels } from "#src/features/diff/line-channel.ts";
 
 const machine = (name: string) =>
-  parseMachine(JSON.parse(readFileSync(join(import.meta.dirname, `../../../../samples/machines/${name}.json`), "utf8")));
+  parseMachine(
+    JSON.parse(readFileSync(join(import.meta.dirname, `../../../../samples/machines/${name}.json`), "utf8")),
+  );
 const tern = lineChannels(machine("tern"));
 const fulmar = lineChannels(machine("fulmar"));
 

@@ -25,7 +25,15 @@ test("two zones of one name are told apart", () => {
 });
 
 test("a curve is shown as a whole", () => {
-  const found = differences({ points: [[3, 0.5]] }, { points: [[3, 0.5], [10, 0.3]] });
+  const found = differences(
+    { points: [[3, 0.5]] },
+    {
+      points: [
+        [3, 0.5],
+        [10, 0.3],
+      ],
+    },
+  );
   expect(found).toEqual([{ path: "points", before: "[[3, 0.5]]", after: "[[3, 0.5] [10, 0.3]]" }]);
 });
 

@@ -19,7 +19,11 @@ function open() {
         kind={PROFILES}
         base={{ id: "p", number: 1, document: named("Cap") }}
         editor={(draft, change) => (
-          <input aria-label="Name" value={draft.name} onChange={({ target }) => change({ ...draft, name: target.value })} />
+          <input
+            aria-label="Name"
+            value={draft.name}
+            onChange={({ target }) => change({ ...draft, name: target.value })}
+          />
         )}
         onSaved={onSaved}
       />
@@ -61,7 +65,11 @@ test("when somebody else was faster nothing is lost: both are compared, and the 
     "GET /api/profiles/p": () => ({
       id: "p",
       name: "Theirs",
-      versions: [2, 1].map((number) => ({ number, createdAt: "2026-12-01T10:00:00Z", createdBy: "lead@alderbay.example" })),
+      versions: [2, 1].map((number) => ({
+        number,
+        createdAt: "2026-12-01T10:00:00Z",
+        createdBy: "lead@alderbay.example",
+      })),
     }),
     "GET /api/profiles/p/versions/2": () => ({ id: "p", number: 2, document: named("Theirs") }),
   });

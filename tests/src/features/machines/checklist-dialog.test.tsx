@@ -18,7 +18,11 @@ test("nobody gets past the checklist before every item is ticked", async () => {
   const acknowledged = vi.fn();
   render(
     <QueryClientProvider client={new QueryClient()}>
-      <ChecklistDialog machine={{ id: "m", version: 2, name: "Tern" }} onAcknowledged={acknowledged} onClose={vi.fn()} />
+      <ChecklistDialog
+        machine={{ id: "m", version: 2, name: "Tern" }}
+        onAcknowledged={acknowledged}
+        onClose={vi.fn()}
+      />
     </QueryClientProvider>,
   );
   const person = userEvent.setup();
