@@ -60,7 +60,7 @@ export class LineScan {
   readonly gWords = new Float64Array(8);
   gCount = 0;
 
-  /** Sets what is the same for all plain moves; `codeStart` and `codeEnd` are not kept for them. */
+  /** Sets what is the same for all plain moves; `codeStart`, `codeEnd` and `gWords` are not kept for them. */
   makePlain(g: number): void {
     this.plain = true;
     this.kind = LineKind.words;

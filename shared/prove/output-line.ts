@@ -51,11 +51,10 @@ export class OutputClassifier {
       ({ letter, value }) => letter === "M" && (value === 106 || value === 107 || value === 42),
     );
     if (!command) return undefined;
-    const of = (letter: string) => words.filter((word) => word.letter === letter);
-    const [p] = of("P");
-    const [s] = of("S");
-    if (command.value === 42 && !p) return undefined;
-    const index = p && !Number.isNaN(p.value) ? p.value : 0;
+    const all = (letter: string): number[] => words.filter((word) => word.letter === letter).map(({ value }) => value);
+    const [p, s] = [all("P"), all("S")].map(settled);
+    if (command.value === 42 && all("P").length === 0) return undefined;
+    const index = Number.isNaN(p) ? 0 : p;
     const by = command.value === 42 ? "pin" : "fan-index";
     const channel = this.channels.findIndex(({ drive }) =>
       drive.by === "pin"
@@ -63,15 +62,15 @@ export class OutputClassifier {
         : drive.by === "fan-index" && by === drive.by && drive.index === index,
     );
     if (channel < 0) return undefined;
-    const plain = words.length === 1 + of("P").length + of("S").length && of("P").length <= 1 && of("S").length <= 1;
-    if (command.value === 107) return { what: "output", channel, does: plain ? "duty" : "mixed", duty: 0 };
-    const said = s && !Number.isNaN(s.value);
-    if (plain) return { what: "output", channel, does: "duty", duty: said ? this.duty(channel, s.value) : 1 };
-    const settings =
-      words.every(({ letter }, k) => k === 0 || "PLXBHFIRACKQV".includes(letter)) && words[0] === command;
-    if (command.value === 106 && settings && !said)
-      return { what: "output", channel, does: "configuration", duty: Number.NaN };
-    return { what: "output", channel, does: "mixed", duty: said ? this.duty(channel, s.value) : Number.NaN };
+    const alone = words.length === 1 + all("P").length + all("S").length;
+    if (command.value === 107) return { what: "output", channel, does: alone ? "duty" : "mixed", duty: 0 };
+    const plain = alone && all("P").length <= 1 && all("S").length <= 1;
+    const duty = Number.isNaN(s) ? Number.NaN : this.duty(channel, s);
+    // Without a value the output goes to full power.
+    if (plain) return { what: "output", channel, does: "duty", duty: Number.isNaN(s) ? 1 : duty };
+    const settings = words.every((word) => word === command || SETTINGS.includes(word.letter));
+    const does = command.value === 106 && settings && Number.isNaN(s) ? "configuration" : "mixed";
+    return { what: "output", channel, does, duty };
   }
 
   private named(code: string): OutputSetting | PauseCommand | undefined {
@@ -104,6 +103,13 @@ export class OutputClassifier {
     return Math.max(0, Math.min(1, value / full));
   }
 }
+
+/** Words of M106 that set how a fan works, not how fast it runs. */
+const SETTINGS = "PLXBHFIRACKQV";
+
+/** Of a word that stands several times the last counts; one without a number makes the others count for nothing. */
+const settled = (values: readonly number[]): number =>
+  values.some(Number.isNaN) ? Number.NaN : (values[values.length - 1] ?? Number.NaN);
 
 /** A letter in capitals and its number; NaN where it stands alone. */
 interface Word {

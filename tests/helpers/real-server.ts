@@ -41,7 +41,7 @@ export class RealServer {
       DATA_DIR: this.dataDir,
       PORT: "0",
       DEMO_PASSWORD: PASSWORD,
-      LOG_LEVEL: "warn",
+      LOG_LEVEL: "info",
       ...variables,
     };
     this.output = "";

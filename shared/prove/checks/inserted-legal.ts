@@ -8,7 +8,7 @@ import { counted, listed } from "#shared/prove/wording.ts";
 export function checkInsertedLegal(evidence: Evidence): Check {
   const { own, reading } = evidence;
   const names = evidence.channels().map(({ channel }) => channel.id);
-  const found = `${counted(own.length, "line")} put in, each a command of ${listed(names) || "no channel"} in the machine's own form and resolution.`;
+  const found = `${counted(own.length, "command")} put in, each of ${listed(names) || "no channel"} in the machine's own form and resolution.`;
   const wrong = own.find((entry) => reasonAgainst(entry, evidence) !== undefined);
   if (wrong)
     return verdict(

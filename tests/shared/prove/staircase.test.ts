@@ -1,8 +1,10 @@
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { bytesOf, failures, proveFiles, readBytes } from "#tests/shared/prove/proving.ts";
 import { tuneBytes } from "#tests/shared/prove/real-tuning.ts";
 import { smallMachine, smallPart, smallProfile } from "#tests/shared/prove/small-part.ts";
 import { resealedTamperings } from "#tests/shared/prove/tampering.ts";
+
+vi.setConfig({ testTimeout: 60_000 });
 
 const RATES = [0.05, 0.02];
 const LEADS = [0, "settle", 6];

@@ -56,13 +56,8 @@ export function ZoneBands({ editing, axis, selected, onSelect }: ZoneBandsProps)
             <span className="min-w-0 self-center px-1.5 text-fine leading-4">
               {room > 14 && (
                 <span className={z === selected ? "block truncate font-semibold" : "block truncate"}>{zone.name}</span>
-              )}
-              {room > 34 && (
-                // The label says it too, with a comma, and programs compare what is seen with what is said.
-                <span aria-hidden="true" className="block truncate text-soft">
-                  {STATE_NAMES[zone.target].toLowerCase()}
-                </span>
-              )}
+              )}{" "}
+              {room > 34 && <span className="block truncate text-soft">{STATE_NAMES[zone.target].toLowerCase()}</span>}
             </span>
           </button>
         );
