@@ -53,7 +53,8 @@ export class OutputClassifier {
     if (!command) return undefined;
     const all = (letter: string): number[] => words.filter((word) => word.letter === letter).map(({ value }) => value);
     const [p, s] = [all("P"), all("S")].map(settled);
-    if (command.value === 42 && all("P").length === 0) return undefined;
+    // Without a value a fan goes to full power, and a pin stays as it is.
+    if (command.value === 42 && (all("P").length === 0 || Number.isNaN(s))) return undefined;
     const index = Number.isNaN(p) ? 0 : p;
     const by = command.value === 42 ? "pin" : "fan-index";
     const channel = this.channels.findIndex(({ drive }) =>
@@ -62,11 +63,10 @@ export class OutputClassifier {
         : drive.by === "fan-index" && by === drive.by && drive.index === index,
     );
     if (channel < 0) return undefined;
-    const alone = words.length === 1 + all("P").length + all("S").length;
-    if (command.value === 107) return { what: "output", channel, does: alone ? "duty" : "mixed", duty: 0 };
-    const plain = alone && all("P").length <= 1 && all("S").length <= 1;
+    const counts = [all("P").length, all("S").length];
+    const plain = words.length === 1 + counts[0] + counts[1] && Math.max(...counts) <= 1;
+    if (command.value === 107) return { what: "output", channel, does: plain ? "duty" : "mixed", duty: 0 };
     const duty = Number.isNaN(s) ? Number.NaN : this.duty(channel, s);
-    // Without a value the output goes to full power.
     if (plain) return { what: "output", channel, does: "duty", duty: Number.isNaN(s) ? 1 : duty };
     const settings = words.every((word) => word === command || SETTINGS.includes(word.letter));
     const does = command.value === 106 && settings && Number.isNaN(s) ? "configuration" : "mixed";

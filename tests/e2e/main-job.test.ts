@@ -4,12 +4,14 @@ import { join } from "node:path";
 import { promisify } from "node:util";
 import type { Browser, Page } from "playwright-core";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
+import { parseProfile, writeProfile } from "#shared/formats/profile.ts";
 import { barriers, hasBrowser, openBrowser, openPage, picture, signIn } from "#tests/e2e/browser.ts";
 import { type RunningApp, runApp } from "#tests/e2e/running-app.ts";
 
 const ROOT = join(import.meta.dirname, "../..");
 const SAMPLE = join(ROOT, "samples/seal-ring.gcode");
 const run = promisify(execFile);
+const sample = (name: string): unknown => JSON.parse(readFileSync(join(ROOT, "samples", name), "utf8"));
 
 describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
   let app: RunningApp;
@@ -52,6 +54,66 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
     const tuned = await download(page);
     const expected = await commandLine(page, app);
     expectSameFile(tuned, expected);
+    expect(complaints).toEqual([]);
+    await page.context().close();
+  });
+
+  test("documents live in versions: approved, compared, restored as a new one, exported and imported", async () => {
+    const { page, complaints } = await openPage(browser);
+    await signIn(page, app.url, "lead");
+    await page.getByRole("link", { name: "Profiles", exact: true }).click();
+    await page.getByRole("link", { name: "Valve plate, flat and stiff" }).click();
+    await page.getByRole("button", { name: "Approve" }).click();
+    await page.getByText(/by lead@alderbay.example on/).waitFor();
+
+    await page.getByRole("link", { name: "Edit" }).click();
+    await page.getByLabel("Name", { exact: true }).fill("Valve plate, flat, stiff and renamed");
+    await page.getByRole("button", { name: "Save as a new version" }).click();
+    await page.getByLabel("Why").fill("A better name");
+    await page.getByRole("dialog").getByRole("button", { name: "Save" }).click();
+    await page.getByText("version 2, the latest, not approved").waitFor();
+
+    await page.getByRole("link", { name: "Compare with 1" }).click();
+    const table = page.getByRole("region", { name: "Version 1 and Version 2" });
+    await table.waitFor();
+    expect(await table.getByRole("row").count()).toBe(2);
+    await page.getByRole("link", { name: "To the profile" }).click();
+    await page.getByRole("button", { name: "Restore as 3" }).click();
+    await page.getByRole("dialog").getByRole("button", { name: "Restore as version 3" }).click();
+    await page.getByRole("heading", { name: "Valve plate, flat and stiff" }).waitFor();
+
+    const waiting = page.waitForEvent("download");
+    await page.getByRole("button", { name: "Export JSON" }).click();
+    const exported = readFileSync(await (await waiting).path(), "utf8");
+    expect(exported).toBe(writeProfile(parseProfile(sample("profiles/valve-plate-flat-and-stiff.json"))));
+
+    await page.getByRole("link", { name: "Profiles", exact: true }).click();
+    const input = page.getByLabel("JSON file of a profile");
+    const file = (text: string) => ({ name: "p.json", mimeType: "application/json", buffer: Buffer.from(text) });
+    await input.setInputFiles(file(exported.replace("0.", "7.")));
+    await page
+      .getByRole("dialog", { name: "Not imported" })
+      .getByText(/must be between 0 and 1/)
+      .first()
+      .waitFor();
+    await page.getByRole("button", { name: "Put away" }).click();
+    await input.setInputFiles(file(exported.replace("Valve plate, flat and stiff", "Imported plate")));
+    await page.getByRole("heading", { name: "Imported plate" }).waitFor();
+    expect(complaints.filter((text) => !/status of 4\d\d/.test(text))).toEqual([]);
+    await page.context().close();
+  });
+
+  test("a toolpath is read again for another machine", async () => {
+    const { page, complaints } = await openPage(browser);
+    await signIn(page, app.url, "operator");
+    await page.getByRole("link", { name: "valve-plate.gcode", exact: true }).click();
+    await page.getByRole("button", { name: "Read for another machine" }).click();
+    await page.getByRole("dialog").getByLabel("Machine").selectOption({ label: "Fulmar" });
+    await page.getByRole("dialog").getByRole("button", { name: "Read" }).click();
+    await page.getByLabel("Read for", { exact: true }).waitFor();
+    await page.getByText("Print time, without waits").waitFor();
+    const shown = page.getByLabel("Read for", { exact: true }).locator("option:checked");
+    expect(await shown.textContent()).toBe("Fulmar, version 1");
     expect(complaints).toEqual([]);
     await page.context().close();
   });

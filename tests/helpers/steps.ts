@@ -1,7 +1,10 @@
 import fc from "fast-check";
 import type { Step } from "#tests/helpers/planning.ts";
 
-/** Random paths of the kinds that toolpaths are made of, for the laws of planning. */
+/**
+ * Random paths of the kinds that toolpaths are made of, for the laws of planning. The numbers are odd ones: where two
+ * bounds are equal, the rule of the least cruise jumps, and rounding errors would decide which way.
+ */
 
 const turned = (angle: number, length: number, more: Partial<Step>): Step => ({
   dx: length * Math.cos(angle),
@@ -17,10 +20,10 @@ function turn(step: Step, by: number): Step {
   return { ...step, dx: step.dx * cos - step.dy * sin, dy: step.dx * sin + step.dy * cos };
 }
 
-const speedMmS = fc.constantFrom(5, 20, 60, 150, 400);
+const speedMmS = fc.constantFrom(5.3, 20, 61, 149, 400);
 const angle = fc.integer({ min: 0, max: 359 }).map((degrees) => (degrees * Math.PI) / 180);
-const length = fc.constantFrom(0.01, 0.05, 0.2, 0.7, 2, 9, 40);
-const perMm = fc.constantFrom(0, 0, 0.04, 0.04, 0.08);
+const length = fc.constantFrom(0.011, 0.053, 0.197, 0.71, 2.3, 9.1, 41);
+const perMm = fc.constantFrom(0, 0, 0.0373, 0.0373, 0.0811);
 
 const line = fc
   .record({ angle, length, speedMmS, perMm, count: fc.nat(12) })
@@ -31,7 +34,7 @@ const line = fc
   );
 
 const zigzag = fc
-  .record({ angle, length, pitch: fc.constantFrom(0.4, 1), speedMmS, perMm, count: fc.nat(40) })
+  .record({ angle, length, pitch: fc.constantFrom(0.43, 1.07), speedMmS, perMm, count: fc.nat(40) })
   .map((of): Step[] =>
     Array.from({ length: of.count + 1 }, (_, k) =>
       k % 2 === 0
@@ -43,7 +46,7 @@ const zigzag = fc
 const circle = fc
   .record({
     angle,
-    chord: fc.constantFrom(0.05, 0.3, 1.5),
+    chord: fc.constantFrom(0.047, 0.31, 1.53),
     turn: fc.constantFrom(0.02, 0.1, -0.3, 0.9),
     speedMmS,
     perMm,
@@ -56,7 +59,7 @@ const circle = fc
   );
 
 const retraction = fc
-  .record({ angle, length, mm: fc.constantFrom(0.8, 4), speedMmS })
+  .record({ angle, length, mm: fc.constantFrom(0.83, 4.1), speedMmS })
   .map((of): Step[] => [
     { dx: 0, dy: 0, dz: 0, de: -of.mm, speedMmS: 35 },
     turned(of.angle, of.length, { speedMmS: of.speedMmS }),
@@ -64,7 +67,7 @@ const retraction = fc
   ]);
 
 const hop = fc
-  .record({ angle, length, dz: fc.constantFrom(0.2, -0.2, 3), speedMmS })
+  .record({ angle, length, dz: fc.constantFrom(0.21, -0.19, 3.1), speedMmS })
   .map((of): Step[] => [
     { dx: 0, dy: 0, dz: of.dz, de: 0, speedMmS: 10 },
     turned(of.angle, of.length, { speedMmS: of.speedMmS, dz: -of.dz }),
