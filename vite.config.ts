@@ -17,7 +17,13 @@ export default defineConfig({
     projects: [
       {
         extends: true,
-        test: { name: "shared", include: ["tests/walls.test.ts", "tests/shared/**/*.test.ts"], environment: "node" },
+        test: {
+          name: "shared",
+          include: ["tests/walls.test.ts", "tests/shared/**/*.test.ts"],
+          environment: "node",
+          setupFiles: ["tests/helpers/steady-seed.ts"],
+          testTimeout: 60_000,
+        },
       },
       {
         extends: true,

@@ -329,9 +329,10 @@ function scanParenthesis(buf: Uint8Array, start: number, out: LineScan): number 
   return depth === 0 ? p + 1 : p;
 }
 
+/** The first terminator from `start` on; the end of the buffer where a caller broke the rule that there is one. */
 function endOfLine(buf: Uint8Array, start: number): number {
   let p = start;
-  while (buf[p] !== LF && buf[p] !== CR) p++;
+  while (p < buf.length && buf[p] !== LF && buf[p] !== CR) p++;
   return p;
 }
 

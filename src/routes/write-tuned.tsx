@@ -1,5 +1,5 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
-import { useState } from "react";
+import { useRef, useState } from "react";
 import { useNavigate } from "react-router-dom";
 import type { Profile } from "#shared/formats/profile.ts";
 import { paths } from "#src/app/paths.ts";
@@ -29,18 +29,22 @@ export function WriteTuned({ readingId, profile, draft, checked, ready }: Props)
   const client = useQueryClient();
   const navigate = useNavigate();
   const [asking, setAsking] = useState(false);
+  const saved = useRef<{ document: Profile; number: number }>(undefined);
   const write = useMutation({
     mutationFn: async (note: string | undefined) => {
-      let { number } = profile;
-      if (draft.changed) {
-        if (!checked) throw new Error("The profile is not complete.");
-        ({ number } = await PROFILES.createVersion(profile.id, draft.basedOn, checked, note));
-        draft.discard();
-        client.invalidateQueries({ queryKey: [PROFILES.plural] });
+      if (!draft.changed) return writeTuning(readingId, profile.id, profile.number);
+      if (!checked) throw new Error("The profile is not complete.");
+      // Tried again after the version was saved and only the rest failed, it must not be saved twice.
+      if (saved.current?.document !== draft.document) {
+        const { number } = await PROFILES.createVersion(profile.id, draft.basedOn, checked, note);
+        saved.current = { document: draft.document, number };
+        draft.rebase(number);
       }
-      return writeTuning(readingId, profile.id, number);
+      return writeTuning(readingId, profile.id, saved.current.number);
     },
     onSuccess: ({ id }) => {
+      draft.discard();
+      client.invalidateQueries({ queryKey: [PROFILES.plural] });
       client.invalidateQueries({ queryKey: ["tunings"] });
       navigate(paths.tuning(id));
     },

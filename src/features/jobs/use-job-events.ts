@@ -4,14 +4,28 @@ import { events, type Job } from "#shared/contract/jobs.ts";
 import { isUnderWay, jobQuery } from "#src/features/jobs/queries.ts";
 import { urlOf } from "#src/lib/call.ts";
 
-/** Listens to the team's jobs for as long as a page is open. The browser connects again by itself. */
+/** The browser mends a broken line by itself, but gives up when it is turned away, as when a session has ended. */
+const AGAIN_MS = 10_000;
+
+/** Listens to the team's jobs for as long as a page is open. */
 export function useJobEvents(): void {
   const client = useQueryClient();
   useEffect(() => {
     if (typeof EventSource === "undefined") return;
-    const source = new EventSource(urlOf(events, {}));
-    source.addEventListener("job", (event) => noteJob(client, JSON.parse(event.data) as Job));
-    return () => source.close();
+    let source: EventSource;
+    let timer: ReturnType<typeof setTimeout>;
+    const open = () => {
+      source = new EventSource(urlOf(events, {}));
+      source.addEventListener("job", (event) => noteJob(client, JSON.parse(event.data) as Job));
+      source.addEventListener("error", () => {
+        if (source.readyState === EventSource.CLOSED) timer = setTimeout(open, AGAIN_MS);
+      });
+    };
+    open();
+    return () => {
+      clearTimeout(timer);
+      source.close();
+    };
   }, [client]);
 }
 
