@@ -31,9 +31,9 @@ export function runEqual(original: LineFeed, tuned: LineFeed, { within, first }:
       const differs = (c0 ^ b[q]) | (c1 ^ b[q + 1]) | (c2 ^ b[q + 2]) | (c3 ^ b[q + 3]);
       if ((differs | within[c0] | within[c1] | within[c2] | within[c3]) !== 0) break;
     }
-    let c = a[p];
-    while (c === b[p + shift] && within[c] === 0 && ++p < end) c = a[p];
-    if (p >= end || c !== b[p + shift]) break;
+    while (p < end && a[p] === b[p + shift] && within[a[p]] === 0) p++;
+    if (p >= end || a[p] !== b[p + shift]) break;
+    const c = a[p];
     if (c === LF) p++;
     else if (c !== CR || p + 1 >= end) break;
     else if (a[p + 1] !== LF) p++;
