@@ -57,7 +57,7 @@ export class Evidence {
     const events: DutyEvent[][] = machine.channels.map(() => []);
     for (const entry of entries) {
       if (entry.what !== "own" && entry.what !== "file") continue;
-      if (!entry.set || Number.isNaN(entry.set.channel)) continue;
+      if (!entry.set) continue;
       if (entry.what === "file" && entry.set.does === "configuration") continue;
       const source = entry.what === "own" ? entry.tag : this.isKept(entry) ? "kept" : "file";
       const timeS = times.within(entry.from, entry.to);

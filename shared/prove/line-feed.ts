@@ -11,7 +11,7 @@ export class LineFeed {
   buf = new Uint8Array(0);
   /** first byte of the current line in `buf` */
   start = 0;
-  /** bytes before this one are known to hold no end of the current line, and to be equal in both files */
+  /** bytes of the current line before this one are known to hold no end of it */
   pos = 0;
   /** byte after the last one that is there; a line feed stands behind it once the file has ended */
   end = 0;
@@ -69,7 +69,10 @@ export class LineFeed {
     while (p < end && buf[p] !== LF && buf[p] !== CR) p++;
     this.next = 0;
     // A carriage return at the very end may be half of a pair.
-    if (p + 1 >= end && !this.ended && (p >= end || buf[p] === CR)) return false;
+    if (p + 1 >= end && !this.ended && (p >= end || buf[p] === CR)) {
+      this.pos = p;
+      return false;
+    }
     this.textEnd = p;
     if (p >= end) this.next = p;
     else this.next = buf[p] === CR && p + 1 < end && buf[p + 1] === LF ? p + 2 : p + 1;

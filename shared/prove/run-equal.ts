@@ -9,16 +9,16 @@ const CR = 13;
  * one look-up a byte. It stops at the first byte that differs or that is watched for, with both files at the start of
  * that line, or where one of them needs more bytes.
  *
- * @param original at the same place of its line as `tuned`
+ * @param original at the start of a line, as is `tuned`
  * @returns number of lines that it ran over
  */
 export function runEqual(original: LineFeed, tuned: LineFeed, { within, first }: Watch): number {
   const a = original.buf;
   const b = tuned.buf;
-  const shift = tuned.pos - original.pos;
+  const shift = tuned.start - original.start;
   const end = Math.min(original.end, tuned.end - shift);
-  let p = original.pos;
   let start = original.start;
+  let p = start;
   let lines = 0;
   while (p < end) {
     if (p === start && first[a[p]] !== 0) break;

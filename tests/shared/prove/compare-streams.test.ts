@@ -86,6 +86,16 @@ describe("whatever the bytes and however they are cut", () => {
     ));
 });
 
+test("files that end anywhere in a line or a chunk are compared to their ends", async () => {
+  for (let bytes = 0; bytes < 24; bytes++)
+    for (let chunk = 1; chunk < 9; chunk++)
+      for (const gone of [0, 1, 2, 5]) {
+        const original = `G28\n${"x".repeat(bytes)}`;
+        const { difference } = await compare(original, original.slice(0, original.length - gone), chunk);
+        expect([bytes, chunk, gone, difference === undefined]).toEqual([bytes, chunk, gone, gone === 0]);
+      }
+});
+
 test("a line longer than any that is read ends the comparison", async () => {
   const long = `;${"x".repeat((1 << 20) + 70_000)}`;
   const { difference } = await compare(`G28\n${long}\n`, `G28\n${long}y\n`, 1 << 16);
