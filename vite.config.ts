@@ -45,6 +45,8 @@ export default defineConfig({
           // The files that a worker runs share one database, some hundred megabytes large, and the modules.
           isolate: false,
           maxWorkers: 2,
+          // Projects of another width run by turns, not side by side.
+          sequence: { groupOrder: 1 },
           testTimeout: 60_000,
           hookTimeout: 120_000,
         },
@@ -64,6 +66,7 @@ export default defineConfig({
           name: "e2e",
           include: ["tests/e2e/**/*.test.ts"],
           environment: "node",
+          sequence: { groupOrder: 2 },
           testTimeout: 240_000,
           hookTimeout: 240_000,
         },
