@@ -59,6 +59,9 @@ export class LineScan {
   /** the first eight G words, in order, and their number */
   readonly gWords = new Float64Array(8);
   gCount = 0;
+  /** the M words in order, and their number; a line with more than eight can't be read */
+  readonly mWords = new Float64Array(8);
+  mCount = 0;
 
   /** Sets what is the same for all plain moves; `codeStart`, `codeEnd` and `gWords` are not kept for them. */
   makePlain(g: number): void {
@@ -69,6 +72,7 @@ export class LineScan {
     this.commands = 1;
     this.gCount = 1;
     this.gWords[0] = g;
+    this.mCount = 0;
     this.commentStart = -1;
     this.starAt = -1;
     this.checksum = -1;
@@ -115,6 +119,7 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
   let repeated = 0;
   let commands = 0;
   let gCount = 0;
+  let mCount = 0;
   let codeStart = start;
   let codeEnd = start;
   out.commentStart = -1;
@@ -199,6 +204,8 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
       gCount++;
     } else if (letter === M) {
       commands++;
+      out.mWords[mCount & 7] = number;
+      mCount++;
       if (commands === 1 && TEXT_COMMANDS.has(number)) {
         out.kind = LineKind.text;
         p = endOfText(buf, p, out, (mask & (1 << N)) !== 0);
@@ -209,6 +216,7 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
 
   if (out.kind === LineKind.words) {
     if (mask === 0) out.kind = LineKind.blank;
+    else if (mCount > out.mWords.length) out.kind = LineKind.unreadable;
     out.codeEnd = codeEnd;
   }
   if (out.kind !== LineKind.named) out.codeStart = codeStart;
@@ -217,6 +225,7 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
   out.repeated = repeated;
   out.commands = commands;
   out.gCount = gCount;
+  out.mCount = mCount;
   if (buf[p] !== LF && buf[p] !== CR) p = endOfLine(buf, p);
   out.textEnd = p;
   const next = buf[p] === CR && buf[p + 1] === LF ? p + 2 : p + 1;

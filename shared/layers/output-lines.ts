@@ -7,6 +7,7 @@ import type { ControlLine, OutputUse, PauseLine } from "#shared/layers/reading.t
 import {
   channelsByOutput,
   dutyOn,
+  isOutputCode,
   namedOutput,
   numberedOutput,
   type OutputCommand,
@@ -23,6 +24,8 @@ const INDEX_BLIND =
   /^(SET_(FAN_SPEED|PIN|VELOCITY_LIMIT|PRESSURE_ADVANCE|GCODE_OFFSET|HEATER_TEMPERATURE)|EXCLUDE_OBJECT\w*|TEMPERATURE_WAIT|BED_MESH_\w+|(SAVE|RESTORE)_GCODE_STATE)$/;
 /** Named commands that are known not to drive an output. */
 const HARMLESS = /^(SET_(VELOCITY_LIMIT|PRESSURE_ADVANCE|GCODE_OFFSET)|EXCLUDE_OBJECT\w*|(SAVE|RESTORE)_GCODE_STATE)$/;
+/** A command of an output anywhere in a line. */
+const OUTPUT_WORD = /m\s*0*(106|107|42)(?!\d)|SET_(PIN|FAN_SPEED)/i;
 const P_BIT = bit("P");
 
 /** Finds the lines that drive outputs or pause the print, and how the file addresses its outputs. */
@@ -54,9 +57,10 @@ export class OutputLines {
   /** A line with an M word. Returns what has to learn its print time, if anything. */
   numbered(buf: Uint8Array, scan: LineScan, ours: ControlLine["ours"]): ControlLine | PauseLine | undefined {
     const code = scan.value[12];
+    if (scan.mCount > 1) this.severalWords(buf, scan);
     if (this.pauseNumbers.has(code)) return this.pause(`M${code}`);
     if (code === 98 || code === 32 || code === 808) this.macro(`M${code}`);
-    const command = numberedOutput(scan);
+    const command = numberedOutput(scan, code);
     if (!command) return undefined;
     const line = this.builder.scan.line;
     if (code !== 42 && !ours) {
@@ -64,6 +68,21 @@ export class OutputLines {
       if ((scan.mask & P_BIT) === 0) this.use.bareFanLine ??= line;
     }
     return this.control(command, codeText(buf, scan.codeStart, scan.codeEnd), ours);
+  }
+
+  /** Several M words on one line, of which one drives an output or pauses: firmware may run one of them, or all. */
+  private severalWords(buf: Uint8Array, scan: LineScan): void {
+    for (const code of scan.mWords.subarray(0, scan.mCount))
+      if (this.pauseNumbers.has(code) || isOutputCode(code)) this.noteUnclear(buf, scan.codeStart, scan.codeEnd);
+  }
+
+  /** A line that can't be read, but firmware that skips what it doesn't know may find a command for an output in it. */
+  unreadable(buf: Uint8Array, scan: LineScan): void {
+    if (OUTPUT_WORD.test(codeText(buf, scan.start, scan.textEnd))) this.noteUnclear(buf, scan.start, scan.textEnd);
+  }
+
+  private noteUnclear(buf: Uint8Array, start: number, end: number): void {
+    this.use.unclear ??= { code: codeText(buf, start, end), line: this.builder.scan.line };
   }
 
   /** A named command, as text. */

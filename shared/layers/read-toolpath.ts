@@ -172,6 +172,7 @@ export class ToolpathReader {
         this.namedLine(buf);
         return;
       default:
+        this.outputs.unreadable(buf, scan);
         this.findings.add("unreadable-line", "warning", "this line can't be read as G-code; it is kept as it stands", {
           line: this.scan.line,
         });

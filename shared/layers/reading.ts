@@ -154,6 +154,8 @@ export interface OutputUse {
   bareFanLine?: number;
   /** a line with our tag that drives no channel of this machine: tuned for another one */
   strayOwnLine?: number;
+  /** the first line with a command for an output that firmware families read in different ways */
+  unclear?: { code: string; line: number };
 }
 
 export interface PauseLine {

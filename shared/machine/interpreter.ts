@@ -186,7 +186,7 @@ export class Interpreter {
     const isMotion = (g: number): boolean => g >= 0 && g <= 3;
     const words = [...scan.gWords.subarray(0, scan.gCount)];
     for (const g of words) if (!isMotion(g)) this.gCommand(g, value, 0, scan.mask);
-    if ((scan.mask & M_BIT) !== 0) this.mCommand(value[12], value, mask & ~AXIS_WORDS);
+    for (const m of scan.mWords.subarray(0, scan.mCount)) this.mCommand(m, value, mask & ~AXIS_WORDS);
     const motion = words.filter(isMotion).pop();
     const onlySettings = words.every((g) => (g >= 17 && g <= 21) || g === 90 || g === 91);
     if (motion !== undefined) this.motionCommand(motion, value, mask);

@@ -40,20 +40,26 @@ export function dutyOn(channel: Channel, value: number): number {
   return Math.min(Math.max(duty, 0), 1);
 }
 
+/** The M words that set an output. */
+export const isOutputCode = (code: number): boolean => code === 106 || code === 107 || code === 42;
+
 const P = bit("P");
 const S = bit("S");
 const PLAIN = bit("M") | bit("N") | P | S;
 const FAN_CONFIGURATION = ["L", "X", "B", "H", "F", "I", "R", "A", "C", "K", "Q", "V"].reduce((m, c) => m | bit(c), 0);
 
-/** `M106`, `M107`, `M42`: the output they set, or undefined for any other M word. */
-export function numberedOutput(scan: LineScan): OutputCommand | undefined {
+/**
+ * `M106`, `M107`, `M42`: the output they set, or undefined for any other M word.
+ *
+ * @param code the M word, one of the line's
+ */
+export function numberedOutput(scan: LineScan, code: number): OutputCommand | undefined {
   const { value, mask, bare } = scan;
-  const code = value[12];
   const index = (mask & P & ~bare) !== 0 ? value[15] : 0;
   const others = mask & ~PLAIN;
   const alone = others === 0 && scan.repeated === 0 && scan.commands === 1;
   if (code === 107) return { output: `fan ${index}`, value: 0, does: alone && whole(index) ? "duty" : "mixed" };
-  if (code !== 106 && code !== 42) return undefined;
+  if (!isOutputCode(code)) return undefined;
   const output = code === 106 ? `fan ${index}` : `pin ${index}`;
   const hasS = (mask & S) !== 0 && (bare & S) === 0;
   // Without S a fan goes to full power; a pin is left as it is.

@@ -42,8 +42,11 @@ export function readProvenance(text: string): ProvenanceFacts | string {
     const { path, message } = result.error.issues[0];
     return `is damaged at ${path.join(".") || "its fields"}: ${message}`;
   }
-  return asciiJson(inOrder(result.data)) === json ? result.data : "is not written as such a line is written";
+  return provenanceText(result.data) === json ? result.data : "is not written as such a line is written";
 }
+
+/** The one way in which these facts are written: their fields in order, no blanks, printable ASCII. */
+export const provenanceText = (facts: ProvenanceFacts): string => asciiJson(inOrder(facts));
 
 function inOrder({ profile, machine, ...rest }: ProvenanceFacts): object {
   const { v, original, engine, status, channels, withinLayer, lines, seal } = rest;

@@ -10,7 +10,14 @@ import type { Advice, Plan } from "#shared/plan/plan.ts";
 import { planDuties } from "#shared/plan/plan-duties.ts";
 import { Boundaries } from "#shared/rewrite/boundaries.ts";
 import { type Edit, EditList } from "#shared/rewrite/edits.ts";
-import { type Digest, type Named, type Provenance, provenanceLine, untunedDigest } from "#shared/rewrite/provenance.ts";
+import {
+  type Digest,
+  type Named,
+  type Provenance,
+  provenanceLine,
+  provenanceText,
+  untunedDigest,
+} from "#shared/rewrite/provenance.ts";
 import { keepRaises } from "#shared/rewrite/raises.ts";
 import { refuseUnsafe } from "#shared/rewrite/refuse-unsafe.ts";
 import { scheduleChannel } from "#shared/rewrite/schedule.ts";
@@ -86,8 +93,9 @@ export function prepareTuning({ reading, machine, profile, polymer, ...about }: 
     channels: driven.map(({ id }) => id),
     withinLayer: profile.withinLayer,
     lines: commands.length,
-    seal: about.digest(sealText(reading, commands, removed, kept)),
+    seal: "",
   };
+  provenance.seal = about.digest(`${provenanceText(provenance)}\n${sealText(reading, commands, removed, kept)}`);
   plan.advice = [...plan.advice, ...advice].sort((a, b) => a.layer - b.layer);
   return { plan, edits: layEdits(reading, commands, removed, provenance), provenance };
 }
@@ -103,7 +111,7 @@ const named = (name: string, document: string, digest: Digest, version: number |
 });
 
 /**
- * The text whose digest seals the tuned file: every command of ours and every kept raise, each with the number of the
+ * What is sealed beside the provenance line itself: every command of ours and every kept raise, each with the number of the
  * file's own lines before it. Any change to one of them, or to its place, shows.
  */
 function sealText(

@@ -17,8 +17,9 @@ export interface Provenance {
   status: "trial-only" | "approved";
   channels: string[];
   withinLayer: "replace" | "keep-raises";
-  /** number of our command lines, and the digest of them and of the kept raises with their places */
+  /** number of our command lines */
   lines: number;
+  /** digest of this line with an empty seal, of our commands and of the kept raises with their places */
   seal: string;
 }
 
@@ -30,13 +31,11 @@ export interface Named {
 }
 
 /** The one comment line, printable ASCII whatever the names hold, so that no text of a user can end the line. */
-export function provenanceLine(provenance: Provenance): string {
-  const json = JSON.stringify(provenance).replace(
-    /[^\x20-\x7e]/g,
-    (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, "0")}`,
-  );
-  return PROVENANCE_PREFIX + json;
-}
+export const provenanceLine = (provenance: Provenance): string => PROVENANCE_PREFIX + provenanceText(provenance);
+
+/** The facts as the line writes them: also what the seal is made over, with an empty `seal`. */
+export const provenanceText = (provenance: Provenance): string =>
+  JSON.stringify(provenance).replace(/[^\x20-\x7e]/g, (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, "0")}`);
 
 /** What the next tuning is made with. */
 type Next = Pick<Provenance, "profile" | "machine" | "withinLayer">;

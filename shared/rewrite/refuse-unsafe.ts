@@ -11,6 +11,7 @@ import { Refusal } from "#shared/refusal.ts";
  */
 export function refuseUnsafe(reading: Reading, machine: Machine, driven: readonly Channel[], advice: Advice[]): void {
   const ids = new Set(driven.map((channel) => machine.channels.indexOf(channel)));
+  refuseUnclear(reading);
   refuseHiddenDuty(reading, machine, ids);
   const heaters = driven.filter(({ kind }) => kind === "heater");
   for (const heater of heaters) {
@@ -22,6 +23,17 @@ export function refuseUnsafe(reading: Reading, machine: Machine, driven: readonl
 }
 
 const inside = (line: { layer: number }): boolean => line.layer >= 1 && line.layer < Number.POSITIVE_INFINITY;
+
+/** No one can tell what a line does that firmware families read in different ways. */
+function refuseUnclear({ outputs: { unclear } }: Reading): void {
+  if (!unclear) return;
+  throw new Refusal(
+    "unclear-command",
+    `\`${unclear.code}\` is not one plain command, and firmware families disagree on which outputs it sets`,
+    "Write each command on a line of its own, or take the line out, and tune again.",
+    { line: unclear.line },
+  );
+}
 
 /** A line that sets a duty together with something else can neither stay nor go. */
 function refuseHiddenDuty({ controls }: Reading, machine: Machine, ids: ReadonlySet<number>): void {

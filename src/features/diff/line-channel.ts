@@ -2,9 +2,6 @@ import type { Channel, Machine } from "#shared/formats/machine.ts";
 import { LineKind, LineScan, scanLine } from "#shared/gcode/scan-line.ts";
 import { channelsByOutput, namedOutput, numberedOutput, parseNamed } from "#shared/machine/output-command.ts";
 
-const M = 12;
-const M_BIT = 1 << M;
-
 /** Tells which of the machine's channels a line commands, with the engine's own eyes. */
 export function lineChannels(machine: Machine): (line: string) => Channel | undefined {
   const byOutput = channelsByOutput(machine);
@@ -15,8 +12,8 @@ export function lineChannels(machine: Machine): (line: string) => Channel | unde
     const command =
       scan.kind === LineKind.named
         ? namedCommand(line)
-        : scan.kind === LineKind.words && (scan.mask & M_BIT) !== 0
-          ? numberedOutput(scan)
+        : scan.kind === LineKind.words && scan.mCount > 0
+          ? numberedOutput(scan, scan.mWords[0])
           : undefined;
     const index = command && byOutput.get(command.output);
     return index === undefined ? undefined : machine.channels[index];

@@ -15,7 +15,7 @@ import { tern } from "#tests/helpers/tern.ts";
 const numbered = (line: string) => {
   const scan = new LineScan();
   scanLine(latin(`${line}\n\0`), 0, scan);
-  return numberedOutput(scan);
+  return numberedOutput(scan, scan.mWords[scan.mCount - 1]);
 };
 const named = (line: string) => {
   const { name, parameters } = parseNamed(line);

@@ -163,8 +163,9 @@ export function sealed(lines: readonly string[], reading: Reading, machine: Mach
     channels: driven.map(({ id }) => id),
     withinLayer: profile.withinLayer,
     lines: commands,
-    seal: sha256(text),
   };
-  const json = JSON.stringify(facts).replace(/[^ -~]/g, (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, "0")}`);
+  const written = (seal: string): string =>
+    JSON.stringify({ ...facts, seal }).replace(/[^ -~]/g, (c) => `\\u${c.charCodeAt(0).toString(16).padStart(4, "0")}`);
+  const json = written(sha256(`${written("")}\n${text}`));
   return lines.map((line) => (isProvenance(line) ? line.replace(/\{.*\}/, () => json) : line));
 }

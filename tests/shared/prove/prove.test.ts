@@ -49,7 +49,7 @@ describe("a proof that passes", () => {
         "inserted-legal: 14 commands put in, each of part-fan and lamp in the machine's own form and resolution.",
         "inserted-inside: All lines of ours stand between line 11 of the original, where the first layer begins, and line 82, where the last has ended.",
         "provenance: One line, where the first layer begins: profile "Square, “stiff”", machine "Petrel — n°2", trial-only, engine 0.0.0-test.",
-        "seal: The seal fits 14 commands of ours and the raises kept, each in its place.",
+        "seal: The seal fits the provenance line, 14 commands of ours and the raises kept, each in its place.",
         "within-layer: None of the file's own commands on driven channels is left among the layers.",
         "limits: part-fan up to 0.6 (allowed: off or at least 0.12, at most 0.9); lamp up to 0.702 (allowed: at most 0.8).",
         "change-per-layer: From layer to layer: lamp changes by up to 0.102 (allowed: 0.2).",

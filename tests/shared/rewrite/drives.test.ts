@@ -87,7 +87,6 @@ describe("a line that sets a duty and something else besides", () => {
     ["M106 P2 S128 B0.5", machineWith(), "lamp"],
     ["M106 S128 T0", machineWith(), "part-fan"],
     ["G1 X20 E1 M106 S255", machineWith(), "part-fan"],
-    ["M106 S255 M106 P2 S128", machineWith(), "lamp"],
     ["SET_PIN PIN=lamp VALUE=0.5 CYCLE_TIME=0.1", named, "lamp"],
     ['SET_FAN_SPEED FAN=part SPEED="{params.S}"', named, "part-fan"],
   ])("is refused inside the window: %s", (line, machine, id) => {

@@ -15,6 +15,29 @@ interface Lines {
 const partWith = ({ start = [], middle = [], finish = [] }: Lines): string =>
   written(partLines({ layers: plain(2, { middle }), start: [...START, ...start], finish: ["G0 Z40", ...finish] }));
 
+describe("a command for an output that firmware families read in different ways", () => {
+  test.each([
+    "M106 S255 M106 P2 S128",
+    "M106 P2 S255 M84",
+    "M400 M106 P2 S255",
+    "M106 P2 S255 M0",
+    "M2 M3 M4 M5 M6 M7 M8 M9 M106 P2 S255",
+    "M106 P2 S255 #fast",
+    "$SET_PIN PIN=lamp VALUE=1",
+  ])("is refused wherever it stands: %s", (line) => {
+    for (const place of ["start", "middle", "finish"])
+      expect(refusalOf(() => tune(partWith({ [place]: [line] }), machineWith(), both))).toMatchObject({
+        code: "unclear-command",
+        place: { line: expect.any(Number) },
+      });
+  });
+
+  test("is no reason to refuse where it drives nothing", () => {
+    for (const line of ["M82 M107.5 S1", "G21 G90 M83", "M104 S200 M140 S60", "#nothing to see"])
+      expect(() => tune(partWith({ start: [line] }), machineWith(), both)).not.toThrow();
+  });
+});
+
 describe("firmware that ignores the index of a fan command", () => {
   // REFERENCE G13: "M106 P2 S255" meant for a lamp drives the part fan there.
   const commands = [
