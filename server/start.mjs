@@ -2,6 +2,7 @@
 // gets the signals that are meant for it.
 import { pathToFileURL } from "node:url";
 import { freshServer } from "./built.mjs";
+import "./engine-flags.mjs";
 import { installMissing } from "./install.mjs";
 
 process.setSourceMapsEnabled(true);

@@ -2,6 +2,7 @@
 // Standard output belongs to the command alone.
 import { pathToFileURL } from "node:url";
 import { freshCommandLine } from "../bundle.mjs";
+import "../engine-flags.mjs";
 import { installMissing } from "../install.mjs";
 
 if (process.env.DEBUG) process.setSourceMapsEnabled(true);

@@ -346,6 +346,8 @@ export class Planner {
     let entry = full ? 0 : this.forwardEntrySq;
     let lastExitSq = -1;
     let lastExit = 0;
+    let lastAccel = -1;
+    let inverse = 0;
     for (let i = 0, r = 0; i < count; i++, r += RECORD) {
       let top = peakSq[i];
       const start = records[r + START];
@@ -373,7 +375,11 @@ export class Planner {
       } else {
         const cruise = top === from ? enter : Math.sqrt(top);
         const exit = next === top ? cruise : Math.sqrt(next);
-        const inverse = 1 / records[r + ACCEL];
+        const accel = records[r + ACCEL];
+        if (accel !== lastAccel) {
+          lastAccel = accel;
+          inverse = 1 / accel;
+        }
         const rest = length - (top - from + (top - next)) * 0.5 * inverse;
         timeS[i] = (cruise - enter + (cruise - exit)) * inverse + (rest > 0 ? rest / cruise : 0);
         lastExit = exit;

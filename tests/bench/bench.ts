@@ -41,7 +41,9 @@ function writeFile(name: string, bytes: number): string {
 }
 
 function job(name: string, file: string): Record<string, number> {
-  const { stdout, stderr, status } = spawnSync(process.execPath, [jobFile, name, file, tuned], { encoding: "utf8" });
+  const { stdout, stderr, status } = spawnSync(process.execPath, [...process.execArgv, jobFile, name, file, tuned], {
+    encoding: "utf8",
+  });
   if (status !== 0) throw new Error(`${name}: ${stderr}`);
   return JSON.parse(stdout) as Record<string, number>;
 }

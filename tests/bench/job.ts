@@ -1,7 +1,7 @@
 // One job in a process of its own, as the bench's whole-process rows need it. Prints one line of JSON.
 import { createHash } from "node:crypto";
-import { createReadStream, createWriteStream, readFileSync } from "node:fs";
-import type { Readable, Writable } from "node:stream";
+import { closeSync, createReadStream, openSync, readFileSync, writeSync } from "node:fs";
+import type { Readable } from "node:stream";
 import { pipeline } from "node:stream/promises";
 import { GCodeLineStream } from "gcode-parser";
 import { parseMachine } from "#shared/formats/machine.ts";
@@ -28,37 +28,30 @@ async function analyse(file: string): Promise<Reading> {
   return reader.end(hash.digest("hex"));
 }
 
-async function drain(out: Writable): Promise<void> {
-  if (out.writableNeedDrain) await new Promise((resolve) => out.once("drain", resolve));
-}
-
+/** The pass that writes, as the command line does it: piece by piece, hashed, into the file. */
 async function rewrite(file: string, reading: Reading, to: string): Promise<void> {
   const { edits } = prepareTuning({ reading, machine, profile, digest: sha256, engine: "bench", status: "trial-only" });
-  const out = createWriteStream(to);
+  const out = openSync(to, "w");
   const hash = createHash("sha256");
   const rewriter = new Rewriter(edits, reading.file, (bytes) => {
     hash.update(bytes);
-    out.write(bytes.slice());
+    writeSync(out, bytes);
   });
-  for await (const chunk of chunksOf(file)) {
-    rewriter.push(chunk);
-    await drain(out);
-  }
+  for await (const chunk of chunksOf(file)) rewriter.push(chunk);
   rewriter.end();
   hash.digest();
-  await new Promise((resolve) => out.end(resolve));
+  closeSync(out);
 }
 
 async function copy(file: string, to: string): Promise<void> {
-  const out = createWriteStream(to);
+  const out = openSync(to, "w");
   const hash = createHash("sha256");
   for await (const chunk of chunksOf(file)) {
     hash.update(chunk);
-    out.write(chunk);
-    await drain(out);
+    writeSync(out, chunk);
   }
   hash.digest();
-  await new Promise((resolve) => out.end(resolve));
+  closeSync(out);
 }
 
 const timed = async (work: () => Promise<unknown>): Promise<number> => {

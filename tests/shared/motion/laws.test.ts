@@ -74,13 +74,19 @@ describe.each(EVERY_RULE)("with %s", (_, machine) => {
     );
   });
 
-  test("cutting a straight move in two changes nothing", () => {
+  // With a least cruise a peak belongs to a whole move: a move cut in two may take its peak elsewhere, and a little more time.
+  const mayWait =
+    machine.motion.cornering.rule === "square-corner-velocity" && machine.motion.cornering.cruiseRatio > 0;
+
+  test(`cutting a straight move in two ${mayWait ? "makes nothing faster, and next to nothing slower" : "changes nothing"}`, () => {
     fc.assert(
       fc.property(cuttable, ({ steps, at, share }) => {
         const whole = plan(steps, machine);
         const cut = plan(cutOne(steps, at, share), machine);
-        expect(Math.abs(cut.totalS / whole.totalS - 1)).toBeLessThan(1e-9);
-        expect(Math.abs((cut.timeS[at] + cut.timeS[at + 1]) / whole.timeS[at] - 1)).toBeLessThan(1e-9);
+        const change = cut.totalS / whole.totalS - 1;
+        expect(change).toBeGreaterThan(-1e-9);
+        expect(change).toBeLessThan(mayWait ? 0.005 : 1e-9);
+        if (!mayWait) expect(Math.abs((cut.timeS[at] + cut.timeS[at + 1]) / whole.timeS[at] - 1)).toBeLessThan(1e-9);
       }),
     );
   });
