@@ -1,5 +1,5 @@
 import { useEffect, useRef, useState } from "react";
-import { useLocation, useSearchParams } from "react-router-dom";
+import { useNavigation, useSearchParams } from "react-router-dom";
 
 /** Arrow keys walk fast; the address follows when they rest. */
 const REST_MS = 250;
@@ -7,11 +7,14 @@ const REST_MS = 250;
 /** The pinned layer, by index, kept in the address so that a link leads to the same layer. */
 export function usePinnedLayer(): [layer: number | undefined, pin: (layer: number | undefined) => void] {
   const [search, setSearch] = useSearchParams();
-  const { pathname } = useLocation();
+  // While the next page is fetched this one still stands: writing its address then would call the way there off.
+  const leaving = useNavigation().state !== "idle";
   const [layer, pin] = useState(() => layerIn(search));
+  const written = layerIn(search);
   const setLater = useRef(setSearch);
   setLater.current = setSearch;
   useEffect(() => {
+    if (leaving || layer === written) return;
     const timer = setTimeout(() => {
       const keep = (now: URLSearchParams) => {
         const next = new URLSearchParams(now);
@@ -19,14 +22,10 @@ export function usePinnedLayer(): [layer: number | undefined, pin: (layer: numbe
         else next.set("layer", String(layer));
         return next;
       };
-      // The page may be on its way out: the next one's address is no business of ours.
-      if (window.location.pathname !== pathname) return;
-      if (layerIn(new URLSearchParams(window.location.search)) !== layer) {
-        setLater.current(keep, { replace: true, preventScrollReset: true });
-      }
+      setLater.current(keep, { replace: true, preventScrollReset: true });
     }, REST_MS);
     return () => clearTimeout(timer);
-  }, [layer, pathname]);
+  }, [layer, written, leaving]);
   return [layer, pin];
 }
 
