@@ -25,7 +25,8 @@ export function fillDutySeen(layers: Layer[], controls: readonly ControlLine[], 
         seen.max = Math.max(seen.max, duty);
       }
       area += duty * (endS - sinceS);
-      seen.mean = layer.timeS > 0 ? area / layer.timeS : duty;
+      // The sum may miss the mean by the last digit, and a duty of 1.0000000000000002 is none.
+      seen.mean = layer.timeS > 0 ? Math.min(Math.max(area / layer.timeS, seen.min), seen.max) : duty;
       layer.duty[channel.id] = seen;
     }
   }

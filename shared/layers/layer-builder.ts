@@ -46,7 +46,6 @@ export class LayerBuilder implements MotionSink {
   spiral = false;
   /** line after the last laying move */
   readonly lastLaid: Boundary = { offset: 0, line: 0, timeS: 0 };
-  layingMoves = 0;
   private waits = 0;
   /** set when a filament diameter is given in the file, mm */
   filamentDiameterMm: number;
@@ -245,7 +244,6 @@ export class LayerBuilder implements MotionSink {
   private considerLayer(z0: number, z: number): void {
     if (this.startsOver) this.forgetLayers();
     this.sums[LAST_Z] = z;
-    this.layingMoves++;
     const zUm = Math.round(z * 1000);
     const fromUm = Math.round(z0 * 1000);
     const ramps = fromUm !== zUm;
