@@ -4,11 +4,12 @@ import { join } from "node:path";
 import { bundle, fingerprint, PROGRAM_SOURCES, ROOT } from "./bundle.mjs";
 
 const DIST = join(ROOT, "dist");
-/** The worker stands beside the server, which starts it under this name. */
-const PROGRAMS = {
+/** The worker and the database's maker stand beside the server, which starts them under these names. */
+export const PROGRAMS = {
   quenchline: "server/cli/quenchline.ts",
   index: "server/index.ts",
   worker: "server/jobs/worker.ts",
+  "database-maker": "server/db/database-maker.ts",
 };
 const CLIENT_SOURCES = [
   "shared",

@@ -52,6 +52,12 @@ export async function findActor(db: Db, sessionId: string, limits: Limits): Prom
   return session.actor;
 }
 
+/** Whether a session still holds. Unlike a request, asking is no use of it. */
+export async function holds(db: Db, sessionId: string, limits: Limits): Promise<boolean> {
+  const now = new Date();
+  return (await queries.findLiveSession(db, sessionId, now, idleSince(now, limits))) !== undefined;
+}
+
 export function signOut(db: Db, actor: Actor): Promise<void> {
   return queries.removeSession(db, actor.sessionId);
 }

@@ -16,7 +16,8 @@ const OPTIONS = {
     plan: TEXT,
     proof: TEXT,
   },
-  prove: { machine: TEXT, profile: TEXT, json: FLAG },
+  predict: { machine: TEXT, profile: TEXT, polymer: TEXT, json: FLAG },
+  prove: { machine: TEXT, profile: TEXT, polymer: TEXT, json: FLAG },
 } as const;
 
 export type Command = keyof typeof OPTIONS;

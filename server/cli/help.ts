@@ -6,12 +6,14 @@ const USAGES: Record<Command, string> = {
   read: "read FILE --machine M.json [--json]",
   tune: `tune FILE --machine M.json --profile P.json (--out OUT | --in-place)
            [--polymer Q.json] [--plan PLAN.json] [--proof PROOF.json]`,
-  prove: "prove ORIGINAL TUNED --machine M.json [--profile P.json] [--json]",
+  predict: "predict FILE --machine M.json --profile P.json --polymer Q.json [--json]",
+  prove: "prove ORIGINAL TUNED --machine M.json [--profile P.json] [--polymer Q.json] [--json]",
 };
 
 const SUMMARIES: Record<Command, string> = {
   read: "measure a toolpath: one row per layer",
   tune: "write a tuned toolpath: its fan and heater lines come from a profile",
+  predict: "foresee temperature and crystallinity, layer by layer",
   prove: "compare a tuned toolpath with its original",
 };
 
@@ -53,12 +55,31 @@ Options
   --profile P.json    the profile: zones by height, cooling and heating rules, limits
   --out OUT           the tuned toolpath; its folder must be there
   --in-place          put the tuned toolpath in FILE's place instead (the form for a slicer's post-processing hook)
-  --polymer Q.json    the polymer's card: checks that the profile was written for it
+  --polymer Q.json    the polymer's card: checks that the profile was written for it; a profile that holds layers on a
+                      state needs it, since duties are then solved from what the polymer will do
   --plan PLAN.json    also write the plan: every duty with its reasons
   --proof PROOF.json  also write the proof; it is written when the proof fails, too
 
 ${EXIT_STATUS}
   4  the proof failed: the checks that failed are on standard error, OUT was not written`,
+  predict: `Plans the duties as tune does and foresees what they make of every layer: its temperature when the next one covers
+it, whether it is solid by then and welds, and its crystallinity once all is cold, each with a worst-case band. An
+estimate, to be confirmed by a trial print. Nothing is written.
+
+Example
+  ${CALL} predict samples/seal-ring.gcode --machine samples/machines/tern.json \\
+    --profile samples/profiles/seal-ring-stiff-base-and-tough-lip.json --polymer samples/polymers/peek.json
+
+${FILE}
+
+Options
+  --machine M.json   the machine, and what surrounds the part; what its document leaves out is taken as typical
+  --profile P.json   the profile: zones by height with their targets, cooling and heating rules, limits
+  --polymer Q.json   the polymer's card; none is looked for, since which card was meant decides the result
+  --json             one quenchline.prediction/1 document on standard output and nothing else;
+                     where the input is refused, a quenchline.refusal/1 object
+
+${EXIT_STATUS}`,
   prove: `Compares a tuned toolpath with its original: every byte outside Quenchline's own lines is the same, the duties keep
 to the limits, the heater is off at the end, motion and print time have not changed.
 
@@ -70,6 +91,8 @@ ORIGINAL and TUNED are G-code, plain or gzip; one of them may be - for standard 
 Options
   --machine M.json   the machine both files are for
   --profile P.json   the profile whose limits TUNED has to keep; without it the machine's alone are checked
+  --polymer Q.json   the card that the duties of a profile that holds were solved with; without it such a TUNED is held
+                     against the limits, but not against the plan
   --json             one quenchline.proof/1 document on standard output and nothing else;
                      where the input is refused, a quenchline.refusal/1 object
 
@@ -84,7 +107,7 @@ Usage
   ${CALL} COMMAND …
 
 Commands
-${COMMANDS.map((name) => `  ${name.padEnd(6)} ${SUMMARIES[name]}`).join("\n")}
+${COMMANDS.map((name) => `  ${name.padEnd(8)} ${SUMMARIES[name]}`).join("\n")}
 
 To begin with
   ${CALL} read samples/seal-ring.gcode --machine samples/machines/tern.json

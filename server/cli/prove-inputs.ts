@@ -5,6 +5,7 @@ import type { ToolpathInput } from "#server/cli/input-stream.ts";
 import { Progress } from "#server/cli/progress.ts";
 import { version } from "#server/cli/version.ts";
 import type { Machine } from "#shared/formats/machine.ts";
+import type { Polymer } from "#shared/formats/polymer.ts";
 import type { Profile } from "#shared/formats/profile.ts";
 import type { ProofDocument } from "#shared/formats/proof.ts";
 import type { Reading } from "#shared/layers/reading.ts";
@@ -18,6 +19,7 @@ interface Pair {
   reading: Reading;
   machine: Machine;
   profile?: Profile;
+  polymer?: Polymer;
   expected?: ProveInput["expected"];
 }
 

@@ -11,6 +11,7 @@ type Run = (argv: string[]) => Promise<ExitStatus>;
 const RUN: Record<Command, () => Promise<Run>> = {
   read: async () => (await import("#server/cli/commands/read.ts")).read,
   tune: async () => (await import("#server/cli/commands/tune.ts")).tune,
+  predict: async () => (await import("#server/cli/commands/predict.ts")).predict,
   prove: async () => (await import("#server/cli/commands/prove.ts")).prove,
 };
 
@@ -44,7 +45,6 @@ async function answer(text: string): Promise<ExitStatus> {
 }
 
 function unknownCommand(name: string): string {
-  if (name === "predict") return "predict is not available yet: this version computes no temperatures";
   if (name.startsWith("-")) return `the command comes first, before ${name}`;
   return `there is no command "${name}"`;
 }

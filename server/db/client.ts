@@ -1,9 +1,11 @@
+import { existsSync } from "node:fs";
 import { mkdir } from "node:fs/promises";
-import { join } from "node:path";
+import { join, resolve } from "node:path";
 import { PGlite } from "@electric-sql/pglite";
 import type { PgDatabase, PgQueryResultHKT } from "drizzle-orm/pg-core";
 import { drizzle } from "drizzle-orm/pglite";
 import { takeLock } from "#server/db/lock.ts";
+import { makeDatabase } from "#server/db/make-database.ts";
 import { migrate } from "#server/db/migrate.ts";
 
 /**
@@ -19,7 +21,7 @@ export interface OpenDatabase {
 }
 
 /**
- * Opens the database below the data folder, bringing it up to date first.
+ * Opens the database below the data folder, making it where there is none and bringing it up to date first.
  *
  * @throws AlreadyOpen when another process has it open
  */
@@ -29,7 +31,9 @@ export async function openDatabase(dataDir: string): Promise<OpenDatabase> {
   const lock = takeLock(join(dataDir, "database.lock"));
   let client: PGlite | undefined;
   try {
-    client = await PGlite.create(join(dataDir, "database"));
+    const folder = resolve(dataDir, "database");
+    if (!existsSync(folder)) await makeDatabase(folder);
+    client = await PGlite.create(folder);
     const db = drizzle(client);
     await migrate(db);
     const opened = client;

@@ -7,7 +7,7 @@ import type { Parts } from "#server/parts.ts";
 import { polymers } from "#server/polymers/service.ts";
 import { profiles } from "#server/profiles/service.ts";
 import { ROOT } from "#server/root.ts";
-import { addMember, hasMember, hasTeams, insertTeam } from "#server/teams/service.ts";
+import { addMember, findMember, hasTeams, insertTeam } from "#server/teams/service.ts";
 import { seedToolpaths } from "#server/toolpaths/seed.ts";
 import { Role } from "#shared/contract/roles.ts";
 
@@ -16,13 +16,23 @@ const DOMAIN = "alderbay.example";
 const SAMPLES = join(ROOT, "samples");
 const addressOf = (role: Role): string => `${role}@${DOMAIN}`;
 
-/** Gives a database without any team the demo's: four people, the sample documents, toolpaths and one tuning. */
+/**
+ * Gives a database without any team the demo's: four people, the sample documents, toolpaths and one tuning. Goes on
+ * where an earlier start was broken off.
+ */
 export async function seedDemo(parts: Parts): Promise<void> {
-  const { db, env, log } = parts;
-  if (!env.SEED_DEMO || (await hasTeams(db))) return;
+  const { db, env } = parts;
+  if (!env.SEED_DEMO) return;
+  const operator = (await hasTeams(db)) ? await findMember(db, addressOf("operator")) : await seedTeam(parts);
+  if (operator) await seedToolpaths(parts, operator);
+}
+
+/** People and documents, all or none. @returns the operator */
+async function seedTeam(parts: Parts): Promise<{ userId: string; teamId: string }> {
+  const { db, log } = parts;
   const password = await demoPassword(parts);
   log.info({ team: TEAM }, "making the demo team");
-  const operator = await db.transaction(async (tx) => {
+  return db.transaction(async (tx) => {
     const teamId = await insertTeam(tx, TEAM);
     const people = {} as Record<Role, { userId: string; teamId: string }>;
     for (const role of Role.options) {
@@ -36,7 +46,6 @@ export async function seedDemo(parts: Parts): Promise<void> {
     for (const id of seeded.slice(0, -1)) await profiles.approve(tx, people.lead, id, 1);
     return people.operator;
   });
-  await seedToolpaths(parts, operator);
 }
 
 async function seedDocuments<Document>(
@@ -56,7 +65,7 @@ async function seedDocuments<Document>(
 
 /** What to tell whoever starts the server; nothing where there is no demo team. */
 export async function demoSignIns(parts: Parts): Promise<string> {
-  if (!parts.env.SEED_DEMO || !(await hasMember(parts.db, addressOf("lead")))) return "";
+  if (!parts.env.SEED_DEMO || !(await findMember(parts.db, addressOf("lead")))) return "";
   const people = Role.options.map((role) => `  ${addressOf(role)}\n`).join("");
   return `Demo team ${TEAM}; the password of each is ${await demoPassword(parts)}\n${people}`;
 }

@@ -11,7 +11,7 @@ export interface Format<Document> {
   kind: DocumentKind;
   nameOf(document: Document): string;
   parse(json: unknown): Document;
-  /** equal documents give equal text */
+  /** what the document says; equal documents give equal text. A version that it came with is left out: the team numbers its own */
   write(document: Document): string;
 }
 

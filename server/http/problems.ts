@@ -17,8 +17,22 @@ export function answerProblems(log: Logger): ErrorRequestHandler {
     if (expected instanceof AppError) response.set(expected.details.headers ?? {});
     // Headers of the reply that was meant to be must not describe this one.
     for (const name of ["ETag", "Content-Disposition", "Content-Range", "Content-Length"]) response.removeHeader(name);
+    response.once("finish", () => cutUnfinished(request));
     response.status(problem.status).set("Cache-Control", "no-store").type(PROBLEM_TYPE).send(JSON.stringify(problem));
   };
+}
+
+/** How long the rest of a refused body is taken, and thrown away. */
+const PATIENCE_MS = 1_000;
+
+/**
+ * What is refused before its body has come is answered at once, but many clients look for an answer only when they have
+ * sent everything or can't send any more. Cutting at once could cost them the answer; never cutting, the whole body.
+ */
+function cutUnfinished(request: Request): void {
+  if (request.complete) return;
+  const cut = setTimeout(() => request.socket.destroy(), PATIENCE_MS);
+  request.once("close", () => clearTimeout(cut));
 }
 
 export function problemOf(error: AppError | Refusal): Problem {

@@ -1,10 +1,11 @@
 import type { Response } from "express";
 import type { Job } from "#shared/contract/jobs.ts";
 
-/** A line often enough that no proxy in between takes the stream for dead. */
-const HEARTBEAT_MS = 15_000;
-/** A stream ends after this time; the browser opens the next one by itself, and whether it may is looked at again. */
-const LONGEST_MS = 15 * 60_000;
+/**
+ * Whether the client may still listen is looked at this often, and a line is written, so that no proxy in between takes
+ * the stream for dead.
+ */
+const LOOK_EVERY_MS = 10_000;
 const RECONNECT_MS = 2_000;
 /** A client that is this far behind is cut off; it comes back and asks for what it missed. */
 const MOST_BUFFERED_BYTES = 1 << 20;
@@ -32,19 +33,21 @@ export class EventStream {
     this.response.write(`id: ${Date.now()}\nevent: job\ndata: ${JSON.stringify(job)}\n\n`);
   }
 
-  /** Lasts until the client leaves, the server stops or the stream is old. */
-  async last(closing: AbortSignal): Promise<void> {
+  /** Lasts until the client leaves, may listen no longer, or the server stops. */
+  async last(closing: AbortSignal, mayListen: () => Promise<boolean>): Promise<void> {
     const { response } = this;
-    const heartbeat = setInterval(() => response.write(":\n\n"), HEARTBEAT_MS);
-    const old = setTimeout(() => response.end(), LONGEST_MS);
     const end = (): void => void response.end();
+    const look = async (): Promise<void> => {
+      if (await mayListen()) response.write(":\n\n");
+      else end();
+    };
+    const looking = setInterval(() => void look().catch(end), LOOK_EVERY_MS);
     closing.addEventListener("abort", end);
     if (closing.aborted) end();
     try {
       await new Promise<void>((resolve) => (response.closed ? resolve() : response.once("close", resolve)));
     } finally {
-      clearInterval(heartbeat);
-      clearTimeout(old);
+      clearInterval(looking);
       closing.removeEventListener("abort", end);
     }
   }

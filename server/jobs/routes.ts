@@ -1,4 +1,5 @@
 import { Router } from "express";
+import { holds } from "#server/auth/service.ts";
 import { mount } from "#server/http/mount.ts";
 import { EventStream } from "#server/jobs/event-stream.ts";
 import * as service from "#server/jobs/service.ts";
@@ -10,7 +11,7 @@ const LOOK_BACK_MS = 10_000;
 /** Changes that were being written when the client last heard something. */
 const OVERLAP_MS = 2_000;
 
-export function jobRoutes({ db, closing, workshop }: Pick<Parts, "db" | "closing" | "workshop">): Router {
+export function jobRoutes({ db, env, closing, workshop }: Pick<Parts, "db" | "env" | "closing" | "workshop">): Router {
   const router = Router();
   mount(router, getJob, ({ actor, params }) => service.get(db, workshop, actor.teamId, params.id));
   mount(router, cancelJob, ({ actor, params }) => service.cancel(db, workshop, actor.teamId, params.id));
@@ -21,7 +22,7 @@ export function jobRoutes({ db, closing, workshop }: Pick<Parts, "db" | "closing
     try {
       // Listening has begun already, so nothing falls between; a job told twice does no harm.
       for (const job of await service.recent(db, workshop, actor.teamId, since)) stream.job(job);
-      await stream.last(closing);
+      await stream.last(closing, () => holds(db, actor.sessionId, env));
     } finally {
       stop();
     }

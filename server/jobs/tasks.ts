@@ -22,7 +22,6 @@ export interface TuneTask {
   machine: Machine;
   profile: Profile;
   polymer?: Polymer;
-  versions: { machine: number; profile: number };
   status: "trial-only" | "approved";
 }
 

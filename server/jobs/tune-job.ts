@@ -24,8 +24,8 @@ import { Rewriter } from "#shared/rewrite/rewriter.ts";
 export async function tuneJob(task: TuneTask, context: JobContext): Promise<TuneResult> {
   const { storage } = context;
   const reading = (await keptReading(task, context)) ?? (await readStored(task.file, task.machine, context));
-  const { machine, profile, polymer, versions, status } = task;
-  const documents = { machine, profile, polymer, versions, status };
+  const { machine, profile, polymer, status } = task;
+  const documents = { machine, profile, polymer, status };
   const tuning = prepareTuning({ reading, ...documents, digest: documentDigest, engine: version });
   const finder = new PlaceFinder(tuning.edits, layerPlaces(reading));
   const tuned = await storage.stage(rewritten(task, reading, tuning, finder, context), context.owner);
@@ -85,7 +85,7 @@ async function proveStaged(
   finder: PlaceFinder,
   { storage, signal, progress }: JobContext,
 ): Promise<ProofDocument> {
-  const { machine, profile, status, versions } = task;
+  const { machine, profile, polymer, status } = task;
   const input = new Hashed(await storage.open(task.file.sha256), (_, bytes) => {
     signal.throwIfAborted();
     progress({ bytes: task.file.bytes + bytes });
@@ -97,10 +97,11 @@ async function proveStaged(
     reading,
     machine,
     profile,
+    polymer,
     digest: documentDigest,
     hashes: () => ({ input: input.digest(), output: output.digest() }),
     engine: version,
-    expected: { engine: version, status, versions },
+    expected: { engine: version, status },
   });
 }
 

@@ -1,3 +1,5 @@
+import { readlinkSync } from "node:fs";
+import { setPriority } from "node:os";
 import { parentPort, workerData } from "node:worker_threads";
 import type { JobContext } from "#server/jobs/job-context.ts";
 import { readJob } from "#server/jobs/read-job.ts";
@@ -7,6 +9,8 @@ import { warmUp } from "#server/jobs/warm-up.ts";
 import { LocalStorage } from "#server/storage/local-storage.ts";
 import { Refusal } from "#shared/refusal.ts";
 
+/** Niceness of this thread: requests go before jobs where both want a processor. */
+const NICENESS = 5;
 /** Progress is told at most this often. */
 const TELL_EVERY_MS = 100;
 
@@ -20,8 +24,19 @@ port.on("message", (message: ToWorker) => {
   if (message.say === "cancel") running?.abort();
   else void run(message.job, message.task);
 });
+standBack();
 warmUp();
 say({ say: "ready" });
+
+/** On Linux every thread has a priority of its own; elsewhere this thread stays like the others. */
+function standBack(): void {
+  try {
+    const [, , threadId] = readlinkSync("/proc/thread-self").split("/");
+    setPriority(Number(threadId), NICENESS);
+  } catch {
+    // There is no such file, or it is not allowed.
+  }
+}
 
 /** One job at a time; the server sends the next one only after this one's last word. */
 async function run(job: string, task: Task): Promise<void> {

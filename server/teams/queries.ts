@@ -11,8 +11,9 @@ export async function hasTeams(db: Db): Promise<boolean> {
   return (await db.select({ id: teams.id }).from(teams).limit(1)).length > 0;
 }
 
-export async function hasMember(db: Db, email: string): Promise<boolean> {
-  return (await db.select({ id: users.id }).from(users).where(eq(users.email, email))).length > 0;
+export async function findMember(db: Db, email: string): Promise<{ userId: string; teamId: string } | undefined> {
+  const [row] = await db.select({ userId: users.id, teamId: users.teamId }).from(users).where(eq(users.email, email));
+  return row;
 }
 
 const MEMBER = { id: users.id, email: users.email, name: users.name, role: users.role, createdAt: users.createdAt };

@@ -22,8 +22,8 @@ export function hasTeams(db: Db): Promise<boolean> {
 }
 
 /** @param email in lower case */
-export function hasMember(db: Db, email: string): Promise<boolean> {
-  return queries.hasMember(db, email);
+export function findMember(db: Db, email: string): Promise<{ userId: string; teamId: string } | undefined> {
+  return queries.findMember(db, email);
 }
 
 export async function listMembers(db: Db, teamId: string): Promise<Member[]> {

@@ -20,9 +20,13 @@ const PARTS = [
 const PROFILE = "Seal ring, stiff base and tough lip";
 const MEGABYTE = 2 ** 20;
 
-/** Gives a team that has the sample documents the sample toolpaths, as if they had been uploaded, and one tuning. */
+/**
+ * Gives a team that has the sample documents the sample toolpaths, as if they had been uploaded, and one tuning. What is
+ * there already is left as it is; the tuning comes last and can't be removed, so that with it nothing is left to do.
+ */
 export async function seedToolpaths(parts: Parts, operator: toolpaths.Uploader): Promise<void> {
   const { db, workshop } = parts;
+  if (await tunings.hasAny(db, operator.teamId)) return;
   let reading: Reading | undefined;
   for (const [fileName, machineName] of PARTS)
     reading = await seedToolpath(
@@ -44,6 +48,12 @@ async function seedToolpath(
   name: string,
   machine: Awaited<ReturnType<typeof machines.stored>>,
 ): Promise<Reading> {
+  const there = (await toolpaths.list(db, operator.teamId)).find((toolpath) => toolpath.name === name);
+  if (there)
+    return toolpaths.readAgain(db, workshop, operator, there.id, {
+      machineId: machine.id,
+      machineVersion: machine.number,
+    });
   const bytes = createReadStream(join(ROOT, "samples", name));
   const stream = toolpathStream(bytes, name, machine.document, env.MAX_UPLOAD_MB * MEGABYTE);
   const staged = await workshop.shelf.storage.stage(stream, "seed");

@@ -38,6 +38,10 @@ export function listTunings(db: Db, teamId: string): Promise<TuningRow[]> {
   return tuningsWithNames(db).where(eq(tunings.teamId, teamId)).orderBy(desc(tunings.createdAt));
 }
 
+export async function hasTunings(db: Db, teamId: string): Promise<boolean> {
+  return (await db.select({ id: tunings.id }).from(tunings).where(eq(tunings.teamId, teamId)).limit(1)).length > 0;
+}
+
 export async function findTuning(db: Db, teamId: string, id: string): Promise<TuningRow | undefined> {
   const [row] = await tuningsWithNames(db).where(and(eq(tunings.teamId, teamId), eq(tunings.id, id)));
   return row;

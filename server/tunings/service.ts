@@ -32,6 +32,10 @@ export async function list(db: Db, caller: Tuner): Promise<Tuning[]> {
   return rows.map((row) => tuningView(row, known.get(versionKey(row.reading)) === true));
 }
 
+export function hasAny(db: Db, teamId: string): Promise<boolean> {
+  return queries.hasTunings(db, teamId);
+}
+
 /** @throws AppError `not-found`, here and below also for what belongs to another team */
 export async function get(db: Db, caller: Tuner, id: string): Promise<Tuning> {
   const row = await findTuning(db, caller.teamId, id);

@@ -21,10 +21,9 @@ export const tuneKind: JobKind<"tune"> = {
       kind: "tune",
       file: { sha256: toolpath.sha256, bytes: toolpath.bytes },
       reading: reading.readingSha256,
-      machine: machine.document,
-      profile: profile.document,
+      machine: { ...machine.document, version: machine.number },
+      profile: { ...profile.document, version: profile.number },
       polymer: polymer?.document,
-      versions: { machine: machine.number, profile: profile.number },
       status: tuning.status,
     };
   },

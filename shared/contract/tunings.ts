@@ -72,16 +72,28 @@ export const getTuningProof = endpoint({
   reply: ProofDocument,
 });
 
-/** Both sides of one layer, from its write position to the next layer's. */
+/** Lines of both files that correspond. */
+export const DiffHunk = z.object({
+  original: LayerLines.omit({ truncated: true }),
+  tuned: LayerLines.omit({ truncated: true }),
+});
+export type DiffHunk = z.infer<typeof DiffHunk>;
+
+/** Both sides of one layer, as one hunk; of a layer that is too long for that, every change with some lines around it. */
+export const LayerDiff = z.object({
+  /** ascending; what lies between two of them is the same in both files but for line numbers */
+  hunks: z.array(DiffHunk),
+  /** `first-changes`: there are more than are sent at once */
+  shows: z.enum(["layer", "changes", "first-changes"]),
+});
+export type LayerDiff = z.infer<typeof LayerDiff>;
+
+/** From a layer's write position to the next layer's. */
 export const getLayerDiff = endpoint({
   method: "GET",
   path: "/api/tunings/:id/layers/:index/diff",
   allows: "read",
-  reply: z.object({
-    original: LayerLines.omit({ truncated: true }),
-    tuned: LayerLines.omit({ truncated: true }),
-    truncated: z.boolean(),
-  }),
+  reply: LayerDiff,
 });
 
 /** Indices of the layers in which a line was inserted or removed, ascending. */

@@ -3,7 +3,7 @@ import { explainIssues } from "#shared/formats/explain.ts";
 import { refuseProblems } from "#shared/formats/problems.ts";
 
 /** What a document is called in messages and error codes. */
-export type DocumentKind = "machine" | "profile" | "polymer" | "reading" | "plan" | "proof";
+export type DocumentKind = "machine" | "profile" | "polymer" | "reading" | "plan" | "proof" | "prediction";
 
 /**
  * Applies a document's schema.
@@ -18,6 +18,11 @@ export function parseDocument<Schema extends z.ZodType>(
   const result = schema.safeParse(json);
   if (result.success) return result.data;
   return refuseProblems(`bad-${kind}`, `The ${kind} document is not usable`, explainIssues(result.error.issues, json));
+}
+
+/** What a document says, without the number of its version: versions that say the same are equal in this. */
+export function contentOf<Document extends { version?: number }>({ version: _, ...content }: Document) {
+  return content;
 }
 
 /**

@@ -76,6 +76,9 @@ export const DutyAboveZero = positiveUpTo(1, FRACTION);
 /** Crystallinity, emissivity and the like, 0-1. */
 export const Share = numberWithin(0, 1, "Give it as a fraction, such as 0.35 for 35 %");
 
+/** Number of the version where a team keeps versions of a document, from 1. */
+export const Version = wholeWithin(1, 1_000_000_000, "Versions are numbered 1, 2, 3");
+
 /** SHA-256 in lower-case hexadecimal. */
 export const Sha256 = z.string().refine((digest) => /^[0-9a-f]{64}$/.test(digest), {
   error: "is no SHA-256 digest. Give 64 lower-case hexadecimal digits",

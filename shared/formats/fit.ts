@@ -2,11 +2,11 @@ import type { Channel, Machine } from "#shared/formats/machine.ts";
 import { pathText } from "#shared/formats/path-text.ts";
 import type { Polymer } from "#shared/formats/polymer.ts";
 import { type Problem, refuseProblems } from "#shared/formats/problems.ts";
-import type { Limits, Profile, Rule } from "#shared/formats/profile.ts";
+import type { Limits, Profile, Rule, Zone } from "#shared/formats/profile.ts";
 import { nearestSpelling } from "#shared/formats/spelling.ts";
 
 /** A problem with the identifier the refusal gets when it is the only kind of problem. */
-interface Misfit extends Problem {
+export interface Misfit extends Problem {
   code: string;
 }
 
@@ -17,23 +17,28 @@ interface PlacedRule {
   side: "cooling" | "heating";
 }
 
-/**
- * Checks that a profile can be carried out on a machine, with the polymer's card where one is given.
- *
- * @throws Refusal with one line for every problem. Its code is `profile-does-not-fit`, or, where all problems are of one
- * kind, that kind: `unknown-channel`, `wrong-kind`, `channel-not-driven`, `limits-too-wide`, `polymer-mismatch`,
- * `amorphous-out-of-reach`, `hold-not-available`
- */
-export function checkFit(machine: Machine, profile: Profile, polymer?: Polymer): void {
+/** Everything that keeps a profile from being carried out on a machine, with the polymer's card where one is given. */
+export function fitProblems(machine: Machine, profile: Profile, polymer?: Polymer): Misfit[] {
   const rules = placedRules(profile);
   const driven = new Set(rules.map(({ rule }) => rule.channel));
-  const misfits = [
+  return [
     ...rules.flatMap((placed) => ruleMisfits(placed, machine)),
     ...zoneMisfits(profile, driven),
     ...settingMisfits(profile, driven),
     ...limitMisfits(profile, machine, driven),
     ...(polymer === undefined ? [] : polymerMisfits(profile, polymer)),
   ];
+}
+
+/**
+ * Checks that a profile can be carried out on a machine, with the polymer's card where one is given.
+ *
+ * @throws Refusal with one line for every problem. Its code is `profile-does-not-fit`, or, where all problems are of one
+ * kind, that kind: `unknown-channel`, `wrong-kind`, `channel-not-driven`, `limits-too-wide`, `polymer-mismatch`,
+ * `amorphous-out-of-reach`, `semi-crystalline-out-of-reach`
+ */
+export function checkFit(machine: Machine, profile: Profile, polymer?: Polymer): void {
+  const misfits = fitProblems(machine, profile, polymer);
   if (misfits.length === 0) return;
   const sameCode = misfits.every(({ code }) => code === misfits[0].code);
   const headline = `The profile "${profile.name}" does not fit the machine "${machine.name}"`;
@@ -64,10 +69,6 @@ function ruleMisfits({ rule, path, side }: PlacedRule, machine: Machine): Misfit
   else if (channel.kind !== wanted) {
     const message = `"${channel.id}" is a ${channel.kind}, but ${side} needs a ${wanted}. Move the rule to ${side === "cooling" ? "heating" : "cooling"}, or name a ${wanted}`;
     report("wrong-kind", "channel", message);
-  }
-  if (rule.rule === "hold") {
-    const message = `"hold" is not available: this version does not compute duties from the target. Use "fixed" or "curve"`;
-    report("hold-not-available", "rule", message);
   }
   return misfits;
 }
@@ -160,11 +161,24 @@ function polymerMisfits(profile: Profile, polymer: Polymer): Misfit[] {
     misfits.push({ code: "polymer-mismatch", path: "polymer", message });
   }
   profile.zones.forEach((zone, z) => {
-    if (zone.target !== "amorphous" || polymer.amorphousReachable) return;
-    const message = `"amorphous" is out of reach for ${fullName}, which crystallises too fast. Use "semi-crystalline" or "none"`;
-    misfits.push({ code: "amorphous-out-of-reach", path: pathText(["zones", z, "target"]), message });
+    const { states, field } = statesAskedFor(zone);
+    const report = (code: string, message: string) =>
+      misfits.push({ code, path: pathText(["zones", z, field]), message });
+    if (states.includes("amorphous") && !polymer.amorphousReachable) {
+      const why = `"amorphous" is out of reach for ${fullName}, which crystallises too fast`;
+      report("amorphous-out-of-reach", `${why}. Use "semi-crystalline" or "none"`);
+    }
+    if (states.includes("semi-crystalline") && polymer.crystallinity === null) {
+      const why = `"semi-crystalline" is out of reach for ${fullName}, of which nothing crystallises`;
+      report("semi-crystalline-out-of-reach", `${why}. Use "amorphous" or "none"`);
+    }
   });
   return misfits;
+}
+
+function statesAskedFor({ target, pattern }: Zone): { states: string[]; field: "target" | "pattern" } {
+  if (pattern === undefined) return { states: [target], field: "target" };
+  return { states: ["amorphous", "semi-crystalline"], field: "pattern" };
 }
 
 /** Names of polymers are typed by hand: case and runs of spaces do not distinguish them. */

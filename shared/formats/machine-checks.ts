@@ -1,5 +1,5 @@
 import type { z } from "zod";
-import type { Channel, Drive, Pause } from "#shared/formats/machine.ts";
+import type { Channel, Drive, Machine, Pause } from "#shared/formats/machine.ts";
 
 /**
  * One output of the machine as a key: channels with equal keys would fight over it. Names are compared without case,
@@ -70,4 +70,17 @@ export function checkPauses(pauses: readonly Pause[], context: z.core.$Refinemen
       context.addIssue({ code: "custom", path: [i, "command"], message, input: pauses });
     } else seen.set(command.toUpperCase(), i);
   });
+}
+
+/** The surroundings speak of channels that are there: fans that cool, heaters that heat. */
+export function checkThermal({ channels, thermal }: Machine, context: z.core.$RefinementCtx): void {
+  const check = (ids: readonly string[], kind: Channel["kind"], path: readonly string[]) => {
+    for (const id of ids) {
+      if (channels.some((channel) => channel.id === id && channel.kind === kind)) continue;
+      const message = `names no ${kind} of this machine. Use the id of one of its channels`;
+      context.addIssue({ code: "custom", path: ["thermal", ...path, id], message, input: thermal });
+    }
+  };
+  check(Object.keys(thermal?.convection?.fans ?? {}), "fan", ["convection", "fans"]);
+  check(Object.keys(thermal?.lamps ?? {}), "heater", ["lamps"]);
 }

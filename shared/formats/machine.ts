@@ -9,9 +9,11 @@ import {
   Label,
   numberWithin,
   positiveUpTo,
+  Version,
   wholeWithin,
 } from "#shared/formats/fields.ts";
-import { checkChannel, checkChannels, checkPauses } from "#shared/formats/machine-checks.ts";
+import { checkChannel, checkChannels, checkPauses, checkThermal } from "#shared/formats/machine-checks.ts";
+import { Thermal } from "#shared/formats/thermal.ts";
 
 /** Bounds that catch a slipped decimal point or unit, not the limits of any one machine. */
 const SpeedMmS = positiveUpTo(5_000);
@@ -131,10 +133,14 @@ export type Pause = z.infer<typeof Pause>;
 export const Machine = fields({
   format: z.literal("quenchline.machine/1"),
   name: Label,
+  /** where a team keeps versions; it tells where the document comes from and is no part of what it says */
+  version: Version.optional(),
   motion: Motion,
   channels: z.array(Channel).max(64).superRefine(checkChannels),
   pauses: z.array(Pause).max(64).superRefine(checkPauses).default([]),
-});
+  /** what surrounds the part; whatever is left out, the prediction takes from stated typical ranges */
+  thermal: Thermal.optional(),
+}).superRefine(checkThermal);
 export type Machine = z.infer<typeof Machine>;
 
 /**

@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { parseDocument, writeDocument } from "#shared/formats/document.ts";
-import { fields, Label, numberWithin, positiveUpTo, Share } from "#shared/formats/fields.ts";
+import { fields, Label, numberWithin, positiveUpTo, Share, Version } from "#shared/formats/fields.ts";
 import { checkPolymer } from "#shared/formats/polymer-checks.ts";
 
 export const Confidence = z.enum(["published", "handbook", "unverified", "own measurement"]);
@@ -18,6 +18,7 @@ const sourced = <Value extends z.ZodType<number>>(value: Value) =>
 const TempC = sourced(numberWithin(-100, 600));
 const DifferenceC = sourced(numberWithin(0, 300));
 const SourcedShare = sourced(Share);
+const HalfTime = z.tuple([numberWithin(-100, 600), positiveUpTo(1e6)], { error: "must be a pair [°C, s]" });
 
 export const Sourced = sourced(z.number());
 export type Sourced = z.infer<typeof Sourced>;
@@ -29,14 +30,17 @@ const Variant = z.union([z.literal(""), Label], { error: "must be a short plain 
 export const Polymer = fields({
   format: z.literal("quenchline.polymer/1"),
   name: Label,
+  /** where a team keeps versions; it tells where the document comes from and is no part of what it says */
+  version: Version.optional(),
   /** grade, filler or colour; left out: the neat polymer */
   variant: Variant.default(""),
   tgC: TempC,
-  tmC: TempC,
+  /** left out only where nothing of it crystallises */
+  tmC: TempC.optional(),
   /** a layer keeps its shape below this */
   solidBelowC: TempC,
-  /** or once this much of its attainable crystallinity is reached, 0-1 */
-  solidAtRelativeCrystallinity: SourcedShare,
+  /** or once this much of its attainable crystallinity is reached, 0-1; left out: crystals alone hold nothing */
+  solidAtRelativeCrystallinity: SourcedShare.optional(),
   /** layers weld when the contact temperature passes this */
   weldAboveC: TempC,
   /** false: the polymer crystallises too fast to be printed amorphous */
@@ -52,6 +56,7 @@ export const Polymer = fields({
   heatCapacityJKgK: sourced(numberWithin(100, 10_000)),
   emissivity: SourcedShare,
   lampAbsorptivity: fields({ low: SourcedShare, typical: SourcedShare, high: SourcedShare }),
+  /** null: an amorphous polymer */
   crystallinity: fields({
     heatOfFusionJG: sourced(numberWithin(1, 1_000)),
     /** absolute crystallinity reached in the end, 0-1 */
@@ -62,7 +67,13 @@ export const Polymer = fields({
     fastestAtC: TempC,
     /** half the width of the bell at half its height, K */
     halfWidthC: sourced(positiveUpTo(300)),
-  }),
+    /** the team's own isothermal half-times, [°C, s]: where given, the bell is fitted to them */
+    halfTimes: fields({
+      points: z.array(HalfTime).min(3, { error: "has fewer than 3 points. A bell has three unknowns" }).max(1_000),
+      source: Source,
+      confidence: Confidence,
+    }).optional(),
+  }).nullable(),
 }).superRefine(checkPolymer);
 export type Polymer = z.infer<typeof Polymer>;
 

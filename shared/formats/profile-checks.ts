@@ -19,6 +19,7 @@ export function checkCurve(points: readonly CurvePoint[], context: Context): voi
 /** What must hold within one zone. */
 export function checkZone(zone: Zone, context: Context): void {
   checkBorders(zone, context);
+  checkTarget(zone, context);
   const seen = new Map<string, string>();
   for (const side of ["cooling", "heating"] as const) {
     zone[side].forEach(({ channel }, i) => {
@@ -30,6 +31,29 @@ export function checkZone(zone: Zone, context: Context): void {
       } else seen.set(channel, place);
     });
   }
+}
+
+/** What is held needs a state to be held on, and a pattern is one that only a rule that holds can follow. */
+function checkTarget({ target, pattern, cooling, heating }: Zone, context: Context): void {
+  const report = (path: PropertyKey[], message: string) =>
+    context.addIssue({ code: "custom", path, message, input: target });
+  const holds = [...cooling, ...heating].some(({ rule }) => rule === "hold");
+  if (pattern === undefined) {
+    if (holds && target === "none")
+      report(
+        ["target"],
+        'is "none", but a rule of this zone is "hold". Say which state is to be held, or use "fixed" or "curve"',
+      );
+    return;
+  }
+  if (target !== "none")
+    report(
+      ["target"],
+      `is "${target}", but the zone has a pattern, which says the states. Give "none", or take the pattern out`,
+    );
+  if (!holds) report(["pattern"], 'needs a rule that is solved from it. Use "hold" for heating, cooling or both');
+  if (pattern.kind === "graded" && pattern.from === pattern.to)
+    report(["pattern", "to"], `is "${pattern.to}" like from, so nothing changes. Give the other state, or use target`);
 }
 
 function checkBorders({ from, to, unit }: Zone, context: Context): void {

@@ -10,6 +10,7 @@ import {
   perChannel,
   positiveUpTo,
   Share,
+  Version,
   wholeWithin,
 } from "#shared/formats/fields.ts";
 import { checkCurve, checkLimits, checkMargins, checkZone, checkZones } from "#shared/formats/profile-checks.ts";
@@ -42,6 +43,23 @@ const Rules = z
   .preprocess((value) => (Array.isArray(value) ? value : [value]), z.array(Rule).max(64))
   .default(() => []);
 
+const State = z.enum(["amorphous", "semi-crystalline"]);
+
+/**
+ * Two states within one zone, reached by rules that hold: so many layers of the one, so many of the other, over and over;
+ * or from the one at the zone's lowest layer to the other at its highest.
+ */
+export const Pattern = z.discriminatedUnion("kind", [
+  fields({
+    kind: z.literal("alternating"),
+    amorphousLayers: wholeWithin(1, 10_000),
+    semiCrystallineLayers: wholeWithin(1, 10_000),
+    first: State.default("amorphous"),
+  }),
+  fields({ kind: z.literal("graded"), from: State, to: State }),
+]);
+export type Pattern = z.infer<typeof Pattern>;
+
 /**
  * A band of the part's height. It covers (from, to] of a layer's top, so a layer whose top lies exactly on a border
  * belongs to the lower zone. With `unit: "layer"` the same holds for layer numbers: `from: 10` begins with layer 11.
@@ -55,6 +73,8 @@ export const Zone = fields({
   to: numberWithin(0, 1e6).optional(),
   unit: z.enum(["mm", "layer", "fraction"]),
   target: z.enum(["amorphous", "semi-crystalline", "none"]),
+  /** states within the zone; its `target` is then "none" */
+  pattern: Pattern.optional(),
   /** height above `from` over which duties run from the lower zone's value to this zone's, mm */
   rampMm: numberWithin(0, 10_000).default(0),
   cooling: Rules,
@@ -97,6 +117,8 @@ export type Margins = z.infer<typeof Margins>;
 export const Profile = fields({
   format: z.literal("quenchline.profile/1"),
   name: Label,
+  /** where a team keeps versions; it tells where the document comes from and is no part of what it says */
+  version: Version.optional(),
   /** name of the polymer card it was written for */
   polymer: Label,
   /** the first `count` layers of each object's bed have their own duties */
@@ -129,3 +151,7 @@ export function parseProfile(json: unknown): Profile {
 export function writeProfile(profile: Profile): string {
   return writeDocument(Profile, profile);
 }
+
+/** Whether a rule of the profile is solved from its zone's target, which takes a polymer card. */
+export const holds = ({ zones }: Profile): boolean =>
+  zones.some(({ cooling, heating }) => [...cooling, ...heating].some(({ rule }) => rule === "hold"));

@@ -31,6 +31,7 @@ export function finishReading({ machine, builder, outputs, findings, provenance,
   fillDutySeen(layers, outputs.controls, machine);
   crossCheck(builder, layers, findings);
   noteControls(outputs, machine, layers, findings);
+  noteForeign(outputs, machine, window.start.offset, window.end.offset, findings);
   if (builder.planner.forcedStops > 0)
     findings.add(
       "window-full",
@@ -138,14 +139,48 @@ function noteControls({ controls }: OutputLines, machine: Machine, layers: reado
       (line) => line.channel === index && line.layer >= 1 && line.layer <= layers.length && !line.ours,
     );
     if (inside.length === 0) continue;
-    const what = channel.kind === "heater" ? "the heater's output" : "the fan";
+    const { id, kind } = channel;
+    const highest = inside.reduce((most, { duty }) => Math.max(most, duty || 0), 0);
+    const lines = inside.length === 1 ? "1 line" : `${inside.length} lines`;
+    const what = kind === "heater" ? "the heater" : "the fan";
+    // A file that lights a heater by itself was made for other outputs, or by someone who does this job by hand.
     findings.add(
       "controls-inside",
-      "info",
-      `${inside.length} lines between the first and the last layer already set ${channel.id} (${what})`,
-      {
-        line: inside[0].line,
-      },
+      kind === "heater" && highest > 0 ? "warning" : "info",
+      `${lines} between the first and the last layer already ${inside.length === 1 ? "sets" : "set"} ${id} (${what}), to ${highest.toFixed(2)} at most`,
+      { line: inside[0].line },
     );
   }
+}
+
+/** The command that sets an output, as files write it. */
+function commandOf(output: string): string {
+  const [, kind, name] = /^(fan|pin|named fan|named pin) (.*)$/.exec(output)!;
+  if (kind === "named fan") return `SET_FAN_SPEED FAN=${name}`;
+  if (kind === "named pin") return `SET_PIN PIN=${name}`;
+  if (kind === "pin") return `M42 P${name}`;
+  return name === "0" ? "M106" : `M106 P${name}`;
+}
+
+/** Commands that stay in the tuned file because the machine document knows nothing of their output. */
+function noteForeign(
+  { foreign, use }: OutputLines,
+  machine: Machine,
+  start: number,
+  end: number,
+  findings: Findings,
+): void {
+  const outputs = [...foreign].flatMap(([output, lines]) => {
+    const inside = lines.filter(({ offset }) => offset >= start && offset < end);
+    return inside.length === 0 ? [] : [{ command: commandOf(output), count: inside.length, line: inside[0].line }];
+  });
+  if (outputs.length === 0) return;
+  use.foreign = outputs;
+  const list = outputs.map(({ command, count }) => `${command} (${count})`).join(", ");
+  findings.add(
+    "no-channel",
+    "warning",
+    `the file sets outputs that ${machine.name} has no channel for, and such lines stay as they are: ${list}`,
+    { line: outputs[0].line },
+  );
 }

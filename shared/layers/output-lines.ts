@@ -19,6 +19,9 @@ import { Refusal } from "#shared/refusal.ts";
 const KNOWN_PAUSES = ["M0", "M1", "M25", "M226", "M600", "M601", "M125", "PAUSE", "@PAUSE"];
 /** More fan and heater lines than this is no sliced part. */
 const MAX_CONTROLS = 1_000_000;
+/** Outputs without a channel, and lines of each, that are kept; a damaged file may name any number. */
+const MAX_FOREIGN = 32;
+const MAX_FOREIGN_LINES = 10_000;
 /** Named commands of the firmware family that drives its part fan on every M106, whatever its P says (PLANNERS, A 8). */
 const INDEX_BLIND =
   /^(SET_(FAN_SPEED|PIN|VELOCITY_LIMIT|PRESSURE_ADVANCE|GCODE_OFFSET|HEATER_TEMPERATURE)|EXCLUDE_OBJECT\w*|TEMPERATURE_WAIT|BED_MESH_\w+|(SAVE|RESTORE)_GCODE_STATE)$/;
@@ -33,6 +36,8 @@ export class OutputLines {
   readonly controls: ControlLine[] = [];
   readonly pauses: PauseLine[] = [];
   readonly use: OutputUse = {};
+  /** lines for outputs that no channel drives, by the output's name */
+  readonly foreign = new Map<string, { offset: number; line: number }[]>();
 
   private readonly channels: readonly Channel[];
   private readonly byOutput: Map<string, number>;
@@ -100,6 +105,7 @@ export class OutputLines {
     const index = this.byOutput.get(command.output);
     if (index === undefined) {
       if (ours) this.use.strayOwnLine ??= this.builder.scan.line;
+      else this.noteForeign(command.output);
       return undefined;
     }
     if (this.controls.length >= MAX_CONTROLS)
@@ -125,6 +131,12 @@ export class OutputLines {
     };
     this.controls.push(line);
     return line;
+  }
+
+  private noteForeign(output: string): void {
+    const lines = this.foreign.get(output) ?? [];
+    if (lines.length === 0 && this.foreign.size < MAX_FOREIGN) this.foreign.set(output, lines);
+    if (lines.length < MAX_FOREIGN_LINES) lines.push({ offset: this.builder.offset(), line: this.builder.scan.line });
   }
 
   private checkScale({ id, drive }: Channel, value: number): void {

@@ -156,6 +156,8 @@ export interface OutputUse {
   strayOwnLine?: number;
   /** the first line with a command for an output that firmware families read in different ways */
   unclear?: { code: string; line: number };
+  /** outputs that the file sets between first and last layer and the machine has no channel for, by their command */
+  foreign?: { command: string; count: number; line: number }[];
 }
 
 export interface PauseLine {

@@ -42,10 +42,10 @@ export function decideDuty(
 
 /** The zone's rule with its ramp, or the duty of the bed layers, which no zone ramp touches. */
 function ruledDuty(channel: ReadyChannel, zones: readonly ReadyZone[], placed: PlacedLayer, reasons: Reasons): number {
-  const { layer, zone, heightUm, rank } = placed;
+  const { zone, heightUm, rank } = placed;
   const rule = channel.rules[zone];
-  const own = ruleDuty(rule, layer, heightUm);
-  reasons.add(ruleReason(rule, layer, heightUm, own));
+  const own = ruleDuty(rule, placed, heightUm);
+  reasons.add(ruleReason(rule, placed, own));
   if (channel.bedDuty !== undefined && rank <= channel.bedCount) {
     reasons.add(`bed layer ${rank} ${channel.text.bed}`);
     return channel.bedDuty;

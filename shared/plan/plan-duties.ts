@@ -1,13 +1,12 @@
 import { checkFit } from "#shared/formats/fit.ts";
 import type { Machine } from "#shared/formats/machine.ts";
-import type { Profile } from "#shared/formats/profile.ts";
-import { ChannelAdvice } from "#shared/plan/channel-advice.ts";
-import { decideDuty } from "#shared/plan/decide-duty.ts";
-import { layerPlacer } from "#shared/plan/layer-placer.ts";
-import type { Plan, PlanLayer, PlannedLayer } from "#shared/plan/plan.ts";
-import { readyChannels } from "#shared/plan/ready-channel.ts";
-import { Reasons } from "#shared/plan/reasons.ts";
-import { readyZones } from "#shared/plan/zone-ramp.ts";
+import type { Polymer } from "#shared/formats/polymer.ts";
+import { holds, type Profile } from "#shared/formats/profile.ts";
+import { planHold } from "#shared/plan/hold/plan-hold.ts";
+import { layDuties } from "#shared/plan/lay-duties.ts";
+import { materialAdvice } from "#shared/plan/material-advice.ts";
+import type { Plan, PlanLayer } from "#shared/plan/plan.ts";
+import { Refusal } from "#shared/refusal.ts";
 
 /** What a plan is made from. */
 export interface PlanInput {
@@ -15,6 +14,8 @@ export interface PlanInput {
   layers: readonly PlanLayer[];
   machine: Machine;
   profile: Profile;
+  /** the card of what is printed; a profile with a rule that holds needs it */
+  polymer?: Polymer;
 }
 
 /**
@@ -27,34 +28,27 @@ export interface PlanInput {
  * time than there is, advice says so.
  *
  * @throws Refusal `zone-missing` for a layer outside all zones, `limits-conflict` where machine and profile leave a
- * channel no duty, and those of `checkFit` where the profile does not fit the machine
+ * channel no duty, `polymer-missing` where a rule holds and no card is given, and those of `checkFit`
  */
-export function planDuties({ layers, machine, profile }: PlanInput): Plan {
-  checkFit(machine, profile);
-  const zones = readyZones(profile.zones);
-  const channels = readyChannels(machine, profile);
-  const advisers = channels.map((channel) => new ChannelAdvice(channel));
-  // Copies of an object that has its keys already are much cheaper than objects that get theirs one by one.
-  const noDuty: Record<string, number> = Object.fromEntries(channels.map(({ id }) => [id, 0]));
-  const noReason: Record<string, string[]> = Object.fromEntries(channels.map(({ id }) => [id, []]));
-  const reasons = new Reasons();
-  const placeAt = layerPlacer(layers, profile.zones);
-  const planned: PlannedLayer[] = [];
-  for (let position = 0; position < layers.length; position++) {
-    const placed = placeAt(position);
-    const duty = { ...noDuty };
-    const reason = { ...noReason };
-    for (let c = 0; c < channels.length; c++) {
-      const { id } = channels[c];
-      const before = position === 0 ? undefined : planned[position - 1].duty[id];
-      const decision = decideDuty(channels[c], zones, placed, before, reasons);
-      duty[id] = decision.duty;
-      reason[id] = decision.reasons;
-      advisers[c].noteLayer(placed, decision);
-    }
-    planned.push({ index: placed.layer.index, duty, reason });
-  }
-  const zoneNames = zones.map(({ name }) => name);
-  const advice = advisers.flatMap((adviser) => adviser.advice(zoneNames));
-  return { format: "quenchline.plan/1", layers: planned, advice: advice.sort((a, b) => a.layer - b.layer) };
+export function planDuties({ layers, machine, profile, polymer }: PlanInput): Plan {
+  checkFit(machine, profile, polymer);
+  const plan = planOf({ layers, machine, profile, polymer });
+  const advice = polymer ? materialAdvice(layers, polymer) : [];
+  return { ...plan, advice: [...advice, ...plan.advice].sort((a, b) => a.layer - b.layer) };
 }
+
+function planOf({ layers, machine, profile, polymer }: PlanInput): Plan {
+  if (!holds(profile)) return layDuties(layers, machine, profile, nothingHeld);
+  if (polymer === undefined)
+    throw new Refusal(
+      "polymer-missing",
+      `The profile "${profile.name}" holds layers on a state, which needs the card of ${profile.polymer}.`,
+      `Give the polymer's card as well.`,
+    );
+  return planHold({ layers, machine, profile, polymer });
+}
+
+/** A profile without a rule that holds never asks. */
+const nothingHeld = (channel: string): never => {
+  throw new Error(`nothing was solved for ${channel}`);
+};

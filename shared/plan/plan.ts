@@ -1,7 +1,8 @@
 import type { Layer } from "#shared/layers/reading.ts";
 
-/** What planning needs to know of a layer. */
-export type PlanLayer = Pick<Layer, "index" | "object" | "zMm" | "heightMm" | "timeS" | "depositedLengthMm">;
+/** What planning needs to know of a layer; the second part only where a rule holds, and what is left out is then assumed. */
+export type PlanLayer = Pick<Layer, "index" | "object" | "zMm" | "heightMm" | "timeS" | "depositedLengthMm"> &
+  Partial<Pick<Layer, "areaMm2" | "outlineMm" | "nozzleC" | "bedC" | "waits" | "duty">>;
 
 /** `quenchline.plan/1`: the duties of every layer, each with the steps that led to it. */
 export interface Plan {
@@ -24,7 +25,7 @@ export interface PlannedLayer {
 export interface Advice {
   /** index of the first layer concerned; the message names the range */
   layer: number;
-  code: AdviceCode | TuningAdviceCode;
+  code: AdviceCode | HoldAdviceCode | MaterialAdviceCode | TuningAdviceCode;
   message: string;
 }
 
@@ -40,5 +41,18 @@ export type AdviceCode =
   | "end-ramp-not-held"
   | "rate-too-slow";
 
+/** What a layer that is held does not reach. */
+export type HoldAdviceCode =
+  | "hold-too-warm"
+  | "hold-too-cold"
+  | "hold-not-solid"
+  | "hold-no-weld"
+  | "hold-crystalline"
+  | "hold-not-crystalline"
+  | "hold-elsewhere";
+
 /** What shows only when the plan is laid over the file. */
 export type TuningAdviceCode = "boost-left-out" | "raises-kept" | "output-shared";
+
+/** Set-points of the file that do not go with the polymer. */
+export type MaterialAdviceCode = "nozzle-below-melting" | "nozzle-unknown";

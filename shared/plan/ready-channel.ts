@@ -5,7 +5,7 @@ import { micrometres } from "#shared/plan/heights.ts";
 import { type DutyLimits, effectiveLimits } from "#shared/plan/limits.ts";
 import { givenText } from "#shared/plan/quantity-text.ts";
 import { reasonTable } from "#shared/plan/reasons.ts";
-import { type ReadyRule, readyRule } from "#shared/plan/rules.ts";
+import { type Held, type ReadyRule, readyRule } from "#shared/plan/rules.ts";
 import { Refusal } from "#shared/refusal.ts";
 import { dutySteps, roundDutyInward } from "#shared/units/duty.ts";
 
@@ -37,13 +37,13 @@ export interface ReadyChannel {
  * Makes all channels ready that the profile drives.
  *
  * @param profile fits the machine
- * @throws Refusal `limits-conflict` or `hold-not-available`
+ * @throws Refusal `limits-conflict`
  */
-export function readyChannels(machine: Machine, profile: Profile): ReadyChannel[] {
-  return drivenChannels(machine, profile).map((channel) => readyChannel(channel, profile));
+export function readyChannels(machine: Machine, profile: Profile, held: Held): ReadyChannel[] {
+  return drivenChannels(machine, profile).map((channel) => readyChannel(channel, profile, held));
 }
 
-function readyChannel(channel: Channel, profile: Profile): ReadyChannel {
+function readyChannel(channel: Channel, profile: Profile, held: Held): ReadyChannel {
   const limits = effectiveLimits(channel, profile);
   const steps = dutySteps(channel.drive);
   const bedDuty = profile.bedLayers.duty[channel.id];
@@ -51,7 +51,7 @@ function readyChannel(channel: Channel, profile: Profile): ReadyChannel {
     id: channel.id,
     kind: channel.kind,
     idleDuty: channel.idleDuty,
-    rules: profile.zones.map((zone, z) => ruleInZone(zone, z, channel)),
+    rules: profile.zones.map((zone, z) => ruleInZone(zone, z, channel, held)),
     bedDuty,
     bedCount: bedDuty === undefined ? 0 : profile.bedLayers.count,
     limits,
@@ -68,10 +68,10 @@ function readyChannel(channel: Channel, profile: Profile): ReadyChannel {
   };
 }
 
-function ruleInZone(zone: Zone, z: number, channel: Channel): ReadyRule {
+function ruleInZone(zone: Zone, z: number, channel: Channel, held: Held): ReadyRule {
   const side = channel.kind === "fan" ? "cooling" : "heating";
   const rule = zone[side].find((candidate) => candidate.channel === channel.id);
-  if (rule !== undefined) return readyRule(zone, rule, `zones[${z}].${side}`);
+  if (rule !== undefined) return readyRule(zone, z, rule, held);
   throw new Refusal(
     "channel-not-driven",
     `Zone "${zone.name}" has no rule for ${channel.id}, which other zones drive.`,

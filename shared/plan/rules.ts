@@ -1,10 +1,22 @@
 import type { CurveOver, Rule, Zone } from "#shared/formats/profile.ts";
+import type { PlacedLayer } from "#shared/plan/layer-placer.ts";
 import type { PlanLayer } from "#shared/plan/plan.ts";
 import { dutyText, givenText, heightText, tenthsText } from "#shared/plan/quantity-text.ts";
-import { Refusal } from "#shared/refusal.ts";
 
 /** A zone's rule for one channel, made ready to be asked thousands of times. */
-export type ReadyRule = FixedRule | CurveRule;
+export type ReadyRule = FixedRule | CurveRule | HeldRule;
+
+/** Duties that were solved from the target. */
+export interface HeldRule {
+  kind: "held";
+  /** by position in print order, 0-1; above the zone its highest layer's goes on */
+  duty: Float64Array;
+  /** what the duty was chosen for, e.g. `zone lip: held amorphous at 113 °C` */
+  reason: (position: number) => string;
+}
+
+/** Finds the solved duties of a channel in a zone. */
+export type Held = (channel: string, zone: number) => HeldRule;
 
 export interface FixedRule {
   kind: "fixed";
@@ -29,14 +41,13 @@ const OVER_TEXT = { "layer-time": "layer time", "deposited-length": "deposited l
 /**
  * Makes the rule of one channel in one zone ready.
  *
- * @param path place of the rule in the profile, for the refusal
- * @throws Refusal `hold-not-available` for a rule that is to be solved from the zone's target
+ * @param z index of the zone
  */
-export function readyRule(zone: Zone, rule: Rule, path: string): ReadyRule {
+export function readyRule(zone: Zone, z: number, rule: Rule, held: Held): ReadyRule {
   if (rule.rule === "fixed") {
     return { kind: "fixed", duty: rule.duty, reason: `zone ${zone.name}: fixed at ${givenText(rule.duty)}` };
   }
-  if (rule.rule === "hold") return refuseHold(zone, rule, path);
+  if (rule.rule === "hold") return held(rule.channel, z);
   return {
     kind: "curve",
     over: rule.over,
@@ -46,29 +57,23 @@ export function readyRule(zone: Zone, rule: Rule, path: string): ReadyRule {
   };
 }
 
-function refuseHold(zone: Zone, { channel }: Rule, path: string): never {
-  throw new Refusal(
-    "hold-not-available",
-    `Zone "${zone.name}" asks for ${channel} to be held on the zone's target, which needs the thermal model; this planner does not solve for duties.`,
-    `Give ${channel} a fixed duty or a curve in zone "${zone.name}".`,
-    { path },
-  );
-}
-
 /**
  * The rule's duty for a layer, before any ramp or limit.
  *
  * @param heightUm height at which a curve over height is read: the layer's top, or a zone's border, micrometres
  * @returns 0-1, always a number
  */
-export function ruleDuty(rule: ReadyRule, layer: PlanLayer, heightUm: number): number {
+export function ruleDuty(rule: ReadyRule, { layer, position }: PlacedLayer, heightUm: number): number {
   if (rule.kind === "fixed") return rule.duty;
+  if (rule.kind === "held") return rule.duty[position];
   return interpolate(rule.x, rule.duty, curveInput(rule.over, layer, heightUm));
 }
 
 /** Which rule gave which duty, e.g. `zone base: curve over layer time at 7.2 s → 0.42`. */
-export function ruleReason(rule: ReadyRule, layer: PlanLayer, heightUm: number, duty: number): string {
+export function ruleReason(rule: ReadyRule, placed: PlacedLayer, duty: number): string {
   if (rule.kind === "fixed") return rule.reason;
+  const { layer, position, heightUm } = placed;
+  if (rule.kind === "held") return `${rule.reason(position)} → ${dutyText(duty)}`;
   const { over, lead } = rule;
   const at = over === "height" ? heightText(heightUm) : tenthsText(curveInput(over, layer, heightUm));
   return lead + (at + (over === "layer-time" ? " s → " : " mm → ") + dutyText(duty));

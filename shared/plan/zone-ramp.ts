@@ -25,7 +25,7 @@ export function readyZones(zones: readonly Zone[]): ReadyZone[] {
  * Runs a duty from the lower zone's value at the border to this zone's own, linearly over the ramp's height.
  *
  * The lower zone's value is its rule asked for this very layer, but at the height of the border, so a curve over height
- * goes on where it ended. Where the lower zone's own ramp has not ended at the border, its value there is the ramped
+ * goes on where it ended, and so does what was held in the zone's highest layer. Where the lower zone's own ramp has not ended at the border, its value there is the ramped
  * one: however short a zone, no duty jumps at a ramped border.
  *
  * @param own this zone's value for the layer, 0-1
@@ -55,7 +55,7 @@ function dutyAt(
   zone: number,
   heightUm: number,
 ): number {
-  const own = ruleDuty(rules[zone], placed.layer, heightUm);
+  const own = ruleDuty(rules[zone], placed, heightUm);
   const share = rampShare(zones, placed, zone, heightUm);
   if (share === 1) return own;
   const border = dutyAt(rules, zones, placed, zone - 1, placed.zoneStartUm[zone]);

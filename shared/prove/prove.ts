@@ -1,5 +1,7 @@
+import { contentOf } from "#shared/formats/document.ts";
 import { type Machine, writeMachine } from "#shared/formats/machine.ts";
-import { type Profile, writeProfile } from "#shared/formats/profile.ts";
+import { type Polymer, writePolymer } from "#shared/formats/polymer.ts";
+import { holds, type Profile, writeProfile } from "#shared/formats/profile.ts";
 import type { Check, ProofDocument } from "#shared/formats/proof.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import type { Plan } from "#shared/plan/plan.ts";
@@ -34,6 +36,8 @@ export interface ProveInput {
   machine: Machine;
   /** with it, the tuned file is also held against the plan */
   profile?: Profile;
+  /** card that duties were solved with: a profile that holds is held against its plan only with it */
+  polymer?: Polymer;
   /** hex SHA-256 of a text */
   digest: (text: string) => string;
   /** size and SHA-256 of both files; asked for once both have been read to their ends */
@@ -52,16 +56,17 @@ export interface ProveInput {
  * A proof that fails says why; only unreadable input is an error.
  */
 export async function prove(input: ProveInput): Promise<ProofDocument> {
-  const { reading, machine, profile, digest } = input;
+  const { reading, machine, profile, polymer, digest } = input;
   const comparison = await compareStreams(input);
   const evidence = new Evidence(reading, machine, profile, comparison);
   const hashes = input.hashes();
   const documents: Documents = {
-    profile: profile ? { name: profile.name, sha256: digest(writeProfile(profile)) } : null,
-    machine: { name: machine.name, sha256: digest(writeMachine(machine)) },
+    profile: profile ? { name: profile.name, sha256: digest(writeProfile(contentOf(profile))) } : null,
+    machine: { name: machine.name, sha256: digest(writeMachine(contentOf(machine))) },
   };
+  const card = polymer && { name: polymer.name, sha256: digest(writePolymer(contentOf(polymer))) };
   const first = checkBytesKept(evidence, hashes.input);
-  const checks = [first, ...(comparison.difference ? [] : checksOf(evidence, documents, input))];
+  const checks = [first, ...(comparison.difference ? [] : checksOf(evidence, { ...documents, polymer: card }, input))];
   if (!comparison.difference) checks.push(checkMotion(evidence, checks));
   return {
     format: "quenchline.proof/1",
@@ -78,8 +83,12 @@ export async function prove(input: ProveInput): Promise<ProofDocument> {
 }
 
 /** Where the files part, nothing behind that place was looked at and no other check can be made. */
-function checksOf(evidence: Evidence, documents: Documents, { profile, digest, expected = {} }: ProveInput): Check[] {
-  const plan = profile && planAfresh(evidence, profile);
+function checksOf(
+  evidence: Evidence,
+  documents: Documents,
+  { profile, polymer, digest, expected = {} }: ProveInput,
+): Check[] {
+  const plan = profile && (polymer || !holds(profile)) ? planAfresh(evidence, profile, polymer) : undefined;
   return [
     checkReadersAgree(evidence),
     checkRemovedOnlyDriven(evidence),
@@ -100,9 +109,9 @@ function checksOf(evidence: Evidence, documents: Documents, { profile, digest, e
 }
 
 /** The plan, or why there is none. */
-function planAfresh({ reading, machine }: Evidence, profile: Profile): Plan | string {
+function planAfresh({ reading, machine }: Evidence, profile: Profile, polymer?: Polymer): Plan | string {
   try {
-    return planDuties({ layers: reading.layers, machine, profile });
+    return planDuties({ layers: reading.layers, machine, profile, polymer });
   } catch (error) {
     if (error instanceof Refusal) return `No plan can be made: ${error.message}`;
     throw error;

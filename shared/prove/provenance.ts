@@ -1,14 +1,15 @@
 import { z } from "zod";
-import { fields, Label, Sha256, wholeWithin } from "#shared/formats/fields.ts";
+import { fields, Label, Sha256, Version, wholeWithin } from "#shared/formats/fields.ts";
 import { PROVENANCE_PREFIX } from "#shared/gcode/own-lines.ts";
 
-const Named = fields({ name: Label, sha256: Sha256, version: wholeWithin(0, Number.MAX_SAFE_INTEGER).optional() });
+const Named = fields({ name: Label, sha256: Sha256, version: Version.optional() });
 
 /** What a tuned file says of itself, in its provenance line. */
 export const ProvenanceFacts = fields({
   v: z.literal(1),
   profile: Named,
   machine: Named,
+  polymer: Named.optional(),
   /** of the untuned file, kept when the file is tuned again */
   original: Sha256,
   engine: z.string(),
@@ -48,9 +49,21 @@ export function readProvenance(text: string): ProvenanceFacts | string {
 /** The one way in which these facts are written: their fields in order, no blanks, printable ASCII. */
 export const provenanceText = (facts: ProvenanceFacts): string => asciiJson(inOrder(facts));
 
-function inOrder({ profile, machine, ...rest }: ProvenanceFacts): object {
+function inOrder({ profile, machine, polymer, ...rest }: ProvenanceFacts): object {
   const { v, original, engine, status, channels, withinLayer, lines, seal } = rest;
-  return { v, profile, machine, original, engine, status, channels, withinLayer, lines, seal };
+  return {
+    v,
+    profile,
+    machine,
+    ...(polymer ? { polymer } : {}),
+    original,
+    engine,
+    status,
+    channels,
+    withinLayer,
+    lines,
+    seal,
+  };
 }
 
 function asciiJson(value: object): string {

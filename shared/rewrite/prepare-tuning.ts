@@ -1,7 +1,8 @@
+import { contentOf } from "#shared/formats/document.ts";
 import { checkFit } from "#shared/formats/fit.ts";
 import { type Machine, writeMachine } from "#shared/formats/machine.ts";
-import type { Polymer } from "#shared/formats/polymer.ts";
-import { type Profile, writeProfile } from "#shared/formats/profile.ts";
+import { type Polymer, writePolymer } from "#shared/formats/polymer.ts";
+import { holds, type Profile, writeProfile } from "#shared/formats/profile.ts";
 import { OWN_TAGS } from "#shared/gcode/own-lines.ts";
 import { writeDuty } from "#shared/gcode/write-command.ts";
 import type { ControlLine, Reading } from "#shared/layers/reading.ts";
@@ -32,8 +33,6 @@ export interface TuningInput {
   /** version of the engine, as it goes into the provenance line */
   engine: string;
   status: Provenance["status"];
-  /** versions of the documents where a team keeps them */
-  versions?: { profile?: number; machine?: number };
 }
 
 export interface Tuning {
@@ -53,13 +52,13 @@ export function prepareTuning({ reading, machine, profile, polymer, ...about }: 
   checkFit(machine, profile, polymer);
   const driven = drivenChannels(machine, profile);
   const documents = {
-    profile: named(profile.name, writeProfile(profile), about.digest, about.versions?.profile),
-    machine: named(machine.name, writeMachine(machine), about.digest, about.versions?.machine),
+    profile: named(profile, writeProfile(contentOf(profile)), about.digest),
+    machine: named(machine, writeMachine(contentOf(machine)), about.digest),
   };
   const original = untunedDigest(reading, driven, { ...documents, withinLayer: profile.withinLayer });
   const advice: Advice[] = [];
   refuseUnsafe(reading, machine, driven, advice);
-  const plan = planDuties({ layers: reading.layers, machine, profile });
+  const plan = planDuties({ layers: reading.layers, machine, profile, polymer });
   const channels = new Set(driven.map((channel) => machine.channels.indexOf(channel)));
   const removable = reading.controls.filter(
     (line) => line.does === "duty" && (line.ours || (channels.has(line.channel) && isInside(line))),
@@ -87,6 +86,8 @@ export function prepareTuning({ reading, machine, profile, polymer, ...about }: 
   const provenance: Provenance = {
     v: 1,
     ...documents,
+    // Only duties that were solved depend on the card.
+    ...(polymer && holds(profile) ? { polymer: named(polymer, writePolymer(contentOf(polymer)), about.digest) } : {}),
     original,
     engine: about.engine,
     status: about.status,
@@ -104,9 +105,9 @@ type Command = Write & { text: string };
 
 const isInside = ({ layer }: ControlLine): boolean => layer >= 1 && layer < Number.POSITIVE_INFINITY;
 
-const named = (name: string, document: string, digest: Digest, version: number | undefined): Named => ({
+const named = ({ name, version }: Pick<Named, "name" | "version">, content: string, digest: Digest): Named => ({
   name,
-  sha256: digest(document),
+  sha256: digest(content),
   ...(version === undefined ? {} : { version }),
 });
 

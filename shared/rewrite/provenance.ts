@@ -11,6 +11,8 @@ export interface Provenance {
   v: 1;
   profile: Named;
   machine: Named;
+  /** card that duties were solved with, where the profile has a rule that holds */
+  polymer?: Named;
   /** SHA-256 of the untuned file, kept when the file is tuned again */
   original: string;
   engine: string;
@@ -25,8 +27,9 @@ export interface Provenance {
 
 export interface Named {
   name: string;
+  /** of what the document says: its text without the version */
   sha256: string;
-  /** version of the document where a team keeps versions */
+  /** number that the document has for its version, if it has one */
   version?: number;
 }
 

@@ -13,6 +13,7 @@ export function refuseUnsafe(reading: Reading, machine: Machine, driven: readonl
   const ids = new Set(driven.map((channel) => machine.channels.indexOf(channel)));
   refuseUnclear(reading);
   refuseHiddenDuty(reading, machine, ids);
+  refuseFanElsewhere(reading, machine, driven);
   const heaters = driven.filter(({ kind }) => kind === "heater");
   for (const heater of heaters) {
     refuseSharedOutput(reading, heater, advice);
@@ -32,6 +33,22 @@ function refuseUnclear({ outputs: { unclear } }: Reading): void {
     `\`${unclear.code}\` is not one plain command, and firmware families disagree on which outputs it sets`,
     "Write each command on a line of its own, or take the line out, and tune again.",
     { line: unclear.line },
+  );
+}
+
+/**
+ * A plain fan command drives the part fan on every firmware family. Where the machine's fan is named otherwise, such a
+ * command may drive the same fan between our lines, and nobody could tell.
+ */
+function refuseFanElsewhere({ outputs }: Reading, machine: Machine, driven: readonly Channel[]): void {
+  const plain = outputs.foreign?.find(({ command }) => command === "M106");
+  const fan = driven.find(({ kind }) => kind === "fan");
+  if (!plain || !fan) return;
+  throw new Refusal(
+    "fan-elsewhere",
+    `the file sets a fan with ${plain.command}, for which ${machine.name} has no channel: it may be ${fan.id} itself, and would go on changing it between our lines`,
+    `Read the file for the machine that it was sliced for. Or say in the document of ${machine.name} what M106 drives: give ${fan.id} the drive "fan-index" 0, or add a channel for another fan.`,
+    { line: plain.line },
   );
 }
 

@@ -4,6 +4,8 @@ export const paths = {
   signIn: "/sign-in",
   toolpath: (id: string, readingId?: string) => `/toolpaths/${id}${readingId ? `?reading=${readingId}` : ""}`,
   tune: (readingId: string) => `/readings/${readingId}/tune`,
+  comparePlans: (readingId: string, first: { id: string; version: number }) =>
+    `/readings/${readingId}/compare?a=${first.id}&av=${first.version}`,
   tuning: (id: string, layer?: number) => `/tunings/${id}${layer ? `?layer=${layer}` : ""}`,
   members: "/members",
   documents: (plural: string) => `/${plural}`,

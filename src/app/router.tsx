@@ -45,6 +45,7 @@ export const routes: RouteObject[] = [
           { index: true, Component: Floor },
           later("toolpaths/:id", async () => (await import("#src/routes/toolpath.tsx")).ToolpathPage),
           later("readings/:id/tune", async () => (await import("#src/routes/tune.tsx")).TunePage),
+          later("readings/:id/compare", async () => (await import("#src/routes/compare-plans.tsx")).ComparePlansPage),
           later("tunings/:id", async () => (await import("#src/routes/tuning.tsx")).TuningPage),
           ...documentPages,
           later("machines/new", async () => (await import("#src/routes/machine-edit.tsx")).NewMachine),

@@ -1,7 +1,6 @@
 import type { z } from "zod";
 import { explainIssues } from "#shared/formats/explain.ts";
 import type { Problem } from "#shared/formats/problems.ts";
-import { Refusal } from "#shared/refusal.ts";
 
 /** What is wrong with a document, by place. */
 export class DocumentProblems {
@@ -28,36 +27,19 @@ export class DocumentProblems {
 }
 
 /**
- * What the schema finds wrong, and, where the schema is content, what a further check refuses.
- *
- * @param check throws a Refusal with one line for every problem, as checkFit does
+ * What the schema finds wrong, and, where the schema is content, what a further check does.
  */
 export function findProblems<Document>(
   schema: z.ZodType<Document>,
   draft: unknown,
-  check?: (document: Document) => void,
+  check: (document: Document) => readonly Problem[] = () => [],
 ): { problems: DocumentProblems; document: Document | undefined } {
   const result = schema.safeParse(draft);
   if (!result.success) {
     return { problems: new DocumentProblems(explainIssues(result.error.issues, draft)), document: undefined };
   }
-  try {
-    check?.(result.data);
-  } catch (error) {
-    if (!(error instanceof Refusal)) throw error;
-    return { problems: new DocumentProblems(refusalProblems(error)), document: undefined };
-  }
-  return { problems: new DocumentProblems([]), document: result.data };
-}
-
-/** A refusal names its problems line by line, `path: message`; one without lines is about its place. */
-function refusalProblems({ message, place }: Refusal): Problem[] {
-  const lines = message.split("\n").slice(1);
-  if (lines.length === 0) return [{ path: place.path ?? "", message }];
-  return lines.map((line) => {
-    const [, path, words] = /^(.*?): (.*)$/.exec(line) ?? ["", "", "", line];
-    return { path: path === "the document" ? "" : path, message: words || line };
-  });
+  const problems = check(result.data);
+  return { problems: new DocumentProblems(problems), document: problems.length === 0 ? result.data : undefined };
 }
 
 /** The only rule of a side is named with or without its index. */

@@ -7,11 +7,20 @@ export const STATE_NAMES: Record<TargetState, string> = {
   none: "No target",
 };
 
+/** The state a layer is expected to have: undecided where it is neither the one nor the other. */
+export type PredictedState = "amorphous" | "semi-crystalline" | "undecided";
+
+export const PREDICTED_NAMES: Record<PredictedState, string> = {
+  amorphous: "Amorphous",
+  "semi-crystalline": "Semi-crystalline",
+  undecided: "Undecided",
+};
+
 /**
  * CSS backgrounds for the states, the same stipple, lamellae and hatch as the layer log draws: what they say must not
  * rest on colour alone.
  */
-export const STATE_FILLS: Record<TargetState, { background: string; backgroundSize?: string }> = {
+export const STATE_FILLS: Record<TargetState | PredictedState, { background: string; backgroundSize?: string }> = {
   amorphous: {
     background:
       "radial-gradient(circle at 1.5px 1.5px, var(--amber-ink) 0.6px, transparent 0.9px), radial-gradient(circle at 5.5px 5.5px, var(--amber-ink) 0.6px, transparent 0.9px), color-mix(in srgb, var(--amber) 50%, transparent)",
@@ -20,6 +29,10 @@ export const STATE_FILLS: Record<TargetState, { background: string; backgroundSi
   "semi-crystalline": {
     background:
       "repeating-linear-gradient(to bottom, transparent 0 1px, color-mix(in srgb, var(--bone-edge) 55%, transparent) 1px 2px, transparent 2px 4px), var(--bone)",
+  },
+  undecided: {
+    background:
+      "repeating-linear-gradient(135deg, color-mix(in srgb, var(--amber) 55%, transparent) 0 2.83px, var(--bone) 2.83px 5.66px)",
   },
   none: {
     background:

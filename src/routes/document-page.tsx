@@ -73,7 +73,10 @@ function History<D extends { name: string }>({ kind, history, children }: Props<
               disabled={!version.data}
               onClick={() =>
                 version.data &&
-                saveFile(documentFileName(version.data.document.name), kind.write(version.data.document))
+                saveFile(
+                  documentFileName(version.data.document.name),
+                  kind.write(version.data.document, version.data.number),
+                )
               }
             >
               Export JSON

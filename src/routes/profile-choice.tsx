@@ -15,17 +15,14 @@ export interface Choice {
 
 /** The choice stands in the address. To begin with: what this toolpath was tuned with last. */
 export function useProfileChoice(reading: Reading): Choice {
-  const may = useMay();
   const [search, setSearch] = useSearchParams();
   const tunings = useQuery(tuningsQuery);
   const last = tunings.data?.find(({ toolpathId }) => toolpathId === reading.toolpathId);
   const profileId = search.get("profile") ?? last?.profileId ?? "";
-  const history = useQuery({ ...historyQuery(PROFILES, profileId), enabled: profileId !== "" });
-  const usable = (history.data?.versions ?? []).filter(({ approvedAt }) => may("edit") || approvedAt !== undefined);
-  const wanted = Number(search.get("version"));
+  const version = useVersionChoice(profileId, Number(search.get("version")));
   return {
     profileId,
-    version: usable.find(({ number }) => number === wanted)?.number ?? usable[0]?.number,
+    version,
     choose: (profile, version) => {
       const next = new URLSearchParams(search);
       next.set("profile", profile);
@@ -34,6 +31,14 @@ export function useProfileChoice(reading: Reading): Choice {
       setSearch(next, { replace: true, preventScrollReset: true });
     },
   };
+}
+
+/** The wanted version, or else the latest that this person may use; undefined until the versions are known. */
+export function useVersionChoice(profileId: string, wanted: number): number | undefined {
+  const may = useMay();
+  const history = useQuery({ ...historyQuery(PROFILES, profileId), enabled: profileId !== "" });
+  const usable = (history.data?.versions ?? []).filter(({ approvedAt }) => may("edit") || approvedAt !== undefined);
+  return usable.find(({ number }) => number === wanted)?.number ?? usable[0]?.number;
 }
 
 export function ProfileChoice({ profileId, version, choose }: Choice) {

@@ -5,6 +5,7 @@ import type { Machine } from "#shared/formats/machine.ts";
 import type { Polymer } from "#shared/formats/polymer.ts";
 import type { Profile } from "#shared/formats/profile.ts";
 import type { ReadingDocument } from "#shared/formats/reading.ts";
+import { paths } from "#src/app/paths.ts";
 import { useMay } from "#src/features/auth/session-context.tsx";
 import { historyQuery, MACHINES, PROFILES, type Version, versionQuery } from "#src/features/documents/kinds.ts";
 import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
@@ -12,22 +13,24 @@ import { adviceMarks, findingMarks } from "#src/features/layer-log/log-marks.ts"
 import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
 import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
 import { ProfileForm } from "#src/features/profiles/editor/profile-form.tsx";
-import { useLivePlan } from "#src/features/profiles/editor/use-live-plan.ts";
 import { useProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { ZoneBands } from "#src/features/profiles/editor/zone-bands.tsx";
 import { ProfileSheet } from "#src/features/profiles/profile-sheet.tsx";
 import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
 import { AdviceList } from "#src/features/tunings/advice-list.tsx";
+import { savePlanCsv } from "#src/features/tunings/plan-csv.ts";
 import { moment } from "#src/lib/format.ts";
-import { asProblem } from "#src/lib/problem.ts";
+import { documentFileName } from "#src/lib/save-file.ts";
 import { undoKeys } from "#src/lib/undo-keys.ts";
 import { useDraft } from "#src/lib/use-draft.ts";
 import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
 import { useWindowHeight } from "#src/lib/use-window-height.ts";
+import { usePlanned } from "#src/routes/use-planned.ts";
 import { usePolymerOf } from "#src/routes/use-polymers.ts";
 import { WriteTuned } from "#src/routes/write-tuned.tsx";
-import { Button } from "#src/ui/button.tsx";
-import { Notice, ProblemNotice } from "#src/ui/notice.tsx";
+import { Button, ButtonLink } from "#src/ui/button.tsx";
+import { Notice } from "#src/ui/notice.tsx";
+import { RefusalNotice } from "#src/ui/refusal-notice.tsx";
 import { Loaded } from "#src/ui/states.tsx";
 import { Tabs } from "#src/ui/tabs.tsx";
 
@@ -81,7 +84,7 @@ interface DeskProps {
 const BANDS_PX = 132;
 
 /** What stands beside the log. */
-type Beside = "profile" | "layer" | "advice";
+type Beside = "profile" | "layer" | "levers" | "advice";
 
 function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   const mayEdit = useMay()("edit");
@@ -91,14 +94,14 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   const profile = mayEdit ? draft.document : chosen.document;
   const { polymer, names } = usePolymerOf(profile.polymer);
   const desk = useDesk(document, machine, profile, polymer, draft.change);
-  const { layers, findings, plan, editing, layer, pinned, pin, rugs, at } = desk;
+  const { layers, findings, plan, prediction, advice, editing, layer, pinned, pin, rugs, at } = desk;
   const [selected, setSelected] = useState(0);
   const [beside, showBeside] = useState<Beside>("profile");
-  const tracks = useMemo(() => readingTracks(layers, machine.channels, plan), [layers, machine, plan]);
-  const marks = useMemo(
-    () => [...findingMarks(findings, layers), ...adviceMarks(plan?.advice ?? [])],
-    [findings, layers, plan],
+  const tracks = useMemo(
+    () => [...readingTracks(layers, machine.channels, plan), ...prediction.tracks],
+    [layers, machine, plan, prediction.tracks],
   );
+  const marks = useMemo(() => [...findingMarks(findings, layers), ...adviceMarks(advice)], [findings, layers, advice]);
   const heightPx = useDeskHeight();
   const log = (
     <LayerLog
@@ -106,6 +109,7 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
       tracks={tracks}
       marks={marks}
       zones={profile.zones}
+      states={prediction.states}
       pinnedLayer={pinned ?? null}
       onPin={pin}
       heightPx={heightPx}
@@ -140,7 +144,24 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
           ready={plan !== undefined && desk.problem === undefined && editing.checked !== undefined}
         />
         <div className="border border-rule">{log}</div>
-        {desk.problem && <ProblemNotice problem={{ ...asProblem(desk.problem), title: "This can't be planned yet" }} />}
+        <div className="flex flex-wrap gap-x-5 py-1">
+          <ButtonLink
+            weight="quiet"
+            className="text-small"
+            to={paths.comparePlans(reading.id, { id: chosen.id, version: chosen.number })}
+          >
+            Compare with another profile
+          </ButtonLink>
+          <Button
+            weight="quiet"
+            className="text-small"
+            disabled={!plan}
+            onClick={() => plan && savePlanCsv(csvName(profile), { layers, plan, prediction: desk.predicted })}
+          >
+            Plan as CSV
+          </Button>
+        </div>
+        {desk.problem && <RefusalNotice title="This can't be planned yet" refusal={desk.problem} />}
       </div>
       <div className="min-w-0">
         {draft.changed && draft.resumedFrom && (
@@ -159,12 +180,17 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
             {
               id: "layer",
               name: layer ? `Layer ${layer.index}` : "Layer",
-              panel: <PlanInspector layer={layer} channels={machine.channels} plan={plan} />,
+              panel: (
+                <PlanInspector layer={layer} channels={machine.channels} plan={plan && { ...plan, advice }}>
+                  {prediction.ofLayer(layer)}
+                </PlanInspector>
+              ),
             },
+            { id: "levers", name: "Levers", panel: prediction.leversOf(layer, plan) },
             {
               id: "advice",
-              name: plan && plan.advice.length > 0 ? `Advice, ${plan.advice.length}` : "Advice",
-              panel: <AdviceList advice={plan?.advice ?? []} onPin={pin} />,
+              name: advice.length > 0 ? `Advice, ${advice.length}` : "Advice",
+              panel: <AdviceList advice={advice} onPin={pin} />,
             },
           ]}
         />
@@ -172,6 +198,8 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
     </div>
   );
 }
+
+const csvName = ({ name }: Profile): string => documentFileName(name).replace(/json$/, "plan.csv");
 
 /** Button, head and foot of the log, and most of the page's head stand in sight together with the plot. */
 const AROUND_PLOT_PX = 520;
@@ -191,7 +219,11 @@ function useDesk(
   const [pinned, pin] = usePinnedLayer();
   const part = useMemo(() => ({ layerTopsMm: firstObject(layers).map(({ zMm }) => zMm) }), [layers]);
   const editing = useProfileEditing({ profile, onChange, machine, polymer, part });
-  const { plan, refusal } = useLivePlan(layers, machine, editing.checked);
+  const { plan, refusal, prediction, predicted } = usePlanned({ layers, machine, polymer, profile: editing.checked });
+  const advice = useMemo(
+    () => [...(plan?.advice ?? []), ...(predicted?.advice ?? [])].sort((a, b) => a.layer - b.layer),
+    [plan, predicted],
+  );
   const layer = layers.find(({ index }) => index === pinned);
   const rugs = useMemo(
     () => ({
@@ -202,7 +234,21 @@ function useDesk(
     [layers],
   );
   const at = layer && { "layer-time": layer.timeS, "deposited-length": layer.depositedLengthMm, height: layer.zMm };
-  return { layers, findings, plan, problem: refusal, editing, layer, pinned, pin, rugs, at };
+  return {
+    layers,
+    findings,
+    plan,
+    prediction,
+    predicted,
+    advice,
+    problem: refusal,
+    editing,
+    layer,
+    pinned,
+    pin,
+    rugs,
+    at,
+  };
 }
 
 /** Zones are laid over one object; those printed after it get the same ones. */

@@ -14,6 +14,7 @@ import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
 import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
 import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
 import { AdviceList } from "#src/features/tunings/advice-list.tsx";
+import { savePlanCsv } from "#src/features/tunings/plan-csv.ts";
 import { ProofPanel } from "#src/features/tunings/proof-panel.tsx";
 import {
   layerDiffQuery,
@@ -24,6 +25,8 @@ import {
 import { saveFile } from "#src/lib/save-file.ts";
 import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
 import { LogBeside } from "#src/routes/log-beside.tsx";
+import { usePolymerOf } from "#src/routes/use-polymers.ts";
+import { usePrediction } from "#src/routes/use-prediction.tsx";
 import { Button } from "#src/ui/button.tsx";
 import { Section } from "#src/ui/section.tsx";
 import { Loaded } from "#src/ui/states.tsx";
@@ -71,11 +74,18 @@ interface PlannedProps {
 function Planned({ tuning, reading, plan, machine, profile }: PlannedProps) {
   const [pinned, pin] = usePinnedLayer();
   const { layers, findings } = reading;
-  const tracks = useMemo(() => readingTracks(layers, machine.channels, plan), [layers, machine, plan]);
-  const marks = useMemo(
-    () => [...findingMarks(findings, layers), ...adviceMarks(plan.advice)],
-    [findings, layers, plan],
+  const { polymer } = usePolymerOf(profile?.polymer ?? "");
+  const prediction = usePrediction({ layers, machine, polymer, profile, plan });
+  const predicted = prediction.forecast?.prediction;
+  const advice = useMemo(
+    () => [...plan.advice, ...(predicted?.advice ?? [])].sort((a, b) => a.layer - b.layer),
+    [plan, predicted],
   );
+  const tracks = useMemo(
+    () => [...readingTracks(layers, machine.channels, plan), ...prediction.tracks],
+    [layers, machine, plan, prediction.tracks],
+  );
+  const marks = useMemo(() => [...findingMarks(findings, layers), ...adviceMarks(advice)], [findings, layers, advice]);
   const layer = layers.find(({ index }) => index === pinned);
   return (
     <>
@@ -86,25 +96,43 @@ function Planned({ tuning, reading, plan, machine, profile }: PlannedProps) {
             tracks={tracks}
             marks={marks}
             zones={profile?.zones}
+            states={prediction.states}
             pinnedLayer={pinned ?? null}
             onPin={pin}
           />
         }
-        beside={<PlanInspector layer={layer} channels={machine.channels} plan={plan} />}
+        beside={
+          <PlanInspector layer={layer} channels={machine.channels} plan={{ ...plan, advice }}>
+            {prediction.ofLayer(layer)}
+          </PlanInspector>
+        }
       />
       <Section title="Lines" note={layer ? `layer ${layer.index}, both files` : undefined}>
         <PinnedDiff tuningId={tuning.id} machine={machine} layer={layer?.index} onPin={pin} />
       </Section>
+      {layer && polymer && (
+        <Section title="Two levers" note={`layer ${layer.index}`}>
+          {prediction.leversOf(layer, plan)}
+        </Section>
+      )}
       <Section
         title="Advice"
         note="what fan and heater can't put right"
         actions={
-          <Button weight="quiet" onClick={() => saveFile(`${tuning.fileName}.plan.json`, writePlan(plan))}>
-            Plan as JSON
-          </Button>
+          <>
+            <Button weight="quiet" onClick={() => saveFile(`${tuning.fileName}.plan.json`, writePlan(plan))}>
+              Plan as JSON
+            </Button>
+            <Button
+              weight="quiet"
+              onClick={() => savePlanCsv(`${tuning.fileName}.plan.csv`, { layers, plan, prediction: predicted })}
+            >
+              Plan as CSV
+            </Button>
+          </>
         }
       >
-        <AdviceList advice={plan.advice} onPin={pin} />
+        <AdviceList advice={advice} onPin={pin} />
       </Section>
     </>
   );
@@ -134,7 +162,7 @@ function PinnedDiff({ tuningId, machine, layer, onPin }: DiffProps) {
           </p>
         ) : (
           <Loaded query={diff} what="Fetching lines">
-            {(sides) => <LayerDiff {...sides} {...{ machine, layer, changedLayers, onPin }} />}
+            {(found) => <LayerDiff diff={found} {...{ machine, layer, changedLayers, onPin }} />}
           </Loaded>
         )
       }

@@ -19,7 +19,7 @@ const MACHINE_OF = { "mast-bracket": "Tern", "valve-plate": "Tern", "seal-ring":
 
 test("the demo's machines and polymers are all there, and read without a problem", () => {
   expect(machines.map(({ name }) => name)).toEqual(["Fulmar", "Tern"]);
-  expect(polymers.map(({ name }) => name)).toEqual(["PA 12", "PEEK", "PEKK 60/40", "PPS"]);
+  expect(polymers.map(({ name }) => name)).toEqual(["PA 12", "PA 6", "PEEK", "PEI", "PEKK 60/40", "PEKK 80/20", "PP", "PPS"]);
 });
 
 test("every part has a profile", () => {
@@ -47,11 +47,11 @@ describe.each(profiles)("$path", ({ path, profile }) => {
   });
 });
 
-test("between them the profiles use every unit, both rules, every quantity a curve runs over and both answers to raises", () => {
+test("between them the profiles use every unit, every rule, every quantity a curve runs over and both answers to raises", () => {
   const zones = profiles.flatMap(({ profile }) => profile.zones);
   const rules = zones.flatMap((zone) => [...zone.cooling, ...zone.heating]);
   expect(new Set(zones.map(({ unit }) => unit))).toEqual(new Set(["mm", "layer", "fraction"]));
-  expect(new Set(rules.map(({ rule }) => rule))).toEqual(new Set(["fixed", "curve"]));
+  expect(new Set(rules.map(({ rule }) => rule))).toEqual(new Set(["fixed", "curve", "hold"]));
   const over = rules.flatMap((rule) => (rule.rule === "curve" ? [rule.over] : []));
   expect(new Set(over)).toEqual(new Set(["layer-time", "deposited-length", "height"]));
   expect(new Set(profiles.map(({ profile }) => profile.withinLayer))).toEqual(new Set(["replace", "keep-raises"]));

@@ -2,7 +2,8 @@ import { createHash } from "node:crypto";
 import { readFileSync } from "node:fs";
 import { expect, test } from "vitest";
 import { parseMachine } from "#shared/formats/machine.ts";
-import { parseProfile } from "#shared/formats/profile.ts";
+import { parsePolymer } from "#shared/formats/polymer.ts";
+import { holds, parseProfile } from "#shared/formats/profile.ts";
 import { ToolpathReader } from "#shared/layers/read-toolpath.ts";
 import type { Layer } from "#shared/layers/reading.ts";
 import { prepareTuning } from "#shared/rewrite/prepare-tuning.ts";
@@ -17,6 +18,7 @@ const TUNINGS: [sample: string, machine: string, profile: string][] = [
   ["mast-bracket", "tern", "mast-bracket-stiff-throughout"],
   ["valve-plate", "tern", "valve-plate-flat-and-stiff"],
   ["seal-ring", "tern", "seal-ring-stiff-base-and-tough-lip"],
+  ["seal-ring", "tern", "seal-ring-held-stiff-and-tough"],
   ["sensor-cap", "fulmar", "sensor-cap-clear-dome"],
 ];
 
@@ -91,6 +93,7 @@ test.each(TUNINGS)("%s on %s with %s is tuned to the same bytes", async (sample,
     reading,
     machine,
     profile,
+    ...(holds(profile) ? { polymer: parsePolymer(document(`polymers/${profile.polymer.toLowerCase()}`)) } : {}),
     digest: sha256,
     engine: "golden",
     status: "trial-only",

@@ -11,8 +11,9 @@ const PASSWORD = "correct horse battery";
 export async function bundleServer(): Promise<string> {
   const root = join(import.meta.dirname, "..", "..");
   const { bundle } = await import(join(root, "server", "bundle.mjs"));
+  const { PROGRAMS } = await import(join(root, "server", "built.mjs"));
   const folder = await mkdtemp(join(root, "node_modules", ".test-server-"));
-  await bundle({ index: "server/index.ts", worker: "server/jobs/worker.ts" }, folder);
+  await bundle(PROGRAMS, folder);
   return folder;
 }
 
@@ -54,7 +55,7 @@ export class RealServer {
     const ready = /ready at (\S+)/;
     await eventually(
       async () => this.output,
-      (text) => ready.test(text) || child.exitCode !== null,
+      (text) => ready.test(text) || child.exitCode !== null || child.signalCode !== null,
       240_000,
     );
     const url = ready.exec(this.output)?.[1];

@@ -7,6 +7,8 @@ import { AlreadyOpen } from "#server/db/lock.ts";
 import { demoSignIns, seedDemo } from "#server/db/seed.ts";
 import { readEnv } from "#server/env.ts";
 import { makeLog } from "#server/http/logging.ts";
+import type { JobRow } from "#server/jobs/queries.ts";
+import type { Parts } from "#server/parts.ts";
 import { type RunningServer, serve } from "#server/serve.ts";
 
 const folder = mkdtempSync(join(tmpdir(), "quenchline-serve-"));
@@ -33,8 +35,22 @@ async function countsOf(server: RunningServer): Promise<Record<string, number>> 
 }
 const DEMO = { members: 4, machines: 2, polymers: 4, profiles: 6, toolpaths: 4, tunings: 1 };
 
-test("the first start makes the demo team, the next one finds it, and two at once are refused", async () => {
-  const first = await serve(envWith(), log, seedDemo);
+test("a first start makes the demo team, going on where it was broken off; the next one finds it, and two at once are refused", async () => {
+  const steps: string[] = [];
+  const brokenOff = ({ workshop, ...parts }: Parts) => {
+    const announce = (job: JobRow): void => {
+      workshop.announce(job);
+      steps.push(job.kind);
+      throw new Error("broken off");
+    };
+    return { ...parts, workshop: { ...workshop, announce } };
+  };
+  const seedInPieces = async (parts: Parts): Promise<void> => {
+    for (let k = 0; k < 5; k++) await expect(seedDemo(brokenOff(parts))).rejects.toThrow("broken off");
+    await seedDemo(parts);
+  };
+  const first = await serve(envWith(), log, seedInPieces);
+  expect(steps).toEqual(["read", "read", "read", "read", "tune"]);
   expect(await countsOf(first)).toEqual(DEMO);
   await expect(serve(envWith(), log)).rejects.toThrow(AlreadyOpen);
   expect(await countsOf(first)).toEqual(DEMO);

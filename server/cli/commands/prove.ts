@@ -1,5 +1,5 @@
 import { parseArguments, required } from "#server/cli/arguments.ts";
-import { loadMachine, loadProfile } from "#server/cli/documents.ts";
+import { loadMachine, loadPolymer, loadProfile } from "#server/cli/documents.ts";
 import { aboutFile, EXIT, type ExitStatus, UsageError } from "#server/cli/exit.ts";
 import { ToolpathInput } from "#server/cli/input-stream.ts";
 import { failedChecks, proofText } from "#server/cli/proof-text.ts";
@@ -18,13 +18,14 @@ export async function prove(argv: string[]): Promise<ExitStatus> {
   const machine = await loadMachine(required(values.machine, "machine", "prove"));
   const { profile: profileName } = values;
   const profile = profileName === undefined ? undefined : await loadProfile(profileName);
-  if (profile) await aboutFile(profileName as string, () => checkFit(machine, profile));
+  const polymer = values.polymer === undefined ? undefined : await loadPolymer(values.polymer);
+  if (profile) await aboutFile(profileName as string, () => checkFit(machine, profile, polymer));
   const original = await ToolpathInput.open(originalName, "several times");
   try {
     const tuned = await ToolpathInput.open(tunedName, "several times");
     try {
       const reading = await readInput(original, machine);
-      const proof = await proveInputs({ original, tuned, reading, machine, profile });
+      const proof = await proveInputs({ original, tuned, reading, machine, profile, polymer });
       await print(values.json ? writeProof(proof) : printable(proofText(originalName, tunedName, proof)));
       if (proof.passed) return EXIT.done;
       if (values.json) complain(failedChecks(proof));

@@ -112,12 +112,12 @@ async function proveWritten(
   input: ToolpathInput,
   out: TemporaryFile,
   reading: Reading,
-  { machine, profile }: Documents,
+  { machine, profile, polymer }: Documents,
 ): Promise<ProofDocument> {
   const tuned = await ToolpathInput.open(out.path, "several times");
   try {
     const expected = { engine: version, status: STATUS };
-    return await proveInputs({ original: input, tuned, reading, machine, profile, expected });
+    return await proveInputs({ original: input, tuned, reading, machine, profile, polymer, expected });
   } finally {
     await tuned.close();
   }

@@ -1,3 +1,4 @@
+import { holds, type Profile } from "#shared/formats/profile.ts";
 import type { Check, ProofDocument } from "#shared/formats/proof.ts";
 import { verdict } from "#shared/prove/checks/verdict.ts";
 import type { Evidence } from "#shared/prove/evidence.ts";
@@ -8,11 +9,10 @@ import { listed } from "#shared/prove/wording.ts";
 export interface Expected {
   engine?: string;
   status?: ProvenanceFacts["status"];
-  versions?: { profile?: number; machine?: number };
 }
 
 /** The documents that the proof is made with, as it names them. */
-export type Documents = Pick<ProofDocument, "machine" | "profile">;
+export type Documents = Pick<ProofDocument, "machine" | "profile"> & { polymer?: ProofDocument["machine"] };
 
 /** Exactly one provenance line, directly where the first layer begins, and everything it says is so. */
 export function checkProvenance(evidence: Evidence, documents: Documents, expected: Expected): Check {
@@ -45,8 +45,13 @@ function factsProblem(evidence: Evidence, facts: ProvenanceFacts, documents: Doc
   const driven = evidence.channels().map(({ channel }) => channel.id);
   const another =
     anotherProblem("machine", facts.machine, documents.machine) ??
-    (documents.profile === null ? undefined : anotherProblem("profile", facts.profile, documents.profile));
+    (documents.profile === null ? undefined : anotherProblem("profile", facts.profile, documents.profile)) ??
+    polymerProblem(facts, profile, documents.polymer);
   if (another !== undefined) return another;
+  const version =
+    versionProblem("machine", facts.machine, evidence.machine) ??
+    (profile && versionProblem("profile", facts.profile, profile));
+  if (version !== undefined) return version;
   if (profile && facts.withinLayer !== profile.withinLayer)
     return `The provenance line says "${facts.withinLayer}", the profile "${profile.withinLayer}".`;
   if (facts.channels.join() !== driven.join())
@@ -57,8 +62,19 @@ function factsProblem(evidence: Evidence, facts: ProvenanceFacts, documents: Doc
   return facts.original === original ? undefined : "The provenance line names another untuned file than this original.";
 }
 
+/** Solved duties come from a card, and the line names it; others don't. */
+function polymerProblem(
+  { polymer }: ProvenanceFacts,
+  profile: Profile | undefined,
+  given: Documents["polymer"],
+): string | undefined {
+  if (profile && holds(profile) !== (polymer !== undefined))
+    return `The provenance line names ${polymer ? `the polymer card "${polymer.name}", and no rule of the profile holds` : "no polymer card, and a rule of the profile holds"}.`;
+  return polymer && given && anotherProblem("polymer card", polymer, given);
+}
+
 function anotherProblem(
-  kind: "machine" | "profile",
+  kind: "machine" | "profile" | "polymer card",
   named: Documents["machine"],
   given: Documents["machine"],
 ): string | undefined {
@@ -66,7 +82,18 @@ function anotherProblem(
     return `The tuned file was made with the ${kind} "${named.name}", not "${given.name}".`;
   return named.sha256 === given.sha256
     ? undefined
-    : `The tuned file was made with another version of the ${kind} "${named.name}".`;
+    : `The tuned file was made with a ${kind} "${named.name}" that says something else.`;
+}
+
+/** A document without a version says nothing of the tuned file's; with one it is the one that the file was made with. */
+function versionProblem(
+  kind: "machine" | "profile",
+  { name, version }: ProvenanceFacts["machine"],
+  given: { version?: number },
+): string | undefined {
+  if (given.version === undefined || given.version === version) return undefined;
+  const said = version === undefined ? "does not say which version" : `names version ${version}`;
+  return `The provenance line ${said} of the ${kind} "${name}", and the document given is version ${given.version}.`;
 }
 
 /** The original's own digest, or, where it was tuned before, that of the file it came from. */
@@ -76,12 +103,10 @@ function untunedDigest({ provenance, file }: Evidence["reading"]): unknown {
   return typeof data === "object" && data !== null && "original" in data ? data.original : undefined;
 }
 
-function expectedProblem(facts: ProvenanceFacts, { engine, status, versions }: Expected): string | undefined {
+function expectedProblem(facts: ProvenanceFacts, { engine, status }: Expected): string | undefined {
   if (engine !== undefined && facts.engine !== engine)
     return `The provenance line names engine ${facts.engine}, not ${engine}.`;
   if (status !== undefined && facts.status !== status)
     return `The provenance line says ${facts.status}, not ${status}.`;
-  if (versions && (facts.profile.version !== versions.profile || facts.machine.version !== versions.machine))
-    return "The provenance line names other versions of profile or machine.";
   return undefined;
 }

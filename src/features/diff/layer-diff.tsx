@@ -1,6 +1,8 @@
-import { lazy, Suspense, useRef, useState } from "react";
+import { lazy, Suspense, useMemo, useRef, useState } from "react";
+import type { LayerDiff as Diff } from "#shared/contract/tunings.ts";
 import type { Machine } from "#shared/formats/machine.ts";
-import type { DiffHandle, DiffSide } from "#src/features/diff/monaco-diff.tsx";
+import { joinHunks } from "#src/features/diff/join-hunks.ts";
+import type { DiffHandle } from "#src/features/diff/monaco-diff.tsx";
 import { Button } from "#src/ui/button.tsx";
 import { Loading } from "#src/ui/states.tsx";
 
@@ -8,9 +10,7 @@ import { Loading } from "#src/ui/states.tsx";
 const MonacoDiff = lazy(async () => ({ default: (await import("#src/features/diff/monaco-diff.tsx")).MonacoDiff }));
 
 interface Props {
-  original: DiffSide;
-  tuned: DiffSide;
-  truncated: boolean;
+  diff: Diff;
   machine: Machine;
   layer: number;
   /** layers with changes, ascending */
@@ -19,8 +19,9 @@ interface Props {
 }
 
 /** One layer of both files, and the ways from change to change. */
-export function LayerDiff({ original, tuned, truncated, machine, layer, changedLayers, onPin }: Props) {
+export function LayerDiff({ diff, machine, layer, changedLayers, onPin }: Props) {
   const handle = useRef<DiffHandle>(null);
+  const { original, tuned } = useMemo(() => joinHunks(diff.hunks), [diff]);
   const [count, setCount] = useState<number>();
   const below = changedLayers.filter((index) => index < layer).at(-1);
   const above = changedLayers.find((index) => index > layer);
@@ -54,13 +55,13 @@ export function LayerDiff({ original, tuned, truncated, machine, layer, changedL
           <span aria-hidden className="font-mono">
             −{" "}
           </span>
-          Original, from line <span className="font-mono">{original.firstLine}</span>
+          Original, from line <span className="font-mono">{original.lineNumbers[0]}</span>
         </p>
         <p className="pb-1">
           <span aria-hidden className="font-mono">
             +{" "}
           </span>
-          Tuned, from line <span className="font-mono">{tuned.firstLine}</span>
+          Tuned, from line <span className="font-mono">{tuned.lineNumbers[0]}</span>
         </p>
       </div>
       <Suspense fallback={<Loading what="Fetching the diff" />}>
@@ -75,7 +76,13 @@ export function LayerDiff({ original, tuned, truncated, machine, layer, changedL
           <span aria-hidden className="diff-heater diff-edge mr-2 inline-block h-3 w-5 align-middle" />
           drives a heater
         </span>
-        {truncated && <span>The layer is long: shown are the lines around its changes.</span>}
+        {diff.shows !== "layer" && (
+          <span>
+            The layer is long: shown are{" "}
+            {diff.shows === "changes" ? "its changes" : "the first of its changes, as many as can be shown at once,"}{" "}
+            and the lines around them.
+          </span>
+        )}
       </p>
     </div>
   );

@@ -4,13 +4,8 @@ import { type RefObject, useEffect, useImperativeHandle, useRef } from "react";
 import type { Machine } from "#shared/formats/machine.ts";
 import { markByChannel } from "#src/features/diff/channel-marks.ts";
 import { GCODE, registerGcode, themeOf } from "#src/features/diff/gcode-language.ts";
+import type { DiffSide } from "#src/features/diff/join-hunks.ts";
 import { useShownSheet } from "#src/lib/sheet.ts";
-
-/** Lines of one file, and the number of the first of them. */
-export interface DiffSide {
-  firstLine: number;
-  text: string;
-}
 
 export interface DiffHandle {
   toChange(direction: "next" | "previous"): void;
@@ -59,8 +54,8 @@ export function MonacoDiff({ original, tuned, machine, handle, onChanges }: Prop
     report.current(undefined);
     const before = shown.getModel();
     const next = {
-      original: editor.createModel(lines(original.text), GCODE),
-      modified: editor.createModel(lines(tuned.text), GCODE),
+      original: editor.createModel(original.text, GCODE),
+      modified: editor.createModel(tuned.text, GCODE),
     };
     shown.getOriginalEditor().updateOptions(numbered(original, "Original file"));
     shown.getModifiedEditor().updateOptions(numbered(tuned, "Tuned file"));
@@ -90,11 +85,8 @@ export function MonacoDiff({ original, tuned, machine, handle, onChanges }: Prop
   return <div ref={box} className="h-[28rem] overflow-hidden border border-rule" />;
 }
 
-/** Line ends are the proof's business; here a line is a line. */
-const lines = (text: string): string => text.replace(/\r\n?/g, "\n");
-
-const numbered = ({ firstLine }: DiffSide, ariaLabel: string): editor.IEditorOptions => ({
-  lineNumbers: (line) => String(firstLine + line - 1),
+const numbered = ({ lineNumbers }: DiffSide, ariaLabel: string): editor.IEditorOptions => ({
+  lineNumbers: (line) => lineNumbers[line - 1] ?? "",
   ariaLabel,
 });
 

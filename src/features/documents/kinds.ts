@@ -19,7 +19,8 @@ export interface DocumentKind<Document extends { name: string }> {
   noun: string;
   plural: string;
   parse(json: unknown): Document;
-  write(document: Document): string;
+  /** as a file, which names the version where documents of the kind can */
+  write(document: Document, version: number): string;
   list(signal?: AbortSignal): Promise<DocumentSummary[]>;
   history(id: string, signal?: AbortSignal): Promise<DocumentHistory>;
   version(id: string, number: number, signal?: AbortSignal): Promise<Version<Document>>;
@@ -31,7 +32,7 @@ export const MACHINES: DocumentKind<Machine> = {
   noun: "machine",
   plural: "machines",
   parse: parseMachine,
-  write: writeMachine,
+  write: (machine, version) => writeMachine({ ...machine, version }),
   list: (signal) => call(machines.listMachines, { signal }),
   history: (id, signal) => call(machines.getMachine, { params: { id }, signal }),
   version: (id, number, signal) => call(machines.getMachineVersion, { params: { id, number }, signal }),
@@ -44,7 +45,7 @@ export const PROFILES: DocumentKind<Profile> = {
   noun: "profile",
   plural: "profiles",
   parse: parseProfile,
-  write: writeProfile,
+  write: (profile, version) => writeProfile({ ...profile, version }),
   list: (signal) => call(profiles.listProfiles, { signal }),
   history: (id, signal) => call(profiles.getProfile, { params: { id }, signal }),
   version: (id, number, signal) => call(profiles.getProfileVersion, { params: { id, number }, signal }),

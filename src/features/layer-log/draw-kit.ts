@@ -45,3 +45,18 @@ export function fitting(context: CanvasRenderingContext2D, text: string, widthPx
   }
   return "";
 }
+
+/** A staircase as a line; a gap starts a new stroke. */
+export function strokes(context: CanvasPath, pairs: Float64Array, xOf: (value: number) => number): void {
+  let down = false;
+  for (let n = 0; n < pairs.length; n += 2) {
+    const x = xOf(pairs[n]);
+    if (Number.isNaN(x)) {
+      down = false;
+      continue;
+    }
+    if (down) context.lineTo(x, pairs[n + 1]);
+    else context.moveTo(x, pairs[n + 1]);
+    down = true;
+  }
+}

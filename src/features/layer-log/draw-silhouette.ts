@@ -1,11 +1,11 @@
-import { fitting, hairline, LOG_FONT, label } from "#src/features/layer-log/draw-kit.ts";
-import { strokes } from "#src/features/layer-log/draw-track.ts";
+import { fitting, hairline, LOG_FONT, label, strokes } from "#src/features/layer-log/draw-kit.ts";
 import { yOf } from "#src/features/layer-log/height-view.ts";
 import { type LogPicture, SCALE_STRIP_PX } from "#src/features/layer-log/log-picture.ts";
 import { shownPositions, traceRows, traceSteps } from "#src/features/layer-log/trace.ts";
 import { fixedText } from "#src/lib/number-text.ts";
+import type { PredictedState } from "#src/lib/state-fill.ts";
 
-/** The part from the side, filled with the states it is meant to be in. */
+/** The part from the side, filled with the states it is predicted to have, or else is meant to be in. */
 export function drawSilhouette(context: CanvasRenderingContext2D, picture: LogPicture): void {
   const { layout, section, palette } = picture;
   const { x, width } = layout.silhouette;
@@ -21,7 +21,8 @@ export function drawSilhouette(context: CanvasRenderingContext2D, picture: LogPi
   for (const wall of walls) ring(body, wall, xOf);
   context.save();
   context.clip(body, "evenodd");
-  fillStates(context, picture);
+  if (picture.states) fillPredicted(context, picture, picture.states);
+  else fillTargets(context, picture);
   context.restore();
 
   context.strokeStyle = palette.ink;
@@ -96,7 +97,28 @@ function ring(path: Path2D, [up, down]: readonly Float64Array[], xOf: (mm: numbe
   path.closePath();
 }
 
-function fillStates(context: CanvasRenderingContext2D, { bands, layout, palette, patterns, view }: LogPicture): void {
+/** Layers of one state in a row are one rectangle: a hatch then runs through them, and thin layers cost nothing. */
+function fillPredicted(
+  context: CanvasRenderingContext2D,
+  { layout, patterns, stack, view }: LogPicture,
+  states: readonly PredictedState[],
+): void {
+  const { x, width } = layout.silhouette;
+  const [first, last] = shownPositions(stack, view);
+  for (let from = first; from <= last; ) {
+    let to = from;
+    while (to < last && states[to + 1] === states[from]) to++;
+    const [top, bottom] = [
+      Math.max(yOf(view, stack.topMm[to]), view.topPx),
+      Math.min(yOf(view, stack.bottomMm[from]), view.bottomPx),
+    ];
+    context.fillStyle = patterns.state[states[from]];
+    context.fillRect(x, top, width, bottom - top);
+    from = to + 1;
+  }
+}
+
+function fillTargets(context: CanvasRenderingContext2D, { bands, layout, palette, patterns, view }: LogPicture): void {
   const { x, width } = layout.silhouette;
   if (bands.length === 0) {
     context.globalAlpha = 0.16;

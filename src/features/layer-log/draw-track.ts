@@ -1,4 +1,5 @@
-import { hairline, LOG_FONT, label } from "#src/features/layer-log/draw-kit.ts";
+import { hairline, LOG_FONT, label, strokes } from "#src/features/layer-log/draw-kit.ts";
+import { drawWindows } from "#src/features/layer-log/draw-windows.ts";
 import type { Column } from "#src/features/layer-log/log-layout.ts";
 import { type LogPicture, SCALE_STRIP_PX } from "#src/features/layer-log/log-picture.ts";
 import type { Palette } from "#src/features/layer-log/palette.ts";
@@ -7,7 +8,7 @@ import { eachRun, traceSeries } from "#src/features/layer-log/trace.ts";
 import type { Tone, Track, TrackSeries } from "#src/features/layer-log/track.ts";
 import { marksOf, type Scale, shareOf } from "#src/lib/scale.ts";
 
-const DASHES: Record<TrackSeries["style"]["line"], number[]> = { solid: [], dashed: [5, 3], dotted: [1.5, 2.5] };
+const DASHES: Record<TrackSeries["style"]["line"], number[]> = { solid: [], dashed: [5, 3], dotted: [2, 2] };
 
 export function toneColour(tone: Tone, palette: Palette): string {
   return tone === "bone" ? palette.boneEdge : tone === "amber" ? palette.amberInk : palette[tone];
@@ -21,9 +22,19 @@ export function drawTrack(context: CanvasRenderingContext2D, picture: LogPicture
   context.rect(column.x, picture.view.topPx - 1, column.width, picture.view.bottomPx - picture.view.topPx + 2);
   context.clip();
   const xOf = (value: number) => column.x + shareOf(scale, value) * column.width;
+  drawWindows(context, picture, track.windows ?? [], xOf);
   for (const series of track.series) drawRange(context, picture, series, xOf);
   for (const series of track.series) drawSeries(context, picture, series, xOf, column);
+  if (track.pale) veil(context, picture, column);
   context.restore();
+}
+
+/** What is drawn so far steps back, and stays readable. */
+function veil(context: CanvasRenderingContext2D, { palette, view }: LogPicture, { x, width }: Column): void {
+  context.globalAlpha = 0.55;
+  context.fillStyle = palette.sheet;
+  context.fillRect(x + 1, view.topPx - 1, width - 2, view.bottomPx - view.topPx + 2);
+  context.globalAlpha = 1;
 }
 
 /** Frame, marks with their numbers above, and the lines of reference. */
@@ -50,11 +61,16 @@ function drawScale(
   if (scale.kind === "log") drawLogTicks(context, ratio, palette.rule, scale, { x, width });
   for (const edge of [x, x + width])
     hairline(context, ratio, palette.rule, [edge, SCALE_STRIP_PX, edge, view.bottomPx]);
+  let [before, row] = [Number.NEGATIVE_INFINITY, 0];
   for (const { value, label: name } of track.references ?? []) {
     const at = x + shareOf(scale, value) * width;
     hairline(context, ratio, palette.ink, [at, SCALE_STRIP_PX, at, view.bottomPx]);
     context.fillStyle = palette.ink;
-    label(context, name, Math.min(at + 3, x + width), view.topPx + 8);
+    const from = Math.min(at + 3, x + width - context.measureText(name).width);
+    // A name that would run into the one before stands under it.
+    row = from < before + 4 ? row + 1 : 0;
+    label(context, name, from, view.topPx + 8 + 12 * row);
+    before = from + context.measureText(name).width;
   }
 }
 
@@ -74,11 +90,11 @@ function drawLogTicks(
   }
 }
 
-/** The hatched strip between a series' low and high. */
+/** The hatched or tinted strip between a series' low and high. */
 function drawRange(
   context: CanvasRenderingContext2D,
   { stack, view, ratio, palette, patterns }: LogPicture,
-  { low, high, style }: TrackSeries,
+  { low, high, style, uncertain }: TrackSeries,
   xOf: (value: number) => number,
 ): void {
   if (!low || !high) return;
@@ -94,7 +110,9 @@ function drawRange(
     context.closePath();
   }
   const colour = toneColour(style.tone, palette);
-  context.fillStyle = patterns.hatch(colour);
+  // What is uncertain is a tint: it lies on the hatches of the states.
+  context.globalAlpha = uncertain ? 0.16 : 1;
+  context.fillStyle = uncertain ? colour : patterns.hatch(colour);
   context.fill();
   // A raise of one layer only is too low for a hatch to show.
   context.globalAlpha = 0.6;
@@ -126,7 +144,7 @@ function drawSeries(
     }
     context.globalAlpha = 1;
   }
-  const widthPx = style.line === "solid" ? 1.5 : 1.25;
+  const widthPx = { solid: 1.5, dashed: 1.25, dotted: 2 }[style.line];
   if (trace.kind === "rows") drawRows(context, trace, style.line, colour, widthPx, xOf);
   else {
     context.beginPath();
@@ -164,21 +182,6 @@ function drawRows(
       if (end > top) context.fillRect(x, top, width, end - top);
     }
   });
-}
-
-/** A staircase as a line; a gap starts a new stroke. */
-export function strokes(context: CanvasPath, pairs: Float64Array, xOf: (value: number) => number): void {
-  let down = false;
-  for (let n = 0; n < pairs.length; n += 2) {
-    const x = xOf(pairs[n]);
-    if (Number.isNaN(x)) {
-      down = false;
-      continue;
-    }
-    if (down) context.lineTo(x, pairs[n + 1]);
-    else context.moveTo(x, pairs[n + 1]);
-    down = true;
-  }
 }
 
 /** The area between the track's left edge and the staircase, piece by piece. */

@@ -27,6 +27,7 @@ import { useLogContent } from "#src/features/layer-log/use-log-content.ts";
 import { useLogPointer } from "#src/features/layer-log/use-log-pointer.ts";
 import { trackText } from "#src/features/layer-log/value-text.ts";
 import type { BandZone } from "#src/features/layer-log/zone-bands.ts";
+import type { PredictedState } from "#src/lib/state-fill.ts";
 import { Button } from "#src/ui/button.tsx";
 
 /** What stands in the column at the right is told which heights are shown where. */
@@ -49,6 +50,8 @@ export interface LayerLogProps {
   marks?: readonly LogMark[];
   /** the profile's zones: they fill the silhouette and stand as bands at the right */
   zones?: readonly BandZone[];
+  /** the predicted state of every layer: they fill the silhouette in place of the zones' targets */
+  states?: readonly PredictedState[];
   /** draws the column at the right in place of the bands, for instance to edit them */
   aside?: { title: string; widthPx: number; render(view: LogAsideView): ReactNode };
   label?: string;
@@ -66,11 +69,11 @@ const BANDS_PX = 134;
  */
 export function LayerLog(props: LayerLogProps) {
   const { layers, tracks, pinnedLayer, onPin, onHover, aside, label = "Layer log", heightPx = 560 } = props;
-  const { marks = NO_MARKS, zones = NO_ZONES } = props;
+  const { marks = NO_MARKS, zones = NO_ZONES, states } = props;
   const box = useRef<HTMLDivElement>(null);
   const [base, over] = [useRef<HTMLCanvasElement>(null), useRef<HTMLCanvasElement>(null)];
   const { width } = useBoxSize(box, { width: 960, height: heightPx });
-  const content = useLogContent(layers, tracks, zones, marks);
+  const content = useLogContent(layers, tracks, zones, marks, states);
   const { stack } = content;
   const [wanted, setWanted] = useState<HeightRange>();
   const [hovered, setHovered] = useState(-1);
@@ -177,7 +180,7 @@ export function LayerLog(props: LayerLogProps) {
         )}
       </div>
       <footer className="flex flex-wrap items-start justify-between gap-x-6 gap-y-1 border-t border-hair px-2 py-1.5">
-        <LogLegend tracks={tracks} zones={zones} marked={marks.length > 0} />
+        <LogLegend tracks={tracks} zones={zones} states={states} marked={marks.length > 0} />
         <span className="ml-auto flex gap-4">
           {zoomed && !asTable && (
             <Button weight="quiet" className="text-small" onClick={zoomOut}>

@@ -22,7 +22,7 @@ export function LayerTable({ stack, tracks, pinned, onPin, heightPx }: Props) {
   const [scrolled, setScrolled] = useState(() => Math.max(pinned - 4, 0) * ROW_PX);
   const first = Math.max(Math.floor(scrolled / ROW_PX) - SPARE, 0);
   const last = Math.min(Math.ceil((scrolled + heightPx) / ROW_PX) + SPARE, stack.count) - 1;
-  const columns = tracks.flatMap((track) => track.series.map((series) => ({ track, series })));
+  const columns = tracks.flatMap(tableColumns);
 
   useEffect(() => {
     if (box.current && pinned >= 0) scrollIntoView(box.current, pinned);
@@ -44,12 +44,8 @@ export function LayerTable({ stack, tracks, pinned, onPin, heightPx }: Props) {
           <tr className="border-b border-rule" aria-rowindex={1}>
             <Head title="Layer" unit="" />
             <Head title="Height" unit="mm" />
-            {columns.map(({ track, series }) => (
-              <Head
-                key={`${track.id} ${series.label}`}
-                title={track.series.length > 1 ? `${track.title}, ${series.label}` : track.title}
-                unit={track.unit}
-              />
+            {columns.map(({ key, title, unit }) => (
+              <Head key={key} title={title} unit={unit} />
             ))}
           </tr>
         </thead>
@@ -73,9 +69,9 @@ export function LayerTable({ stack, tracks, pinned, onPin, heightPx }: Props) {
                 </button>
               </th>
               <td className="px-3 text-right">{fixedText(stack.topMm[i] - objectAt(stack, i).baseMm, 3)}</td>
-              {columns.map(({ track, series }) => (
-                <td key={`${track.id} ${series.label}`} className="px-3 text-right">
-                  {fixedText(series.values[i], track.decimals ?? 1)}
+              {columns.map(({ key, values, decimals }) => (
+                <td key={key} className="px-3 text-right">
+                  {fixedText(values[i], decimals)}
                 </td>
               ))}
             </tr>
@@ -85,6 +81,30 @@ export function LayerTable({ stack, tracks, pinned, onPin, heightPx }: Props) {
       </table>
     </section>
   );
+}
+
+interface TableColumn {
+  key: string;
+  title: string;
+  unit: string;
+  values: ArrayLike<number>;
+  decimals: number;
+}
+
+/** A column for every series, and two more for the ends of what is uncertain. */
+function tableColumns({ id, title, unit, series, decimals = 1 }: Track): TableColumn[] {
+  return series.flatMap(({ label, values, low, high, uncertain }) => {
+    const name = series.length > 1 ? `${title}, ${label}` : title;
+    const column = (part: string, values: ArrayLike<number>) => ({
+      key: `${id} ${label} ${part}`,
+      title: `${name}${part}`,
+      unit,
+      values,
+      decimals,
+    });
+    if (!uncertain || !low || !high) return [column("", values)];
+    return [column("", values), column(", at least", low), column(", at most", high)];
+  });
 }
 
 function Head({ title, unit }: { title: string; unit: string }) {

@@ -7,7 +7,7 @@ const COLOURS: Record<Tone, string> = {
   amber: "var(--amber-ink)",
   bone: "var(--bone-edge)",
 };
-const DASHES = { solid: undefined, dashed: "5 3", dotted: "1.5 2.5" };
+const DASHES = { solid: undefined, dashed: "5 3", dotted: "2 2" };
 
 /** A short piece of a series' line, as the track draws it. */
 export function LineSample({ style }: { style: SeriesStyle }) {

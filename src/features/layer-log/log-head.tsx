@@ -45,13 +45,20 @@ export function LogHead({ layout, tracks, position, layerText, asideTitle }: Pro
   );
 }
 
+const ROOM_FOR_TITLES_PX = 100;
+
 function TrackHead({ track, position, column }: { track: Track; position: number; column: Column }) {
-  const { title, unit, series, decimals = 1 } = track;
+  const { title, shortTitle = title, unit, series, decimals = 1, caution } = track;
   return (
     <div className="absolute top-2 bottom-1.5 flex flex-col justify-between" style={across(column)}>
       <span className="leading-4">
-        <span className="font-semibold">{title}</span>{" "}
+        <span className="font-semibold">{column.width < ROOM_FOR_TITLES_PX ? shortTitle : title}</span>{" "}
         <span className="font-mono whitespace-nowrap text-soft">{unit}</span>
+        {caution && (
+          <span className="block truncate border-b border-dashed border-rule text-[0.6875rem] text-soft">
+            {caution}
+          </span>
+        )}
       </span>
       <span className="flex flex-col">
         {series.map(({ label, style, values }) => (

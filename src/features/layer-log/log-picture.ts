@@ -7,6 +7,7 @@ import type { Section } from "#src/features/layer-log/section.ts";
 import type { LogMark, Track } from "#src/features/layer-log/track.ts";
 import type { ZoneBand } from "#src/features/layer-log/zone-bands.ts";
 import type { Scale } from "#src/lib/scale.ts";
+import type { PredictedState } from "#src/lib/state-fill.ts";
 
 /** What the log shows, apart from where the crosshair is. */
 export interface LogContent {
@@ -16,6 +17,8 @@ export interface LogContent {
   /** one for every track */
   scales: readonly Scale[];
   bands: readonly ZoneBand[];
+  /** the predicted state of every layer; they fill the silhouette in place of the bands' targets */
+  states?: readonly PredictedState[];
   marks: readonly LogMark[];
 }
 

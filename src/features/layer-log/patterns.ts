@@ -1,14 +1,14 @@
 import type { Palette } from "#src/features/layer-log/palette.ts";
-import type { BandZone } from "#src/features/layer-log/zone-bands.ts";
+import type { PredictedState, TargetState } from "#src/lib/state-fill.ts";
 
 type Fill = CanvasPattern | string;
 
 /**
  * Fills that tell states and ranges apart without colour, drawn as a lithology column is: a sparse stipple for
- * amorphous, lamellae for semi-crystalline, a slanting hatch where nothing is decided.
+ * amorphous, lamellae for semi-crystalline, a slanting hatch of both where nothing is decided, one of grey where nothing is wanted.
  */
 export interface Patterns {
-  state: Record<BandZone["target"], Fill>;
+  state: Record<TargetState | PredictedState, Fill>;
   /** a slanting hatch in any colour of the sheet, for ranges */
   hatch(colour: string): Fill;
 }
@@ -33,6 +33,7 @@ export function makePatterns(context: CanvasRenderingContext2D, palette: Palette
     state: {
       amorphous: pattern((tile) => stipple(tile, palette), palette.amber),
       "semi-crystalline": pattern((tile) => lamellae(tile, palette), palette.bone),
+      undecided: pattern((tile) => stripes(tile, palette), palette.well),
       none: pattern((tile) => slant(tile, palette.rule, 0.7), palette.well),
     },
     hatch(colour) {
@@ -63,6 +64,21 @@ function lamellae(tile: CanvasRenderingContext2D, { bone, boneEdge }: Palette): 
   tile.globalAlpha = 0.55;
   tile.fillStyle = boneEdge;
   for (const y of [1, 5]) tile.fillRect(0, y, TILE_PX, 1);
+}
+
+/** Slanting stripes of amber and bone by turns. */
+function stripes(tile: CanvasRenderingContext2D, { amber, bone }: Palette): void {
+  tile.fillStyle = bone;
+  tile.fillRect(0, 0, TILE_PX, TILE_PX);
+  tile.globalAlpha = 0.6;
+  tile.strokeStyle = amber;
+  tile.lineWidth = TILE_PX / 2 / Math.SQRT2;
+  tile.beginPath();
+  for (const shift of [-TILE_PX, 0, TILE_PX]) {
+    tile.moveTo(shift - 2, TILE_PX + 2);
+    tile.lineTo(shift + TILE_PX + 2, -2);
+  }
+  tile.stroke();
 }
 
 function slant(tile: CanvasRenderingContext2D, colour: string, alpha: number): void {

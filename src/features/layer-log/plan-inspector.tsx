@@ -1,3 +1,4 @@
+import type { ReactNode } from "react";
 import type { PlanDocument } from "#shared/formats/plan.ts";
 import { LineSample } from "#src/features/layer-log/line-sample.tsx";
 import type { LogChannel, LogLayer } from "#src/features/layer-log/reading-tracks.ts";
@@ -10,10 +11,12 @@ export interface PlanInspectorProps {
   channels: readonly LogChannel[];
   /** a finished plan, or the one just computed; undefined where there is none yet */
   plan?: Pick<PlanDocument, "layers" | "advice">;
+  /** what is predicted of the layer, and why */
+  children?: ReactNode;
 }
 
 /** One layer in numbers: what was measured, each channel's duty as sliced and as planned, and why. */
-export function PlanInspector({ layer, channels, plan }: PlanInspectorProps) {
+export function PlanInspector({ layer, channels, plan, children }: PlanInspectorProps) {
   if (!layer)
     return (
       <p className="text-small text-soft">Pin a layer to see its numbers: click on the log, or use the arrow keys.</p>
@@ -41,6 +44,7 @@ export function PlanInspector({ layer, channels, plan }: PlanInspectorProps) {
           reasons={planned?.reason[channel.id]}
         />
       ))}
+      {children}
       {advice.length > 0 && (
         <div>
           <h4 className="text-small font-semibold">Advice</h4>

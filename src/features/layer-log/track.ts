@@ -15,15 +15,29 @@ export interface TrackSeries {
   /** one value for every layer, in print order; NaN where there is none */
   values: ArrayLike<number>;
   style: SeriesStyle;
-  /** range around the values, drawn as a hatched strip, such as a duty that changes within the layer */
+  /** range around the values, drawn as a hatched strip: a duty that changes within the layer, or what is uncertain */
   low?: ArrayLike<number>;
   high?: ArrayLike<number>;
+  /** the range belongs to the value: table and voice give it too */
+  uncertain?: boolean;
+}
+
+/** Where a track's value is meant to lie: a band in the state's fill, with a line at the edge that is to be kept. */
+export interface TrackWindow {
+  state: "amorphous" | "semi-crystalline";
+  /** one value for every layer, NaN where nothing is asked for */
+  low: ArrayLike<number>;
+  high: ArrayLike<number>;
+  /** the edge that matters; the other one is the end of the scale */
+  edge: "low" | "high";
 }
 
 /** One narrow strip of the layer log. */
 export interface Track {
   id: string;
   title: string;
+  /** stands at the head of a track too narrow for the title */
+  shortTitle?: string;
   unit: string;
   series: TrackSeries[];
   /** values at the track's left and right edge; left out: from the data */
@@ -33,6 +47,11 @@ export interface Track {
   decimals?: number;
   /** values with a line through the whole track, such as Tg */
   references?: { value: number; label: string }[];
+  windows?: TrackWindow[];
+  /** a word under the title that says how far the values may be trusted */
+  caution?: string;
+  /** the values belong to an older plan, and the new ones are on their way */
+  pale?: boolean;
 }
 
 /** Something worth a look at a layer: a finding of the reading, or advice of the plan. */

@@ -6,6 +6,7 @@ import { sectionOf } from "#src/features/layer-log/section.ts";
 import type { LogMark, Track } from "#src/features/layer-log/track.ts";
 import { trackScale } from "#src/features/layer-log/track-scale.ts";
 import { type BandZone, zoneBands } from "#src/features/layer-log/zone-bands.ts";
+import type { PredictedState } from "#src/lib/state-fill.ts";
 
 /** What the log shows, each part computed again only when what it comes from changes. */
 export function useLogContent(
@@ -13,13 +14,14 @@ export function useLogContent(
   tracks: readonly Track[],
   zones: readonly BandZone[],
   marks: readonly LogMark[],
+  states: readonly PredictedState[] | undefined,
 ): LogContent {
   const stack = useMemo(() => stackLayers(layers), [layers]);
   const section = useMemo(() => sectionOf(layers), [layers]);
   const scales = useMemo(() => tracks.map(trackScale), [tracks]);
   const bands = useMemo(() => zoneBands(zones, stack), [zones, stack]);
   return useMemo(
-    () => ({ stack, section, tracks, scales, bands, marks }),
-    [stack, section, tracks, scales, bands, marks],
+    () => ({ stack, section, tracks, scales, bands, marks, states }),
+    [stack, section, tracks, scales, bands, marks, states],
   );
 }

@@ -1,5 +1,6 @@
 import type { Channel, Machine, Pause } from "#shared/formats/machine.ts";
 import { actsText, corneringText, driveText } from "#src/features/machines/drive-text.ts";
+import { ThermalSheet } from "#src/features/machines/thermal-sheet.tsx";
 import { fixedText } from "#src/lib/number-text.ts";
 import { FactList } from "#src/ui/facts.tsx";
 import { Section } from "#src/ui/section.tsx";
@@ -43,7 +44,8 @@ const PAUSES: Column<Pause>[] = [
 ];
 
 /** What a machine document says. */
-export function MachineSheet({ machine: { motion, channels, pauses } }: { machine: Machine }) {
+export function MachineSheet({ machine }: { machine: Machine }) {
+  const { motion, channels, pauses } = machine;
   const axes = Object.entries(motion.axes).map(([axis, limits]) => ({
     label: `Axis ${axis.toUpperCase()}`,
     value: `${limits?.maxSpeedMmS ?? "no limit"} mm/s, ${limits?.maxAccelMmS2 ?? "no limit"} mm/s²`,
@@ -84,6 +86,9 @@ export function MachineSheet({ machine: { motion, channels, pauses } }: { machin
             ]}
           />
         </div>
+      </Section>
+      <Section title="Surroundings" note="what predictions are computed with">
+        <ThermalSheet machine={machine} />
       </Section>
       <Section title="Pauses" note="what stops the print">
         {pauses.length > 0 ? (

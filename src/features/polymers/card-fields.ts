@@ -67,10 +67,37 @@ export const CARD_GROUPS: CardGroup[] = [
   },
 ];
 
-export function sourcedAt(polymer: Polymer, path: readonly string[]): Sourced {
+/** The number at a place of the card; undefined where this card leaves it out. */
+export function sourcedAt(polymer: Polymer, path: readonly string[]): Sourced | undefined {
   let value: unknown = polymer;
-  for (const key of path) value = Reflect.get(value as object, key);
-  return value as Sourced;
+  for (const key of path) value = typeof value === "object" && value !== null ? Reflect.get(value, key) : undefined;
+  return value as Sourced | undefined;
+}
+
+/** A field with its number. */
+export interface FilledField {
+  field: CardField;
+  sourced: Sourced;
+}
+
+/** The groups with the numbers that the card has; a group without any is left out. */
+export function filledGroups(polymer: Polymer): { title: string; note?: string; fields: FilledField[] }[] {
+  return CARD_GROUPS.map(({ fields, ...group }) => ({
+    ...group,
+    fields: fields.flatMap((field) => {
+      const sourced = sourcedAt(polymer, field.path);
+      return sourced ? [{ field, sourced }] : [];
+    }),
+  })).filter(({ fields }) => fields.length > 0);
+}
+
+/** How many of a card's numbers nobody has checked. */
+export function unverifiedCount(polymer: Polymer): { unverified: number; all: number } {
+  const numbers = filledGroups(polymer).flatMap(({ fields }) => fields);
+  return {
+    unverified: numbers.filter(({ sourced }) => sourced.confidence === "unverified").length,
+    all: numbers.length,
+  };
 }
 
 /** The card with one of its numbers replaced. */

@@ -1,6 +1,7 @@
 import { useState } from "react";
 import { Confidence, type Polymer, type Sourced } from "#shared/formats/polymer.ts";
-import { CARD_GROUPS, type CardField, sourcedAt, withSourced } from "#src/features/polymers/card-fields.ts";
+import { type CardField, filledGroups, withSourced } from "#src/features/polymers/card-fields.ts";
+import { crystallising, solidByCrystals } from "#src/features/polymers/polymer-edits.ts";
 import { CheckField, TextField } from "#src/ui/field.tsx";
 import { Section } from "#src/ui/section.tsx";
 
@@ -31,18 +32,31 @@ export function PolymerEditor({ polymer, onChange }: Props) {
           className="mt-3"
           label="Amorphous is within reach when it is printed"
           checked={polymer.amorphousReachable}
+          disabled={polymer.crystallinity === null}
           onChange={({ target }) => onChange({ ...polymer, amorphousReachable: target.checked })}
         />
+        <CheckField
+          label="It crystallises: it has a melting temperature and a rate at which crystals grow"
+          checked={polymer.crystallinity !== null}
+          onChange={({ target }) => onChange(crystallising(polymer, target.checked))}
+        />
+        {polymer.crystallinity !== null && (
+          <CheckField
+            label="Crystals alone hold a layer's shape, from some crystallinity on"
+            checked={polymer.solidAtRelativeCrystallinity !== undefined}
+            onChange={({ target }) => onChange(solidByCrystals(polymer, target.checked))}
+          />
+        )}
       </Section>
-      {CARD_GROUPS.map(({ title, note, fields }) => (
+      {filledGroups(polymer).map(({ title, note, fields }) => (
         <Section key={title} title={title} note={note}>
           <div className="flex flex-col">
-            {fields.map((one) => (
+            {fields.map(({ field, sourced }) => (
               <NumberRow
-                key={one.label}
-                field={one}
-                sourced={sourcedAt(polymer, one.path)}
-                onChange={(sourced) => onChange(withSourced(polymer, one.path, sourced))}
+                key={field.label}
+                field={field}
+                sourced={sourced}
+                onChange={(changed) => onChange(withSourced(polymer, field.path, changed))}
               />
             ))}
           </div>

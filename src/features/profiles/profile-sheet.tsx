@@ -1,5 +1,5 @@
 import type { Profile, Rule, Zone } from "#shared/formats/profile.ts";
-import { bandText, leadText, limitText, ruleText } from "#src/features/profiles/rule-text.ts";
+import { bandText, leadText, limitText, patternText, ruleText } from "#src/features/profiles/rule-text.ts";
 import { TargetBand, TargetMark } from "#src/features/profiles/target-mark.tsx";
 import { FactList } from "#src/ui/facts.tsx";
 import { Section } from "#src/ui/section.tsx";
@@ -44,7 +44,7 @@ export function ProfileSheet({ profile }: { profile: Profile }) {
 }
 
 function ZoneRow({ zone }: { zone: Zone }) {
-  const { name, target, rampMm, cooling, heating } = zone;
+  const { name, target, pattern, rampMm, cooling, heating } = zone;
   return (
     <li className="flex gap-4 border-b border-hair first:border-b-0">
       <TargetBand target={target} />
@@ -52,7 +52,7 @@ function ZoneRow({ zone }: { zone: Zone }) {
         <div>
           <h3 className="font-semibold">{name}</h3>
           <p className="font-mono text-small">{bandText(zone)}</p>
-          <TargetMark target={target} />
+          {pattern ? <p>{patternText(pattern)}</p> : <TargetMark target={target} />}
           {rampMm > 0 && <p className="text-small text-soft">ramps in over {rampMm} mm</p>}
         </div>
         <dl className="min-w-0">

@@ -1,4 +1,4 @@
-import type { Lead, Limits, Rule, Zone } from "#shared/formats/profile.ts";
+import type { Lead, Limits, Pattern, Rule, Zone } from "#shared/formats/profile.ts";
 
 const OVER = {
   "layer-time": "s of layer time",
@@ -18,6 +18,14 @@ export function ruleText(rule: Rule): string {
         ? "solved from the target"
         : `solved from the target, above ${rule.baseDuty.toFixed(2)}`;
   }
+}
+
+/** The states within a zone, from the bottom up. */
+export function patternText(pattern: Pattern): string {
+  if (pattern.kind === "graded") return `graded from ${pattern.from} to ${pattern.to}`;
+  const { amorphousLayers, semiCrystallineLayers, first } = pattern;
+  const parts = [`${amorphousLayers} amorphous`, `${semiCrystallineLayers} semi-crystalline`];
+  return `by turns ${(first === "amorphous" ? parts : parts.reverse()).join(", ")}`;
 }
 
 /** The band a zone covers, lower border first. */

@@ -21,6 +21,8 @@ import {
 
 const DOCUMENTS = ["--machine", TERN, "--profile", SEAL_RING_PROFILE];
 const readJson = (path: string): unknown => JSON.parse(readFileSync(path, "utf8"));
+const PROVENANCE = /^;quenchline (\{.*\})$/m;
+const factsOf = (bytes: Buffer) => JSON.parse(PROVENANCE.exec(bytes.toString("latin1"))![1]);
 const own = (bytes: Uint8Array) =>
   Buffer.from(bytes)
     .toString("latin1")
@@ -43,6 +45,30 @@ describe("--out", () => {
     expect(own(tuned)).toBeGreaterThan(10);
     for (const text of [out, sha256(tuned), "45 layers", "Proof   passed", "Cautions", "start fires", "cut-out"])
       expect(stdout).toContain(text);
+  });
+
+  test("documents with versions give the provenance line their numbers, and nothing else", async () => {
+    const { folder, tuned } = await tuneSealRing();
+    const [machine, profile] = [
+      ["machine.json", TERN, 2],
+      ["profile.json", SEAL_RING_PROFILE, 5],
+    ].map(([name, path, version]) => {
+      const text = JSON.stringify({ ...(readJson(String(path)) as object), version });
+      writeFileSync(join(folder, String(name)), text);
+      return join(folder, String(name));
+    });
+    const out = join(folder, "versions.gcode");
+    const documents = ["--machine", machine, "--profile", profile];
+    expect(await quenchline(["tune", SEAL_RING, ...documents, "--out", out])).toMatchObject({ status: 0 });
+    const [plain, versioned] = [tuned, readFileSync(out)].map((bytes) => factsOf(bytes));
+    expect([plain.machine.version, plain.profile.version]).toEqual([undefined, undefined]);
+    expect([versioned.machine.version, versioned.profile.version]).toEqual([2, 5]);
+    expect(versioned.machine.sha256).toBe(plain.machine.sha256);
+    expect(versioned.profile.sha256).toBe(plain.profile.sha256);
+    const rest = (bytes: Buffer): string => bytes.toString("latin1").replace(PROVENANCE, "");
+    expect(rest(readFileSync(out)) === rest(tuned)).toBe(true);
+    expect(await quenchline(["prove", SEAL_RING, out, ...documents])).toMatchObject({ status: 0 });
+    expect(await quenchline(["prove", SEAL_RING, out, ...DOCUMENTS])).toMatchObject({ status: 0 });
   });
 
   test("plan and proof are written beside it where they are asked for", async () => {

@@ -116,3 +116,19 @@ describe.each(KINDS)("$resource", ({ resource, sample, format }) => {
     await server.as("viewer").get(`${url}/${id}/versions/${number}`).expect(404);
   });
 });
+
+test.each([
+  ["machines", sampleMachine, Machine],
+  ["profiles", sampleProfile, Profile],
+])(
+  "a version that a document of %s brings along is ignored: the team numbers its own",
+  async (resource, sample, format) => {
+    const url = `/api/${resource}`;
+    const first = { document: sample({ version: 7 }) };
+    const { body: made } = await server.as("engineer").post(url).send(first).expect(201);
+    expect([made.number, made.document]).toEqual([1, format.parse(sample())]);
+    const next = { basedOn: 1, document: sample({ version: 7, name: "Renamed" }) };
+    const { body } = await server.as("engineer").post(`${url}/${made.id}/versions`).send(next).expect(201);
+    expect([body.number, body.document]).toEqual([2, format.parse(sample({ name: "Renamed" }))]);
+  },
+);

@@ -1,5 +1,5 @@
 import type { AddressInfo } from "node:net";
-import { describe, expect, test } from "vitest";
+import { describe, expect, test, vi } from "vitest";
 import { DatabaseQueue, MOST_ATTEMPTS } from "#server/jobs/job-queue.ts";
 import type { NewJob } from "#server/jobs/queries.ts";
 import { WorkerThread } from "#server/jobs/worker-thread.ts";
@@ -162,6 +162,35 @@ test("a team hears of its own jobs only, from the waiting ones to the last event
   } finally {
     leave.abort();
     listening.close();
+  }
+});
+
+test("a stream of events ends soon after its session does, and lasts as long as that holds", async () => {
+  vi.useFakeTimers({ toFake: ["setInterval", "clearInterval"] });
+  const listening = server.app.listen(0);
+  const leave = new AbortController();
+  try {
+    const { port } = listening.address() as AddressInfo;
+    const listen = (role: "viewer" | "operator") => {
+      const { cookie } = server.person(role);
+      return fetch(`http://localhost:${port}/api/events`, { headers: { cookie }, signal: leave.signal });
+    };
+    const [left, stays] = [await listen("viewer"), collect(await listen("operator"))];
+    const ended = left.text();
+    await server.as("viewer").delete("/api/session").expect(204);
+    vi.advanceTimersByTime(10_000);
+    expect(await ended).toMatch(/^retry: \d+\n\n$/);
+    await queue()
+      .enqueue(server.parts.db, newJob("heard"))
+      .then(({ job }) => server.parts.workshop.announce(job));
+    await eventually(
+      async () => stays.jobs,
+      (jobs) => jobs.length > 0,
+    );
+  } finally {
+    leave.abort();
+    listening.close();
+    vi.useRealTimers();
   }
 });
 

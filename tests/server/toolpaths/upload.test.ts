@@ -1,6 +1,6 @@
 import { readdir } from "node:fs/promises";
 import { type ClientRequest, request as httpRequest } from "node:http";
-import type { AddressInfo } from "node:net";
+import { type AddressInfo, connect } from "node:net";
 import { join } from "node:path";
 import { setTimeout as wait } from "node:timers/promises";
 import { gzipSync } from "node:zlib";
@@ -132,3 +132,51 @@ test("viewers, strangers and people who are signed out upload nothing", async ()
   await server.as("operator").post("/api/toolpaths").attach("file", bytes, "a.gcode").expect(422);
   await expectNothingStored();
 });
+
+test.each([
+  ["somebody who is signed out", () => undefined, 401],
+  ["a viewer", () => server.person("viewer").cookie, 403],
+])("a large upload by %s is answered at once, and cut off when it goes on", async (_, cookie, status) => {
+  const listening = server.app.listen(0);
+  const { port } = listening.address() as AddressInfo;
+  try {
+    const { reply, sentBytes } = await sendUntilClosed(port, cookie());
+    expect(reply).toMatch(new RegExp(`^HTTP/1.1 ${status} `));
+    expect(sentBytes.atReply).toBeLessThan(LARGE_BYTES / 10);
+    expect(sentBytes.atEnd).toBeLessThan(LARGE_BYTES / 2);
+    await expectNothingStored();
+  } finally {
+    listening.close();
+  }
+});
+
+const LARGE_BYTES = 200e6;
+
+/** Sends a large body piece by piece, at some 13 MB/s, until it has gone out or the connection is closed. */
+async function sendUntilClosed(port: number, cookie?: string) {
+  const socket = connect(port, "127.0.0.1");
+  const head = [
+    `POST /api/toolpaths?machine=${machine} HTTP/1.1`,
+    "Host: localhost",
+    "Content-Type: multipart/form-data; boundary=b",
+    `Content-Length: ${LARGE_BYTES}`,
+    ...(cookie === undefined ? [] : [`Cookie: ${cookie}`]),
+  ];
+  const piece = Buffer.alloc(262_144, "G1 X1\n");
+  const sentBytes = { atReply: Number.POSITIVE_INFINITY, atEnd: 0 };
+  let reply = "";
+  socket.on("data", (text) => {
+    if (reply === "") sentBytes.atReply = sentBytes.atEnd;
+    reply += text;
+  });
+  // Cutting with bytes on their way looks like a broken connection from here.
+  socket.on("error", () => {});
+  socket.write(`${head.join("\r\n")}\r\n\r\n`);
+  while (!socket.destroyed && sentBytes.atEnd < LARGE_BYTES) {
+    socket.write(piece);
+    sentBytes.atEnd += piece.length;
+    await wait(20);
+  }
+  socket.destroy();
+  return { reply, sentBytes };
+}

@@ -1,6 +1,9 @@
 import { beforeAll, expect, test } from "vitest";
+import { hunksOf } from "#server/tunings/diff-hunks.ts";
 import { updateTuning } from "#server/tunings/queries.ts";
+import { doneTuning } from "#server/tunings/service.ts";
 import { tunedName } from "#server/tunings/tuned-name.ts";
+import type { DiffHunk } from "#shared/contract/tunings.ts";
 import { testServer } from "#tests/helpers/server.ts";
 import { addMachine, endedTuning, sampleJson, tuneSample, uploadAndRead } from "#tests/helpers/workshop.ts";
 
@@ -44,25 +47,67 @@ async function tuneLongLayers(form: Form) {
   return { tuning, original: linesOf(file.toString()), tuned: linesOf(Buffer.concat(pieces).toString()) };
 }
 
+/** Lines of a file with those of every hunk's side taken out of it, which have to stand where they say. */
+function without(lines: readonly string[], parts: readonly { firstLine: number; text: string }[]): string[] {
+  const rest: string[] = [];
+  let at = 0;
+  for (const { firstLine, text } of parts) {
+    const shown = linesOf(text);
+    expect(lines.slice(firstLine - 1, firstLine - 1 + shown.length)).toEqual(shown);
+    expect(firstLine - 1).toBeGreaterThanOrEqual(at);
+    rest.push(...lines.slice(at, firstLine - 1), "(a hunk)");
+    at = firstLine - 1 + shown.length;
+  }
+  return [...rest, ...lines.slice(at)];
+}
+
 test.each(["plain", "crlf", "numbered"] as const)(
-  "a layer too long to be sent whole, of a %s file, is sent as a stretch whose sides begin and end at the same lines",
+  "layers too long to be sent whole, of a %s file: every change is in a hunk, and between the hunks both files are the same",
   async (form) => {
     const { tuning, original, tuned } = await tuneLongLayers(form);
+    const hunks: DiffHunk[] = [];
     for (let layer = 1; layer <= 4; layer++) {
       const { body } = await server.as("viewer").get(`/api/tunings/${tuning.id}/layers/${layer}/diff`).expect(200);
-      expect(body.truncated).toBe(true);
-      const [left, right] = [linesOf(body.original.text), linesOf(body.tuned.text)];
-      const [from, tunedFrom] = [body.original.firstLine - 1, body.tuned.firstLine - 1];
-      expect(left.length).toBeGreaterThan(4_000);
-      expect(left).toEqual(original.slice(from, from + left.length));
-      expect(right).toEqual(tuned.slice(tunedFrom, tunedFrom + right.length));
-      // The file's own fan command far inside is gone on the right; what lies behind it is the same, to the end.
-      expect(left.join("")).toContain(`M106 S${100 + layer}`);
-      expect(right.join("")).not.toContain(`M106 S${100 + layer}`);
-      expect(left.slice(-500).map(unnumbered)).toEqual(right.slice(-500).map(unnumbered));
+      expect(body.shows).toBe("changes");
+      // Its beginning, and the file's own fan commands far inside: those are gone on the right.
+      // The file's own fan commands far inside are gone on the right.
+      const own = `M106 S${100 + layer}`;
+      const holding = body.hunks.filter((hunk: DiffHunk) =>
+        linesOf(hunk.original.text).some((line) => line.includes(own)),
+      );
+      expect(holding).toHaveLength(2);
+      expect(body.hunks.filter((hunk: DiffHunk) => hunk.tuned.text.includes(own))).toEqual([]);
+      for (const { original: shown } of body.hunks) expect(linesOf(shown.text).length).toBeLessThan(20);
+      hunks.push(...body.hunks);
     }
+    const left = without(
+      original,
+      hunks.map((hunk) => hunk.original),
+    );
+    const right = without(
+      tuned,
+      hunks.map((hunk) => hunk.tuned),
+    );
+    expect(tuned.join("")).toContain(";ql");
+    expect(right.join("")).not.toContain(";ql");
+    expect(left.map(unnumbered)).toEqual(right.map(unnumbered));
   },
 );
+
+test("a layer with more changes than are sent at once says so, and shows the first of them", async () => {
+  const { tuning } = await tuneLongLayers("plain");
+  const row = await doneTuning(server.parts.db, server.person("viewer").teamId, tuning.id);
+  const { storage } = server.parts.workshop.shelf;
+  const edit = { offset: 500, line: 20, tunedOffset: 500, tunedLine: 20, removedLines: 0, insertedLines: 0 };
+  // Every tenth line of the file's first layer, whatever stands there.
+  const edits = Array.from({ length: 700 }, (_, k) => ({ ...edit, line: 20 + 10 * k, tunedLine: 20 + 10 * k }));
+  const begin = { offset: 0, line: 1, tunedOffset: 0, tunedLine: 1, firstEdit: 0 };
+  const end = { offset: 270_000, line: 9_000, tunedOffset: 270_000, tunedLine: 9_000, firstEdit: 700 };
+  const sides = { original: row.toolpath.sha256, tuned: row.toolpath.sha256 };
+  const { hunks, shows } = await hunksOf(storage, sides, edits, begin, end);
+  expect(shows).toBe("first-changes");
+  expect(hunks).toHaveLength(500);
+});
 
 test("a tuning whose proof failed keeps its plan and proof, but has no file and no diff", async () => {
   const { tuning } = await tuneSample(server, "seal-ring");

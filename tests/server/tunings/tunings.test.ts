@@ -1,10 +1,11 @@
 import { execFile } from "node:child_process";
 import { createHash } from "node:crypto";
-import { mkdtemp, readFile, rm } from "node:fs/promises";
+import { mkdtemp, readFile, rm, writeFile } from "node:fs/promises";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { promisify } from "node:util";
 import { beforeAll, describe, expect, test } from "vitest";
+import type { Tuning } from "#shared/contract/tunings.ts";
 import { parsePlan } from "#shared/formats/plan.ts";
 import { parseProof } from "#shared/formats/proof.ts";
 import { testServer } from "#tests/helpers/server.ts";
@@ -69,31 +70,34 @@ describe.each(Object.keys(SAMPLES) as SampleName[])("the sample %s", (name) => {
     const proof = parseProof((await server.as("viewer").get(`/api/tunings/${tuning.id}/proof`).expect(200)).body);
     expect(proof.output).toEqual(tuning.tuned);
     expect(plan.layers).toHaveLength(tuning.plan!.layers);
-    expect(withoutProvenance(whole)).toEqual(withoutProvenance(await tunedByCommandLine(name)));
+    expect(whole.equals(await tunedByCommandLine(name, tuning))).toBe(true);
     await everyLayerDiffFits(tuning.id, sampleBytes(name), whole, plan.layers.length);
   }, 240_000);
 });
 
-/** The provenance line alone differs: a team's documents have versions. */
-const withoutProvenance = (bytes: Buffer): string => bytes.toString("latin1").replace(/;quenchline \{.*\}/, "");
-
-async function tunedByCommandLine(name: SampleName): Promise<Buffer> {
-  const [machine, profile] = SAMPLES[name];
+/** What the command line makes of the same file with the same documents, which name their versions. */
+async function tunedByCommandLine(name: SampleName, tuning: Tuning): Promise<Buffer> {
   const folder = await mkdtemp(join(tmpdir(), "quenchline-tuned-"));
   try {
     const out = join(folder, "out.gcode");
-    const documents = [
-      "--machine",
-      samplePath(`machines/${machine}.json`),
-      "--profile",
-      samplePath(`profiles/${profile}.json`),
-    ];
+    const [machine, profile] = await Promise.all([
+      documentFile(folder, "machines", tuning.machineId, tuning.machineVersion),
+      documentFile(folder, "profiles", tuning.profileId, tuning.profileVersion),
+    ]);
+    const documents = ["--machine", machine, "--profile", profile];
     const program = samplePath("../server/cli/launch.mjs");
     await run(process.execPath, [program, "tune", samplePath(`${name}.gcode`), ...documents, "--out", out]);
     return await readFile(out);
   } finally {
     await rm(folder, { recursive: true, force: true });
   }
+}
+
+async function documentFile(folder: string, kind: string, id: string, version: number): Promise<string> {
+  const { body } = await server.as("viewer").get(`/api/${kind}/${id}/versions/${version}`).expect(200);
+  const path = join(folder, `${kind}.json`);
+  await writeFile(path, JSON.stringify({ ...body.document, version }));
+  return path;
 }
 
 const unnumbered = (lines: string): string => lines.replace(/^N\d+ |\*\d+/gm, "");
@@ -106,14 +110,16 @@ async function everyLayerDiffFits(id: string, original: Buffer, tuned: Buffer, l
   const [step, differing] = [Math.max(1, Math.floor(layers / 12)), [] as number[]];
   for (let layer = 1; layer <= layers; layer += layer === layers ? 1 : Math.min(step, layers - layer)) {
     const { body } = await server.as("viewer").get(`/api/tunings/${id}/layers/${layer}/diff`).expect(200);
+    expect(body.shows).toBe("layer");
+    const [hunk] = body.hunks;
     for (const [side, lines] of [
-      [body.original, theirs],
-      [body.tuned, ours],
+      [hunk.original, theirs],
+      [hunk.tuned, ours],
     ]) {
       const shown = linesOf(Buffer.from(side.text));
       expect(shown).toEqual(lines.slice(side.firstLine - 1, side.firstLine - 1 + shown.length));
     }
-    if (unnumbered(body.original.text) !== unnumbered(body.tuned.text)) differing.push(layer);
+    if (unnumbered(hunk.original.text) !== unnumbered(hunk.tuned.text)) differing.push(layer);
     else expect(changed).not.toContain(layer);
   }
   for (const layer of differing) expect(changed).toContain(layer);

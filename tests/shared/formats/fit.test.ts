@@ -76,12 +76,6 @@ describe("a profile does not fit", () => {
       'zones[1].cooling.channel: "lamp" is a heater, but cooling needs a fan. Move the rule to heating, or name a fan.',
     ],
     [
-      "when it asks for hold",
-      "hold-not-available",
-      ({ profile }) => Object.assign(profile.zones[0], { heating: { channel: "lamp", rule: "hold" } }),
-      'zones[0].heating.rule: "hold" is not available: this version does not compute duties from the target. Use "fixed" or "curve".',
-    ],
-    [
       "when a zone leaves out a channel that another one drives",
       "channel-not-driven",
       ({ profile }) => delete profile.zones[1].heating,
@@ -168,7 +162,6 @@ test("problems of several kinds are reported together, with the first one's path
   expect(refusal(call)).toMatchObject({ code: "profile-does-not-fit", place: { path: "zones[0].cooling[1].channel" } });
   expect(problemsOf(call).map((line) => line.split(":")[0])).toEqual([
     "zones[0].cooling[1].channel",
-    "zones[0].cooling[1].rule",
     "zones[1]",
     "zones[1].target",
   ]);

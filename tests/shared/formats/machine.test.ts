@@ -1,5 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
+import { contentOf } from "#shared/formats/document.ts";
 import { type Channel, Machine, parseMachine, writeMachine } from "#shared/formats/machine.ts";
 import { parseJson } from "#shared/formats/parse-json.ts";
 import { type Json, problemsOf, refusal, tern } from "#tests/shared/formats/documents.ts";
@@ -82,6 +83,18 @@ describe("round trip", () => {
         fc.pre(machine.success);
         expect(parseMachine(JSON.parse(writeMachine(machine.data)))).toEqual(machine.data);
       }),
+    );
+  });
+
+  test("a version is kept, and is no part of what the machine says", () => {
+    const machine = parseMachine({ ...tern(), version: 3 });
+    expect(parseMachine(JSON.parse(writeMachine(machine)))).toEqual(machine);
+    expect(writeMachine(contentOf(machine))).toBe(writeMachine(parseMachine(tern())));
+  });
+
+  test.each([0, -1, 1.5, "2"])("a version %j is refused", (version) => {
+    expect(() => parseMachine({ ...tern(), version })).toThrow(
+      /^The machine document is not usable:\nversion: must be/,
     );
   });
 

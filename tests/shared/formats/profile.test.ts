@@ -1,5 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
+import { contentOf } from "#shared/formats/document.ts";
 import { parseJson } from "#shared/formats/parse-json.ts";
 import { parseProfile, writeProfile } from "#shared/formats/profile.ts";
 import { banded, fixedLamp, type Json, problemsOf, refusal, sealRing } from "#tests/shared/formats/documents.ts";
@@ -70,6 +71,12 @@ describe("round trip", () => {
     expect(parseProfile(parseJson(writeProfile(profile), "profile"))).toEqual(profile);
   });
 
+  test("a version is kept, and is no part of what the profile says", () => {
+    const profile = parseProfile({ ...sealRing(), version: 3 });
+    expect(parseProfile(parseJson(writeProfile(profile), "profile"))).toEqual(profile);
+    expect(writeProfile(contentOf(profile))).toBe(writeProfile(parseProfile(sealRing())));
+  });
+
   test("a curve point stands on one line, and names are left alone", () => {
     const text = writeProfile(parseProfile({ ...sealRing(), name: "[ 1, 2 ] [\t3,4]".replace("\t", " ") }));
     expect(text).toContain("            [3, 0.55],\n");
@@ -112,27 +119,81 @@ const rule = fc.oneof(
   fc.record({ channel: channelId, rule: fc.constant("hold"), baseDuty: duty }, { requiredKeys: ["channel", "rule"] }),
 );
 const rules = fc.uniqueArray(rule, { maxLength: 4, selector: ({ channel }) => channel });
+/** What a zone is to reach; where no rule holds, nothing has to be said. */
+const wish = fc.oneof(
+  fc.record({ target: fc.constantFrom("amorphous", "semi-crystalline") }),
+  fc.record({
+    target: fc.constant("none"),
+    pattern: fc.oneof(
+      fc.record(
+        {
+          kind: fc.constant("alternating"),
+          amorphousLayers: fc.integer({ min: 1, max: 9 }),
+          semiCrystallineLayers: fc.integer({ min: 1, max: 9 }),
+          first: fc.constantFrom("amorphous", "semi-crystalline"),
+        },
+        { requiredKeys: ["kind", "amorphousLayers", "semiCrystallineLayers"] },
+      ),
+      fc.constant({ kind: "graded", from: "amorphous", to: "semi-crystalline" }),
+    ),
+  }),
+);
 const anyProfile = fc
   .record({
     name: label,
     polymer: label,
     heights: fc.array(fc.integer({ min: 1, max: 50_000 }), { minLength: 1, maxLength: 5 }),
     rules,
+    wish,
     limits: fc.dictionary(channelId, fc.record({ maxDuty: duty, maxDutyPerLayer: fc.constantFrom(0.1, 1) })),
     lead: fc.dictionary(channelId, fc.oneof(fc.constant("settle"), fc.double({ min: 0, max: 60, noNaN: true }))),
   })
-  .map(({ heights, rules: heating, name, polymer, limits, lead }) => {
+  .map(({ heights, rules: heating, wish: wished, name, polymer, limits, lead }) => {
+    const holds = heating.some(({ rule: kind }) => kind === "hold");
     let top = 0;
     const zones = heights.map((height) => {
       const from = top / 1000;
       top += height;
-      return { name, from, to: top / 1000, unit: "mm", target: "none", heating };
+      return { name, from, to: top / 1000, unit: "mm", heating, ...(holds ? wished : { target: "none" }) };
     });
     return { format: "quenchline.profile/1", name, polymer, zones, limits, lead };
   });
 
 describe("wrong values", () => {
   test.each<[string, (profile: Json) => void, string | RegExp]>([
+    [
+      "hold without a state to hold",
+      (p) => Object.assign(p.zones[0], { target: "none", heating: { channel: "lamp", rule: "hold" } }),
+      'zones[0].target: is "none", but a rule of this zone is "hold". Say which state is to be held, or use "fixed" or "curve".',
+    ],
+    [
+      "a pattern beside a target",
+      (p) =>
+        Object.assign(p.zones[0], {
+          heating: { channel: "lamp", rule: "hold" },
+          pattern: { kind: "graded", from: "amorphous", to: "semi-crystalline" },
+        }),
+      'zones[0].target: is "semi-crystalline", but the zone has a pattern, which says the states. Give "none", or take the pattern out.',
+    ],
+    [
+      "a pattern that no rule follows",
+      (p) =>
+        Object.assign(p.zones[0], {
+          target: "none",
+          pattern: { kind: "alternating", amorphousLayers: 2, semiCrystallineLayers: 3 },
+        }),
+      'zones[0].pattern: needs a rule that is solved from it. Use "hold" for heating, cooling or both.',
+    ],
+    [
+      "a grade that leads nowhere",
+      (p) =>
+        Object.assign(p.zones[0], {
+          target: "none",
+          heating: { channel: "lamp", rule: "hold" },
+          pattern: { kind: "graded", from: "amorphous", to: "amorphous" },
+        }),
+      'zones[0].pattern.to: is "amorphous" like from, so nothing changes. Give the other state, or use target.',
+    ],
     [
       "a curve without points",
       (p) => (p.zones[0].cooling.points = []),

@@ -105,7 +105,11 @@ describe("lines that drive the machine's outputs", () => {
 
   test("inside the print are told once a channel", () => {
     const at = (text: string): number => lines.indexOf(text) + 1;
-    expect(findingsOf(reading)).toEqual([`controls-inside ${at("M107")}`, `controls-inside ${at("M106 P2 L0.2")}`]);
+    expect(findingsOf(reading)).toEqual([
+      `controls-inside ${at("M107")}`,
+      `no-channel ${at("M106 P3 S9")}`,
+      `controls-inside ${at("M106 P2 L0.2")}`,
+    ]);
   });
 });
 
@@ -276,5 +280,38 @@ describe("the window and its travels", () => {
     const hops = read([";LAYER:0"], ring(0.2), ["G1 E-1 F600", "G0 X5", "G0 X80 Y50", "G1 E1", "G1 X90 E1"], ring(0.4));
     const at = START.length + 8;
     expect([...hops.travels.line]).toEqual([at, at + 4]);
+  });
+});
+
+describe("outputs that the machine has no channel for", () => {
+  test("are named with their number and first line, where they stand between first and last layer", () => {
+    const lines = [
+      ...START,
+      "M106 P5 S10",
+      ";LAYER:0",
+      ...ring(0.2),
+      "M106 P5 S20",
+      "M42 P9 S255",
+      "SET_PIN PIN=light VALUE=1",
+      ";LAYER:1",
+      "M106 P5 S30",
+      ...ring(0.4),
+      "M106 P6 S255",
+    ];
+    const reading = readText(lines);
+    const line = lines.indexOf("M106 P5 S20") + 1;
+    expect(reading.outputs.foreign).toEqual([
+      { command: "M106 P5", count: 2, line },
+      { command: "M42 P9", count: 1, line: line + 1 },
+      { command: "SET_PIN PIN=LIGHT", count: 1, line: line + 2 },
+    ]);
+    expect(reading.findings.find(({ code }) => code === "no-channel")).toMatchObject({ severity: "warning", line });
+  });
+
+  test("a file that lights the heater by itself is warned of, with its highest duty", () => {
+    const reading = readText([...START, ";LAYER:0", ...ring(0.2), "M106 P2 S178", ";LAYER:1", ...ring(0.4)]);
+    const finding = reading.findings.find(({ code }) => code === "controls-inside")!;
+    expect(finding.severity).toBe("warning");
+    expect(finding.message).toContain("0.70 at most");
   });
 });

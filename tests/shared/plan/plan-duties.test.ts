@@ -148,11 +148,12 @@ test("the largest change holds across objects printed one after the other", () =
   expect(plan.layers.map(({ duty }) => duty.lamp)).toEqual([0.2, 0.4, 0.6, 0.8, 0.6, 0.8]);
 });
 
-test("a rule that is to be held on the zone's target is refused", () => {
-  const profile = profileWith(everywhere([], { channel: "lamp", rule: "hold" }));
+test("a rule that holds asks for the polymer's card", () => {
+  const profile = profileWith([
+    { name: "all", from: 0, target: "amorphous", heating: { channel: "lamp", rule: "hold" } },
+  ]);
   const refusal = refusalOf(() => planDuties({ layers: layersOf(1), machine: machineWith(), profile }));
-  expect(refusal.code).toBe("hold-not-available");
-  expect(refusal.place.path).toContain("zones[0].heating");
+  expect(refusal.code).toBe("polymer-missing");
 });
 
 test("a profile that does not fit the machine is refused", () => {

@@ -190,7 +190,8 @@ describe("each check finds what it is for, although the seal fits", () => {
     expect(await idOf({ profile: { ...profile, polymer: "PPS" } })).toEqual(["provenance"]);
     expect(await idOf({ expected: { engine: "9.9.9" } })).toEqual(["provenance"]);
     expect(await idOf({ expected: { status: "approved" } })).toEqual(["provenance"]);
-    expect(await idOf({ expected: { versions: { profile: 3 } } })).toEqual(["provenance"]);
+    expect(await idOf({ machine: { ...machine, version: 1 } })).toEqual(["provenance"]);
+    expect(await idOf({ profile: { ...profile, version: 3 } })).toEqual(["provenance"]);
   });
 
   test("bytes-kept: a reading of another file", async () => {

@@ -22,8 +22,8 @@ const text = written(partLines({ layers: plain(3, { middle: ["M106 S200"] }) }))
 
 describe("the provenance line", () => {
   test("says what the file was tuned with, and from which file", () => {
-    const versions = { profile: 4, machine: 2 };
-    expect(provenanceOf(tune(text, machine, profile, { versions, engine: "1.2.3", status: "approved" }))).toEqual({
+    const given = { engine: "1.2.3", status: "approved" } as const;
+    expect(provenanceOf(tune(text, { ...machine, version: 2 }, { ...profile, version: 4 }, given))).toEqual({
       v: 1,
       profile: { name: "Seal ring", sha256: sha256(writeProfile(profile)), version: 4 },
       machine: { name: "Tern", sha256: sha256(writeMachine(machine)), version: 2 },
@@ -35,6 +35,15 @@ describe("the provenance line", () => {
       lines: 3,
       seal: expect.stringMatching(/^[0-9a-f]{64}$/),
     });
+  });
+
+  test("versions that say the same have the same digest, and are tuned alike", () => {
+    const [one, two] = [1, 2].map((version) => tune(text, { ...machine, version }, { ...profile, version }));
+    expect(provenanceOf(one).profile.sha256).toBe(provenanceOf(two).profile.sha256);
+    expect(provenanceOf(one).machine.sha256).toBe(provenanceOf(two).machine.sha256);
+    expect(linesOf(one).filter((line) => !isProvenance(line))).toEqual(
+      linesOf(two).filter((line) => !isProvenance(line)),
+    );
   });
 
   test("leaves out versions that nobody keeps", () => {

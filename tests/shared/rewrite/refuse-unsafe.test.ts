@@ -38,6 +38,25 @@ describe("a command for an output that firmware families read in different ways"
   });
 });
 
+describe("a plain fan command on a machine whose fan is named", () => {
+  const fan = { drive: { by: "named-fan", name: "part" } };
+  const machine = machineWith({ fan });
+  const text = partWith({ middle: ["M106 S255"] });
+
+  test("is refused: it may be the same fan, changed between our lines", () => {
+    const refusal = refusalOf(() => tune(text, machine, both));
+    expect(refusal).toMatchObject({ code: "fan-elsewhere", place: { line: expect.any(Number) } });
+    expect(refusal.message).toContain("part-fan");
+  });
+
+  test("stays where the document says what it drives, and is no matter outside the layers or where no fan is driven", () => {
+    const other = { id: "aux", kind: "fan", drive: { by: "fan-index", index: 0, fullScale: 255 } };
+    expect(ownCommands(tune(text, machineWith({ fan, more: [other] }), both)).length).toBeGreaterThan(0);
+    expect(() => tune(partWith({ start: ["M106 S255"], finish: ["M107"] }), machine, both)).not.toThrow();
+    expect(() => tune(text, machine, profileWith({ lamp: 0.2 }))).not.toThrow();
+  });
+});
+
 describe("firmware that ignores the index of a fan command", () => {
   // REFERENCE G13: "M106 P2 S255" meant for a lamp drives the part fan there.
   const commands = [

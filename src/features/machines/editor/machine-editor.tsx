@@ -6,6 +6,7 @@ import type { MachineEditing } from "#src/features/machines/editor/machine-editi
 import { channelAdded } from "#src/features/machines/editor/machine-edits.ts";
 import { MotionForm } from "#src/features/machines/editor/motion-form.tsx";
 import { PauseForm } from "#src/features/machines/editor/pause-form.tsx";
+import { ThermalForm } from "#src/features/machines/editor/thermal-form.tsx";
 import { findProblems } from "#src/lib/document-problems.ts";
 import { undoKeys } from "#src/lib/undo-keys.ts";
 import { useHistory } from "#src/lib/use-history.ts";
@@ -74,6 +75,9 @@ export function MachineEditor({ machine, onChange }: MachineEditorProps) {
       </Section>
       <Section title="Motion" note="what layer times are computed from">
         <MotionForm editing={editing} />
+      </Section>
+      <Section title="Surroundings" note="what predictions are computed from">
+        <ThermalForm editing={editing} />
       </Section>
       <Section title="Pauses" note="the heater goes to its idle duty before each">
         <PauseForm editing={editing} />

@@ -1,4 +1,5 @@
 import type { Channel, Cornering, Drive, Machine, Motion } from "#shared/formats/machine.ts";
+import { withThermalOf } from "#src/features/machines/thermal-fields.ts";
 
 /** Changes of a machine document. Each returns a new machine. */
 
@@ -35,13 +36,14 @@ export function corneringOf(rule: Cornering["rule"]): Cornering {
 
 export function withChannel(machine: Machine, c: number, changes: Partial<Channel>): Machine {
   return {
-    ...machine,
+    ...(changes.id === undefined ? machine : withThermalOf(machine, machine.channels[c].id, changes.id)),
     channels: machine.channels.map((channel, i) => (i === c ? { ...channel, ...changes } : channel)),
   };
 }
 
 export function withoutChannel(machine: Machine, c: number): Machine {
-  return { ...machine, channels: machine.channels.filter((_, i) => i !== c) };
+  const rest = withThermalOf(machine, machine.channels[c].id, undefined);
+  return { ...rest, channels: machine.channels.filter((_, i) => i !== c) };
 }
 
 /** A new fan or heater on an output that no other channel has. */

@@ -157,7 +157,7 @@ const MARGINS: { field: keyof Margins; label: string; unit: string; step: number
 
 /** The polymer card's margins hold unless the profile gives its own. */
 function MarginFields({ editing }: { editing: ProfileEditing }) {
-  const { profile, problems } = editing;
+  const { profile, problems, polymer } = editing;
   const [open, setOpen] = useState(profile.margins !== undefined);
   const set = (field: keyof Margins, value: number | undefined) => {
     const { [field]: _, ...rest } = profile.margins ?? {};
@@ -176,6 +176,7 @@ function MarginFields({ editing }: { editing: ProfileEditing }) {
             label={label}
             unit={unit}
             step={step}
+            hint={polymer && `card: ${polymer.margins[field].value}`}
             value={profile.margins?.[field]}
             problem={problems.at(`margins.${field}`)}
             onChange={(value) => set(field, value)}

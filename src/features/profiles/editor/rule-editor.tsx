@@ -27,7 +27,7 @@ export interface RuleEditorProps {
   onRest(): void;
 }
 
-/** One channel's rule in one zone: a fixed duty, or a curve on a plot and in a table. */
+/** One channel's rule in one zone: a fixed duty, a curve on a plot and in a table, or solved from the zone's target. */
 export function RuleEditor(props: RuleEditorProps) {
   const { rule, channel, zoneName, path, problems, heightsMm, rugs, at, mostDuty, onChange, onRest } = props;
   const fan = channel.side === "cooling";
@@ -53,7 +53,7 @@ export function RuleEditor(props: RuleEditorProps) {
         >
           <option value="fixed">fixed duty</option>
           <option value="curve">curve</option>
-          {rule.rule === "hold" && <option value="hold">hold</option>}
+          <option value="hold">hold the target</option>
         </SelectField>
         {rule.rule === "fixed" && (
           <NumberField
@@ -63,6 +63,17 @@ export function RuleEditor(props: RuleEditorProps) {
             value={rule.duty}
             problem={problems.at(`${path}.duty`)}
             onChange={(duty) => onChange({ ...rule, duty: duty as number }, `${path} duty`)}
+          />
+        )}
+        {rule.rule === "hold" && (
+          <NumberField
+            label="Base duty"
+            unit="0–1"
+            hint="what it begins from; empty: 0"
+            step={0.01}
+            value={rule.baseDuty}
+            problem={problems.at(`${path}.baseDuty`)}
+            onChange={(baseDuty) => onChange(holding(rule.channel, baseDuty), `${path} baseDuty`)}
           />
         )}
         {rule.rule === "curve" && (
@@ -84,6 +95,11 @@ export function RuleEditor(props: RuleEditorProps) {
           </SelectField>
         )}
       </div>
+      {rule.rule === "hold" && (
+        <p className="text-small text-soft">
+          {`The duty of each layer is solved from the zone's target with the predicted temperatures: an estimate, to be confirmed by a trial.`}
+        </p>
+      )}
       {rule.rule === "curve" && (
         <div className="grid gap-x-6 gap-y-3 @2xl:grid-cols-[minmax(0,26rem)_auto]">
           <CurvePlot
@@ -122,13 +138,34 @@ export function RuleEditor(props: RuleEditorProps) {
 /** The same channel under another kind of rule, beginning from the duty it had. */
 export function asRule(rule: Rule, kind: Rule["rule"]): Rule {
   const { channel } = rule;
-  if (kind === rule.rule || kind === "hold") return rule;
-  if (kind === "fixed") {
-    const duty = rule.rule === "curve" && rule.points.length > 0 ? curveDuty(rule.points, middleX(rule.points)) : 0;
-    return { channel, rule: "fixed", duty: Number(duty.toFixed(2)) };
+  if (kind === rule.rule) return rule;
+  const duty = usualDuty(rule);
+  switch (kind) {
+    case "fixed":
+      return { channel, rule: "fixed", duty };
+    case "curve":
+      return { channel, rule: "curve", over: "layer-time", points: [5, 20, 60].map((x) => [x, duty]) };
+    case "hold":
+      return holding(channel, duty > 0 ? duty : undefined);
   }
-  const duty = rule.rule === "fixed" && Number.isFinite(rule.duty) ? rule.duty : 0;
-  return { channel, rule: "curve", over: "layer-time", points: [5, 20, 60].map((x) => [x, duty]) };
+}
+
+/** A base duty that is not given is left out of the document. */
+function holding(channel: string, baseDuty: number | undefined): Rule {
+  return baseDuty === undefined ? { channel, rule: "hold" } : { channel, rule: "hold", baseDuty };
+}
+
+/** The duty that a rule gives, or that of the middle of its curve. */
+function usualDuty(rule: Rule): number {
+  const duty =
+    rule.rule === "fixed"
+      ? rule.duty
+      : rule.rule === "hold"
+        ? (rule.baseDuty ?? 0)
+        : rule.points.length > 0
+          ? curveDuty(rule.points, middleX(rule.points))
+          : 0;
+  return Number.isFinite(duty) ? Number(duty.toFixed(2)) : 0;
 }
 
 function middleX(points: readonly CurvePoint[]): number {

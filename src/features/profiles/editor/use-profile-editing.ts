@@ -1,5 +1,5 @@
 import { useMemo } from "react";
-import { checkFit } from "#shared/formats/fit.ts";
+import { fitProblems } from "#shared/formats/fit.ts";
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Polymer } from "#shared/formats/polymer.ts";
 import { Profile } from "#shared/formats/profile.ts";
@@ -26,6 +26,8 @@ export interface ProfileEditing extends History<Profile> {
   checked: Profile | undefined;
   channels: EditedChannel[];
   machine: Machine | undefined;
+  /** the card of what it is written for, where there is one */
+  polymer: Polymer | undefined;
   scale: BorderScale;
   part: BandPart | undefined;
 }
@@ -34,12 +36,13 @@ export interface ProfileEditing extends History<Profile> {
 export function useProfileEditing({ profile, onChange, machine, polymer, part }: ProfileEditingInput): ProfileEditing {
   const history = useHistory(profile, onChange);
   const found = useMemo(
-    () => findProblems(Profile, profile, (checked) => machine && checkFit(machine, checked, polymer)),
+    () => findProblems(Profile, profile, (checked) => (machine ? fitProblems(machine, checked, polymer) : [])),
     [profile, machine, polymer],
   );
   const channels = useMemo(() => editedChannels(profile, machine), [profile, machine]);
   const unit = profile.zones[0]?.unit ?? "mm";
   const highest = Math.max(0, ...profile.zones.flatMap(({ from, to }) => [from, to ?? 0]).filter(Number.isFinite));
   const scale = useMemo(() => borderScale(unit, part, highest), [unit, part, highest]);
-  return { ...history, profile, problems: found.problems, checked: found.document, channels, machine, scale, part };
+  const { problems, document: checked } = found;
+  return { ...history, profile, problems, checked, channels, machine, polymer, scale, part };
 }

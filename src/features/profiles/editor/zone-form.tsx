@@ -2,9 +2,9 @@ import type { CurveOver, Profile, Zone } from "#shared/formats/profile.ts";
 import { RuleEditor, type RuleRugs } from "#src/features/profiles/editor/rule-editor.tsx";
 import type { ProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { removeZone, splitZone, withBorder, withRule, withZone } from "#src/features/profiles/editor/zone-edits.ts";
-import { STATE_NAMES, type TargetState } from "#src/lib/state-fill.ts";
+import { PatternFields, ZoneTarget } from "#src/features/profiles/editor/zone-target.tsx";
 import { Button } from "#src/ui/button.tsx";
-import { SelectField, TextField } from "#src/ui/field.tsx";
+import { TextField } from "#src/ui/field.tsx";
 import { NumberField, problemText } from "#src/ui/number-field.tsx";
 
 export interface ZoneFormProps {
@@ -38,19 +38,9 @@ export function ZoneForm({ editing, z, onSelect, rugs = {}, at = {} }: ZoneFormP
           onChange={({ target }) => change({ name: target.value }, "name")}
           onBlur={editing.rest}
         />
-        <SelectField
-          label="Target"
-          value={zone.target}
-          error={problemText("Target", problems.at(`${path}.target`))}
-          onChange={({ target }) => change({ target: target.value as TargetState }, "target")}
-        >
-          {Object.entries(STATE_NAMES).map(([target, name]) => (
-            <option key={target} value={target}>
-              {name}
-            </option>
-          ))}
-        </SelectField>
+        <ZoneTarget editing={editing} z={z} />
       </div>
+      <PatternFields editing={editing} z={z} />
       <div className="grid grid-cols-3 gap-3">
         <NumberField
           label="Above"

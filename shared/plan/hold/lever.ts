@@ -1,0 +1,105 @@
+import type { Machine } from "#shared/formats/machine.ts";
+import type { Profile, Rule, Zone } from "#shared/formats/profile.ts";
+import { effectiveLimits } from "#shared/plan/limits.ts";
+import type { Surroundings } from "#shared/thermal/surroundings.ts";
+
+/** A fan's gentle baseline where the rule gives none; common practice, no source. */
+const GENTLE_FAN = 0.2;
+/** Length of the lever's part in which fans go from their baseline to their least duty. */
+const CALMING = 0.5;
+
+/** One channel that is held in a zone, and how far it may go. Duties 0-1. */
+export interface HeldChannel {
+  id: string;
+  /** the least that it may have: 0 where it may be off */
+  low: number;
+  /** a fan's gentle baseline */
+  base: number;
+  /** a fan's least duty other than off */
+  least: number;
+  high: number;
+}
+
+/** Duties of fans and lamps, as shares of the way between two of their marks. */
+type Place = [id: string, duty: number];
+
+/**
+ * All channels that a zone holds, worked as one lever from coldest (0) to warmest (`length`):
+ *
+ *     fans:   high ──╲______________╱╲
+ *                     base        least └──────── off
+ *     lamps:  low  ___╱────────────────╲____╱──── high
+ *             0      1             2  2.5         length
+ *
+ * The lamps are the main lever while the fans keep to their gentle baseline; more fan comes only where no lamp is too
+ * much still, less only where full lamps are not enough. Between its least duty and off a fan has nothing: where it
+ * goes off the lamps go back by what the fan took away, so that the lever stays one that can be worked smoothly. Parts
+ * that have no channel are left out.
+ */
+export class Lever {
+  readonly fans: readonly HeldChannel[];
+  readonly lamps: readonly HeldChannel[];
+  readonly length: number;
+  /** where fans are at their baseline and lamps at their lowest */
+  readonly rest: number;
+  private readonly lit: number;
+  /** where fans go off, and the share of their range by which lamps go back there */
+  private readonly off: number;
+  private readonly back: number;
+
+  /** @param warmC a layer temperature at which a fan's least duty is weighed against the lamps, °C */
+  constructor(zone: Zone, machine: Machine, profile: Profile, surroundings: Surroundings, warmC: number) {
+    this.fans = heldChannels(zone.cooling, machine, profile, true);
+    this.lamps = heldChannels(zone.heating, machine, profile, false);
+    this.rest = this.fans.length > 0 ? 1 : 0;
+    this.lit = this.rest + (this.lamps.length > 0 ? 1 : 0);
+    this.off = this.lit + (this.fans.length > 0 ? CALMING : 0);
+    this.back = this.fans.length > 0 && this.lamps.length > 0 ? this.lampsBack(surroundings, warmC) : 0;
+    this.length = this.off + this.back;
+  }
+
+  /** Duties by channel id at a place of the lever. */
+  *duties(at: number): Generator<Place> {
+    const { rest, lit, off, back } = this;
+    for (const { id, base, least, high, low } of this.fans) {
+      if (at < 1) yield [id, high + (base - high) * at];
+      else if (at < off) yield [id, base + (least - base) * (Math.max(at - lit, 0) / CALMING)];
+      else yield [id, low];
+    }
+    const share = at < off ? Math.min(Math.max(at - rest, 0), 1) : 1 - (off + back - at);
+    for (const { id, low, high } of this.lamps) yield [id, low + (high - low) * share];
+  }
+
+  /** What fans at their least duty take from a warm layer, as a share of what the lamps' range gives it. */
+  private lampsBack({ fans, lamps, roomAirC }: Surroundings, warmC: number): number {
+    const taken = this.fans.map(({ id, least }) => {
+      const { h1WM2K, exponent } = fans.find((fan) => fan.id === id)!;
+      return h1WM2K * least ** exponent * Math.max(warmC - roomAirC, 0);
+    });
+    const given = this.lamps.map(({ id, low, high }) => {
+      const { absorbedWM2, exponent } = lamps.find((lamp) => lamp.id === id)!;
+      return absorbedWM2 * (high ** exponent - low ** exponent);
+    });
+    const share = sum(taken) / sum(given);
+    return Number.isFinite(share) ? Math.min(share, 1) : 0;
+  }
+}
+
+const sum = (values: readonly number[]): number => values.reduce((total, value) => total + value, 0);
+
+function heldChannels(rules: readonly Rule[], machine: Machine, profile: Profile, fans: boolean): HeldChannel[] {
+  return rules.flatMap((rule) => {
+    const channel = machine.channels.find(({ id }) => id === rule.channel);
+    if (rule.rule !== "hold" || channel === undefined) return [];
+    const { minDuty, maxDuty, mayBeOff } = effectiveLimits(channel, profile);
+    const { baseDuty } = rule;
+    const within = (duty: number) => Math.min(Math.max(duty, minDuty), maxDuty);
+    if (!fans) {
+      // A lamp's base is what it is never turned below while it is held.
+      const low = baseDuty === undefined && mayBeOff ? 0 : within(baseDuty ?? 0);
+      return [{ id: channel.id, low, least: low, base: low, high: maxDuty }];
+    }
+    const base = within(baseDuty ?? Math.max(GENTLE_FAN, minDuty));
+    return [{ id: channel.id, low: 0, least: Math.min(minDuty, base), base, high: maxDuty }];
+  });
+}

@@ -1,0 +1,78 @@
+import { expect, test } from "vitest";
+import type { LayerTarget } from "#shared/plan/layer-targets.ts";
+import { marginsOf, predictionTracks } from "#src/features/layer-log/prediction-tracks.ts";
+import { trackText } from "#src/features/layer-log/value-text.ts";
+import { cardOf, predictionOf } from "#tests/src/features/prediction/predictions.ts";
+
+const peek = cardOf("peek");
+const targets: LayerTarget[] = [
+  { state: "semi-crystalline", share: 1 },
+  { state: "none", share: Number.NaN },
+  { state: "amorphous", share: 0 },
+];
+
+test("the interlayer track has Tg, the solidification limit and the window of each target", () => {
+  const [track] = predictionTracks({ polymer: peek, targets, prediction: predictionOf(3) });
+  expect(track.references).toEqual([
+    { value: 143, label: "Tg" },
+    { value: 173, label: "solid" },
+  ]);
+  const [amorphous, semi] = track.windows ?? [];
+  expect([amorphous.state, amorphous.edge, Array.from(amorphous.high)]).toEqual([
+    "amorphous",
+    "high",
+    [Number.NaN, Number.NaN, 143 - 15],
+  ]);
+  expect([semi.state, semi.edge, Array.from(semi.low)]).toEqual([
+    "semi-crystalline",
+    "low",
+    [143 + 15, Number.NaN, Number.NaN],
+  ]);
+});
+
+test("every value, band and window lies within the scale", () => {
+  for (const track of predictionTracks({ polymer: peek, targets, prediction: predictionOf(3) })) {
+    const [from, to] = track.domain ?? [0, 0];
+    const { values, low, high } = track.series[0];
+    const windows = (track.windows ?? []).flatMap((window) => [...Array.from(window.low), ...Array.from(window.high)]);
+    for (const value of [...Array.from(values), ...Array.from(low ?? []), ...Array.from(high ?? []), ...windows]) {
+      if (Number.isNaN(value)) continue;
+      expect(value).toBeGreaterThanOrEqual(from);
+      expect(value).toBeLessThanOrEqual(to);
+    }
+  }
+});
+
+test("the profile's margins go before the card's", () => {
+  expect(marginsOf(peek, { belowTgC: 30 })).toEqual({
+    belowTgC: 30,
+    aboveTgC: 15,
+    maxCrystallinity: 0.08,
+    minCrystallinity: 0.2,
+  });
+  const [track] = predictionTracks({ polymer: peek, margins: { belowTgC: 30 }, targets, prediction: predictionOf(3) });
+  expect(track.windows?.[0].high[2]).toBe(113);
+});
+
+test("without a prediction the tracks stand empty, and one of another part is not drawn", () => {
+  for (const prediction of [undefined, predictionOf(7)]) {
+    const tracks = predictionTracks({ polymer: peek, targets, prediction });
+    expect(tracks.map(({ id }) => id)).toEqual(["interlayer", "crystallinity"]);
+    expect(Array.from(tracks[0].series[0].values)).toEqual([Number.NaN, Number.NaN, Number.NaN]);
+  }
+});
+
+test("without a band there is no range around the line", () => {
+  const [track] = predictionTracks({ polymer: peek, targets, prediction: predictionOf(3, () => ({ band: null })) });
+  expect(track.series[0].low).toBeUndefined();
+});
+
+test("what does not crystallise has no track of crystallinity", () => {
+  const tracks = predictionTracks({ polymer: cardOf("pei"), targets, prediction: predictionOf(3) });
+  expect(tracks.map(({ id }) => id)).toEqual(["interlayer"]);
+});
+
+test("the voice reads the band with the value", () => {
+  const [track] = predictionTracks({ polymer: peek, targets, prediction: predictionOf(3) });
+  expect(trackText(track, 1)).toBe("Interlayer temperature 102 °C, between 82 and 132");
+});
