@@ -46,6 +46,19 @@ export function listHeads(db: Db, scope: Scope): Promise<HeadRow[]> {
   return heads(db).where(inScope(scope)).orderBy(asc(documents.name), desc(documentVersions.number));
 }
 
+/** The latest document of each in scope. */
+export function listLatestTexts(db: Db, scope: Scope) {
+  return db
+    .selectDistinctOn([documentVersions.documentId], {
+      documentId: documentVersions.documentId,
+      text: documentVersions.text,
+    })
+    .from(documentVersions)
+    .innerJoin(documents, eq(documents.id, documentVersions.documentId))
+    .where(inScope(scope))
+    .orderBy(documentVersions.documentId, desc(documentVersions.number));
+}
+
 /** One version; without a number the latest. */
 export async function findHead(db: Db, scope: Required<Scope>, number?: number): Promise<HeadRow | undefined> {
   const [row] = await heads(db)

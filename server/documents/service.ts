@@ -13,6 +13,8 @@ export interface Format<Document> {
   parse(json: unknown): Document;
   /** what the document says; equal documents give equal text. A version that it came with is left out: the team numbers its own */
   write(document: Document): string;
+  /** what lists show of it */
+  gist(document: Document): Pick<DocumentSummary, "machine" | "profile" | "polymer">;
 }
 
 /** One version with its document. */
@@ -46,13 +48,16 @@ export class Documents<Document> {
   }
 
   async list(db: Db, teamId: string): Promise<DocumentSummary[]> {
-    const heads = await queries.listHeads(db, { teamId, kind: this.format.kind });
+    const scope = { teamId, kind: this.format.kind };
+    const [heads, texts] = await Promise.all([queries.listHeads(db, scope), queries.listLatestTexts(db, scope)]);
+    const textOf = new Map(texts.map(({ documentId, text }) => [documentId, text]));
     return byDocument(heads).map((versions) => ({
       id: versions[0].documentId,
       name: versions[0].name,
       versions: versions.length,
       latest: headOf(versions[0]),
       ...(this.format.kind === "profile" && { approved: approvedNumbers(versions) }),
+      ...this.gist(textOf.get(versions[0].documentId)),
     }));
   }
 
@@ -114,6 +119,11 @@ export class Documents<Document> {
     await this.find(db, approver.teamId, id, number);
     await queries.insertApproval(db, { documentId: id, number, approvedBy: approver.userId });
     return headOf(await this.find(db, approver.teamId, id, number));
+  }
+
+  /** A document written between the two queries has no text yet: it is listed without. */
+  private gist(text: string | undefined) {
+    return text === undefined ? {} : this.format.gist(this.format.parse(JSON.parse(text)));
   }
 
   private async find(db: Db, teamId: string, id: string, number?: number): Promise<queries.HeadRow> {

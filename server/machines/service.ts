@@ -1,3 +1,4 @@
+import { machineGist } from "#server/documents/gists.ts";
 import { Documents } from "#server/documents/service.ts";
 import { contentOf } from "#shared/formats/document.ts";
 import { type Machine, parseMachine, writeMachine } from "#shared/formats/machine.ts";
@@ -7,4 +8,5 @@ export const machines = new Documents<Machine>({
   nameOf: ({ name }) => name,
   parse: parseMachine,
   write: (machine) => writeMachine(contentOf(machine)),
+  gist: (machine) => ({ machine: machineGist(machine) }),
 });

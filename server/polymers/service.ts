@@ -1,3 +1,4 @@
+import { polymerGist } from "#server/documents/gists.ts";
 import { Documents } from "#server/documents/service.ts";
 import { type Polymer, parsePolymer, writePolymer } from "#shared/formats/polymer.ts";
 
@@ -7,4 +8,5 @@ export const polymers = new Documents<Polymer>({
   nameOf: ({ name, variant }) => (variant === "" ? name : `${name} ${variant}`),
   parse: parsePolymer,
   write: writePolymer,
+  gist: (polymer) => ({ polymer: polymerGist(polymer) }),
 });

@@ -1,3 +1,4 @@
+import { profileGist } from "#server/documents/gists.ts";
 import { Documents } from "#server/documents/service.ts";
 import { contentOf } from "#shared/formats/document.ts";
 import { type Profile, parseProfile, writeProfile } from "#shared/formats/profile.ts";
@@ -7,4 +8,5 @@ export const profiles = new Documents<Profile>({
   nameOf: ({ name }) => name,
   parse: parseProfile,
   write: (profile) => writeProfile(contentOf(profile)),
+  gist: (profile) => ({ profile: profileGist(profile) }),
 });

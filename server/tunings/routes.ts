@@ -4,7 +4,6 @@ import { sendStored } from "#server/http/send-stored.ts";
 import type { Parts } from "#server/parts.ts";
 import { layerDiff } from "#server/tunings/layer-diff.ts";
 import * as service from "#server/tunings/service.ts";
-import { tunedName } from "#server/tunings/tuned-name.ts";
 import {
   createTuning,
   downloadTunedFile,
@@ -41,8 +40,7 @@ export function tuningRoutes({ db, workshop }: Pick<Parts, "db" | "workshop">): 
     layerDiff(storage, await service.doneTuning(db, actor.teamId, params.id), params.index),
   );
   mount(router, downloadTunedFile, async ({ actor, params, request, response }) => {
-    const { sha256, row } = await service.downloadable(db, actor, params.id);
-    const fileName = tunedName(row.toolpath.name);
+    const { sha256, fileName } = await service.downloadable(db, actor, params.id);
     await sendStored(request, response, storage, { sha256, type: "text/x-gcode", fileName });
   });
   return router;

@@ -110,7 +110,7 @@ export function tunedBytesOf({ tuning }: DoneTuning): string {
 }
 
 /** The file may leave the server once its taker knows the machine's dangers. @throws AppError `acknowledge-first` */
-export async function downloadable(db: Db, caller: Tuner, id: string): Promise<{ sha256: string; row: DoneTuning }> {
+export async function downloadable(db: Db, caller: Tuner, id: string): Promise<{ sha256: string; fileName: string }> {
   const row = await doneTuning(db, caller.teamId, id);
   const sha256 = tunedBytesOf(row);
   if (!(await acknowledges(db, caller, row.reading)))
@@ -119,7 +119,7 @@ export async function downloadable(db: Db, caller: Tuner, id: string): Promise<{
       `You have not acknowledged the cautions of ${row.machineName}, version ${row.reading.machineVersion}.`,
       { remedy: "Go through the checklist on the machine's page, then download again." },
     );
-  return { sha256, row };
+  return { sha256, fileName: tuningView(row, true).fileName };
 }
 
 async function findTuning(db: Db, teamId: string, id: string): Promise<queries.TuningRow> {

@@ -27,7 +27,7 @@ export function tuningView(row: TuningRow, acknowledged: boolean): Tuning {
     ...(tunedSha256 === null || tunedBytes === null ? {} : { tuned: { sha256: tunedSha256, bytes: tunedBytes } }),
     ...(planned === null ? {} : { plan: planned }),
     ...(proven === null ? {} : { proof: proven }),
-    fileName: tunedName(toolpath.name),
+    fileName: tunedName(toolpath.name, { name: row.profileName, version: tuning.profileVersion }),
     acknowledged,
   };
 }

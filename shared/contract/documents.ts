@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { Id, Instant, Note, VersionNumber } from "#shared/contract/common.ts";
+import { MachineGist, PolymerGist, ProfileGist } from "#shared/contract/gists.ts";
 
 /** What is known of a version without its document. Versions are never changed or removed. */
 export const VersionHead = z.object({
@@ -24,6 +25,10 @@ export const DocumentSummary = z.object({
   latest: VersionHead,
   /** only of profiles: numbers of the approved versions, ascending */
   approved: z.array(VersionNumber).optional(),
+  /** what the latest version says, as far as lists show it; the one of its kind */
+  machine: MachineGist.optional(),
+  profile: ProfileGist.optional(),
+  polymer: PolymerGist.optional(),
 });
 export type DocumentSummary = z.infer<typeof DocumentSummary>;
 

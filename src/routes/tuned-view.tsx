@@ -104,6 +104,11 @@ function Planned({ tuning, reading, plan, machine, profile }: PlannedProps) {
         beside={
           <PlanInspector layer={layer} channels={machine.channels} plan={{ ...plan, advice }}>
             {prediction.ofLayer(layer)}
+            {layer && polymer && (
+              <p className="text-fine text-soft">
+                {`Predicted with the card of ${polymer.name} as it is now, and the machine and profile as they were.`}
+              </p>
+            )}
           </PlanInspector>
         }
       />

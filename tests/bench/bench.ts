@@ -4,8 +4,10 @@ import { tmpdir } from "node:os";
 import { dirname, join as joinPath } from "node:path";
 import { fileURLToPath } from "node:url";
 import { parseMachine } from "#shared/formats/machine.ts";
+import { parsePolymer } from "#shared/formats/polymer.ts";
 import { parseProfile } from "#shared/formats/profile.ts";
 import { planDuties } from "#shared/plan/plan-duties.ts";
+import { predictPlan } from "#shared/plan/predict-plan.ts";
 import { analysisRatio, dialectCosts, join } from "#tests/bench/analysis.ts";
 import { generateToolpath } from "#tests/bench/generate-toolpath.ts";
 import { median, milliseconds, shuffledRounds } from "#tests/bench/statistics.ts";
@@ -18,6 +20,7 @@ import { median, milliseconds, shuffledRounds } from "#tests/bench/statistics.ts
 const quick = process.argv.includes("--quick");
 const machine = parseMachine(JSON.parse(readFileSync("samples/machines/tern.json", "utf8")));
 const profile = parseProfile(JSON.parse(readFileSync("tests/bench/profile.json", "utf8")));
+const polymer = parsePolymer(JSON.parse(readFileSync("samples/polymers/peek.json", "utf8")));
 const folder = mkdtempSync(joinPath(tmpdir(), "quenchline-bench-"));
 const jobFile = joinPath(dirname(fileURLToPath(import.meta.url)), "job.mjs");
 const tuned = joinPath(folder, "tuned.gcode");
@@ -74,6 +77,37 @@ function planMs(): number {
   return median(Array.from({ length: 9 }, once));
 }
 
+/** A prediction with its band, ms. */
+function predictionMs(count: number): number {
+  const layers = Array.from({ length: count }, (_, k) => ({
+    index: k + 1,
+    object: 1,
+    zMm: Math.round((k + 1) * 200) / 1000,
+    heightMm: 0.2,
+    timeS: 22 + 8 * Math.sin(k / 40),
+    depositedLengthMm: 900,
+    areaMm2: 350,
+    outlineMm: 230,
+    nozzleC: 400,
+    bedC: 140,
+    waits: [],
+  }));
+  const plan = planDuties({ layers, machine, profile });
+  const once = (): number => milliseconds(() => predictPlan({ layers, machine, profile, polymer, plan }));
+  for (let warm = 0; warm < 3; warm++) once();
+  return median(Array.from({ length: 7 }, once));
+}
+
+function predictionRows(): Row[] {
+  say("predicting 500 and 5,000 layers, with the band");
+  const [small, large] = [predictionMs(500), predictionMs(5000)];
+  return [
+    { figure: "predicting 500 layers", measured: small, unit: "ms", gate: 50, stretch: 50 },
+    { figure: "predicting 5,000 layers", measured: large, unit: "ms", gate: 500, stretch: 500 },
+    { figure: "cost a layer, 5,000 ÷ 500", measured: large / small / 10, gate: 1.5, stretch: 1.1 },
+  ];
+}
+
 function rows(): Row[] {
   say("analysis against a byte loop, 100 MB in memory");
   const analysis = analysisRatio(join(generateToolpath(quick ? 3e7 : 1e8)), machine, 7);
@@ -104,6 +138,7 @@ function rows(): Row[] {
       stretch: 1,
     },
     { figure: "planning 5,000 layers", measured: planning, unit: "ms", gate: 20, stretch: 20 },
+    ...predictionRows(),
   ];
   return quick ? table : [...table, ...wholeFileRows(hundred)];
 }

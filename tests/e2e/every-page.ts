@@ -15,11 +15,14 @@ export async function everyPage(page: Page, url: string): Promise<string[]> {
     first("profiles", "Seal ring"),
     first("polymers", "PEEK"),
   ]);
-  const mast = await first("profiles", "Mast bracket");
+  const mast = await first("profiles", "Mast bracket, stiff foot");
+  const throughout = await first("profiles", "Mast bracket, stiff throughout");
+  const amorphous = await first("polymers", "PEI");
   return [
     "/",
     `/toolpaths/${toolpath.id}?layer=40`,
     `/readings/${reading}/tune?profile=${mast.id}&layer=40`,
+    `/readings/${reading}/compare?a=${mast.id}&b=${throughout.id}&layer=40`,
     `/tunings/${tuning.id}?layer=4`,
     "/machines",
     "/machines/new",
@@ -33,6 +36,7 @@ export async function everyPage(page: Page, url: string): Promise<string[]> {
     "/polymers",
     "/polymers/new",
     `/polymers/${polymer.id}`,
+    `/polymers/${amorphous.id}`,
     `/polymers/${polymer.id}/edit`,
     "/members",
     "/nowhere",

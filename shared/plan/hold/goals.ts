@@ -1,4 +1,3 @@
-import type { Margins } from "#shared/formats/profile.ts";
 import type { LayerTarget } from "#shared/plan/layer-targets.ts";
 import type { Material, MaterialMargins } from "#shared/polymers/material.ts";
 import type { LayerTable } from "#shared/prediction/layer-table.ts";
@@ -12,10 +11,6 @@ export interface Goals {
   highC: Float64Array;
   /** what is aimed at within the window; moved while the plan is solved */
   aimC: Float64Array;
-}
-
-export function marginsOf(material: Material, profile: Margins | undefined): MaterialMargins {
-  return { ...material.margins, ...profile };
 }
 
 /**

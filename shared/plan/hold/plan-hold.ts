@@ -1,7 +1,7 @@
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Polymer } from "#shared/formats/polymer.ts";
 import type { Profile } from "#shared/formats/profile.ts";
-import { goalsOf, marginsOf } from "#shared/plan/hold/goals.ts";
+import { goalsOf } from "#shared/plan/hold/goals.ts";
 import { holdAdvice } from "#shared/plan/hold/hold-advice.ts";
 import { Lever } from "#shared/plan/hold/lever.ts";
 import { type HoldCase, solveLevers } from "#shared/plan/hold/solver.ts";
@@ -9,6 +9,7 @@ import { layerPlacer } from "#shared/plan/layer-placer.ts";
 import { layerTargets } from "#shared/plan/layer-targets.ts";
 import type { Plan, PlanLayer } from "#shared/plan/plan.ts";
 import { makeModel } from "#shared/prediction/model.ts";
+import { effectiveMargins } from "#shared/prediction/verdicts.ts";
 
 export interface HoldInput {
   /** in print order */
@@ -28,7 +29,7 @@ export interface HoldInput {
  */
 export function planHold({ layers, machine, profile, polymer }: HoldInput): Plan {
   const model = makeModel({ layers: layers.map(known), machine, polymer });
-  const margins = marginsOf(model.material, profile.margins);
+  const margins = effectiveMargins(model.material, profile.margins);
   const warmC = model.material.tgC + margins.aboveTgC;
   const targets = layerTargets(layers, profile);
   const placeAt = layerPlacer(layers, profile.zones);

@@ -132,3 +132,32 @@ test.each([
     expect([body.number, body.document]).toEqual([2, format.parse(sample({ name: "Renamed" }))]);
   },
 );
+
+describe("a list", () => {
+  test("says of each document what its latest version holds", async () => {
+    const machine = await server.as("engineer").post("/api/machines").send({ document: sampleMachine({ name: "Gist" }) });
+    const profile = await server.as("engineer").post("/api/profiles").send({ document: sampleProfile({ name: "Gist" }) });
+    const polymer = await server.as("engineer").post("/api/polymers").send({ document: samplePolymer({ name: "Gist" }) });
+    const listed = async (resource: string, { id }: { id: string }) => {
+      const { body } = await server.as("viewer").get(`/api/${resource}`).expect(200);
+      return body.find((entry: { id: string }) => entry.id === id);
+    };
+    const { channels } = machine.body.document;
+    expect((await listed("machines", machine.body)).machine.channels).toEqual(
+      channels.map(({ id, kind }: { id: string; kind: string }) => ({ id, kind })),
+    );
+    const { zones } = profile.body.document;
+    const gist = (await listed("profiles", profile.body)).profile;
+    expect(gist.polymer).toBe(profile.body.document.polymer);
+    expect(gist.zones.map(({ name }: { name: string }) => name)).toEqual(zones.map(({ name }: { name: string }) => name));
+    expect((await listed("polymers", polymer.body)).polymer.tgC).toBe(polymer.body.document.tgC.value);
+
+    const wanted = { ...profile.body.document, polymer: "Another" };
+    await server
+      .as("engineer")
+      .post(`/api/profiles/${profile.body.id}/versions`)
+      .send({ basedOn: 1, document: wanted })
+      .expect(201);
+    expect((await listed("profiles", profile.body)).profile.polymer).toBe("Another");
+  });
+});

@@ -124,11 +124,22 @@ test("a tuning whose proof failed keeps its plan and proof, but has no file and 
 });
 
 test.each([
-  ["part.gcode", "part.tuned.gcode"],
-  ["part.v2.g", "part.v2.tuned.g"],
-  ["part.tuned.gcode", "part.tuned.gcode"],
-  ["part", "part.tuned.gcode"],
-  [".gcode", ".gcode.tuned.gcode"],
+  ["part.gcode", "part.seal-ring-v2.tuned.gcode"],
+  ["part.v2.g", "part.v2.seal-ring-v2.tuned.g"],
+  ["part.tuned.gcode", "part.seal-ring-v2.tuned.gcode"],
+  ["part.mast-bracket-v11.tuned.gcode", "part.seal-ring-v2.tuned.gcode"],
+  ["part", "part.seal-ring-v2.tuned.gcode"],
+  [".gcode", ".gcode.seal-ring-v2.tuned.gcode"],
 ])("the tuned file of %s is called %s", (original, name) => {
-  expect(tunedName(original)).toBe(name);
+  expect(tunedName(original, { name: "Seal ring", version: 2 })).toBe(name);
+});
+
+test.each([
+  ["Seal ring, stiff base", "seal-ring-stiff-base"],
+  ["Düse – für PEEK", "duse-fur-peek"],
+  ["封", "profile"],
+  [`${"long ".repeat(20)}name`, "long-long-long-long-long-long-long-long-long"],
+  ["x".repeat(60), "x".repeat(24)],
+])("the profile %s is %s in a file's name", (name, slug) => {
+  expect(tunedName("part.gcode", { name, version: 1 })).toBe(`part.${slug}-v1.tuned.gcode`);
 });

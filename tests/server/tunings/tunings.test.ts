@@ -41,7 +41,9 @@ describe.each(Object.keys(SAMPLES) as SampleName[])("the sample %s", (name) => {
   test("is tuned, proven, and downloaded whole and in parts", async () => {
     const { machine, tuning } = await tuneSample(server, name);
     expect(tuning).toMatchObject({ state: "done", status: "trial-only", proof: { passed: true }, acknowledged: false });
-    expect(tuning.fileName).toBe(`${name}.tuned.gcode`);
+    const slug = tuning.profileName.toLowerCase().replaceAll(/[^a-z0-9]+/g, "-");
+    expect(slug).not.toBe("");
+    expect(tuning.fileName).toBe(`${name}.${slug}-v1.tuned.gcode`);
     const file = `/api/tunings/${tuning.id}/file`;
     const refused = await server.as("engineer").get(file).expect(409);
     expect(refused.body.code).toBe("acknowledge-first");
@@ -50,7 +52,7 @@ describe.each(Object.keys(SAMPLES) as SampleName[])("the sample %s", (name) => {
     const { body, headers } = await rawGet("engineer", file).expect(200);
     const whole = body as Buffer;
     expect(createHash("sha256").update(whole).digest("hex")).toBe(tuning.tuned!.sha256);
-    expect(headers["content-disposition"]).toContain(`filename="${name}.tuned.gcode"`);
+    expect(headers["content-disposition"]).toContain(`filename="${tuning.fileName}"`);
     expect(headers.etag).toBe(`"${tuning.tuned!.sha256}"`);
 
     const part = await rawGet("engineer", file, { Range: "bytes=1000-4999", "If-Range": headers.etag }).expect(206);
