@@ -13,15 +13,20 @@ export interface Steps {
  */
 const FIRST_SHARE = 0.4;
 const GROWTH = 1.5;
+/** A layer shorter than so many crossings ends while heat still runs, and sees its last step: its steps grow less. */
+const SHORT_CROSSINGS = 40;
+const SHORT_GROWTH = 1.3;
 const COOLING_GROWTH = 1.3;
 const LONGEST_COOLING_S = 60;
 
 /** Steps that add up to a layer's time. */
 export function layerSteps(timeS: number, heightM: number, material: Material): Steps {
   if (!(timeS > 0)) return { count: 0, firstS: 0, growth: GROWTH };
-  const firstS = FIRST_SHARE * crossingS(heightM, material);
-  const count = Math.max(1, Math.ceil(Math.log1p(((GROWTH - 1) * timeS) / firstS) / Math.log(GROWTH)));
-  return { count, firstS: (timeS * (GROWTH - 1)) / (GROWTH ** count - 1), growth: GROWTH };
+  const crossing = crossingS(heightM, material);
+  const firstS = FIRST_SHARE * crossing;
+  const growth = timeS < SHORT_CROSSINGS * crossing ? SHORT_GROWTH : GROWTH;
+  const count = Math.max(1, Math.ceil(Math.log1p(((growth - 1) * timeS) / firstS) / Math.log(growth)));
+  return { count, firstS: (timeS * (growth - 1)) / (growth ** count - 1), growth };
 }
 
 /** How many layers deep the heat of a fresh layer shows within its time: further than this, a step for the whole layer is exact to 0.1 K. */
