@@ -52,6 +52,8 @@ export class LineScan {
   next = 0;
   /** 1-based number of the line in the file, counted by the caller */
   line = 0;
+  /** lines so far that ended in CR LF */
+  crlf = 0;
   /** the line was a plain G0 or G1 move: all fields but mask, textEnd and next hold what that implies */
   plain = false;
   /** value of each letter; meaningful only where its bit is set in `mask` and clear in `bare` */
@@ -228,7 +230,9 @@ export function scanLine(buf: Uint8Array, start: number, out: LineScan): number 
   out.mCount = mCount;
   if (buf[p] !== LF && buf[p] !== CR) p = endOfLine(buf, p);
   out.textEnd = p;
-  const next = buf[p] === CR && buf[p + 1] === LF ? p + 2 : p + 1;
+  const pair = buf[p] === CR && buf[p + 1] === LF;
+  if (pair) out.crlf++;
+  const next = pair ? p + 2 : p + 1;
   out.next = next;
   return next;
 }
@@ -282,11 +286,14 @@ function scanPlainMove(buf: Uint8Array, start: number, out: LineScan): boolean {
     value[letter] = negative ? -number : number;
     mask |= wordBit;
   }
-  if (c !== LF && (c !== CR || buf[p + 1] !== LF)) return false;
+  if (c !== LF) {
+    if (c !== CR || buf[p + 1] !== LF) return false;
+    out.crlf++;
+    out.next = p + 2;
+  } else out.next = p + 1;
   value[G] = g;
   out.mask = mask;
   out.textEnd = p;
-  out.next = c === LF ? p + 1 : p + 2;
   if (!out.plain) out.makePlain(g);
   return true;
 }

@@ -49,7 +49,6 @@ export class ToolpathReader {
     this.lines(buf, from, to, fileOffset, open),
   );
   private readonly scan = new LineScan();
-  private crlf = 0;
   private cr = 0;
   private numbered = false;
   private lastNumber = -1;
@@ -125,7 +124,8 @@ export class ToolpathReader {
   }
 
   private newline(finalNewline: boolean): Reading["file"]["newline"] {
-    const { crlf, cr } = this;
+    const { cr } = this;
+    const { crlf } = this.scan;
     const lf = this.scan.line - crlf - cr - (finalNewline ? 0 : 1);
     const kinds = [lf > 0, crlf > 0, cr > 0].filter(Boolean).length;
     if (kinds === 0) return "none";
@@ -146,7 +146,6 @@ export class ToolpathReader {
     const { scan } = this;
     const next = scanLine(buf, start, scan);
     scan.line++;
-    if (next - scan.textEnd === 2) this.crlf++;
     if (scan.plain) this.interpreter.run(scan);
     else this.otherLine(buf, start);
     return next;
