@@ -1,7 +1,8 @@
 import { type Column, columnText } from "#server/cli/table.ts";
-import { counted, durationText, sizeText } from "#server/cli/terminal.ts";
+import { counted, sizeText } from "#server/cli/terminal.ts";
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Finding, Layer, Reading, Wait } from "#shared/layers/reading.ts";
+import { durationText } from "#shared/units/words.ts";
 
 /** Widest line of the table, in characters. */
 const WIDTH = 120;
@@ -19,7 +20,7 @@ export function layerTable(name: string, reading: Reading, machine: Machine): st
     ...columnText(columns, layers.length),
     "",
     `${counted(totals.layers, "layer")}, print time ${durationText(totals.printTimeS)}, filament ${totals.filamentMm.toFixed(1)} mm`,
-    "Times leave waits out. Duties are means over the layer; ~ marks those that change within it.",
+    "Times leave waits out. Duties are 0–1, means over the layer; ~ marks those that change within it.",
     ...(left.length === 0 ? [] : [`No room for ${left.join(", ")}: --json has every channel.`]),
     ...(findings.length === 0 ? [] : ["", "Findings", ...findings.map(findingText)]),
   ];
@@ -68,9 +69,9 @@ function channelColumns(layers: readonly Layer[], machine: Machine): { shown: Co
 function dutyColumn(id: string, layers: readonly Layer[]): Column {
   const cell = (row: number) => {
     const { mean, min, max } = layers[row].duty[id];
-    return `${(100 * mean).toFixed(1)}${min === max ? " " : "~"}`;
+    return `${mean.toFixed(2)}${min === max ? " " : "~"}`;
   };
-  return { head: [`${id} `, "% "], align: "right", cell };
+  return { head: [`${id} `, ""], align: "right", cell };
 }
 
 function waitsColumn(layers: readonly Layer[]): Column {

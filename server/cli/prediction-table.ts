@@ -34,8 +34,8 @@ export function predictionTable(subject: Predicted): string {
     "",
     "temp.: of the layer just before the next one covers it; low and high are worst cases, all uncertain inputs at one",
     "end. contact: where it meets what lies below; ! does not weld. solid: time from the layer's begin, - where it is",
-    "covered first. >Tg: time above Tg, cooling included. cryst.: absolute, after cooling. Behind the state, where the",
-    "zone has a target: + reached over the whole band, ~ within it, - not.",
+    "covered first. >Tg: time above Tg, cooling included. cryst.: absolute, after cooling. Duties and crystallinity are",
+    "0–1. Behind the state, where the zone has a target: + reached over the whole band, ~ within it, - not.",
     calibration === "uncalibrated"
       ? "Uncalibrated: nothing was fitted to readings of this machine."
       : `Calibration: ${calibration}.`,
@@ -59,8 +59,8 @@ function columns({ layers, machine, profile, plan, prediction }: Predicted): Col
     align: "right",
     cell: (row) => cell(predicted[row]),
   });
-  const number = (value: number | null | undefined, decimals: number, scale = 1): string =>
-    value === null || value === undefined ? "-" : (value * scale).toFixed(decimals);
+  const number = (value: number | null | undefined, decimals: number): string =>
+    value === null || value === undefined ? "-" : value.toFixed(decimals);
   const fixed = [
     column("layer", "", ({ index }) => String(index)),
     { head: ["z", "mm"], align: "right", cell: (row) => layers[row].zMm.toFixed(2) },
@@ -73,9 +73,9 @@ function columns({ layers, machine, profile, plan, prediction }: Predicted): Col
     column("contact", "°C", ({ contactC, verdicts }) => `${number(contactC, 0)}${verdicts.welds ? " " : "!"}`),
     column("solid", "s", ({ timeToSolidS }) => number(timeToSolidS, 1)),
     column(">Tg", "s", ({ timeAboveTgS }) => number(timeAboveTgS, 0)),
-    column("cryst.", "%", ({ crystallinity }) => number(crystallinity, 1, 100)),
-    column("low", "%", ({ band }) => number(band?.crystallinity[0], 1, 100)),
-    column("high", "%", ({ band }) => number(band?.crystallinity[1], 1, 100)),
+    column("cryst.", "", ({ crystallinity }) => number(crystallinity, 3)),
+    column("low", "", ({ band }) => number(band?.crystallinity[0], 3)),
+    column("high", "", ({ band }) => number(band?.crystallinity[1], 3)),
     { head: ["state", ""], align: "left", cell: (row) => stateText(predicted[row]) },
   ] satisfies Column[];
   const widthOf = (some: Column[]) =>
@@ -83,7 +83,7 @@ function columns({ layers, machine, profile, plan, prediction }: Predicted): Col
   let room = WIDTH - widthOf([...fixed, ...results]);
   const duties: Column[] = [];
   for (const { id } of drivenChannels(machine, profile)) {
-    const duty: Column = { head: [id, "%"], align: "right", cell: (row) => number(plan.layers[row].duty[id], 0, 100) };
+    const duty: Column = { head: [id, ""], align: "right", cell: (row) => number(plan.layers[row].duty[id], 2) };
     room -= widthOf([duty]) + 2;
     if (room >= 0) duties.push(duty);
   }

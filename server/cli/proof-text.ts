@@ -1,5 +1,6 @@
 import { counted } from "#server/cli/terminal.ts";
 import type { Check, ProofDocument } from "#shared/formats/proof.ts";
+import { countText } from "#shared/units/words.ts";
 
 /** What `prove` shows people: every check, and how the lines were counted. */
 export function proofText(originalName: string, tunedName: string, proof: ProofDocument): string {
@@ -21,9 +22,9 @@ export function failedChecks({ checks }: ProofDocument): string {
   return `${checkLines(checks.filter(({ passed }) => !passed)).join("\n")}\n${failure(checks)}\n`;
 }
 
-/** `17,520 kept, 2 taken out, 101 put in` */
+/** `17 520 kept, 2 taken out, 101 put in` */
 export function lineCounts({ kept, removed, inserted, renumbered }: ProofDocument): string {
-  const number = ({ lines }: { lines: number }) => lines.toLocaleString("en-US");
+  const number = ({ lines }: { lines: number }) => countText(lines);
   const again = renumbered.lines === 0 ? "" : `, ${number(renumbered)} renumbered`;
   return `${number(kept)} kept, ${number(removed)} taken out, ${number(inserted)} put in${again}`;
 }

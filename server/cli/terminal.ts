@@ -1,4 +1,5 @@
 import { obstacle } from "#server/cli/obstacle.ts";
+import { countText } from "#shared/units/words.ts";
 
 const UNPRINTABLE = /[\p{Cc}\p{Cs}\u202a-\u202e\u2066-\u2069]/gu;
 
@@ -23,9 +24,9 @@ export function print(text: string): Promise<void> {
   });
 }
 
-/** `1 line`, `12,345 lines` */
+/** `1 line`, `12 345 lines` */
 export function counted(count: number, one: string, many = `${one}s`): string {
-  return `${count.toLocaleString("en-US")} ${count === 1 ? one : many}`;
+  return `${countText(count)} ${count === 1 ? one : many}`;
 }
 
 /** Size with three digits, in units of 1000 as disks are sold. */
@@ -38,13 +39,4 @@ export function sizeText(bytes: number): string {
     units.shift();
   }
   return `${value.toPrecision(3)} ${units[0]}`;
-}
-
-/** `4:05 min` or `2:04:05 h` */
-export function durationText(timeS: number): string {
-  const whole = Math.round(timeS);
-  const two = (part: number) => String(part).padStart(2, "0");
-  const minutes = Math.floor(whole / 60) % 60;
-  const seconds = two(whole % 60);
-  return whole < 3600 ? `${minutes}:${seconds} min` : `${Math.floor(whole / 3600)}:${two(minutes)}:${seconds} h`;
 }

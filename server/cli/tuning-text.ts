@@ -1,10 +1,11 @@
 import { lineCounts } from "#server/cli/proof-text.ts";
-import { counted, durationText, sizeText } from "#server/cli/terminal.ts";
+import { counted, sizeText } from "#server/cli/terminal.ts";
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Profile } from "#shared/formats/profile.ts";
 import type { ProofDocument } from "#shared/formats/proof.ts";
 import type { Finding, Reading } from "#shared/layers/reading.ts";
 import type { Tuning } from "#shared/rewrite/prepare-tuning.ts";
+import { durationText } from "#shared/units/words.ts";
 
 interface Tuned {
   machine: Machine;

@@ -6,6 +6,7 @@ import { tableBytes } from "#server/storage/number-table.ts";
 import { layersCsv } from "#server/toolpaths/layers-csv.ts";
 import type { StoredFile } from "#shared/contract/common.ts";
 import type { Machine } from "#shared/formats/machine.ts";
+import { outlineOf } from "#shared/layers/outline.ts";
 import { ToolpathReader } from "#shared/layers/read-toolpath.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import { readingDocument } from "#shared/layers/reading-document.ts";
@@ -59,5 +60,6 @@ function summaryOf({ file, totals, layers, findings }: Reading): ReadResult["sum
     depositedLengthMm: totals.depositedLengthMm,
     filamentMm: totals.filamentMm,
     warnings: findings.filter(({ severity }) => severity === "warning").length,
+    outline: outlineOf(layers),
   };
 }

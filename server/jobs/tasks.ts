@@ -1,6 +1,7 @@
 import type { Staged } from "#server/storage/storage.ts";
 import type { RefusalReport, StoredFile } from "#shared/contract/common.ts";
 import type { Reading as ReadingRow } from "#shared/contract/toolpaths.ts";
+import type { Tuning } from "#shared/contract/tunings.ts";
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Polymer } from "#shared/formats/polymer.ts";
 import type { Profile } from "#shared/formats/profile.ts";
@@ -44,7 +45,7 @@ export interface TuneResult {
   changes: Staged;
   places: Staged;
   edits: Staged;
-  planned: { layers: number; advice: number };
+  planned: NonNullable<Tuning["plan"]>;
   proven: { passed: boolean; checks: number };
 }
 

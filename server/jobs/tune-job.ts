@@ -7,6 +7,7 @@ import { layerPlaces, readStored } from "#server/jobs/read-job.ts";
 import type { TuneResult, TuneTask } from "#server/jobs/tasks.ts";
 import { tableBytes } from "#server/storage/number-table.ts";
 import type { Staged } from "#server/storage/storage.ts";
+import { bandTargets } from "#server/tunings/band-targets.ts";
 import { editRow, layerRow, PlaceFinder } from "#server/tunings/tuned-places.ts";
 import { writePlan } from "#shared/formats/plan.ts";
 import { type ProofDocument, writeProof } from "#shared/formats/proof.ts";
@@ -42,7 +43,11 @@ export async function tuneJob(task: TuneTask, context: JobContext): Promise<Tune
     changes: await stageText(context, JSON.stringify(changed)),
     places: await stageBytes(context, tableBytes(layers.map(layerRow))),
     edits: await stageBytes(context, tableBytes(edits.map(editRow))),
-    planned: { layers: tuning.plan.layers.length, advice: tuning.plan.advice.length },
+    planned: {
+      layers: tuning.plan.layers.length,
+      advice: tuning.plan.advice.length,
+      targets: bandTargets(reading.layers, task.profile),
+    },
     proven: { passed: proof.passed, checks: proof.checks.length },
   };
 }

@@ -23,6 +23,7 @@ export function tuningView(row: TuningRow, acknowledged: boolean): Tuning {
     createdAt: tuning.createdAt.toISOString(),
     createdBy: row.createdBy,
     original: { sha256: toolpath.sha256, bytes: toolpath.bytes },
+    ...(reading.summary?.outline && { outline: reading.summary.outline }),
     ...(job.refusal === null ? {} : { refusal: job.refusal }),
     ...(tunedSha256 === null || tunedBytes === null ? {} : { tuned: { sha256: tunedSha256, bytes: tunedBytes } }),
     ...(planned === null ? {} : { plan: planned }),

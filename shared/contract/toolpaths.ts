@@ -4,6 +4,14 @@ import { endpoint } from "#shared/contract/endpoint.ts";
 import { JobState } from "#shared/contract/jobs.ts";
 import { ReadingDocument } from "#shared/formats/reading.ts";
 
+/** The part from the side, coarsely: bands from the bottom up, each reaching from left to right as shares of the width. */
+export const PartOutline = z.object({
+  widthMm: z.number(),
+  heightMm: z.number(),
+  bands: z.array(z.tuple([z.number(), z.number()]).nullable()),
+});
+export type PartOutline = z.infer<typeof PartOutline>;
+
 /** A toolpath read with one version of a machine. */
 export const Reading = z.object({
   id: Id,
@@ -26,6 +34,8 @@ export const Reading = z.object({
       depositedLengthMm: z.number(),
       filamentMm: z.number(),
       warnings: Count,
+      /** left out in readings made before there were outlines */
+      outline: PartOutline.optional(),
     })
     .optional(),
 });

@@ -2,7 +2,7 @@ import { z } from "zod";
 import { Count, Id, Instant, RefusalReport, StoredFile, VersionNumber } from "#shared/contract/common.ts";
 import { endpoint } from "#shared/contract/endpoint.ts";
 import { JobState } from "#shared/contract/jobs.ts";
-import { LayerLines } from "#shared/contract/toolpaths.ts";
+import { LayerLines, PartOutline } from "#shared/contract/toolpaths.ts";
 import { PlanDocument } from "#shared/formats/plan.ts";
 import { ProofDocument } from "#shared/formats/proof.ts";
 
@@ -25,11 +25,19 @@ export const Tuning = z.object({
   createdAt: Instant,
   createdBy: z.string(),
   original: StoredFile,
+  outline: PartOutline.optional(),
   /** of state `refused` */
   refusal: RefusalReport.optional(),
   /** of state `done`, as are the next two */
   tuned: StoredFile.optional(),
-  plan: z.object({ layers: Count, advice: Count }).optional(),
+  plan: z
+    .object({
+      layers: Count,
+      advice: Count,
+      /** what the profile wants of each band of the toolpath's outline; left out in tunings made before there were any */
+      targets: z.array(z.enum(["amorphous", "semi-crystalline", "undecided", "none"])).optional(),
+    })
+    .optional(),
   proof: z.object({ passed: z.boolean(), checks: Count }).optional(),
   /** the name it is downloaded under */
   fileName: z.string(),

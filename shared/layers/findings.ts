@@ -23,14 +23,15 @@ export class Findings {
     return this.counts.get(code) ?? 0;
   }
 
-  /** In file order; a kind with more than what is kept ends with a line that counts the rest. */
+  /** In file order; behind the last one kept of a kind, what is not kept is counted. */
   end(): Finding[] {
-    const rest = [...this.counts]
-      .filter(([, count]) => count > KEPT)
-      .map(([code, count]): Finding => {
-        const { severity } = this.list.find((finding) => finding.code === code)!;
-        return { code, severity, message: `and ${count - KEPT} more findings "${code}" (${count} in all)` };
-      });
-    return [...this.list.sort((a, b) => (a.line ?? 0) - (b.line ?? 0)), ...rest];
+    const sorted = this.list.sort((a, b) => (a.line ?? 0) - (b.line ?? 0));
+    return sorted.flatMap((finding, position) => {
+      const { code, severity } = finding;
+      const count = this.count(code);
+      const goesOn = count <= KEPT || sorted.findLastIndex((other) => other.code === code) !== position;
+      const message = `and ${count - KEPT} more like it, ${count} in all`;
+      return goesOn ? [finding] : [finding, { code, severity, message }];
+    });
   }
 }

@@ -1,6 +1,8 @@
-/** `1 line`, `12 lines`. */
+import { countText } from "#shared/units/words.ts";
+
+/** `1 line`, `12 lines`, `46 732 lines`. */
 export function counted(count: number, one: string, several = `${one}s`): string {
-  return `${count} ${count === 1 ? one : several}`;
+  return `${countText(count)} ${count === 1 ? one : several}`;
 }
 
 /** A duty 0-1 to the nearest thousandth: `0.62`. */

@@ -40,7 +40,6 @@ const WORDS: Record<string, string | readonly [words: string, unit: string]> = {
   "motion.axes.e.maxSpeedMmS": ["E, top speed", "mm/s"],
   "motion.axes.e.maxAccelMmS2": ["E, acceleration", "mm/s²"],
   "motion.extruderLimits": "Limits of E hold for",
-  "motion.cornering": "Corners",
   "motion.cornering.rule": "Corners by",
   "motion.cornering.speedMmS": ["Speed through a right angle", "mm/s"],
   "motion.cornering.cruiseRatio": ["Least cruised share of a move", "0–1"],
@@ -85,8 +84,8 @@ const WORDS: Record<string, string | readonly [words: string, unit: string]> = {
   // profiles
   "zones.*": "Zone {}",
   "zones.*.name": "Name",
-  "zones.*.from": "From",
-  "zones.*.to": "To",
+  "zones.*.from": "Above",
+  "zones.*.to": "Up to",
   "zones.*.unit": "Borders in",
   "zones.*.target": "Target",
   "zones.*.pattern": "Target",
@@ -96,7 +95,7 @@ const WORDS: Record<string, string | readonly [words: string, unit: string]> = {
   "zones.*.pattern.first": "first in turn",
   "zones.*.pattern.from": "at the bottom",
   "zones.*.pattern.to": "at the top",
-  "zones.*.rampMm": ["Ramps in over", "mm"],
+  "zones.*.rampMm": ["Ramp", "mm"],
   "zones.*.cooling": "Cooling",
   "zones.*.heating": "Heating",
   "zones.*.cooling.*": "Cooling {}",
@@ -151,10 +150,10 @@ function rule(path: string): typeof WORDS {
     [`${path}.channel`]: "channel",
     [`${path}.rule`]: "rule",
     [`${path}.duty`]: ["duty", "0–1"],
-    [`${path}.over`]: "curve over",
+    [`${path}.over`]: "read over",
     [`${path}.points`]: "curve",
-    [`${path}.points.*`]: "point {}",
-    [`${path}.baseDuty`]: ["duty it does not go below", "0–1"],
+    [`${path}.points.*`]: "point {} of the curve",
+    [`${path}.baseDuty`]: ["base duty", "0–1"],
   };
 }
 
@@ -171,6 +170,9 @@ export function unitOf(pattern: string): string | undefined {
   const entry = WORDS[pattern];
   return entry === undefined || typeof entry === "string" ? undefined : entry[1];
 }
+
+/** A field's label and unit. */
+export const named = (pattern: string) => ({ label: wordsOf(pattern), unit: unitOf(pattern) });
 
 /** What chosen words of a document are called; a word that is not here stands for itself. */
 const CHOICES: Record<string, string> = {

@@ -1,3 +1,4 @@
+import { countText } from "#shared/units/words.ts";
 import { fixedText } from "#src/lib/number-text.ts";
 
 /** As wide as a digit where every sign is: keeps decimal points one under the other. */
@@ -6,15 +7,6 @@ const BLANK = "\u00a0";
 /** A number with its own count of decimals, padded as if it had `upTo`: for columns of unlike quantities. */
 export function aligned(value: number, decimals: number, upTo: number): string {
   return fixedText(value, decimals) + BLANK.repeat(upTo - decimals + (decimals === 0 && upTo > 0 ? 1 : 0));
-}
-
-/** A span of time as a person would say it: 7.4 s, 4 min 12 s, 3 h 04 min. */
-export function duration(seconds: number): string {
-  if (seconds < 60) return `${fixedText(seconds, 1)} s`;
-  const whole = Math.round(seconds);
-  if (whole < 3600) return `${Math.floor(whole / 60)} min ${two(whole % 60)} s`;
-  const minutes = Math.round(seconds / 60);
-  return `${Math.floor(minutes / 60)} h ${two(minutes % 60)} min`;
 }
 
 /** Decimal units, as disks and slicers count. */
@@ -37,9 +29,9 @@ export function moment(iso: string): string {
   return `${at.getFullYear()}-${two(at.getMonth() + 1)}-${two(at.getDate())} ${two(at.getHours())}:${two(at.getMinutes())}`;
 }
 
-/** "1 layer", "45 layers" */
-export function counted(count: number, noun: string): string {
-  return `${count.toLocaleString("en").replaceAll(",", "\u202f")} ${noun}${count === 1 ? "" : "s"}`;
+/** "1 layer", "45 layers", "46 732 lines"; without a noun only the number. Thousands stand apart by a thin space. */
+export function counted(count: number, noun?: string): string {
+  return noun === undefined ? countText(count) : `${countText(count)} ${noun}${count === 1 ? "" : "s"}`;
 }
 
 function two(value: number): string {

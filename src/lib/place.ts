@@ -35,13 +35,22 @@ export function placeOf(path: string, document?: unknown): Place {
 
 /** A place in words, from the outermost in: `["Zone base", "Heating lamp", "duty"]`; empty for the document as a whole. */
 export function placeWords(place: Place): string[] {
-  return resolved(place).flatMap(({ pattern, name }) => (hasWords(pattern) ? wordsOf(pattern).replace("{}", name) : []));
+  const steps = resolved(place);
+  return steps.flatMap(({ pattern, name }, position) => {
+    const next = steps[position + 1]?.pattern;
+    // "Heating lamp" says heating already.
+    if (next === `${pattern}.*` && hasWords(next)) return [];
+    if (hasWords(pattern)) return wordsOf(pattern).replace("{}", name);
+    return COMMON.includes(name) ? name : [];
+  });
 }
 
 /** The same as a sentence's beginning: `Zone base, heating lamp, duty`. */
 export function placeText(place: Place): string {
+  if (place.length === 0) return "The document";
   const words = placeWords(place);
-  if (words.length === 0) return place.length === 0 ? "The document" : lastName(place);
+  // What our documents don't know has no words: its own name has to do.
+  if (words.length === 0) return nameOf(place[place.length - 1]);
   return words.map((word, position) => (position === 0 ? word : lowered(word))).join(", ");
 }
 
@@ -49,8 +58,24 @@ export function placeText(place: Place): string {
 export function placeUnit(place: Place): string | undefined {
   return resolved(place)
     .map(({ pattern }) => unitOf(pattern))
-    .findLast((unit) => unit !== undefined);
+    .filter((unit) => unit !== undefined)
+    .at(-1);
 }
+
+/** Parts of a document that belong together on its page. */
+const GROUPS = ["zones.*", "channels.*", "pauses.*", "limits.*", "motion", "thermal", "margins", "crystallinity"];
+
+/** The part of the document a place lies in, in words, and what remains; a place in no part has no group. */
+export function grouped(place: Place): { group?: string; words: string } {
+  const start = resolved(place).findIndex(({ pattern }) => GROUPS.includes(pattern));
+  if (start < 0 || start === place.length - 1) return { words: placeText(place) };
+  const [group, ...rest] = placeWords(place);
+  const words = rest.length === 0 ? nameOf(place[place.length - 1]) : rest.map(lowered).join(", ");
+  return { group, words: words[0].toUpperCase() + words.slice(1) };
+}
+
+/** Fields that mean the same wherever they stand. */
+const COMMON = ["source", "confidence", "low", "typical", "high"];
 
 interface Resolved {
   /** key of the table of words */
@@ -62,19 +87,16 @@ interface Resolved {
 function resolved(place: Place): Resolved[] {
   let pattern = "";
   return place.map((step) => {
-    const name = "field" in step ? step.field : step.entry;
+    const name = nameOf(step);
     const own = pattern === "" ? name : `${pattern}.${name}`;
     const any = `${pattern}.*`;
-    // Channels are keys in some parts of a document and entries in others.
+    // Channels are fields in some parts of a document and entries in others.
     pattern = "field" in step && (hasWords(own) || !hasWords(any)) ? own : any;
     return { pattern, name };
   });
 }
 
-const lastName = (place: Place): string => {
-  const step = place[place.length - 1];
-  return "field" in step ? step.field : step.entry;
-};
+const nameOf = (step: Step): string => ("field" in step ? step.field : step.entry);
 
 /** `Heating lamp` -> `heating lamp`; `Tg`, `E` and `G90` stay. */
 const lowered = (word: string): string => (/^[A-Z][a-z]/.test(word) ? word[0].toLowerCase() + word.slice(1) : word);

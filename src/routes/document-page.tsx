@@ -4,19 +4,14 @@ import { useNavigate, useParams, useSearchParams } from "react-router-dom";
 import type { DocumentHistory } from "#shared/contract/documents.ts";
 import { paths } from "#src/app/paths.ts";
 import { useMay } from "#src/features/auth/session-context.tsx";
-import {
-  approveProfile,
-  type DocumentKind,
-  historyQuery,
-  type Version,
-  versionQuery,
-} from "#src/features/documents/kinds.ts";
+import { type DocumentKind, historyQuery, type Version, versionQuery } from "#src/features/documents/kinds.ts";
 import { SaveDialog } from "#src/features/documents/save-dialog.tsx";
 import { VersionTable } from "#src/features/documents/version-table.tsx";
 import { moment } from "#src/lib/format.ts";
 import { asProblem } from "#src/lib/problem.ts";
 import { documentFileName, saveFile } from "#src/lib/save-file.ts";
 import { usePageTitle } from "#src/lib/use-page-title.ts";
+import { useApproval } from "#src/routes/use-approval.ts";
 import { Button, ButtonLink } from "#src/ui/button.tsx";
 import { ProblemNotice } from "#src/ui/notice.tsx";
 import { PageHead, Section } from "#src/ui/section.tsx";
@@ -79,7 +74,7 @@ function History<D extends { name: string }>({ kind, history, children }: Props<
                 )
               }
             >
-              Export JSON
+              Save document (JSON)
             </Button>
             {may("edit") && (
               <ButtonLink weight="main" to={paths.editDocument(kind.plural, id)}>
@@ -109,14 +104,6 @@ function History<D extends { name: string }>({ kind, history, children }: Props<
       )}
     </>
   );
-}
-
-function useApproval<D extends { name: string }>(kind: DocumentKind<D>, id: string) {
-  const client = useQueryClient();
-  return useMutation({
-    mutationFn: (number: number) => approveProfile(id, number),
-    onSuccess: () => client.invalidateQueries({ queryKey: [kind.plural] }),
-  });
 }
 
 interface RestoreProps<D extends { name: string }> {

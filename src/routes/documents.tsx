@@ -1,14 +1,19 @@
 import { useQuery } from "@tanstack/react-query";
 import { useNavigate } from "react-router-dom";
+import type { DocumentSummary } from "#shared/contract/documents.ts";
 import { paths } from "#src/app/paths.ts";
 import { useMay } from "#src/features/auth/session-context.tsx";
 import { DocumentTable } from "#src/features/documents/document-table.tsx";
 import { ImportButton } from "#src/features/documents/import-button.tsx";
-import { type DocumentKind, documentsQuery } from "#src/features/documents/kinds.ts";
+import { type DocumentKind, documentsQuery, MACHINES } from "#src/features/documents/kinds.ts";
+import { MACHINE_COLUMNS } from "#src/features/machines/machine-columns.tsx";
+import { POLYMER_COLUMNS } from "#src/features/polymers/polymer-columns.tsx";
+import { profileColumns } from "#src/features/profiles/profile-columns.tsx";
 import { usePageTitle } from "#src/lib/use-page-title.ts";
 import { ButtonLink } from "#src/ui/button.tsx";
 import { PageHead } from "#src/ui/section.tsx";
 import { Empty, Loaded } from "#src/ui/states.tsx";
+import type { Column } from "#src/ui/table.tsx";
 
 const INTRODUCTIONS: Record<string, string> = {
   machines:
@@ -23,6 +28,7 @@ export function DocumentsPage<D extends { name: string }>({ kind }: { kind: Docu
   const may = useMay();
   const navigate = useNavigate();
   const query = useQuery(documentsQuery(kind));
+  const columns = useColumns(kind.plural);
   const actions = may("edit") && (
     <>
       <ImportButton kind={kind} onImported={({ id }) => navigate(paths.document(kind.plural, id))} />
@@ -43,11 +49,18 @@ export function DocumentsPage<D extends { name: string }>({ kind }: { kind: Docu
               label={title}
               documents={documents}
               hrefOf={({ id }) => paths.document(kind.plural, id)}
-              withApproval={kind.plural === "profiles"}
+              columns={columns}
             />
           )
         }
       </Loaded>
     </>
   );
+}
+
+/** Beside its name and latest version, what one wants to know of this kind of document. */
+function useColumns(plural: string): readonly Column<DocumentSummary>[] {
+  const machines = useQuery({ ...documentsQuery(MACHINES), enabled: plural === "profiles" });
+  if (plural === "profiles") return profileColumns(machines.data ?? []);
+  return plural === "machines" ? MACHINE_COLUMNS : POLYMER_COLUMNS;
 }

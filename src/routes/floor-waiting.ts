@@ -21,6 +21,16 @@ interface Sources {
   may(permission: Permission): boolean;
 }
 
+export const isWritten = ({ tuned }: Tuning): boolean => tuned !== undefined;
+
+/** What can be done with a toolpath next by who may; undefined while it is being read. */
+export function nextStep({ id, readings }: Toolpath, may: Sources["may"]): { act: string; href: string } | undefined {
+  const reading = readings[0];
+  if (!reading || reading.state === "queued" || reading.state === "running") return undefined;
+  if (reading.state !== "done") return { act: "See why", href: paths.toolpath(id, reading.id) };
+  return may("operate") ? { act: "Tune", href: paths.tune(reading.id) } : undefined;
+}
+
 /** What waits for this person, the most pressing first; what they may not do waits for somebody else. */
 export function waitingItems({ toolpaths = [], tunings = [], profiles = [], may }: Sources): WaitingItem[] {
   const items: WaitingItem[] = [];
@@ -37,23 +47,31 @@ function unreadItems({ id, name, readings }: Toolpath): WaitingItem[] {
   const reading = readings[0];
   if (reading?.state !== "refused" && reading?.state !== "failed") return [];
   const why = reading.refusal ? `not read: ${reading.refusal.message}` : "could not be read: a fault of ours";
-  return [{ key: `read-${id}`, what: name, why, act: "Look", href: paths.toolpath(id, reading.id) }];
+  return [{ key: `read-${id}`, what: name, why, act: "See why", href: paths.toolpath(id, reading.id) }];
 }
 
-function tuningItems({ id, fileName, machineName, state, refusal, acknowledged }: Tuning): WaitingItem[] {
+function tuningItems(tuning: Tuning): WaitingItem[] {
+  const { id, fileName, machineName, profileName, profileVersion, state, refusal, acknowledged } = tuning;
+  const profile = `with ${profileName}, version ${profileVersion}`;
   const item = { key: `tuning-${id}`, what: fileName, href: paths.tuning(id) };
   if (state === "refused" || state === "failed") {
     return [
       {
         ...item,
-        why: refusal ? `not written: ${refusal.message}` : "could not be written: a fault of ours",
-        act: "Look",
+        why: refusal
+          ? `not written ${profile}: ${refusal.message}`
+          : `could not be written ${profile}: a fault of ours`,
+        act: "See why",
       },
     ];
   }
   if (state !== "done" || acknowledged) return [];
   return [
-    { ...item, why: `written; ${machineName} needs your checklist before you can download it`, act: "Go through it" },
+    {
+      ...item,
+      why: `written ${profile}; ${machineName} needs your checklist before you can download it`,
+      act: "Checklist",
+    },
   ];
 }
 

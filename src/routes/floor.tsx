@@ -1,7 +1,7 @@
 import { useQuery } from "@tanstack/react-query";
 import { useNavigate } from "react-router-dom";
 import { paths } from "#src/app/paths.ts";
-import { useMay } from "#src/features/auth/session-context.tsx";
+import { useMay, useSession } from "#src/features/auth/session-context.tsx";
 import { documentsQuery, MACHINES, PROFILES } from "#src/features/documents/kinds.ts";
 import { JobProgress } from "#src/features/jobs/job-progress.tsx";
 import { isUnderWay } from "#src/features/jobs/queries.ts";
@@ -11,7 +11,7 @@ import { ToolpathTable } from "#src/features/toolpaths/toolpath-table.tsx";
 import { tuningsQuery } from "#src/features/tunings/queries.ts";
 import { TuningTable } from "#src/features/tunings/tuning-table.tsx";
 import { usePageTitle } from "#src/lib/use-page-title.ts";
-import { waitingItems } from "#src/routes/floor-waiting.ts";
+import { isWritten, nextStep, waitingItems } from "#src/routes/floor-waiting.ts";
 import { WaitingList } from "#src/routes/floor-waiting-list.tsx";
 import { ButtonLink } from "#src/ui/button.tsx";
 import { PageHead, Section } from "#src/ui/section.tsx";
@@ -19,11 +19,12 @@ import { Empty, Loaded } from "#src/ui/states.tsx";
 
 const RECENT = 12;
 
-/** What is going on: what waits for somebody, what is under way, what came in last. */
+/** What is going on: what is to be done, what is under way, what came in last. */
 export function Floor() {
   usePageTitle("Floor");
   const navigate = useNavigate();
   const may = useMay();
+  const { user } = useSession();
   const machines = useQuery(documentsQuery(MACHINES));
   const profiles = useQuery(documentsQuery(PROFILES));
   const toolpaths = useQuery(toolpathsQuery);
@@ -56,6 +57,7 @@ export function Floor() {
               ) : (
                 <BringIn
                   machines={list}
+                  userId={user.id}
                   onArrived={({ toolpath, reading }, last) => last && navigate(paths.toolpath(toolpath.id, reading.id))}
                 />
               )
@@ -72,8 +74,8 @@ export function Floor() {
           </div>
         </Section>
       )}
-      <Section title="Waits">
-        {items.length > 0 ? <WaitingList items={items} /> : <p className="text-soft">Nothing waits for you.</p>}
+      <Section title="To do">
+        {items.length > 0 ? <WaitingList items={items} /> : <p className="text-soft">Nothing for you to do.</p>}
       </Section>
       <Section title="Toolpaths" note="as sliced">
         <Loaded query={toolpaths} what="Looking for toolpaths">
@@ -81,7 +83,14 @@ export function Floor() {
             list.length === 0 ? (
               <Empty>No toolpath has come in yet.{may("operate") && " Drop one on this page."}</Empty>
             ) : (
-              <ToolpathTable toolpaths={list.slice(0, RECENT)} hrefOf={({ id }) => paths.toolpath(id)} />
+              <ToolpathTable
+                toolpaths={list.slice(0, RECENT)}
+                hrefOf={({ id }) => paths.toolpath(id)}
+                nextOf={(toolpath) => nextStep(toolpath, may)}
+                tunedOf={({ id }) =>
+                  (tunings.data ?? []).filter(isWritten).filter((one) => one.toolpathId === id).length
+                }
+              />
             )
           }
         </Loaded>

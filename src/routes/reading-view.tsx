@@ -2,6 +2,7 @@ import { useQuery } from "@tanstack/react-query";
 import { useMemo, useState } from "react";
 import type { Machine } from "#shared/formats/machine.ts";
 import type { ReadingDocument } from "#shared/formats/reading.ts";
+import { durationText } from "#shared/units/words.ts";
 import { MACHINES, versionQuery } from "#src/features/documents/kinds.ts";
 import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
 import { findingMarks } from "#src/features/layer-log/log-marks.ts";
@@ -11,7 +12,7 @@ import { Findings } from "#src/features/toolpaths/findings.tsx";
 import { LayerLines } from "#src/features/toolpaths/layer-lines.tsx";
 import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
 import { Waits } from "#src/features/toolpaths/waits.tsx";
-import { counted, duration } from "#src/lib/format.ts";
+import { counted } from "#src/lib/format.ts";
 import { fixedText } from "#src/lib/number-text.ts";
 import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
 import { LogBeside } from "#src/routes/log-beside.tsx";
@@ -53,11 +54,11 @@ function Read({ readingId, document, machine }: { readingId: string; document: R
         facts={[
           { label: "Layers", value: totals.layers },
           { label: "Height", value: top ? fixedText(Math.max(...layers.map(({ zMm }) => zMm)), 2) : "–", unit: "mm" },
-          { label: "Print time, without waits", value: duration(totals.printTimeS) },
+          { label: "Print time, without pauses", value: durationText(totals.printTimeS) },
           { label: "Deposited", value: fixedText(totals.depositedLengthMm / 1000, 2), unit: "m" },
           { label: "Travel", value: fixedText(totals.travelLengthMm / 1000, 2), unit: "m" },
           { label: "Filament", value: fixedText(totals.filamentMm / 1000, 3), unit: "m" },
-          { label: "Lines", value: document.file.lines },
+          { label: "Lines", value: counted(document.file.lines) },
         ]}
       />
       <LogBeside
@@ -85,9 +86,19 @@ function Read({ readingId, document, machine }: { readingId: string; document: R
         </Section>
       )}
       <Section title="Findings" note="what looks odd in the file">
-        <Findings findings={findings} onPin={pin} />
+        <Findings
+          findings={findings}
+          onPin={pin}
+          hasLine={(line) => layerWith(line) !== undefined}
+          onLine={(line) => {
+            pin(layerWith(line)?.index);
+            showLines(true);
+            setMarked(line);
+            setTimeout(() => document.getElementById("lines")?.scrollIntoView({ block: "nearest" }));
+          }}
+        />
       </Section>
-      <Section title="Waits">
+      <Section title="Dwells and pauses">
         <Waits layers={layers} />
       </Section>
     </>

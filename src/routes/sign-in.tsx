@@ -13,7 +13,7 @@ export function SignIn() {
   const to = (state as { to?: string } | null)?.to ?? paths.floor;
   if (session) return <Navigate to={to} replace />;
   return (
-    <main className="mx-auto grid min-h-dvh max-w-4xl content-center gap-x-16 gap-y-10 px-5 py-10 md:grid-cols-[1fr_22rem]">
+    <main className="mx-auto grid min-h-dvh max-w-4xl content-start gap-x-16 gap-y-10 px-5 py-10 md:pt-[20vh] md:grid-cols-[1fr_22rem]">
       <div>
         <Strip />
         <h1 className="mt-6 text-title font-semibold">Quenchline</h1>

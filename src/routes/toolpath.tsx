@@ -101,6 +101,7 @@ function OneToolpath({ toolpath }: { toolpath: Toolpath }) {
         <ReadAgainDialog
           toolpathId={id}
           machines={machines.data}
+          current={reading?.machineId}
           onClose={() => setDialog(undefined)}
           onRead={(read) => {
             setDialog(undefined);

@@ -11,7 +11,7 @@ import { historyQuery, MACHINES, PROFILES, type Version, versionQuery } from "#s
 import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
 import { adviceMarks, findingMarks } from "#src/features/layer-log/log-marks.ts";
 import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
-import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
+import { readingTracks, withPlan } from "#src/features/layer-log/reading-tracks.ts";
 import { ProfileForm } from "#src/features/profiles/editor/profile-form.tsx";
 import { useProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { ZoneBands } from "#src/features/profiles/editor/zone-bands.tsx";
@@ -97,10 +97,9 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   const { layers, findings, plan, prediction, advice, editing, layer, pinned, pin, rugs, at } = desk;
   const [selected, setSelected] = useState(0);
   const [beside, showBeside] = useState<Beside>("profile");
-  const tracks = useMemo(
-    () => [...readingTracks(layers, machine.channels, plan), ...prediction.tracks],
-    [layers, machine, plan, prediction.tracks],
-  );
+  const read = useMemo(() => readingTracks(layers, machine.channels), [layers, machine]);
+  const planned = useMemo(() => withPlan(read, plan), [read, plan]);
+  const tracks = useMemo(() => [...planned, ...prediction.tracks], [planned, prediction.tracks]);
   const marks = useMemo(() => [...findingMarks(findings, layers), ...adviceMarks(advice)], [findings, layers, advice]);
   const heightPx = useDeskHeight();
   const log = (

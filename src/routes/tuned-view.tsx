@@ -11,7 +11,7 @@ import { MACHINES, PROFILES, versionQuery } from "#src/features/documents/kinds.
 import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
 import { adviceMarks, findingMarks } from "#src/features/layer-log/log-marks.ts";
 import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
-import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
+import { readingTracks, withPlan } from "#src/features/layer-log/reading-tracks.ts";
 import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
 import { AdviceList } from "#src/features/tunings/advice-list.tsx";
 import { savePlanCsv } from "#src/features/tunings/plan-csv.ts";
@@ -81,10 +81,9 @@ function Planned({ tuning, reading, plan, machine, profile }: PlannedProps) {
     () => [...plan.advice, ...(predicted?.advice ?? [])].sort((a, b) => a.layer - b.layer),
     [plan, predicted],
   );
-  const tracks = useMemo(
-    () => [...readingTracks(layers, machine.channels, plan), ...prediction.tracks],
-    [layers, machine, plan, prediction.tracks],
-  );
+  const read = useMemo(() => readingTracks(layers, machine.channels), [layers, machine]);
+  const planned = useMemo(() => withPlan(read, plan), [read, plan]);
+  const tracks = useMemo(() => [...planned, ...prediction.tracks], [planned, prediction.tracks]);
   const marks = useMemo(() => [...findingMarks(findings, layers), ...adviceMarks(advice)], [findings, layers, advice]);
   const layer = layers.find(({ index }) => index === pinned);
   return (

@@ -10,6 +10,7 @@ import { ChecklistDialog } from "#src/features/machines/checklist-dialog.tsx";
 import { tuningQuery } from "#src/features/tunings/queries.ts";
 import { urlOf } from "#src/lib/call.ts";
 import { bytes, moment } from "#src/lib/format.ts";
+import { fetchFile } from "#src/lib/save-file.ts";
 import { usePageTitle } from "#src/lib/use-page-title.ts";
 import { TunedView } from "#src/routes/tuned-view.tsx";
 import { Button, ButtonLink, FileLink } from "#src/ui/button.tsx";
@@ -105,7 +106,15 @@ function Download({ tuning }: { tuning: Tuning }) {
         Download …
       </Button>
       {open && (
-        <ChecklistDialog machine={machine} onAcknowledged={() => setOpen(false)} onClose={() => setOpen(false)} />
+        <ChecklistDialog
+          machine={machine}
+          action="I have made sure: download"
+          onAcknowledged={() => {
+            setOpen(false);
+            fetchFile(urlOf(downloadTunedFile, { id }), fileName);
+          }}
+          onClose={() => setOpen(false)}
+        />
       )}
     </>
   );

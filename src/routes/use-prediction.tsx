@@ -47,10 +47,11 @@ export function usePrediction({ layers, machine, polymer, profile, plan }: Input
   const known = useLastKnown(profile);
   const targets = useTargets(layers, known);
   const own = known?.margins;
-  const tracks = useMemo(
-    () => (polymer && targets ? predictionTracks({ polymer, margins: own, targets, prediction, pale }) : []),
-    [polymer, own, targets, prediction, pale],
+  const fresh = useMemo(
+    () => (polymer && targets ? predictionTracks({ polymer, margins: own, targets, prediction }) : []),
+    [polymer, own, targets, prediction],
   );
+  const tracks = useMemo(() => fresh.map((track) => ({ ...track, pale })), [fresh, pale]);
   const crystallises = polymer?.crystallinity !== null;
   const states = useMemo(
     () => (crystallises ? prediction?.layers.map(({ verdicts }) => verdicts.state) : undefined),

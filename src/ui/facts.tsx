@@ -26,13 +26,13 @@ export function Facts({ facts }: { facts: Fact[] }) {
 /** Labels and values under each other; values start in one line. */
 export function FactList({ facts }: { facts: Fact[] }) {
   return (
-    <dl className="grid grid-cols-[auto_1fr] gap-x-4">
+    <dl className="grid grid-cols-[auto_minmax(0,1fr)] content-start gap-x-4">
       {facts.map(({ label, value, unit }) => (
         <div key={label} className="col-span-2 grid grid-cols-subgrid border-b border-hair py-1">
           <dt className="text-small text-soft">{label}</dt>
-          <dd className="text-right font-mono text-small whitespace-nowrap">
+          <dd className="min-w-0 text-right font-mono text-small wrap-break-word">
             {value}
-            {unit && <span className="inline-block w-9 pl-1.5 text-left text-soft">{unit}</span>}
+            {unit && <span className="inline-block min-w-9 pl-1.5 text-left text-soft">{unit}</span>}
           </dd>
         </div>
       ))}

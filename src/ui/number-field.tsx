@@ -10,12 +10,18 @@ interface NumberInput {
   step?: number;
   /** at least so many decimals, so that points stand in line in a column */
   decimals?: number;
+  /** a share 0-1, such as a duty: `65 %` is taken as 0.65 */
+  share?: boolean;
 }
 
-const NO_NUMBER = "is no number. Type digits, with a point for decimals";
+const noNumber = (share: boolean): string =>
+  share
+    ? "is no number. Type a share such as 0.65, or 65 %"
+    : "is no number. Type digits, with a point for decimals";
 
 /** What is typed stays as typed while it means the value ("0." is on its way to 0.5); a value set from outside replaces it. */
-function useNumberText({ value, onChange, step = 1, decimals = 0 }: NumberInput) {
+function useNumberText({ value, onChange, step = 1, decimals = 0, share = false }: NumberInput) {
+  const numberOf = share ? shareOf : plainNumber;
   const [text, setText] = useState(() => textOf(value, decimals));
   const shown = Object.is(numberOf(text), value ?? undefined) ? text : textOf(value, decimals);
   const give = (typed: string) => {
@@ -48,8 +54,15 @@ function textOf(value: number | undefined | null, decimals = 0): string {
   return Number(padded) === value ? padded : text;
 }
 
+function shareOf(text: string): number | undefined {
+  const [, percent] = /^(.+?)\s*%$/.exec(text.trim()) ?? [];
+  const number = plainNumber(percent ?? text);
+  // 0.07 and not 0.07000000000000001
+  return percent === undefined || number === undefined ? number : Number((number / 100).toFixed(9));
+}
+
 /** A decimal comma is taken for a point. */
-function numberOf(text: string): number | undefined {
+function plainNumber(text: string): number | undefined {
   const plain = text.trim().replace(",", ".").replace("\u2212", "-");
   if (plain === "") return undefined;
   return /^[+-]?(\d+\.?\d*|\.\d+)$/.test(plain) ? Number(plain) : Number.NaN;
@@ -67,7 +80,8 @@ interface FieldProps extends NumberInput {
 
 /** A labelled number with its unit, and what is wrong with it right below. */
 export function NumberField({ label, unit, hint, problem, className, disabled, ...number }: FieldProps) {
-  const { input, isNumber } = useNumberText(number);
+  const share = unit === "0–1";
+  const { input, isNumber } = useNumberText({ ...number, share });
   return (
     <TextField
       label={
@@ -76,7 +90,7 @@ export function NumberField({ label, unit, hint, problem, className, disabled, .
         </>
       }
       hint={hint}
-      error={problemText(label, isNumber ? problem : NO_NUMBER)}
+      error={problemText(label, isNumber ? problem : noNumber(share))}
       className={classNames("[&_input]:text-right [&_input]:font-mono", className)}
       disabled={disabled}
       {...input}
@@ -91,8 +105,8 @@ export function NumberCell({
   className,
   ...rest
 }: NumberInput & Omit<ComponentProps<"input">, keyof NumberInput> & { label: string; problem?: string }) {
-  const { value, onChange, step, decimals, ...more } = rest;
-  const { input, isNumber } = useNumberText({ value, onChange, step, decimals });
+  const { value, onChange, step, decimals, share, ...more } = rest;
+  const { input, isNumber } = useNumberText({ value, onChange, step, decimals, share });
   return (
     <input
       aria-label={label}

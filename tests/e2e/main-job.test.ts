@@ -52,7 +52,7 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
     await page.context().close();
   });
 
-  test("documents live in versions: approved, compared, restored as a new one, exported and imported", async () => {
+  test("documents live in versions: approved, compared, restored as a new one, saved as files and brought in", async () => {
     const { page, complaints } = await openPage(browser);
     await signIn(page, app.url, "lead");
     await page.getByRole("link", { name: "Profiles", exact: true }).click();
@@ -77,7 +77,7 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
     await page.getByRole("heading", { name: "Valve plate, flat and stiff" }).waitFor();
 
     const waiting = page.waitForEvent("download");
-    await page.getByRole("button", { name: "Export JSON" }).click();
+    await page.getByRole("button", { name: "Save document (JSON)" }).click();
     const exported = readFileSync(await (await waiting).path(), "utf8");
     const given = parseProfile(sample("profiles/valve-plate-flat-and-stiff.json"));
     expect(exported).toBe(writeProfile({ ...given, version: 3 }));
@@ -87,7 +87,7 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
     const file = (text: string) => ({ name: "p.json", mimeType: "application/json", buffer: Buffer.from(text) });
     await input.setInputFiles(file(exported.replace("0.", "7.")));
     await page
-      .getByRole("dialog", { name: "Not imported" })
+      .getByRole("dialog", { name: "Not brought in" })
       .getByText(/must be between 0 and 1/)
       .first()
       .waitFor();
@@ -106,7 +106,7 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
     await page.getByRole("dialog").getByLabel("Machine").selectOption({ label: "Fulmar" });
     await page.getByRole("dialog").getByRole("button", { name: "Read" }).click();
     await page.getByLabel("Read for", { exact: true }).waitFor();
-    await page.getByText("Print time, without waits").waitFor();
+    await page.getByText("Print time, without pauses").waitFor();
     const shown = page.getByLabel("Read for", { exact: true }).locator("option:checked");
     expect(await shown.textContent()).toBe("Fulmar, version 1");
     expect(complaints).toEqual([]);

@@ -67,6 +67,7 @@ describe.skipIf(!hasBrowser)("what will happen, in a browser", () => {
     expect(rows[0]).toContain("interlayerC low");
 
     await page.getByRole("link", { name: "Compare with another profile" }).click();
+    await page.getByRole("heading", { name: "After" }).waitFor();
     await page
       .getByRole("combobox", { name: "Profile", exact: true })
       .last()

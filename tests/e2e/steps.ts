@@ -67,11 +67,11 @@ export async function download(page: Page): Promise<Buffer> {
   await items.first().waitFor();
   for (const item of await items.all()) await item.check();
   await picture(page, "checklist");
-  await dialog.getByRole("button", { name: "I have made sure" }).click();
   const waiting = page.waitForEvent("download");
-  await page.getByRole("link", { name: /^Download/ }).click();
+  await dialog.getByRole("button", { name: "I have made sure: download" }).click();
   const file = await waiting;
-  expect(file.suggestedFilename()).toBe("ring-42.tuned.gcode");
+  await page.getByRole("link", { name: /^Download/ }).waitFor();
+  expect(file.suggestedFilename()).toBe("ring-42.seal-ring-stiff-base-and-tough-lip-v2.tuned.gcode");
   return readFileSync(await file.path());
 }
 
@@ -94,7 +94,7 @@ async function exported(beside: Page, address: string): Promise<Buffer> {
   const page = await beside.context().newPage();
   await page.goto(address);
   const waiting = page.waitForEvent("download");
-  await page.getByRole("button", { name: "Export JSON" }).click();
+  await page.getByRole("button", { name: "Save document (JSON)" }).click();
   const bytes = readFileSync(await (await waiting).path());
   await page.close();
   return bytes;

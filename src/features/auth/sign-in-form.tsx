@@ -36,6 +36,8 @@ export function SignInForm({ email: fixedEmail, onSignedIn }: Props) {
         type="email"
         autoComplete="username"
         required
+        // There is nothing else to do on this page.
+        autoFocus={fixedEmail === undefined}
         readOnly={fixedEmail !== undefined}
         value={email}
         onChange={(event) => setEmail(event.target.value)}

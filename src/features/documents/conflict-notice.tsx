@@ -61,7 +61,11 @@ function Both<D extends { name: string }>({
   return (
     <Loaded query={query} what="Fetching the version">
       {({ document }) => (
-        <DifferenceTable before={{ name: `Version ${latest}`, document }} after={{ name: "Yours", document: draft }} />
+        <DifferenceTable
+          before={{ name: `Version ${latest}`, document }}
+          after={{ name: "Yours", document: draft }}
+          whole={`The whole ${kind.noun}`}
+        />
       )}
     </Loaded>
   );

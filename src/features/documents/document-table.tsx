@@ -7,12 +7,12 @@ interface Props {
   label: string;
   documents: readonly DocumentSummary[];
   hrefOf(document: DocumentSummary): string;
-  /** profiles are approved for parts that ship */
-  withApproval: boolean;
+  /** what one wants to know of this kind of document, beside its name and latest version */
+  columns: readonly Column<DocumentSummary>[];
 }
 
-export function DocumentTable({ label, documents, hrefOf, withApproval }: Props) {
-  const columns: Column<DocumentSummary>[] = [
+export function DocumentTable({ label, documents, hrefOf, columns }: Props) {
+  const all: Column<DocumentSummary>[] = [
     {
       head: "Name",
       cell: (document) => (
@@ -24,15 +24,22 @@ export function DocumentTable({ label, documents, hrefOf, withApproval }: Props)
         </Link>
       ),
     },
-    { head: "Latest", number: true, cell: ({ latest }) => latest.number },
-    ...(withApproval ? [{ head: "Approved", number: true, cell: approvedText }] : []),
-    { head: "Saved", number: true, cell: ({ latest }) => moment(latest.createdAt) },
-    { head: "By", cell: ({ latest }) => latest.createdBy },
-    { head: "Why", cell: ({ latest }) => latest.note ?? "" },
+    ...columns,
+    { head: "Latest version", cell: ({ latest }) => <Latest {...latest} /> },
   ];
-  return <Table label={label} columns={columns} rows={documents} keyOf={({ id }) => id} />;
+  return <Table label={label} columns={all} rows={documents} keyOf={({ id }) => id} />;
 }
 
-function approvedText({ approved = [] }: DocumentSummary): string {
-  return approved.length === 0 ? "none" : String(approved.at(-1));
+function Latest({ number, createdAt, createdBy, note }: DocumentSummary["latest"]) {
+  return (
+    <>
+      <span className="font-mono text-small whitespace-nowrap">
+        {number} · {moment(createdAt)}
+      </span>
+      <span className="block max-w-72 text-small text-soft wrap-anywhere">
+        {createdBy}
+        {note && `: ${note}`}
+      </span>
+    </>
+  );
 }

@@ -1,13 +1,17 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { type ReactNode, useState } from "react";
+import type { Problem } from "#shared/formats/problems.ts";
 import { ConflictNotice } from "#src/features/documents/conflict-notice.tsx";
 import type { DocumentKind, Version } from "#src/features/documents/kinds.ts";
 import { SaveDialog } from "#src/features/documents/save-dialog.tsx";
+import { findProblems } from "#src/lib/document-problems.ts";
 import { moment } from "#src/lib/format.ts";
-import { asProblem, isProblem, type Problem } from "#src/lib/problem.ts";
+import { placeOf, placeText } from "#src/lib/place.ts";
+import { asProblem, isProblem } from "#src/lib/problem.ts";
 import { useDraft } from "#src/lib/use-draft.ts";
 import { Button } from "#src/ui/button.tsx";
 import { Notice, ProblemNotice } from "#src/ui/notice.tsx";
+import { problemText } from "#src/ui/number-field.tsx";
 
 interface Props<D extends { name: string }> {
   kind: DocumentKind<D>;
@@ -37,7 +41,10 @@ export function EditDocument<D extends { name: string }>({ kind, base, editor, o
     },
   });
   const fault = save.error && !isProblem(save.error, "version-conflict") ? asProblem(save.error) : undefined;
-  const wrong = draft.changed || isNew ? problemOf(() => kind.parse(draft.document)) : undefined;
+  const [tried, setTried] = useState(false);
+  // Of a document that is new nobody has to hear what is missing before they try to save it.
+  const { problems } = findProblems(kind.schema, draft.document);
+  const wrong = problems.all.length > 0;
   return (
     <>
       {draft.resumedFrom && (
@@ -49,7 +56,9 @@ export function EditDocument<D extends { name: string }>({ kind, base, editor, o
       )}
       {editor(draft.document, draft.change)}
       <div className="sticky bottom-0 mt-6 flex flex-col gap-3 border-t border-ink bg-paper py-3">
-        {wrong && <ProblemNotice problem={{ ...wrong, title: "Not complete yet" }} />}
+        {wrong && (isNew ? tried : draft.changed) && (
+          <ToCorrect problems={problems.all} document={draft.document} noun={kind.noun} />
+        )}
         {save.error && !fault && base.id !== undefined && (
           <ConflictNotice
             kind={kind}
@@ -65,8 +74,8 @@ export function EditDocument<D extends { name: string }>({ kind, base, editor, o
         <div className="flex flex-wrap items-center gap-3">
           <Button
             weight="main"
-            disabled={wrong !== undefined || !(draft.changed || isNew)}
-            onClick={() => setAsking(true)}
+            disabled={isNew ? wrong && tried : wrong || !draft.changed}
+            onClick={() => (wrong ? setTried(true) : setAsking(true))}
           >
             {isNew ? "Save" : "Save as a new version"}
           </Button>
@@ -95,11 +104,19 @@ export function EditDocument<D extends { name: string }>({ kind, base, editor, o
   );
 }
 
-function problemOf(check: () => unknown): Problem | undefined {
-  try {
-    check();
-    return undefined;
-  } catch (error) {
-    return asProblem(error);
-  }
+/** Problems named here; each also stands at its field. */
+const MOST_NAMED = 3;
+
+function ToCorrect({ problems, document, noun }: { problems: readonly Problem[]; document: unknown; noun: string }) {
+  const rest = problems.length - MOST_NAMED;
+  return (
+    <Notice kind="fault" title={`The ${noun} can't be saved yet`}>
+      <ul>
+        {problems.slice(0, MOST_NAMED).map(({ path, message }) => (
+          <li key={path + message}>{problemText(placeText(placeOf(path, document)), message)}</li>
+        ))}
+        {rest > 0 && <li>{`And ${rest} more, each said at its field.`}</li>}
+      </ul>
+    </Notice>
+  );
 }

@@ -12,13 +12,13 @@ interface Props<D extends { name: string }> {
   onImported(version: Version<D>): void;
 }
 
-/** Takes a document from a JSON file, as it was exported or as the command line uses it. */
+/** Takes a document from a JSON file, as a page saves it or as the command line uses it. */
 export function ImportButton<D extends { name: string }>({ kind, onImported }: Props<D>) {
   const client = useQueryClient();
   const input = useRef<HTMLInputElement>(null);
   const take = useMutation({
     mutationFn: async (file: File) =>
-      kind.create(kind.parse(parseJson(await file.text(), file.name)), `Imported from ${file.name}`),
+      kind.create(kind.parse(parseJson(await file.text(), file.name)), `Brought in from ${file.name}`),
     onSuccess: (version) => {
       client.invalidateQueries({ queryKey: [kind.plural] });
       onImported(version);
@@ -27,7 +27,7 @@ export function ImportButton<D extends { name: string }>({ kind, onImported }: P
   return (
     <>
       <Button disabled={take.isPending} onClick={() => input.current?.click()}>
-        Import JSON
+        Bring in a document (JSON)
       </Button>
       <input
         ref={input}
@@ -42,7 +42,7 @@ export function ImportButton<D extends { name: string }>({ kind, onImported }: P
         }}
       />
       {take.error && (
-        <Dialog title="Not imported" onClose={() => take.reset()}>
+        <Dialog title="Not brought in" onClose={() => take.reset()}>
           <ProblemNotice problem={asProblem(take.error)} />
           <Actions>
             <Button onClick={() => take.reset()}>Put away</Button>

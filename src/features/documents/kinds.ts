@@ -1,11 +1,12 @@
 import { queryOptions } from "@tanstack/react-query";
+import type { z } from "zod";
 import type { DocumentHistory, DocumentSummary, VersionHead } from "#shared/contract/documents.ts";
 import * as machines from "#shared/contract/machines.ts";
 import * as polymers from "#shared/contract/polymers.ts";
 import * as profiles from "#shared/contract/profiles.ts";
-import { type Machine, parseMachine, writeMachine } from "#shared/formats/machine.ts";
-import { type Polymer, parsePolymer, writePolymer } from "#shared/formats/polymer.ts";
-import { type Profile, parseProfile, writeProfile } from "#shared/formats/profile.ts";
+import { Machine, parseMachine, writeMachine } from "#shared/formats/machine.ts";
+import { Polymer, parsePolymer, writePolymer } from "#shared/formats/polymer.ts";
+import { Profile, parseProfile, writeProfile } from "#shared/formats/profile.ts";
 import { call } from "#src/lib/call.ts";
 
 /** A version with its document. */
@@ -18,6 +19,7 @@ export interface Version<Document> extends VersionHead {
 export interface DocumentKind<Document extends { name: string }> {
   noun: string;
   plural: string;
+  schema: z.ZodType<Document>;
   parse(json: unknown): Document;
   /** as a file, which names the version where documents of the kind can */
   write(document: Document, version: number): string;
@@ -31,6 +33,7 @@ export interface DocumentKind<Document extends { name: string }> {
 export const MACHINES: DocumentKind<Machine> = {
   noun: "machine",
   plural: "machines",
+  schema: Machine,
   parse: parseMachine,
   write: (machine, version) => writeMachine({ ...machine, version }),
   list: (signal) => call(machines.listMachines, { signal }),
@@ -44,6 +47,7 @@ export const MACHINES: DocumentKind<Machine> = {
 export const PROFILES: DocumentKind<Profile> = {
   noun: "profile",
   plural: "profiles",
+  schema: Profile,
   parse: parseProfile,
   write: (profile, version) => writeProfile({ ...profile, version }),
   list: (signal) => call(profiles.listProfiles, { signal }),
@@ -57,6 +61,7 @@ export const PROFILES: DocumentKind<Profile> = {
 export const POLYMERS: DocumentKind<Polymer> = {
   noun: "polymer",
   plural: "polymers",
+  schema: Polymer,
   parse: parsePolymer,
   write: writePolymer,
   list: (signal) => call(polymers.listPolymers, { signal }),

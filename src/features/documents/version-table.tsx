@@ -41,7 +41,7 @@ export function VersionTable(props: Props) {
     versions.length > 1 || (onApprove && versions.some(({ approvedAt }) => approvedAt === undefined));
   if (offersSomething) {
     columns.push({
-      head: "What to do",
+      head: "Actions",
       cell: ({ number, approvedAt }) => (
         <span className="flex flex-wrap items-baseline gap-x-4">
           {number > 1 && (

@@ -22,7 +22,7 @@ export function drawTrack(context: CanvasRenderingContext2D, picture: LogPicture
   context.rect(column.x, picture.view.topPx - 1, column.width, picture.view.bottomPx - picture.view.topPx + 2);
   context.clip();
   const xOf = (value: number) => column.x + shareOf(scale, value) * column.width;
-  drawWindows(context, picture, track.windows ?? [], xOf);
+  drawWindows(context, picture, track.windows ?? [], xOf, column);
   for (const series of track.series) drawRange(context, picture, series, xOf);
   for (const series of track.series) drawSeries(context, picture, series, xOf, column);
   if (track.pale) veil(context, picture, column);

@@ -1,57 +1,39 @@
-import { strokes } from "#src/features/layer-log/draw-kit.ts";
+import { yOf } from "#src/features/layer-log/height-view.ts";
+import type { Column } from "#src/features/layer-log/log-layout.ts";
 import type { LogPicture } from "#src/features/layer-log/log-picture.ts";
-import { rangeRuns } from "#src/features/layer-log/range-runs.ts";
-import { traceSeries } from "#src/features/layer-log/trace.ts";
 import type { TrackWindow } from "#src/features/layer-log/track.ts";
 
 /** Where values are meant to lie: the state's fill, thinned so that lines read on it, and its edge as a line. */
 export function drawWindows(
   context: CanvasRenderingContext2D,
-  picture: LogPicture,
+  { stack, view, palette, patterns }: LogPicture,
   windows: readonly TrackWindow[],
   xOf: (value: number) => number,
+  column: Column,
 ): void {
-  const { stack, view, ratio, palette, patterns } = picture;
-  for (const { state, low, high, edge } of windows) {
-    context.globalAlpha = 0.45;
+  for (const { state, low, high, runs } of windows) {
+    const left = Number.isFinite(low) ? xOf(low) : column.x;
+    const right = Number.isFinite(high) ? xOf(high) : column.x + column.width;
     context.fillStyle = patterns.state[state];
-    for (const run of rangeRuns(low, high, stack, view, 1 / ratio)) {
-      for (let n = 0; n < run.length; n += 4) {
-        const [left, right, bottom, top] = [xOf(run[n]), xOf(run[n + 1]), run[n + 2], run[n + 3]];
-        context.fillRect(left, top, right - left, bottom - top);
+    context.strokeStyle = state === "amorphous" ? palette.amberInk : palette.boneEdge;
+    context.lineWidth = 1;
+    context.beginPath();
+    for (const [first, last] of runs) {
+      const top = Math.max(yOf(view, stack.topMm[last]), view.topPx);
+      const bottom = Math.min(yOf(view, stack.bottomMm[first]), view.bottomPx);
+      if (bottom <= top) continue;
+      context.globalAlpha = 0.45;
+      context.fillRect(left, top, right - left, bottom - top);
+      for (const [end, x] of [
+        [low, left],
+        [high, right],
+      ]) {
+        if (!Number.isFinite(end)) continue;
+        context.moveTo(x, bottom);
+        context.lineTo(x, top);
       }
     }
     context.globalAlpha = 1;
-    drawEdge(
-      context,
-      traceOf(edge === "low" ? low : high),
-      xOf,
-      state === "amorphous" ? palette.amberInk : palette.boneEdge,
-    );
+    context.stroke();
   }
-
-  function traceOf(values: ArrayLike<number>): Float64Array {
-    const trace = traceSeries(values, stack, view, 1 / ratio);
-    if (trace.kind === "steps") return trace.pairs;
-    const pairs = new Float64Array((trace.triples.length / 3) * 2);
-    for (let n = 0, m = 0; n < trace.triples.length; n += 3) {
-      pairs[m++] = trace.triples[n + 1];
-      pairs[m++] = trace.triples[n];
-    }
-    return pairs;
-  }
-}
-
-function drawEdge(
-  context: CanvasRenderingContext2D,
-  pairs: Float64Array,
-  xOf: (value: number) => number,
-  colour: string,
-): void {
-  context.beginPath();
-  strokes(context, pairs, xOf);
-  context.strokeStyle = colour;
-  context.lineWidth = 1;
-  context.setLineDash([]);
-  context.stroke();
 }

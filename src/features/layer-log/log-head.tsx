@@ -55,7 +55,7 @@ function TrackHead({ track, position, column }: { track: Track; position: number
         <span className="font-semibold">{column.width < ROOM_FOR_TITLES_PX ? shortTitle : title}</span>{" "}
         <span className="font-mono whitespace-nowrap text-soft">{unit}</span>
         {caution && (
-          <span className="block truncate border-b border-dashed border-rule text-[0.6875rem] text-soft">
+          <span className="block truncate border-b border-dashed border-rule text-[0.6875rem] tracking-tighter text-soft">
             {caution}
           </span>
         )}

@@ -13,8 +13,6 @@ export interface PredictionTracksInput {
   targets: readonly LayerTarget[];
   /** one layer for every target; left out: it is on its way, and the tracks stand empty */
   prediction?: PredictionDocument;
-  /** the prediction belongs to an older plan */
-  pale?: boolean;
 }
 
 /** Interlayer temperature and, where anything crystallises, crystallinity, each with where its target wants it. */
@@ -33,7 +31,7 @@ export function marginsOf({ margins }: Polymer, own: Margins = {}): Required<Mar
   };
 }
 
-function interlayerTrack({ polymer, margins, targets, prediction, pale }: PredictionTracksInput): Track {
+function interlayerTrack({ polymer, margins, targets, prediction }: PredictionTracksInput): Track {
   const { belowTgC, aboveTgC } = marginsOf(polymer, margins);
   const [tgC, solidC] = [polymer.tgC.value, polymer.solidBelowC.value];
   const series = predictedSeries(
@@ -56,15 +54,14 @@ function interlayerTrack({ polymer, margins, targets, prediction, pale }: Predic
       { value: solidC, label: "solid" },
     ],
     windows: windowsOf(targets, {
-      amorphous: { low: domain[0], high: tgC - belowTgC, edge: "high" },
-      "semi-crystalline": { low: tgC + aboveTgC, high: domain[1], edge: "low" },
+      amorphous: { low: Number.NEGATIVE_INFINITY, high: tgC - belowTgC },
+      "semi-crystalline": { low: tgC + aboveTgC, high: Number.POSITIVE_INFINITY },
     }),
     caution: cautionOf(prediction),
-    pale,
   };
 }
 
-function crystallinityTrack({ polymer, margins, targets, prediction, pale }: PredictionTracksInput): Track {
+function crystallinityTrack({ polymer, margins, targets, prediction }: PredictionTracksInput): Track {
   const { maxCrystallinity, minCrystallinity } = marginsOf(polymer, margins);
   const series = predictedSeries(
     targets.length,
@@ -82,11 +79,10 @@ function crystallinityTrack({ polymer, margins, targets, prediction, pale }: Pre
     domain,
     series: [series],
     windows: windowsOf(targets, {
-      amorphous: { low: 0, high: maxCrystallinity, edge: "high" },
-      "semi-crystalline": { low: minCrystallinity, high: domain[1], edge: "low" },
+      amorphous: { low: Number.NEGATIVE_INFINITY, high: maxCrystallinity },
+      "semi-crystalline": { low: minCrystallinity, high: Number.POSITIVE_INFINITY },
     }),
     caution: cautionOf(prediction),
-    pale,
   };
 }
 
@@ -101,8 +97,11 @@ function predictedSeries(
   band: (layer: PredictedLayer) => readonly [number, number] | undefined,
 ): TrackSeries {
   const usable = layers?.length === count ? layers : undefined;
-  const column = (of: (layer: PredictedLayer) => number) =>
-    usable ? Float64Array.from(usable, of) : new Float64Array(count).fill(Number.NaN);
+  const column = (of: (layer: PredictedLayer) => number) => {
+    const values = new Float64Array(count).fill(Number.NaN);
+    for (let i = 0; usable && i < count; i++) values[i] = of(usable[i]);
+    return values;
+  };
   const plain: TrackSeries = { label: "predicted", values: column(value), style: { tone: "ink", line: "dotted" } };
   if (!usable?.some((layer) => band(layer) !== undefined)) return plain;
   return {
@@ -113,17 +112,23 @@ function predictedSeries(
   };
 }
 
-type Bounds = Record<TrackWindow["state"], { low: number; high: number; edge: TrackWindow["edge"] }>;
+type Bounds = Record<TrackWindow["state"], { low: number; high: number }>;
 
 function windowsOf(targets: readonly LayerTarget[], bounds: Bounds): TrackWindow[] {
   return (["amorphous", "semi-crystalline"] as const)
-    .filter((state) => targets.some((target) => target.state === state))
-    .map((state) => {
-      const { low, high, edge } = bounds[state];
-      const column = (value: number) =>
-        Float64Array.from(targets, (target) => (target.state === state ? value : Number.NaN));
-      return { state, low: column(low), high: column(high), edge };
-    });
+    .map((state) => ({ state, ...bounds[state], runs: runsOf(targets, state) }))
+    .filter(({ runs }) => runs.length > 0);
+}
+
+function runsOf(targets: readonly LayerTarget[], state: TrackWindow["state"]): [number, number][] {
+  const runs: [number, number][] = [];
+  for (let i = 0; i < targets.length; i++) {
+    if (targets[i].state !== state) continue;
+    const last = runs[runs.length - 1];
+    if (last?.[1] === i - 1) last[1] = i;
+    else runs.push([i, i]);
+  }
+  return runs;
 }
 
 function edgesOf({ values, low, high }: TrackSeries): number[] {

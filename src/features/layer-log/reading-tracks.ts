@@ -1,6 +1,6 @@
 import type { PlanDocument } from "#shared/formats/plan.ts";
 import type { LayerReading } from "#shared/formats/reading.ts";
-import type { Track, TrackSeries } from "#src/features/layer-log/track.ts";
+import type { Tone, Track, TrackSeries } from "#src/features/layer-log/track.ts";
 import { spansDecades } from "#src/features/layer-log/track-scale.ts";
 
 /** A layer of the log: a layer of the reading. */
@@ -16,9 +16,20 @@ export interface LogChannel {
 export type LogPlan = Pick<PlanDocument, "layers">;
 
 /** The tracks that a reading gives: layer time, deposited length, and one for every fan and heater. */
-export function readingTracks(layers: readonly LogLayer[], channels: readonly LogChannel[], plan?: LogPlan): Track[] {
-  return [...measureTracks(layers), ...channels.map((channel) => dutyTrack(channel, channels, layers, plan))];
+export function readingTracks(layers: readonly LogLayer[], channels: readonly LogChannel[]): Track[] {
+  return [...measureTracks(layers), ...channels.map((channel) => dutyTrack(channel, channels, layers))];
 }
+
+/** The same with what is planned in them: a plan changes many times while a profile is edited, a reading never. */
+export function withPlan(tracks: readonly Track[], plan: LogPlan | undefined): Track[] {
+  return tracks.map((track) => {
+    const [sliced] = track.series;
+    if (plan?.layers[0]?.duty[track.id] === undefined || sliced.label !== SLICED) return track;
+    return { ...track, series: [sliced, plannedSeries(track.id, sliced.style.tone, plan)] };
+  });
+}
+
+const SLICED = "as sliced";
 
 function measureTracks(layers: readonly LogLayer[]): Track[] {
   const measure = (
@@ -44,23 +55,17 @@ function measureTracks(layers: readonly LogLayer[]): Track[] {
   ];
 }
 
-function dutyTrack(
-  { id, kind }: LogChannel,
-  channels: readonly LogChannel[],
-  layers: readonly LogLayer[],
-  plan: LogPlan | undefined,
-): Track {
+function dutyTrack({ id, kind }: LogChannel, channels: readonly LogChannel[], layers: readonly LogLayer[]): Track {
   const tone = kind === "fan" ? "cool" : "heat";
   const seen = (pick: "mean" | "min" | "max") =>
     Float64Array.from(layers, ({ duty }) => duty[id]?.[pick] ?? Number.NaN);
   const [low, high] = [seen("min"), seen("max")];
   const sliced: TrackSeries = {
-    label: "as sliced",
+    label: SLICED,
     values: seen("mean"),
     style: { tone, line: "dashed" },
     ...(low.some((least, i) => high[i] > least) ? { low, high } : {}),
   };
-  const planned = plan && layers.length > 0 && plan.layers[0]?.duty[id] !== undefined && plannedSeries(id, tone, plan);
   const alike = channels.filter((channel) => channel.kind === kind).length;
   return {
     id,
@@ -68,11 +73,12 @@ function dutyTrack(
     unit: "0–1",
     decimals: 2,
     domain: [0, 1],
-    series: planned ? [sliced, planned] : [sliced],
+    series: [sliced],
   };
 }
 
-function plannedSeries(id: string, tone: "cool" | "heat", plan: LogPlan): TrackSeries {
-  const values = Float64Array.from(plan.layers, ({ duty }) => duty[id] ?? Number.NaN);
+function plannedSeries(id: string, tone: Tone, { layers }: LogPlan): TrackSeries {
+  const values = new Float64Array(layers.length);
+  for (let i = 0; i < layers.length; i++) values[i] = layers[i].duty[id] ?? Number.NaN;
   return { label: "as planned", values, style: { tone, line: "solid", fill: "wash" } };
 }

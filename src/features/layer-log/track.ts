@@ -22,14 +22,14 @@ export interface TrackSeries {
   uncertain?: boolean;
 }
 
-/** Where a track's value is meant to lie: a band in the state's fill, with a line at the edge that is to be kept. */
+/** Where a track's value is meant to lie: a band in the state's fill, with a line at each end that is not open. */
 export interface TrackWindow {
   state: "amorphous" | "semi-crystalline";
-  /** one value for every layer, NaN where nothing is asked for */
-  low: ArrayLike<number>;
-  high: ArrayLike<number>;
-  /** the edge that matters; the other one is the end of the scale */
-  edge: "low" | "high";
+  /** an open end is infinite */
+  low: number;
+  high: number;
+  /** the layers for which this is wanted: first and last position of every run */
+  runs: readonly (readonly [first: number, last: number])[];
 }
 
 /** One narrow strip of the layer log. */

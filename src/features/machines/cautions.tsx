@@ -4,7 +4,7 @@ import { Notice } from "#src/ui/notice.tsx";
 export function Cautions() {
   return (
     <Notice kind="caution" title="A lamp has no protection of its own">
-      <ul className="list-outside list-['–_'] space-y-1 pl-4">
+      <ul className="list-outside list-['–_'] space-y-1 pl-[1.1em]">
         <li>
           A lamp on a fan output has no runaway protection. It must be switched by a device made for its current; on
           mains, zero-cross with slow time-proportional PWM, wired by a licensed electrician under the local electrical

@@ -1,7 +1,6 @@
 import { useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
 import { type FormEvent, useState } from "react";
 import { SAFETY_CHECKLIST } from "#shared/contract/safety-checklist.ts";
-import { Cautions } from "#src/features/machines/cautions.tsx";
 import { acknowledgementQuery, giveAcknowledgement } from "#src/features/machines/queries.ts";
 import { asProblem } from "#src/lib/problem.ts";
 import { Button } from "#src/ui/button.tsx";
@@ -12,23 +11,25 @@ import { Loaded } from "#src/ui/states.tsx";
 
 interface Props {
   machine: { id: string; version: number; name: string };
+  /** what the button says: what happens once it is pressed */
+  action?: string;
   onAcknowledged(): void;
   onClose(): void;
 }
 
 /** Before the first download for a machine: each item ticked by the person who answers for it. */
-export function ChecklistDialog({ machine, onAcknowledged, onClose }: Props) {
+export function ChecklistDialog({ machine, action, onAcknowledged, onClose }: Props) {
   const query = useQuery(acknowledgementQuery(machine.id, machine.version));
   return (
     <Dialog title={`Before the lamp of ${machine.name} is lit`} wide onClose={onClose}>
       <Loaded query={query} what="Looking for what you ticked before">
-        {({ checklist }) => <Checklist {...{ machine, onAcknowledged, onClose }} before={checklist} />}
+        {({ checklist }) => <Checklist {...{ machine, action, onAcknowledged, onClose }} before={checklist} />}
       </Loaded>
     </Dialog>
   );
 }
 
-function Checklist({ machine, before, onAcknowledged, onClose }: Props & { before: string[] }) {
+function Checklist({ machine, action = "I have made sure", before, onAcknowledged, onClose }: Props & { before: string[] }) {
   const client = useQueryClient();
   const [ticked, setTicked] = useState<readonly string[]>(before);
   const missing = SAFETY_CHECKLIST.filter(({ id }) => !ticked.includes(id)).length;
@@ -46,11 +47,12 @@ function Checklist({ machine, before, onAcknowledged, onClose }: Props & { befor
   };
   return (
     <form onSubmit={submit}>
-      <Cautions />
-      <fieldset className="mt-4">
-        <legend className="pb-1 font-semibold">
-          Tick what you have made sure of, for version {machine.version} of the machine.
-        </legend>
+      <p className="pb-3 font-semibold">
+        A lamp has no protection of its own: lamp, nozzle and bed burn and can start fires, and when a print ends early no
+        line of the file runs.
+      </p>
+      <fieldset>
+        <legend className="pb-1">Tick what you have made sure of, for version {machine.version} of the machine.</legend>
         {SAFETY_CHECKLIST.map(({ id, text }) => (
           <CheckField
             key={id}
@@ -61,15 +63,17 @@ function Checklist({ machine, before, onAcknowledged, onClose }: Props & { befor
         ))}
       </fieldset>
       {give.error && <ProblemNotice problem={asProblem(give.error)} />}
-      <Actions>
-        <Button weight="main" type="submit" disabled={missing > 0 || give.isPending}>
-          I have made sure
-        </Button>
-        <Button onClick={onClose}>Not now</Button>
-        <p role="status" className="text-small text-soft">
-          {missing > 0 ? `${missing} still to tick. What you can't tick, settle first.` : ""}
-        </p>
-      </Actions>
+      <div className="sticky bottom-0 -mx-5 border-t border-rule bg-paper px-5 pb-4">
+        <Actions>
+          <Button weight="main" type="submit" disabled={missing > 0 || give.isPending}>
+            {action}
+          </Button>
+          <Button onClick={onClose}>Not now</Button>
+          <p role="status" className="text-small text-soft">
+            {missing > 0 ? `${missing} still to tick. What you can't tick, settle first.` : ""}
+          </p>
+        </Actions>
+      </div>
     </form>
   );
 }

@@ -1,35 +1,20 @@
-import type { Channel, Cornering, Drive } from "#shared/formats/machine.ts";
+import type { Channel, Drive } from "#shared/formats/machine.ts";
+import { choiceText } from "#src/lib/document-words.ts";
 
-/** The command that sets an output, as it stands in the tuned file. */
-export function driveText(drive: Drive): string {
+/** The command that sets an output, as it stands in the tuned file, and what stands for full power in it. */
+export function driveText(drive: Drive): { command: string; fullPower: string } {
   switch (drive.by) {
     case "fan-index":
-      return `M106 P${drive.index}, 0–${drive.fullScale}`;
+      return { command: `M106 P${drive.index}`, fullPower: `S${drive.fullScale}` };
     case "pin":
-      return `M42 P${drive.pin}, 0–${drive.fullScale}`;
+      return { command: `M42 P${drive.pin}`, fullPower: `S${drive.fullScale}` };
     case "named-fan":
-      return `SET_FAN_SPEED FAN=${drive.name}, 0–1`;
+      return { command: `SET_FAN_SPEED FAN=${drive.name}`, fullPower: "SPEED=1" };
     case "named-pin":
-      return `SET_PIN PIN=${drive.name}, 0–${drive.fullScale}`;
+      return { command: `SET_PIN PIN=${drive.name}`, fullPower: `VALUE=${drive.fullScale}` };
   }
 }
 
 export function actsText(acts: Channel["acts"]): string {
-  return acts === "queued" ? "in step with motion" : `when read, up to ${acts.immediate} s ahead`;
-}
-
-export function corneringText(cornering: Cornering): string {
-  switch (cornering.rule) {
-    case "square-corner-velocity": {
-      const { speedMmS, cruiseRatio, extruderStepMmS } = cornering;
-      const step = extruderStepMmS === undefined ? "" : `, extruder step ${extruderStepMmS} mm/s`;
-      return `square corner ${speedMmS} mm/s, cruise ratio ${cruiseRatio}${step}`;
-    }
-    case "junction-deviation":
-      return `junction deviation ${cornering.deviationMm} mm`;
-    case "axis-jerk": {
-      const { x, y, z, e } = cornering.jerkMmS;
-      return `jerk X ${x}, Y ${y}, Z ${z}, E ${e} mm/s`;
-    }
-  }
+  return acts === "queued" ? choiceText("queued") : `when the line is read, up to ${acts.immediate} s ahead`;
 }

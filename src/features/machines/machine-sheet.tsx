@@ -1,6 +1,8 @@
 import type { Channel, Machine, Pause } from "#shared/formats/machine.ts";
-import { actsText, corneringText, driveText } from "#src/features/machines/drive-text.ts";
+import { actsText, driveText } from "#src/features/machines/drive-text.ts";
+import { motionFacts } from "#src/features/machines/motion-facts.ts";
 import { ThermalSheet } from "#src/features/machines/thermal-sheet.tsx";
+import { named, wordsOf } from "#src/lib/document-words.ts";
 import { fixedText } from "#src/lib/number-text.ts";
 import { FactList } from "#src/ui/facts.tsx";
 import { Section } from "#src/ui/section.tsx";
@@ -16,21 +18,30 @@ const CHANNELS: Column<Channel>[] = [
   },
   {
     head: "Command",
-    cell: ({ drive }) => <code className="font-mono text-small whitespace-nowrap">{driveText(drive)}</code>,
+    cell: ({ drive }) => {
+      const { command, fullPower } = driveText(drive);
+      return (
+        <>
+          <code className="font-mono text-small wrap-anywhere">{command}</code>
+          <span className="block text-small whitespace-nowrap text-soft">full power: {fullPower}</span>
+        </>
+      );
+    },
   },
-  { head: "Least", number: true, cell: ({ minDuty }) => fixedText(minDuty, 2) },
-  { head: "Most", number: true, cell: ({ maxDuty }) => fixedText(maxDuty, 2) },
-  { head: "Idle", number: true, cell: ({ idleDuty }) => fixedText(idleDuty, 2) },
-  { head: "Settles", unit: "s", number: true, cell: ({ settleS }) => fixedText(settleS, 1) },
-  { head: "Boost", unit: "s", number: true, cell: ({ startBoostS }) => fixedText(startBoostS, 1) },
-  {
-    head: "Change",
-    unit: "/s",
-    number: true,
-    cell: ({ maxDutyPerS }) => (maxDutyPerS === undefined ? "no limit" : fixedText(maxDutyPerS, 2)),
-  },
-  { head: "Acts", cell: ({ acts }) => actsText(acts) },
+  number("minDuty", ({ minDuty }) => fixedText(minDuty, 2)),
+  number("maxDuty", ({ maxDuty }) => fixedText(maxDuty, 2)),
+  number("idleDuty", ({ idleDuty }) => fixedText(idleDuty, 2)),
+  number("settleS", ({ settleS }) => fixedText(settleS, 1)),
+  number("startBoostS", ({ startBoostS }) => fixedText(startBoostS, 1)),
+  number("maxDutyPerS", ({ maxDutyPerS }) => (maxDutyPerS === undefined ? "no limit" : fixedText(maxDutyPerS, 2))),
+  { head: wordsOf("channels.*.acts"), cell: ({ acts }) => actsText(acts) },
 ];
+
+function number(field: keyof Channel, cell: (channel: Channel) => string): Column<Channel> {
+  const { label, unit } = named(`channels.*.${field}`);
+  // Duties are 0-1 on every page: under each of three heads that would only be noise.
+  return { head: label, unit: unit === "0–1" ? undefined : unit, number: true, cell };
+}
 
 const PAUSES: Column<Pause>[] = [
   { head: "Command", cell: ({ command }) => <code className="font-mono text-small">{command}</code> },
@@ -46,48 +57,19 @@ const PAUSES: Column<Pause>[] = [
 /** What a machine document says. */
 export function MachineSheet({ machine }: { machine: Machine }) {
   const { motion, channels, pauses } = machine;
-  const axes = Object.entries(motion.axes).map(([axis, limits]) => ({
-    label: `Axis ${axis.toUpperCase()}`,
-    value: `${limits?.maxSpeedMmS ?? "no limit"} mm/s, ${limits?.maxAccelMmS2 ?? "no limit"} mm/s²`,
-  }));
   return (
     <>
-      <Section title="Channels" note="one for every fan and heater">
+      <Section title="Channels" note="one for every fan and heater; duties 0–1">
         <Table label="Channels" columns={CHANNELS} rows={channels} keyOf={({ id }) => id} />
       </Section>
-      <Section title="Motion" note="what layer times are computed with">
-        <div className="grid gap-x-10 md:grid-cols-2">
-          <FactList
-            facts={[
-              { label: "Top speed", value: `${motion.maxSpeedMmS} mm/s` },
-              { label: "Acceleration, printing", value: `${motion.accelMmS2.print} mm/s²` },
-              { label: "travelling", value: `${motion.accelMmS2.travel} mm/s²` },
-              { label: "retracting", value: `${motion.accelMmS2.retract} mm/s²` },
-              ...axes,
-              { label: "Corners", value: corneringText(motion.cornering) },
-            ]}
-          />
-          <FactList
-            facts={[
-              { label: "Look-ahead", value: motion.lookAhead === "full" ? "whole file" : `${motion.lookAhead} blocks` },
-              {
-                label: "Extruder limits hold for",
-                value: motion.extruderLimits === "every-move" ? "every move" : "extrude-only moves",
-              },
-              { label: "Stops at extrude-only moves", value: motion.stopAtExtrudeOnly ? "yes" : "no" },
-              { label: "Obeys limits in the file", value: motion.honourFileLimits ? "yes" : "no" },
-              { label: "Dwell P counts", value: motion.dwellP === "ms" ? "milliseconds" : "seconds" },
-              { label: "Arc chords", value: `${motion.arcSegmentMm} mm` },
-              {
-                label: "Firmware retraction",
-                value: `${motion.firmwareRetract.lengthMm} mm at ${motion.firmwareRetract.speedMmS} mm/s`,
-              },
-              { label: "Filament", value: `${fixedText(motion.filamentDiameterMm, 2)} mm` },
-            ]}
-          />
+      <Section title="Motion" note="what layer times are computed from">
+        <div className="grid gap-x-10 @3xl:grid-cols-2">
+          {motionFacts(motion).map((facts) => (
+            <FactList key={facts[0].label} facts={facts} />
+          ))}
         </div>
       </Section>
-      <Section title="Surroundings" note="what predictions are computed with">
+      <Section title="Surroundings" note="what predictions are computed from">
         <ThermalSheet machine={machine} />
       </Section>
       <Section title="Pauses" note="what stops the print">

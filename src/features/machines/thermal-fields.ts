@@ -1,5 +1,6 @@
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Quantity, Thermal } from "#shared/formats/thermal.ts";
+import { unitOf, wordsOf } from "#src/lib/document-words.ts";
 
 /** One quantity of what surrounds the part: where it stands in `thermal`, and how it is called. */
 export interface ThermalField {
@@ -23,28 +24,25 @@ export function thermalGroups({ channels }: Pick<Machine, "channels">): ThermalG
     {
       title: "Room",
       fields: [
-        field("roomAirC", "Air", "°C", 1),
-        field("wallsC", "Walls", "°C", 1, "what the part radiates to; empty: as warm as the air"),
-        field("bedAir.riseC", "Air above the bed, warmer by", "K", 1),
-        field("bedAir.decayMm", "Its excess fades over", "mm", 5),
-        field("convection.h0WM2K", "Convection, fans off", "W/(m²·K)", 1),
-        field("bedContactM2KW", "Contact of bed and part", "m²·K/W", 0.0001, "resistance"),
+        field("roomAirC", 1),
+        field("wallsC", 1, "what the part radiates to; empty: as warm as the air"),
+        field("bedAir.riseC", 1),
+        field("bedAir.decayMm", 5),
+        field("convection.h0WM2K", 1),
+        field("bedContactM2KW", 0.0001, "resistance"),
       ],
     },
     ...of("fan").map(({ id }) => ({
       title: `Fan ${id}`,
-      fields: [
-        field(`convection.fans.${id}.h1WM2K`, "Convection added at full duty", "W/(m²·K)", 1),
-        field(`convection.fans.${id}.exponent`, "Convection goes with duty to the power", "", 0.05),
-      ],
+      fields: [field(`convection.fans.${id}.h1WM2K`, 1), field(`convection.fans.${id}.exponent`, 0.05)],
     })),
     ...of("heater").map(({ id }) => ({
       title: `Heater ${id}`,
       fields: [
-        field(`lamps.${id}.fluxAtFullWM2`, "Irradiance of the top at full duty", "W/m²", 100),
-        field(`lamps.${id}.sideShare`, "Share of it on the sides", "0–1", 0.05),
-        field(`lamps.${id}.exponent`, "Irradiance goes with duty to the power", "", 0.05),
-        field(`lamps.${id}.lagS`, "Lag of the filament", "s", 0.1, "empty: from the settle time"),
+        field(`lamps.${id}.fluxAtFullWM2`, 100),
+        field(`lamps.${id}.sideShare`, 0.05),
+        field(`lamps.${id}.exponent`, 0.05),
+        field(`lamps.${id}.lagS`, 0.1, "empty: from the settle time"),
       ],
     })),
     ...(of("heater").length === 0
@@ -52,17 +50,15 @@ export function thermalGroups({ channels }: Pick<Machine, "channels">): ThermalG
       : [
           {
             title: "Surroundings",
-            fields: [
-              field("surroundings.riseAtFullLampC", "Air warms with the lamps by", "K", 1),
-              field("surroundings.lagS", "Lag of the air", "s", 10),
-            ],
+            fields: [field("surroundings.riseAtFullLampC", 1), field("surroundings.lagS", 10)],
           },
         ]),
   ];
 }
 
-function field(path: string, label: string, unit: string, step: number, hint?: string): ThermalField {
-  return { path: path.split("."), label, unit, step, hint };
+function field(path: string, step: number, hint?: string): ThermalField {
+  const pattern = `thermal.${path.replace(/^(convection\.fans|lamps)\.[^.]+/, "$1.*")}`;
+  return { path: path.split("."), label: wordsOf(pattern), unit: unitOf(pattern) ?? "", step, hint };
 }
 
 /** The quantity at a place; undefined where the document leaves it out. */

@@ -1,4 +1,12 @@
 import type { Assumed } from "#shared/formats/prediction.ts";
+import { grouped, placeOf, placeUnit } from "#src/lib/place.ts";
+
+/** What it is called, without what all of them have in common. */
+const nameOf = (path: string): string => {
+  const place = placeOf(path);
+  const unit = placeUnit(place);
+  return `${grouped(place).words}${unit ? `, ${unit}` : ""}`;
+};
 
 /** What stands in for what the machine document leaves out. */
 export function AssumedTable({ assumed }: { assumed: readonly Assumed[] }) {
@@ -27,7 +35,7 @@ export function AssumedTable({ assumed }: { assumed: readonly Assumed[] }) {
             {assumed.map(({ path, low, typical, high, source }) => (
               <tr key={path} className="border-b border-hair align-baseline">
                 <th scope="row" className="py-1 pr-3 text-left font-normal">
-                  <code className="font-mono wrap-anywhere">{path.replace(/^thermal\./, "")}</code>
+                  {nameOf(path)}
                   <span className="block text-soft">{source}</span>
                 </th>
                 {[low, typical, high].map((value, i) => (

@@ -60,13 +60,6 @@ function stateVerdict({ crystallinity, verdicts }: PredictedLayer, margins: Requ
   }
 }
 
-const WANTED: Record<TargetState, string> = {
-  amorphous: "amorphous",
-  "semi-crystalline": "semi-crystalline",
-  between: "between the two states",
-  none: "none",
-};
-
 const HELP: Partial<Record<TargetState, string>> = {
   amorphous: "Keep it cooler: less lamp, more fan, a cooler bed, or a longer layer.",
   "semi-crystalline":
@@ -74,8 +67,12 @@ const HELP: Partial<Record<TargetState, string>> = {
 };
 
 function targetVerdict({ verdicts: { reaches } }: PredictedLayer, target: LayerTarget | undefined): Verdict {
+  if (target?.state === "between") {
+    const way = fixedText(target.share * 100, 0);
+    return { outcome: "plain", text: `Wanted between the two states, ${way} % of the way to semi-crystalline.` };
+  }
   if (reaches === null || target === undefined) return { outcome: "plain", text: "No state is wanted here." };
-  const wanted = WANTED[target.state];
+  const wanted = target.state;
   switch (reaches) {
     case "yes":
       return { outcome: "good", text: `Reaches its target, ${wanted}, even in the worst case.` };

@@ -1,6 +1,7 @@
 import type { Profile, Rule, Zone } from "#shared/formats/profile.ts";
 import { bandText, leadText, limitText, patternText, ruleText } from "#src/features/profiles/rule-text.ts";
 import { TargetBand, TargetMark } from "#src/features/profiles/target-mark.tsx";
+import { choiceText, named, wordsOf } from "#src/lib/document-words.ts";
 import { FactList } from "#src/ui/facts.tsx";
 import { Section } from "#src/ui/section.tsx";
 
@@ -20,21 +21,21 @@ export function ProfileSheet({ profile }: { profile: Profile }) {
           ))}
         </ol>
       </Section>
-      <Section title="Everywhere">
+      <Section title="The whole profile">
         <div className="max-w-3xl">
           <FactList
             facts={[
               { label: "Polymer", value: polymer },
               { label: "Bed layers", value: bedLayers.count === 0 ? "none" : bedText(bedLayers) },
               ...driven.flatMap((id) => [
-                { label: `${id}: limits`, value: limitText(limits[id] ?? {}) || "the machine's" },
-                { label: `${id}: commanded ahead by`, value: leadText(lead[id]) },
+                { label: `Limits of ${id}`, value: limitText(limits[id] ?? {}) || "the machine's" },
+                { label: `Ahead, ${id}`, value: leadText(lead[id]) },
               ]),
               {
-                label: "Raises inside a layer",
-                value: withinLayer === "replace" ? "replaced by the plan" : "kept where above the plan",
+                label: wordsOf("withinLayer"),
+                value: choiceText(withinLayer),
               },
-              ...overrides.map(([name, value]) => ({ label: `Margin ${name}`, value: String(value) })),
+              ...overrides.map(([name, value]) => ({ ...named(`margins.${name}`), value: String(value) })),
             ]}
           />
         </div>

@@ -48,4 +48,4 @@ export function limitText({ minDuty, maxDuty, maxDutyPerLayer, maxDutyPerS, endR
 }
 
 export const leadText = (lead: Lead | undefined): string =>
-  lead === undefined ? "0 s" : lead === "settle" ? "half of the time it settles in" : `${lead} s`;
+  lead === undefined ? "0 s" : lead === "settle" ? "half the settle time" : `${lead} s`;

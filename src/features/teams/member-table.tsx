@@ -3,12 +3,12 @@ import type { Role } from "#shared/contract/roles.ts";
 import { moment } from "#src/lib/format.ts";
 import { type Column, Table } from "#src/ui/table.tsx";
 
-/** What each role adds to those before it. */
+/** What each role may do; each includes those before it. */
 export const ROLE_TEXTS: Record<Role, string> = {
-  viewer: "sees everything",
-  operator: "brings toolpaths in, tunes with approved profile versions, downloads",
-  engineer: "writes profiles, machines and polymers, tunes with any version for trials",
-  lead: "approves profile versions, adds members",
+  viewer: "looks at everything",
+  operator: "what a viewer may; brings toolpaths in, tunes with approved profile versions, downloads",
+  engineer: "what an operator may; writes profiles, machines and polymers, tunes with any version for trials",
+  lead: "what an engineer may; approves profile versions, adds members",
 };
 
 const COLUMNS: Column<Member>[] = [
@@ -17,7 +17,7 @@ const COLUMNS: Column<Member>[] = [
     cell: ({ email, name }) => <span className="wrap-break-word">{name ? `${name}, ${email}` : email}</span>,
   },
   { head: "Role", cell: ({ role }) => <span className="font-semibold">{role}</span> },
-  { head: "May", cell: ({ role }) => ROLE_TEXTS[role] },
+  { head: "May do", cell: ({ role }) => ROLE_TEXTS[role] },
   { head: "Member since", number: true, cell: ({ createdAt }) => moment(createdAt) },
 ];
 

@@ -3,7 +3,9 @@ import type { DocumentSummary } from "#shared/contract/documents.ts";
 import type { Reading, Toolpath } from "#shared/contract/toolpaths.ts";
 import { useFileDrop } from "#src/features/toolpaths/use-file-drop.ts";
 import { type Underway, useUploads } from "#src/features/toolpaths/use-uploads.ts";
+import { WhichMachineDialog } from "#src/features/toolpaths/which-machine-dialog.tsx";
 import { bytes } from "#src/lib/format.ts";
+import { lastMachine, rememberMachine } from "#src/lib/last-machine.ts";
 import { Button } from "#src/ui/button.tsx";
 import { SelectField } from "#src/ui/field.tsx";
 import { ProblemNotice } from "#src/ui/notice.tsx";
@@ -11,24 +13,30 @@ import { Progress } from "#src/ui/progress.tsx";
 
 interface Props {
   machines: readonly DocumentSummary[];
+  /** whose last choice is remembered */
+  userId: string;
   onArrived(arrived: { toolpath: Toolpath; reading: Reading }, last: boolean): void;
 }
 
-const LAST_MACHINE = "quenchline.machine";
-
 /** Where a toolpath comes in: dropped anywhere on the page, or chosen. */
-export function BringIn({ machines, onArrived }: Props) {
-  const [machineId, setMachineId] = useState(() => rememberedMachine(machines));
+export function BringIn({ machines, userId, onArrived }: Props) {
+  const [machineId, setMachineId] = useState(() => lastMachine(userId, machines) ?? "");
   const { uploads, add, cancel } = useUploads(onArrived);
+  const [held, hold] = useState<File[]>([]);
   const input = useRef<HTMLInputElement>(null);
-  const bring = (files: File[]) => {
-    if (machineId !== "") add(files, machineId);
+  const choose = (id: string) => {
+    setMachineId(id);
+    if (id !== "") rememberMachine(userId, id);
   };
-  const over = useFileDrop(bring, machineId !== "");
+  const bring = (files: File[]) => {
+    if (machineId === "") hold(files);
+    else add(files, machineId);
+  };
+  const over = useFileDrop(bring, true);
   const machineName = machines.find(({ id }) => id === machineId)?.name;
   return (
     <>
-      <div className="flex flex-wrap items-end gap-x-6 gap-y-3 border border-dashed border-rule bg-sheet px-5 py-4">
+      <div className="flex flex-wrap items-center gap-x-6 gap-y-3 border border-dashed border-rule bg-sheet px-5 py-4">
         <div className="min-w-60 grow">
           <p className="text-lead">Drop a toolpath anywhere on this page.</p>
           <p className="text-small text-soft">
@@ -36,22 +44,15 @@ export function BringIn({ machines, onArrived }: Props) {
             for another.
           </p>
         </div>
-        <SelectField
-          label="Machine"
-          className="w-44"
-          value={machineId}
-          onChange={({ target }) => {
-            setMachineId(target.value);
-            rememberMachine(target.value);
-          }}
-        >
+        <SelectField label="Machine" className="w-44" value={machineId} onChange={({ target }) => choose(target.value)}>
+          {machineId === "" && <option value="">Choose …</option>}
           {machines.map(({ id, name }) => (
             <option key={id} value={id}>
               {name}
             </option>
           ))}
         </SelectField>
-        <Button weight="main" disabled={machineId === ""} onClick={() => input.current?.click()}>
+        <Button weight="main" className="self-end" onClick={() => input.current?.click()}>
           Choose a file
         </Button>
         <input
@@ -78,8 +79,22 @@ export function BringIn({ machines, onArrived }: Props) {
       )}
       {over && (
         <div className="pointer-events-none fixed inset-0 z-20 grid place-items-center border-4 border-dashed border-ink bg-paper/85">
-          <p className="text-title font-semibold">Let go to read it for {machineName}</p>
+          <p className="text-title font-semibold">
+            {machineName ? `Let go to read it for ${machineName}` : "Let go, then say for which machine"}
+          </p>
         </div>
+      )}
+      {held.length > 0 && (
+        <WhichMachineDialog
+          files={held}
+          machines={machines}
+          onChoose={(id) => {
+            choose(id);
+            add(held, id);
+            hold([]);
+          }}
+          onClose={() => hold([])}
+        />
       )}
     </>
   );
@@ -90,7 +105,7 @@ function UploadLine({ upload: { file, sent, problem }, onCancel }: { upload: Und
     return (
       <ProblemNotice
         problem={{ ...problem, title: `${file.name}: ${problem.title}` }}
-        actions={<Button onClick={onCancel}>Put away</Button>}
+        actions={<Button onClick={onCancel}>Close</Button>}
       />
     );
   }
@@ -102,22 +117,4 @@ function UploadLine({ upload: { file, sent, problem }, onCancel }: { upload: Und
       onCancel={onCancel}
     />
   );
-}
-
-function rememberedMachine(machines: readonly DocumentSummary[]): string {
-  let kept: string | null = null;
-  try {
-    kept = localStorage.getItem(LAST_MACHINE);
-  } catch {
-    // Storage may be closed to us.
-  }
-  return (machines.find(({ id }) => id === kept) ?? machines[0])?.id ?? "";
-}
-
-function rememberMachine(id: string): void {
-  try {
-    localStorage.setItem(LAST_MACHINE, id);
-  } catch {
-    // As above: the choice lasts as long as the page.
-  }
 }

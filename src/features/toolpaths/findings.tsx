@@ -1,42 +1,56 @@
-import type { ReadingDocument } from "#shared/formats/reading.ts";
-
-type Finding = ReadingDocument["findings"][number];
+import { type Finding, findingGroups } from "#src/features/toolpaths/finding-groups.ts";
+import { counted } from "#src/lib/format.ts";
 
 interface Props {
   findings: readonly Finding[];
   onPin(layer: number): void;
+  /** shows a line of the file; left out where lines can't be shown */
+  onLine?(line: number): void;
+  /** whether a line belongs to a layer, so that it can be shown */
+  hasLine?(line: number): boolean;
 }
 
-/** What looks wrong in the file, or is good to know; warnings first. */
-export function Findings({ findings, onPin }: Props) {
+const LINK = "min-h-6 underline decoration-rule underline-offset-4 hover:decoration-ink";
+
+/** What looks wrong in the file, or is good to know, by what it concerns. */
+export function Findings({ findings, onPin, onLine, hasLine }: Props) {
   if (findings.length === 0) return <p className="text-soft">Nothing in this file looks wrong.</p>;
-  const sorted = [...findings].sort((a, b) => Number(b.severity === "warning") - Number(a.severity === "warning"));
   return (
-    <ul className="border-t border-ink">
-      {sorted.map(({ code, severity, line, layer, message }, position) => (
-        // biome-ignore lint/suspicious/noArrayIndexKey: the list of a finished reading never changes
-        <li key={position} className="grid grid-cols-[1.25rem_minmax(0,1fr)_auto] gap-x-3 border-b border-hair py-1.5">
-          <span aria-hidden className="text-center font-mono font-bold">
-            {severity === "warning" ? "!" : "·"}
-          </span>
-          <span className="wrap-anywhere">
-            <span className="sr-only">{severity}: </span>
-            {message} <code className="font-mono text-fine text-soft">{code}</code>
-          </span>
-          <span className="text-right font-mono text-small whitespace-nowrap text-soft">
-            {line !== undefined && `line ${line}`}
-            {layer !== undefined && (
-              <button
-                type="button"
-                onClick={() => onPin(layer)}
-                className="ml-3 min-h-6 underline decoration-rule underline-offset-4 hover:decoration-ink"
+    <div className="flex flex-col gap-4">
+      {findingGroups(findings).map(({ title, findings: some }) => (
+        <section key={title} aria-label={title}>
+          <h3 className="border-b border-ink pb-1 text-small font-semibold">{title}</h3>
+          <ul>
+            {some.map(({ severity, line, layer, message }, position) => (
+              <li
+                // biome-ignore lint/suspicious/noArrayIndexKey: the list of a finished reading never changes
+                key={position}
+                className="grid grid-cols-[5rem_minmax(0,1fr)_auto] gap-x-3 border-b border-hair py-1.5"
               >
-                layer {layer}
-              </button>
-            )}
-          </span>
-        </li>
+                <span className={severity === "warning" ? "font-semibold" : "text-soft"}>
+                  {severity === "warning" ? "! Warning" : "Note"}
+                </span>
+                <span className="wrap-anywhere">{message}</span>
+                <span className="flex flex-wrap justify-end gap-x-3 font-mono text-small whitespace-nowrap text-soft">
+                  {line !== undefined &&
+                    (onLine && hasLine?.(line) ? (
+                      <button type="button" onClick={() => onLine(line)} className={LINK}>
+                        line {counted(line)}
+                      </button>
+                    ) : (
+                      `line ${counted(line)}`
+                    ))}
+                  {layer !== undefined && (
+                    <button type="button" onClick={() => onPin(layer)} className={LINK}>
+                      layer {layer}
+                    </button>
+                  )}
+                </span>
+              </li>
+            ))}
+          </ul>
+        </section>
       ))}
-    </ul>
+    </div>
   );
 }

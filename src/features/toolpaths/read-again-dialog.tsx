@@ -12,14 +12,16 @@ import { ProblemNotice } from "#src/ui/notice.tsx";
 interface Props {
   toolpathId: string;
   machines: readonly DocumentSummary[];
+  /** the machine whose reading is looked at: another one is offered first */
+  current?: string;
   onRead(reading: Reading): void;
   onClose(): void;
 }
 
 /** Layer times depend on the machine: the same file, read with the limits of another one. */
-export function ReadAgainDialog({ toolpathId, machines, onRead, onClose }: Props) {
+export function ReadAgainDialog({ toolpathId, machines, current, onRead, onClose }: Props) {
   const client = useQueryClient();
-  const [machineId, setMachineId] = useState(machines[0]?.id ?? "");
+  const [machineId, setMachineId] = useState((machines.find(({ id }) => id !== current) ?? machines[0])?.id ?? "");
   const machine = machines.find(({ id }) => id === machineId);
   const [number, setNumber] = useState<number>();
   const version = number ?? machine?.latest.number ?? 1;

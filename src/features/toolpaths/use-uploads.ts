@@ -1,7 +1,7 @@
 import { useQueryClient } from "@tanstack/react-query";
 import { useEffect, useRef, useState } from "react";
 import type { Reading, Toolpath } from "#shared/contract/toolpaths.ts";
-import { sendToolpath } from "#src/features/toolpaths/queries.ts";
+import { sendToolpath, toolpathQuery } from "#src/features/toolpaths/queries.ts";
 import { asProblem, type Problem } from "#src/lib/problem.ts";
 
 /** A file on its way to the server. It leaves the list once it has arrived. */
@@ -43,6 +43,8 @@ export function useUploads(onArrived: (arrived: { toolpath: Toolpath; reading: R
       });
       aborts.current.delete(key);
       drop(key);
+      // The toolpath's page can be drawn at once, with the reading under way.
+      client.setQueryData(toolpathQuery(arrived.toolpath.id).queryKey, arrived.toolpath);
       client.invalidateQueries({ queryKey: ["toolpaths"] });
       onArrived(arrived, aborts.current.size === 0);
     } catch (error) {

@@ -15,7 +15,7 @@ const KINDS: Record<Wait["kind"], string> = {
 const COLUMNS: Column<Wait>[] = [
   { head: "Layer", number: true, cell: ({ layer }) => layer },
   { head: "Line", number: true, cell: ({ line }) => line },
-  { head: "Wait", cell: ({ kind }) => KINDS[kind] },
+  { head: "What", cell: ({ kind }) => KINDS[kind] },
   {
     head: "Lasts",
     unit: "s",
@@ -24,9 +24,9 @@ const COLUMNS: Column<Wait>[] = [
   },
 ];
 
-/** Where the print stands still. Waits without a known length are not in the print time. */
+/** Where the print stands still. What has no known length is not in the print time. */
 export function Waits({ layers }: { layers: readonly LayerReading[] }) {
   const waits = layers.flatMap(({ index, waits }) => waits.map((wait) => ({ ...wait, layer: index })));
-  if (waits.length === 0) return <p className="text-soft">The print stands still in no layer.</p>;
-  return <Table label="Waits" columns={COLUMNS} rows={waits} keyOf={({ line }) => line} />;
+  if (waits.length === 0) return <p className="text-soft">None: the print never stands still between its first and last layer.</p>;
+  return <Table label="Dwells and pauses" columns={COLUMNS} rows={waits} keyOf={({ line }) => line} />;
 }

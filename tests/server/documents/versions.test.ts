@@ -135,9 +135,18 @@ test.each([
 
 describe("a list", () => {
   test("says of each document what its latest version holds", async () => {
-    const machine = await server.as("engineer").post("/api/machines").send({ document: sampleMachine({ name: "Gist" }) });
-    const profile = await server.as("engineer").post("/api/profiles").send({ document: sampleProfile({ name: "Gist" }) });
-    const polymer = await server.as("engineer").post("/api/polymers").send({ document: samplePolymer({ name: "Gist" }) });
+    const machine = await server
+      .as("engineer")
+      .post("/api/machines")
+      .send({ document: sampleMachine({ name: "Gist" }) });
+    const profile = await server
+      .as("engineer")
+      .post("/api/profiles")
+      .send({ document: sampleProfile({ name: "Gist" }) });
+    const polymer = await server
+      .as("engineer")
+      .post("/api/polymers")
+      .send({ document: samplePolymer({ name: "Gist" }) });
     const listed = async (resource: string, { id }: { id: string }) => {
       const { body } = await server.as("viewer").get(`/api/${resource}`).expect(200);
       return body.find((entry: { id: string }) => entry.id === id);
@@ -149,7 +158,9 @@ describe("a list", () => {
     const { zones } = profile.body.document;
     const gist = (await listed("profiles", profile.body)).profile;
     expect(gist.polymer).toBe(profile.body.document.polymer);
-    expect(gist.zones.map(({ name }: { name: string }) => name)).toEqual(zones.map(({ name }: { name: string }) => name));
+    expect(gist.zones.map(({ name }: { name: string }) => name)).toEqual(
+      zones.map(({ name }: { name: string }) => name),
+    );
     expect((await listed("polymers", polymer.body)).polymer.tgC).toBe(polymer.body.document.tgC.value);
 
     const wanted = { ...profile.body.document, polymer: "Another" };

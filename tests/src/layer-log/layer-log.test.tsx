@@ -151,3 +151,49 @@ test("the legend says that colours stand for state, not appearance", () => {
   expect(within(legend).getByText("Semi-crystalline")).toBeTruthy();
   expect(within(legend).queryByText("Amorphous")).toBeNull();
 });
+
+test("with a prediction the legend tells what is expected from what is wanted, and the head how far to trust it", () => {
+  const layers = layersOf(3);
+  const zones = [{ name: "whole", from: 0, unit: "mm" as const, target: "amorphous" as const }];
+  const track = {
+    id: "interlayer",
+    title: "Interlayer temperature",
+    shortTitle: "Interlayer",
+    unit: "°C",
+    decimals: 0,
+    domain: [0, 200] as [number, number],
+    series: [
+      {
+        label: "predicted",
+        values: [110, 120, 130],
+        low: [90, 100, 110],
+        high: [130, 140, 150],
+        uncertain: true,
+        style: { tone: "ink" as const, line: "dotted" as const },
+      },
+    ],
+    windows: [{ state: "amorphous" as const, low: Number.NEGATIVE_INFINITY, high: 128, runs: [[0, 2]] as const }],
+    caution: "uncalibrated",
+  };
+  const { container } = render(
+    <LayerLog
+      layers={layers}
+      tracks={[track]}
+      zones={zones}
+      states={["amorphous", "undecided", "undecided"]}
+      pinnedLayer={2}
+      onPin={() => {}}
+    />,
+  );
+  const legend = within(screen.getByRole("list", { name: "Legend" }))
+    .getAllByRole("listitem")
+    .map(({ textContent }) => textContent);
+  for (const entry of ["Amorphous", "Undecided", "predicted", "may lie within", "where the target wants it"])
+    expect(legend).toContain(entry);
+  expect(legend).not.toContain("changes within the layer");
+  expect(container.querySelector("[aria-hidden=true]")?.textContent).toContain("uncalibrated");
+  fireEvent.click(screen.getByRole("button", { name: "Layers as a table" }));
+  const row = screen.getAllByRole("row").find((each) => each.getAttribute("aria-current") === "true");
+  const cells = within(row as HTMLElement).getAllByRole("cell");
+  expect(cells.slice(1).map(({ textContent }) => textContent)).toEqual(["120", "100", "140"]);
+});

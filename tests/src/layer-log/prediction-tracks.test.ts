@@ -17,24 +17,31 @@ test("the interlayer track has Tg, the solidification limit and the window of ea
     { value: 143, label: "Tg" },
     { value: 173, label: "solid" },
   ]);
-  const [amorphous, semi] = track.windows ?? [];
-  expect([amorphous.state, amorphous.edge, Array.from(amorphous.high)]).toEqual([
-    "amorphous",
-    "high",
-    [Number.NaN, Number.NaN, 143 - 15],
-  ]);
-  expect([semi.state, semi.edge, Array.from(semi.low)]).toEqual([
-    "semi-crystalline",
-    "low",
-    [143 + 15, Number.NaN, Number.NaN],
+  expect(track.windows).toEqual([
+    { state: "amorphous", low: Number.NEGATIVE_INFINITY, high: 143 - 15, runs: [[2, 2]] },
+    { state: "semi-crystalline", low: 143 + 15, high: Number.POSITIVE_INFINITY, runs: [[0, 0]] },
   ]);
 });
 
-test("every value, band and window lies within the scale", () => {
+test("layers in a row that want the same are one run of its window", () => {
+  const turns = [0, 0, 1, 1, 1, 0].map(
+    (share): LayerTarget => ({ state: share ? "semi-crystalline" : "amorphous", share }),
+  );
+  const [{ windows = [] }] = predictionTracks({ polymer: peek, targets: turns });
+  expect(windows.map(({ runs }) => runs)).toEqual([
+    [
+      [0, 1],
+      [5, 5],
+    ],
+    [[2, 4]],
+  ]);
+});
+
+test("every value, band and edge of a window lies within the scale", () => {
   for (const track of predictionTracks({ polymer: peek, targets, prediction: predictionOf(3) })) {
     const [from, to] = track.domain ?? [0, 0];
     const { values, low, high } = track.series[0];
-    const windows = (track.windows ?? []).flatMap((window) => [...Array.from(window.low), ...Array.from(window.high)]);
+    const windows = (track.windows ?? []).flatMap((window) => [window.low, window.high].filter(Number.isFinite));
     for (const value of [...Array.from(values), ...Array.from(low ?? []), ...Array.from(high ?? []), ...windows]) {
       if (Number.isNaN(value)) continue;
       expect(value).toBeGreaterThanOrEqual(from);
@@ -51,7 +58,7 @@ test("the profile's margins go before the card's", () => {
     minCrystallinity: 0.2,
   });
   const [track] = predictionTracks({ polymer: peek, margins: { belowTgC: 30 }, targets, prediction: predictionOf(3) });
-  expect(track.windows?.[0].high[2]).toBe(113);
+  expect(track.windows?.[0].high).toBe(113);
 });
 
 test("without a prediction the tracks stand empty, and one of another part is not drawn", () => {

@@ -1,6 +1,6 @@
 import { expect, test } from "vitest";
 import { adviceMarks, findingMarks } from "#src/features/layer-log/log-marks.ts";
-import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
+import { readingTracks, withPlan } from "#src/features/layer-log/reading-tracks.ts";
 import { trackText } from "#src/features/layer-log/value-text.ts";
 import { layersOf } from "#tests/src/layer-log/layers.ts";
 
@@ -31,7 +31,7 @@ test("two fans are told apart by their ids", () => {
 });
 
 test("as sliced and as planned differ by their line, not by colour alone", () => {
-  const fan = readingTracks(layersOf(3), CHANNELS, planOf(3))[2];
+  const fan = withPlan(readingTracks(layersOf(3), CHANNELS), planOf(3))[2];
   expect(fan.series.map(({ label, style }) => [label, style.line])).toEqual([
     ["as sliced", "dashed"],
     ["as planned", "solid"],
@@ -41,7 +41,7 @@ test("as sliced and as planned differ by their line, not by colour alone", () =>
 
 test("a channel that the plan does not drive has no planned line", () => {
   const plan = { layers: planOf(3).layers.map((layer) => ({ ...layer, duty: { "part-fan": 0.5 } })) };
-  expect(readingTracks(layersOf(3), CHANNELS, plan)[3].series).toHaveLength(1);
+  expect(withPlan(readingTracks(layersOf(3), CHANNELS), plan)[3].series).toHaveLength(1);
 });
 
 test("a range is drawn only where a duty changes within a layer", () => {
@@ -71,7 +71,7 @@ test("findings stand at their layer, or at the layer that holds their line; thos
 });
 
 test("values are read out with their units, series by name where there are several", () => {
-  const tracks = readingTracks(layersOf(3), CHANNELS, planOf(3));
+  const tracks = withPlan(readingTracks(layersOf(3), CHANNELS), planOf(3));
   expect(trackText(tracks[0], 1)).toBe("Layer time 12.0 s");
   expect(trackText(tracks[2], 1)).toBe("Fan duty as sliced 0.40, as planned 0.50");
 });

@@ -80,7 +80,7 @@ test("two channels on one output are a problem at the second one's command", asy
   await user.clear(index);
   await user.type(index, "0");
   expect(within(channel("lamp")).getByText(/This output is the output of channels\[0\]/)).toBeTruthy();
-  expect(screen.getByText("To correct: channels[1].drive")).toBeTruthy();
+  expect(screen.getByText("To correct: Channel lamp, command")).toBeTruthy();
 });
 
 test("a drive by name asks for the name that the firmware knows", async () => {
@@ -105,7 +105,7 @@ test("corners are described by one of three rules, each with its own numbers", a
   const user = userEvent.setup();
   render(<Editor />);
   await user.selectOptions(screen.getByRole("combobox", { name: "Corners by" }), "axis-jerk");
-  const jerk = screen.getByRole("textbox", { name: "Jerk Z mm/s" });
+  const jerk = screen.getByRole("textbox", { name: "Largest jump of Z mm/s" });
   await user.clear(jerk);
   await user.type(jerk, "0.4");
   expect(latest.motion.cornering).toEqual({ rule: "axis-jerk", jerkMmS: { x: 9, y: 9, z: 0.4, e: 4 } });

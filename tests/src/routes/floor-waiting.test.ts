@@ -1,6 +1,6 @@
 import { expect, test } from "vitest";
 import { may, type Role } from "#shared/contract/roles.ts";
-import { waitingItems } from "#src/routes/floor-waiting.ts";
+import { nextStep, waitingItems } from "#src/routes/floor-waiting.ts";
 
 const reading = {
   id: "r1",
@@ -63,7 +63,7 @@ test("a refusal waits with its reason", () => {
 });
 
 test("a written file waits for the checklist of who looks", () => {
-  expect(acts({ tunings: [tuning("done", false)], ...as("operator") })).toEqual(["Go through it"]);
+  expect(acts({ tunings: [tuning("done", false)], ...as("operator") })).toEqual(["Checklist"]);
   expect(acts({ tunings: [tuning("done", true)], ...as("operator") })).toEqual([]);
 });
 
@@ -76,4 +76,17 @@ test("only the lead is asked to approve, and only the latest version", () => {
 test("nothing waits for a viewer", () => {
   const sources = { toolpaths: [toolpath("done")], tunings: [tuning("refused", false)], profiles: [profile([])] };
   expect(acts({ ...sources, ...as("viewer") })).toEqual([]);
+});
+
+test("the next step of a toolpath is to tune it, for who may, or to see why it was not read", () => {
+  const step = (state: "done" | "refused" | "running", role: Role) => nextStep(toolpath(state), as(role).may)?.act;
+  expect(step("done", "operator")).toBe("Tune");
+  expect(step("done", "viewer")).toBeUndefined();
+  expect(step("running", "operator")).toBeUndefined();
+  expect(step("refused", "viewer")).toBe("See why");
+});
+
+test("a written file is told apart from another of the same toolpath by its profile and version", () => {
+  const [item] = waitingItems({ tunings: [tuning("done", false)], ...as("operator") });
+  expect(item.why).toContain("with Profile, version 1");
 });

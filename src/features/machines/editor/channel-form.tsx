@@ -2,6 +2,7 @@ import type { Channel } from "#shared/formats/machine.ts";
 import { DriveFields } from "#src/features/machines/editor/drive-fields.tsx";
 import type { MachineEditing } from "#src/features/machines/editor/machine-editing.ts";
 import { asKind, withChannel, withoutChannel } from "#src/features/machines/editor/machine-edits.ts";
+import { choiceText, named, wordsOf } from "#src/lib/document-words.ts";
 import { Button } from "#src/ui/button.tsx";
 import { SelectField, TextField } from "#src/ui/field.tsx";
 import { NumberField, problemText } from "#src/ui/number-field.tsx";
@@ -10,20 +11,18 @@ type NumberOf = "minDuty" | "maxDuty" | "idleDuty" | "startBoostS" | "settleS" |
 
 interface FieldSpec {
   field: NumberOf;
-  label: string;
-  unit: string;
   step: number;
   hint?: string;
   only?: Channel["kind"];
 }
 
 const FIELDS: FieldSpec[] = [
-  { field: "minDuty", label: "Least duty", unit: "0–1", step: 0.01, hint: "below it a fan stalls" },
-  { field: "maxDuty", label: "Most duty", unit: "0–1", step: 0.01 },
-  { field: "idleDuty", label: "Idle duty", unit: "0–1", step: 0.01, hint: "at pauses and at the end", only: "heater" },
-  { field: "startBoostS", label: "Start boost", unit: "s", step: 0.1, hint: "full power from standstill", only: "fan" },
-  { field: "settleS", label: "Settle time", unit: "s", step: 0.1, hint: "to 90 % of a change" },
-  { field: "maxDutyPerS", label: "Change", unit: "a second", step: 0.01, hint: "empty: no limit" },
+  { field: "minDuty", step: 0.01, hint: "below it a fan stalls" },
+  { field: "maxDuty", step: 0.01 },
+  { field: "idleDuty", step: 0.01, hint: "at pauses and at the end", only: "heater" },
+  { field: "startBoostS", step: 0.1, hint: "full power from standstill", only: "fan" },
+  { field: "settleS", step: 0.1, hint: "to 90 % of a change" },
+  { field: "maxDutyPerS", step: 0.01, hint: "empty: no limit" },
 ];
 
 /** One output: its command, and what it can do. */
@@ -39,12 +38,7 @@ export function ChannelForm({ editing, c }: { editing: MachineEditing; c: number
       <div className="flex items-center gap-3 pb-3">
         <span aria-hidden="true" className={fan ? "w-5 border-t-2 border-cool" : "w-5 border-t-2 border-heat"} />
         <code className="grow font-mono font-semibold">{channel.id}</code>
-        <Button
-          weight="quiet"
-          className="text-small"
-          aria-label={`Remove ${channel.id}`}
-          onClick={() => edit(withoutChannel(machine, c))}
-        >
+        <Button aria-label={`Remove ${channel.id}`} onClick={() => edit(withoutChannel(machine, c))}>
           Remove
         </Button>
       </div>
@@ -68,8 +62,8 @@ export function ChannelForm({ editing, c }: { editing: MachineEditing; c: number
           value={channel.kind}
           onChange={({ target }) => set(asKind(channel, target.value as Channel["kind"]))}
         >
-          <option value="fan">part-cooling fan</option>
-          <option value="heater">radiant heater</option>
+          <option value="fan">{choiceText("fan")}</option>
+          <option value="heater">{choiceText("heater")}</option>
         </SelectField>
         <DriveFields
           drive={channel.drive}
@@ -79,11 +73,10 @@ export function ChannelForm({ editing, c }: { editing: MachineEditing; c: number
         />
         {FIELDS.filter(
           ({ only, field }) => only === undefined || only === channel.kind || problems.at(`${path}.${field}`),
-        ).map(({ field, label, unit, step, hint }) => (
+        ).map(({ field, step, hint }) => (
           <NumberField
             key={field}
-            label={label}
-            unit={unit}
+            {...named(`channels.*.${field}`)}
             hint={field === "minDuty" && !fan ? undefined : hint}
             step={step}
             value={channel[field]}
@@ -112,11 +105,11 @@ function ActsFields({ channel: { acts }, problem, onChange }: ActsProps) {
   return (
     <>
       <SelectField
-        label="Acts"
+        label={wordsOf("channels.*.acts")}
         value={queued ? "queued" : "immediate"}
         onChange={({ target }) => onChange(target.value === "queued" ? "queued" : { immediate: 0.5 })}
       >
-        <option value="queued">in step with motion</option>
+        <option value="queued">{choiceText("queued")}</option>
         <option value="immediate">when the line is read</option>
       </SelectField>
       {!queued && (

@@ -1,8 +1,11 @@
 import type { Cornering } from "#shared/formats/machine.ts";
 import type { MachineEditing } from "#src/features/machines/editor/machine-editing.ts";
 import { corneringOf, withMotion } from "#src/features/machines/editor/machine-edits.ts";
+import { choiceText, named, wordsOf } from "#src/lib/document-words.ts";
 import { SelectField } from "#src/ui/field.tsx";
 import { NumberField, problemText } from "#src/ui/number-field.tsx";
+
+const RULES: readonly Cornering["rule"][] = ["square-corner-velocity", "junction-deviation", "axis-jerk"];
 
 /** How fast corners are taken: one of three rules, each with its own numbers. */
 export function CorneringFields({ editing }: { editing: MachineEditing }) {
@@ -13,37 +16,38 @@ export function CorneringFields({ editing }: { editing: MachineEditing }) {
   return (
     <div className="grid grid-cols-2 gap-3 md:grid-cols-3 xl:grid-cols-4">
       <SelectField
-        label="Corners by"
+        label={wordsOf(`${path}.rule`)}
         value={cornering.rule}
         error={problemText("Rule", problems.at(`${path}.rule`))}
         onChange={({ target }) => set(corneringOf(target.value as Cornering["rule"]), "rule")}
       >
-        <option value="square-corner-velocity">square corner velocity</option>
-        <option value="junction-deviation">junction deviation</option>
-        <option value="axis-jerk">jerk of each axis</option>
+        {RULES.map((rule) => (
+          <option key={rule} value={rule}>
+            {choiceText(rule)}
+          </option>
+        ))}
       </SelectField>
       {cornering.rule === "square-corner-velocity" && (
         <>
           <NumberField
-            label="Square corner"
-            unit="mm/s"
+            {...named(`${path}.speedMmS`)}
+            hint="firmware: square corner velocity"
             step={0.5}
             value={cornering.speedMmS}
             problem={problems.at(`${path}.speedMmS`)}
             onChange={(value) => set({ ...cornering, speedMmS: value as number }, "speedMmS")}
           />
           <NumberField
-            label="Least cruised share"
-            unit="0–1"
+            {...named(`${path}.cruiseRatio`)}
+            hint="firmware: minimum cruise ratio"
             step={0.05}
             value={cornering.cruiseRatio}
             problem={problems.at(`${path}.cruiseRatio`)}
             onChange={(value) => set({ ...cornering, cruiseRatio: value as number }, "cruiseRatio")}
           />
           <NumberField
-            label="Step of E"
-            unit="mm/s"
-            hint="empty: no limit"
+            {...named(`${path}.extruderStepMmS`)}
+            hint="empty: no limit; firmware: instantaneous corner velocity"
             step={0.5}
             value={cornering.extruderStepMmS}
             problem={problems.at(`${path}.extruderStepMmS`)}
@@ -53,8 +57,8 @@ export function CorneringFields({ editing }: { editing: MachineEditing }) {
       )}
       {cornering.rule === "junction-deviation" && (
         <NumberField
-          label="Deviation"
-          unit="mm"
+          {...named(`${path}.deviationMm`)}
+          hint="firmware: junction deviation"
           step={0.001}
           value={cornering.deviationMm}
           problem={problems.at(`${path}.deviationMm`)}
@@ -65,8 +69,8 @@ export function CorneringFields({ editing }: { editing: MachineEditing }) {
         (["x", "y", "z", "e"] as const).map((axis) => (
           <NumberField
             key={axis}
-            label={`Jerk ${axis.toUpperCase()}`}
-            unit="mm/s"
+            {...named(`${path}.jerkMmS.${axis}`)}
+            hint="firmware: jerk"
             step={0.5}
             value={cornering.jerkMmS[axis]}
             problem={problems.at(`${path}.jerkMmS.${axis}`)}

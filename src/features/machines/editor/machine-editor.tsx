@@ -8,6 +8,7 @@ import { MotionForm } from "#src/features/machines/editor/motion-form.tsx";
 import { PauseForm } from "#src/features/machines/editor/pause-form.tsx";
 import { ThermalForm } from "#src/features/machines/editor/thermal-form.tsx";
 import { findProblems } from "#src/lib/document-problems.ts";
+import { placeOf, placeText } from "#src/lib/place.ts";
 import { undoKeys } from "#src/lib/undo-keys.ts";
 import { useHistory } from "#src/lib/use-history.ts";
 import { Button } from "#src/ui/button.tsx";
@@ -39,12 +40,12 @@ export function MachineEditor({ machine, onChange }: MachineEditorProps) {
         <p role="status" className="text-small text-soft">
           {problems.all.length === 0
             ? "Nothing to correct."
-            : `To correct: ${problems.all.map(({ path }) => path || "the document").join(", ")}`}
+            : `To correct: ${problems.all.map(({ path }) => placeText(placeOf(path, machine))).join("; ")}`}
         </p>
       </div>
-      <Section title="Name">
+      <Section title="Machine">
         <TextField
-          label="Machine"
+          label="Name"
           className="max-w-sm"
           value={machine.name}
           error={problemText("Name", problems.at("name"))}

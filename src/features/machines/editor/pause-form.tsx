@@ -29,7 +29,7 @@ export function PauseForm({ editing: { machine, problems, edit, rest } }: { edit
             onBlur={rest}
           />
           <CheckField
-            className="sm:pt-6"
+            className="sm:pt-7"
             label="No further line is read until the print goes on, so the lamp may be restored after it"
             checked={pause.blocking}
             onChange={({ target }) =>
@@ -40,8 +40,7 @@ export function PauseForm({ editing: { machine, problems, edit, rest } }: { edit
             }
           />
           <Button
-            weight="quiet"
-            className="text-small sm:mt-6"
+            className="sm:mt-6"
             aria-label={`Remove pause ${pause.command}`}
             onClick={() => edit({ ...machine, pauses: pauses.filter((_, i) => i !== p) })}
           >

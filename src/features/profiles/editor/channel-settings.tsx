@@ -2,10 +2,11 @@ import type { Lead, Limits, Profile } from "#shared/formats/profile.ts";
 import type { EditedChannel } from "#src/features/profiles/editor/driven.ts";
 import type { ProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { drivingChannel } from "#src/features/profiles/editor/zone-edits.ts";
+import { choiceText } from "#src/lib/document-words.ts";
 import { CheckField, SelectField } from "#src/ui/field.tsx";
 import { NumberField, problemText } from "#src/ui/number-field.tsx";
 
-/** What holds for a channel in all zones: bed layers, limits and lead. */
+/** What holds for a channel in all zones: bed layers, limits, and how far ahead it is commanded. */
 export function ChannelSettings({ editing, edited }: { editing: ProfileEditing; edited: EditedChannel }) {
   const { profile } = editing;
   const { id, side, driven, channel } = edited;
@@ -27,8 +28,8 @@ export function ChannelSettings({ editing, edited }: { editing: ProfileEditing; 
       {driven && (
         <div className="grid grid-cols-2 gap-3 pl-8 sm:grid-cols-3 @3xl:grid-cols-4">
           {profile.bedLayers.count > 0 && <BedDuty editing={editing} id={id} />}
-          <LimitField editing={editing} id={id} field="minDuty" label="Least" unit="0–1" machine={channel?.minDuty} />
-          <LimitField editing={editing} id={id} field="maxDuty" label="Most" unit="0–1" machine={channel?.maxDuty} />
+          <LimitField editing={editing} id={id} field="minDuty" label="Least duty" unit="0–1" machine={channel?.minDuty} />
+          <LimitField editing={editing} id={id} field="maxDuty" label="Most duty" unit="0–1" machine={channel?.maxDuty} />
           <LimitField editing={editing} id={id} field="maxDutyPerLayer" label="Change" unit="a layer" />
           <LimitField
             editing={editing}
@@ -119,14 +120,14 @@ function LeadFields({ editing, id, settleS }: { editing: ProfileEditing; id: str
   return (
     <>
       <SelectField
-        label="Lead"
+        label="Ahead"
         hint={settle && settleS !== undefined ? `${settleS / 2} s ahead` : undefined}
-        error={settle ? problemText("Lead", problems.at(`lead.${id}`)) : undefined}
+        error={settle ? problemText("Ahead", problems.at(`lead.${id}`)) : undefined}
         value={settle ? "settle" : "seconds"}
         onChange={({ target }) => set(target.value === "settle" ? "settle" : 0)}
       >
         <option value="seconds">in seconds</option>
-        <option value="settle">half the settle time</option>
+        <option value="settle">{choiceText("settle")}</option>
       </SelectField>
       {!settle && (
         <NumberField

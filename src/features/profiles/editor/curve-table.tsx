@@ -61,6 +61,7 @@ export function CurveTable({ points, grid, quantity, problems, path, onChange }:
                   value={duty}
                   step={grid.duty}
                   decimals={2}
+                  share
                   problem={problems.at(`${at}[1]`)}
                   onChange={(value) => set(i, 1, value)}
                 />

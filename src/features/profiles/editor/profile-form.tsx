@@ -6,6 +6,7 @@ import { ProblemList } from "#src/features/profiles/editor/problem-list.tsx";
 import type { ProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { addZone, inUnit } from "#src/features/profiles/editor/zone-edits.ts";
 import { ZoneForm, type ZoneFormProps } from "#src/features/profiles/editor/zone-form.tsx";
+import { named, wordsOf } from "#src/lib/document-words.ts";
 import { Button } from "#src/ui/button.tsx";
 import { SelectField, TextField } from "#src/ui/field.tsx";
 import { NumberField, problemText } from "#src/ui/number-field.tsx";
@@ -66,7 +67,7 @@ export function WholeProfile({ editing, polymers }: Pick<ProfileFormProps, "edit
         <PolymerField editing={editing} polymers={polymers} />
         <UnitField editing={editing} />
         <SelectField
-          label="Fan commands inside a layer"
+          label={wordsOf("withinLayer")}
           hint="those of the file, on bridges and overhangs"
           value={profile.withinLayer}
           onChange={({ target }) => change({ withinLayer: target.value as Profile["withinLayer"] }, "withinLayer")}
@@ -148,11 +149,11 @@ function UnitField({ editing }: { editing: ProfileEditing }) {
   );
 }
 
-const MARGINS: { field: keyof Margins; label: string; unit: string; step: number }[] = [
-  { field: "belowTgC", label: "Amorphous, below Tg by", unit: "K", step: 1 },
-  { field: "aboveTgC", label: "Semi-crystalline, above Tg by", unit: "K", step: 1 },
-  { field: "maxCrystallinity", label: "Amorphous, at most", unit: "0–1", step: 0.01 },
-  { field: "minCrystallinity", label: "Semi-crystalline, at least", unit: "0–1", step: 0.01 },
+const MARGINS: { field: keyof Margins; step: number }[] = [
+  { field: "belowTgC", step: 1 },
+  { field: "aboveTgC", step: 1 },
+  { field: "maxCrystallinity", step: 0.01 },
+  { field: "minCrystallinity", step: 0.01 },
 ];
 
 /** The polymer card's margins hold unless the profile gives its own. */
@@ -170,11 +171,10 @@ function MarginFields({ editing }: { editing: ProfileEditing }) {
       <summary className="text-small font-semibold">Margins of its own</summary>
       <p className="py-1 text-small text-soft">Empty: as the polymer card says.</p>
       <div className="grid gap-3 sm:grid-cols-2 @3xl:grid-cols-4">
-        {MARGINS.map(({ field, label, unit, step }) => (
+        {MARGINS.map(({ field, step }) => (
           <NumberField
             key={field}
-            label={label}
-            unit={unit}
+            {...named(`margins.${field}`)}
             step={step}
             hint={polymer && `card: ${polymer.margins[field].value}`}
             value={profile.margins?.[field]}

@@ -95,6 +95,6 @@ test("a draft that is no valid document can't be saved, and says where it is wro
   fakeServer({});
   const { person } = open();
   await person.clear(screen.getByLabelText("Name"));
-  expect(screen.getByRole("alert").textContent).toContain("name: is empty. Give it a name");
+  expect(screen.getByRole("alert").textContent).toContain("Name is empty. Give it a name");
   expect(screen.getByRole("button", { name: "Save as a new version" })).toHaveProperty("disabled", true);
 });

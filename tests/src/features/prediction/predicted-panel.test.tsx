@@ -33,7 +33,7 @@ test("an uncalibrated prediction lists what was assumed, with range and source",
   render(panel());
   await userEvent.click(screen.getByText("1 value is assumed"));
   const table = screen.getByRole("region", { name: "Assumed values" });
-  expect(within(table).getByRole("rowheader").textContent).toBe("roomAirCfrom memory of the trade");
+  expect(within(table).getByRole("rowheader").textContent).toBe("Air, °Cfrom memory of the trade");
   expect(
     within(table)
       .getAllByRole("cell")

@@ -43,4 +43,6 @@ test("a zone without a target asks for nothing, and an amorphous polymer is not 
   const none = { state: "none" as const, share: Number.NaN };
   expect(verdictsOf({ layer, target: none, margins, crystallises: true })[1].text).toBe("No state is wanted here.");
   expect(verdictsOf({ layer, target: none, margins, crystallises: false })).toHaveLength(2);
+  const between = { state: "between" as const, share: 0.25 };
+  expect(verdictsOf({ layer, target: between, margins, crystallises: true })[1].text).toContain("25 % of the way");
 });
