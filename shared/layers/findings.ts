@@ -26,12 +26,12 @@ export class Findings {
   /** In file order; behind the last one kept of a kind, what is not kept is counted. */
   end(): Finding[] {
     const sorted = this.list.sort((a, b) => (a.line ?? 0) - (b.line ?? 0));
+    const last = new Map(sorted.map(({ code }, position) => [code, position]));
     return sorted.flatMap((finding, position) => {
       const { code, severity } = finding;
       const count = this.count(code);
-      const goesOn = count <= KEPT || sorted.findLastIndex((other) => other.code === code) !== position;
-      const message = `and ${count - KEPT} more like it, ${count} in all`;
-      return goesOn ? [finding] : [finding, { code, severity, message }];
+      if (count <= KEPT || last.get(code) !== position) return [finding];
+      return [finding, { code, severity, message: `and ${count - KEPT} more like it, ${count} in all` }];
     });
   }
 }

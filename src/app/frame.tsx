@@ -1,7 +1,9 @@
 import { NavLink, Outlet, ScrollRestoration } from "react-router-dom";
+import { KeysNote } from "#src/app/keys-note.tsx";
 import { paths } from "#src/app/paths.ts";
 import { PersonMenu } from "#src/app/person-menu.tsx";
 import { SheetSwitch } from "#src/app/sheet-switch.tsx";
+import { useHeadingFocus } from "#src/app/use-heading-focus.ts";
 import { useSession } from "#src/features/auth/session-context.tsx";
 import { useJobEvents } from "#src/features/jobs/use-job-events.ts";
 import { useOnline } from "#src/lib/use-online.ts";
@@ -17,6 +19,7 @@ const PAGES = [
 /** What surrounds every page: one strip along the top, the page under it. */
 export function Frame() {
   useJobEvents();
+  const page = useHeadingFocus();
   const { team } = useSession();
   const online = useOnline();
   return (
@@ -28,7 +31,7 @@ export function Frame() {
         Skip to the page
       </a>
       <header className="border-b border-ink">
-        <div className="mx-auto flex max-w-[100rem] flex-wrap items-stretch gap-x-5 px-5 xl:gap-x-8">
+        <div className="mx-auto flex max-w-[100rem] flex-wrap items-stretch gap-x-3 px-5 lg:gap-x-5 xl:gap-x-8">
           <Wordmark />
           <nav aria-label="Pages" className="flex flex-wrap">
             {PAGES.map(({ to, name, end }) => (
@@ -36,15 +39,18 @@ export function Frame() {
                 key={to}
                 to={to}
                 end={end}
-                className="-mb-px inline-flex min-h-11 items-center border-b-3 border-transparent px-3 hover:bg-well aria-[current=page]:border-ink aria-[current=page]:font-semibold"
+                className="-mb-px inline-flex min-h-11 items-center border-b-3 border-transparent px-2.5 hover:bg-well lg:px-3 aria-[current=page]:border-ink aria-[current=page]:font-semibold"
               >
                 {name}
               </NavLink>
             ))}
           </nav>
-          <div className="ml-auto flex flex-wrap items-center gap-x-4 xl:gap-x-5">
+          <div className="ml-auto flex items-center gap-x-4 xl:gap-x-5">
             <span className="hidden text-small text-soft xl:inline">{team.name}</span>
-            <SheetSwitch />
+            <span className="max-lg:hidden">
+              <SheetSwitch />
+            </span>
+            <KeysNote />
             <PersonMenu />
           </div>
         </div>
@@ -54,7 +60,7 @@ export function Frame() {
           No network. You can go on looking and typing; what needs the server works again when the network is back.
         </p>
       )}
-      <main id="page" tabIndex={-1} className="mx-auto w-full max-w-[100rem] grow px-5 pb-16 outline-none">
+      <main ref={page} id="page" tabIndex={-1} className="mx-auto w-full max-w-[100rem] grow px-5 pb-16 outline-none">
         <Outlet />
       </main>
       <ScrollRestoration />

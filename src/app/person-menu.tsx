@@ -2,6 +2,7 @@ import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { useState } from "react";
 import { useNavigate } from "react-router-dom";
 import { paths } from "#src/app/paths.ts";
+import { SheetSwitch } from "#src/app/sheet-switch.tsx";
 import { endAllSessions, endSession, sessionQuery } from "#src/features/auth/queries.ts";
 import { useSession } from "#src/features/auth/session-context.tsx";
 import { asProblem } from "#src/lib/problem.ts";
@@ -28,7 +29,8 @@ export function PersonMenu() {
   return (
     <>
       <Button weight="quiet" onClick={() => setOpen(true)} aria-haspopup="dialog">
-        {user.name ?? user.email}
+        <span className="max-xl:hidden">{user.name ?? user.email}</span>
+        <span className="xl:hidden">{user.role}</span>
       </Button>
       {open && (
         <Dialog title="Signed in" onClose={() => setOpen(false)}>
@@ -39,6 +41,9 @@ export function PersonMenu() {
               { label: "Team", value: team.name },
             ]}
           />
+          <div className="pt-3 lg:hidden">
+            <SheetSwitch />
+          </div>
           {leave.error && <ProblemNotice problem={asProblem(leave.error)} />}
           <Actions>
             <Button weight="main" disabled={leave.isPending} onClick={() => leave.mutate(endSession)}>

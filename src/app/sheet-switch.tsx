@@ -3,7 +3,7 @@ import { chooseSheet, type SheetChoice, useSheetChoice } from "#src/lib/sheet.ts
 const CHOICES: { value: SheetChoice; name: string }[] = [
   { value: "light", name: "Light" },
   { value: "dark", name: "Dark" },
-  { value: "system", name: "As system" },
+  { value: "system", name: "As the system" },
 ];
 
 /** Light or dark sheet, or what the system says. Remembered in this browser. */
@@ -11,7 +11,7 @@ export function SheetSwitch() {
   const choice = useSheetChoice();
   return (
     <label className="flex items-center gap-2 text-small">
-      <span className="text-soft max-xl:sr-only">Sheet</span>
+      <span className="text-soft">Sheet</span>
       <select
         value={choice}
         onChange={(event) => chooseSheet(event.target.value as SheetChoice)}

@@ -43,18 +43,20 @@ export function ReadingView({ reading }: Props) {
 function Read({ readingId, document, machine }: { readingId: string; document: ReadingDocument; machine: Machine }) {
   const [pinned, pin] = usePinnedLayer();
   const [linesShown, showLines] = useState(false);
+  const [marked, setMarked] = useState<number>();
   const { layers, findings, totals } = document;
   const tracks = useMemo(() => readingTracks(layers, machine.channels), [layers, machine]);
   const marks = useMemo(() => findingMarks(findings, layers), [findings, layers]);
   const layer = layers.find(({ index }) => index === pinned);
   const top = layers.at(-1);
+  const layerWith = (line: number) => layers.find(({ firstLine, lastLine }) => firstLine <= line && line <= lastLine);
   return (
     <>
       <Facts
         facts={[
           { label: "Layers", value: totals.layers },
           { label: "Height", value: top ? fixedText(Math.max(...layers.map(({ zMm }) => zMm)), 2) : "–", unit: "mm" },
-          { label: "Print time, without pauses", value: durationText(totals.printTimeS) },
+          { label: "Print time", value: durationText(totals.printTimeS) },
           { label: "Deposited", value: fixedText(totals.depositedLengthMm / 1000, 2), unit: "m" },
           { label: "Travel", value: fixedText(totals.travelLengthMm / 1000, 2), unit: "m" },
           { label: "Filament", value: fixedText(totals.filamentMm / 1000, 3), unit: "m" },
@@ -76,7 +78,7 @@ function Read({ readingId, document, machine }: { readingId: string; document: R
           }
         >
           {linesShown ? (
-            <LayerLines readingId={readingId} layer={layer.index} />
+            <LayerLines readingId={readingId} layer={layer.index} marked={marked} />
           ) : (
             <p className="text-soft">
               From line <span className="font-mono">{layer.firstLine}</span> to line{" "}
@@ -94,11 +96,10 @@ function Read({ readingId, document, machine }: { readingId: string; document: R
             pin(layerWith(line)?.index);
             showLines(true);
             setMarked(line);
-            setTimeout(() => document.getElementById("lines")?.scrollIntoView({ block: "nearest" }));
           }}
         />
       </Section>
-      <Section title="Dwells and pauses">
+      <Section title="Dwells and pauses" note="what has no known length is not in the print time">
         <Waits layers={layers} />
       </Section>
     </>

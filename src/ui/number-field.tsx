@@ -15,9 +15,7 @@ interface NumberInput {
 }
 
 const noNumber = (share: boolean): string =>
-  share
-    ? "is no number. Type a share such as 0.65, or 65 %"
-    : "is no number. Type digits, with a point for decimals";
+  share ? "is no number. Type a share such as 0.65, or 65 %" : "is no number. Type digits, with a point for decimals";
 
 /** What is typed stays as typed while it means the value ("0." is on its way to 0.5); a value set from outside replaces it. */
 function useNumberText({ value, onChange, step = 1, decimals = 0, share = false }: NumberInput) {

@@ -106,7 +106,7 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
     await page.getByRole("dialog").getByLabel("Machine").selectOption({ label: "Fulmar" });
     await page.getByRole("dialog").getByRole("button", { name: "Read" }).click();
     await page.getByLabel("Read for", { exact: true }).waitFor();
-    await page.getByText("Print time, without pauses").waitFor();
+    await page.getByText("Print time", { exact: true }).first().waitFor();
     const shown = page.getByLabel("Read for", { exact: true }).locator("option:checked");
     expect(await shown.textContent()).toBe("Fulmar, version 1");
     expect(complaints).toEqual([]);

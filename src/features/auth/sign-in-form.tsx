@@ -36,7 +36,7 @@ export function SignInForm({ email: fixedEmail, onSignedIn }: Props) {
         type="email"
         autoComplete="username"
         required
-        // There is nothing else to do on this page.
+        // Signing in is all there is to do on that page.
         autoFocus={fixedEmail === undefined}
         readOnly={fixedEmail !== undefined}
         value={email}

@@ -29,7 +29,13 @@ export function ChecklistDialog({ machine, action, onAcknowledged, onClose }: Pr
   );
 }
 
-function Checklist({ machine, action = "I have made sure", before, onAcknowledged, onClose }: Props & { before: string[] }) {
+function Checklist({
+  machine,
+  action = "I have made sure",
+  before,
+  onAcknowledged,
+  onClose,
+}: Props & { before: string[] }) {
   const client = useQueryClient();
   const [ticked, setTicked] = useState<readonly string[]>(before);
   const missing = SAFETY_CHECKLIST.filter(({ id }) => !ticked.includes(id)).length;
@@ -48,8 +54,8 @@ function Checklist({ machine, action = "I have made sure", before, onAcknowledge
   return (
     <form onSubmit={submit}>
       <p className="pb-3 font-semibold">
-        A lamp has no protection of its own: lamp, nozzle and bed burn and can start fires, and when a print ends early no
-        line of the file runs.
+        A lamp has no protection of its own: lamp, nozzle and bed burn and can start fires, and when a print ends early
+        no line of the file runs.
       </p>
       <fieldset>
         <legend className="pb-1">Tick what you have made sure of, for version {machine.version} of the machine.</legend>

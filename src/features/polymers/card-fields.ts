@@ -1,4 +1,5 @@
 import type { Polymer, Sourced } from "#shared/formats/polymer.ts";
+import { unitOf, wordsOf } from "#src/lib/document-words.ts";
 
 /** One number of a card: where it stands in the document, and how it is called and shown. */
 export interface CardField {
@@ -14,10 +15,10 @@ export interface CardGroup {
   fields: CardField[];
 }
 
-const field = (path: string, label: string, unit: string, decimals: number): CardField => ({
+const field = (path: string, decimals: number): CardField => ({
   path: path.split("."),
-  label,
-  unit,
+  label: wordsOf(path),
+  unit: unitOf(path) ?? "",
   decimals,
 });
 
@@ -25,44 +26,44 @@ export const CARD_GROUPS: CardGroup[] = [
   {
     title: "Transitions",
     fields: [
-      field("tgC", "Glass transition, Tg", "°C", 0),
-      field("tmC", "Melting, Tm", "°C", 0),
-      field("solidBelowC", "Keeps its shape below", "°C", 0),
-      field("solidAtRelativeCrystallinity", "or from relative crystallinity", "0–1", 2),
-      field("weldAboveC", "Layers weld above", "°C", 0),
+      field("tgC", 0),
+      field("tmC", 0),
+      field("solidBelowC", 0),
+      field("solidAtRelativeCrystallinity", 2),
+      field("weldAboveC", 0),
     ],
   },
   {
     title: "Margins",
     note: "a profile may set its own",
     fields: [
-      field("margins.belowTgC", "Amorphous: below Tg by", "K", 0),
-      field("margins.aboveTgC", "Semi-crystalline: above Tg by", "K", 0),
-      field("margins.maxCrystallinity", "Amorphous: crystallinity at most", "0–1", 2),
-      field("margins.minCrystallinity", "Semi-crystalline: at least", "0–1", 2),
+      field("margins.belowTgC", 0),
+      field("margins.aboveTgC", 0),
+      field("margins.maxCrystallinity", 2),
+      field("margins.minCrystallinity", 2),
     ],
   },
   {
     title: "Heat",
     fields: [
-      field("densityKgM3", "Density", "kg/m³", 0),
-      field("conductivityWMK", "Conductivity", "W/(m·K)", 2),
-      field("heatCapacityJKgK", "Heat capacity", "J/(kg·K)", 0),
-      field("emissivity", "Emissivity", "0–1", 2),
-      field("lampAbsorptivity.low", "Absorbs of the lamp, low", "0–1", 2),
-      field("lampAbsorptivity.typical", "typical", "0–1", 2),
-      field("lampAbsorptivity.high", "high", "0–1", 2),
+      field("densityKgM3", 0),
+      field("conductivityWMK", 2),
+      field("heatCapacityJKgK", 0),
+      field("emissivity", 2),
+      field("lampAbsorptivity.low", 2),
+      field("lampAbsorptivity.typical", 2),
+      field("lampAbsorptivity.high", 2),
     ],
   },
   {
     title: "Crystallinity",
     fields: [
-      field("crystallinity.heatOfFusionJG", "Heat of fusion of the crystal", "J/g", 1),
-      field("crystallinity.attainable", "Attainable crystallinity", "0–1", 2),
-      field("crystallinity.avramiN", "Avrami exponent", "", 2),
-      field("crystallinity.fastestPerS", "Fastest rate", "1/s", 4),
-      field("crystallinity.fastestAtC", "at", "°C", 0),
-      field("crystallinity.halfWidthC", "Half-width at half height", "K", 0),
+      field("crystallinity.heatOfFusionJG", 1),
+      field("crystallinity.attainable", 2),
+      field("crystallinity.avramiN", 2),
+      field("crystallinity.fastestPerS", 4),
+      field("crystallinity.fastestAtC", 0),
+      field("crystallinity.halfWidthC", 0),
     ],
   },
 ];

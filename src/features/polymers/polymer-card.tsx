@@ -77,7 +77,7 @@ function columnsFor(fields: readonly FilledField[]): Column<FilledField>[] {
       head: "Confidence",
       width: "9rem",
       cell: ({ sourced: { confidence } }) => (
-        <span className={confidence === "unverified" ? "font-semibold" : ""}>{confidence}</span>
+        <span className={confidence === "unverified" ? "text-soft" : "font-semibold"}>{confidence}</span>
       ),
     },
     { head: "Source", cell: ({ sourced: { source } }) => <span className="text-small text-soft">{source}</span> },

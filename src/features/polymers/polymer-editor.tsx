@@ -79,22 +79,24 @@ function NumberRow({ field: { label, unit }, sourced, onChange }: RowProps) {
   const [text, setText] = useState(String(sourced.value));
   const shown = Number(text) === sourced.value ? text : String(sourced.value);
   return (
-    <fieldset className="grid grid-cols-[12rem_8rem_4.5rem_10rem_minmax(8rem,1fr)] items-center gap-x-3 border-b border-hair py-1.5 max-lg:grid-cols-2 max-lg:gap-y-1">
+    <fieldset className="grid grid-cols-[14rem_11rem_10rem_minmax(8rem,1fr)] items-baseline gap-x-3 border-b border-hair py-1.5 max-lg:grid-cols-2 max-lg:gap-y-1">
       <legend className="sr-only">{label}</legend>
       <span aria-hidden>{label}</span>
-      <input
-        aria-label={`${label}, value${unit && ` in ${unit}`}`}
-        className={`${BOX} text-right font-mono`}
-        inputMode="decimal"
-        value={shown}
-        onChange={({ target }) => {
-          setText(target.value);
-          const value = Number(target.value.replace(",", "."));
-          if (target.value.trim() !== "" && Number.isFinite(value)) onChange({ ...sourced, value });
-        }}
-        onBlur={() => setText(String(sourced.value))}
-      />
-      <span className="font-mono text-small text-soft">{unit}</span>
+      <span className="flex items-baseline gap-2">
+        <input
+          aria-label={`${label}, value${unit && ` in ${unit}`}`}
+          className={`${BOX} w-24 text-right font-mono`}
+          inputMode="decimal"
+          value={shown}
+          onChange={({ target }) => {
+            setText(target.value);
+            const value = Number(target.value.replace(",", "."));
+            if (target.value.trim() !== "" && Number.isFinite(value)) onChange({ ...sourced, value });
+          }}
+          onBlur={() => setText(String(sourced.value))}
+        />
+        <span className="font-mono text-small whitespace-nowrap text-soft">{unit}</span>
+      </span>
       <select
         aria-label={`${label}, confidence`}
         className={BOX}
@@ -105,9 +107,10 @@ function NumberRow({ field: { label, unit }, sourced, onChange }: RowProps) {
           <option key={each}>{each}</option>
         ))}
       </select>
-      <input
+      <textarea
         aria-label={`${label}, source`}
-        className={`${BOX} w-full max-lg:col-span-2`}
+        rows={1}
+        className={`${BOX} field-sizing-content w-full resize-none py-1.5`}
         value={sourced.source}
         onChange={({ target }) => onChange({ ...sourced, source: target.value })}
       />

@@ -55,6 +55,8 @@ function Sheet({ label, firstLine, lines, marked }: SheetProps) {
   const bar = useRef<HTMLDivElement>(null);
   useEffect(() => {
     if (marked === undefined || !box.current || !bar.current) return;
+    box.current.scrollIntoView({ block: "nearest" });
+    box.current.focus({ preventScroll: true });
     box.current.scrollTop = bar.current.offsetTop - box.current.clientHeight / 2;
   }, [marked]);
   return (
@@ -74,7 +76,10 @@ function Sheet({ label, firstLine, lines, marked }: SheetProps) {
         />
       )}
       <div className="flex w-max min-w-full font-mono text-small">
-        <pre aria-hidden className="sticky left-0 border-r border-hair bg-sheet px-3 py-2 text-right text-soft select-none">
+        <pre
+          aria-hidden
+          className="sticky left-0 border-r border-hair bg-sheet px-3 py-2 text-right text-soft select-none"
+        >
           {lines.map((_, line) => firstLine + line).join("\n")}
         </pre>
         <pre className="px-3 py-2">{lines.join("\n")}</pre>

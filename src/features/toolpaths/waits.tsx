@@ -27,6 +27,7 @@ const COLUMNS: Column<Wait>[] = [
 /** Where the print stands still. What has no known length is not in the print time. */
 export function Waits({ layers }: { layers: readonly LayerReading[] }) {
   const waits = layers.flatMap(({ index, waits }) => waits.map((wait) => ({ ...wait, layer: index })));
-  if (waits.length === 0) return <p className="text-soft">None: the print never stands still between its first and last layer.</p>;
+  if (waits.length === 0)
+    return <p className="text-soft">None: the print never stands still between its first and last layer.</p>;
   return <Table label="Dwells and pauses" columns={COLUMNS} rows={waits} keyOf={({ line }) => line} />;
 }

@@ -160,7 +160,7 @@ test("a limit wider than the machine's is a problem at that limit, with the mach
   const user = userEvent.setup();
   render(<Editor />);
   const lamp = screen.getByRole("group", { name: "Channel lamp" });
-  await user.type(within(lamp).getByRole("textbox", { name: "Most 0–1" }), "0.95");
+  await user.type(within(lamp).getByRole("textbox", { name: "Most duty 0–1" }), "0.95");
   expect(within(lamp).getByText(/Most is 0.95, above the machine's 0.85/)).toBeTruthy();
   expect(within(lamp).getByText("machine: 0.85")).toBeTruthy();
 });
@@ -235,7 +235,7 @@ test("lead, bed layers and what becomes of the file's own commands are part of t
   render(<Editor />);
   const lamp = screen.getByRole("group", { name: "Channel lamp" });
   expect(within(lamp).getByText("1 s ahead")).toBeTruthy();
-  await user.selectOptions(within(lamp).getByRole("combobox", { name: "Lead" }), "seconds");
+  await user.selectOptions(within(lamp).getByRole("combobox", { name: "Ahead" }), "seconds");
   await user.clear(within(lamp).getByRole("textbox", { name: "Ahead by s" }));
   await user.type(within(lamp).getByRole("textbox", { name: "Ahead by s" }), "1.5");
   await user.clear(within(lamp).getByRole("textbox", { name: "Bed layers 0–1" }));

@@ -28,8 +28,22 @@ export function ChannelSettings({ editing, edited }: { editing: ProfileEditing; 
       {driven && (
         <div className="grid grid-cols-2 gap-3 pl-8 sm:grid-cols-3 @3xl:grid-cols-4">
           {profile.bedLayers.count > 0 && <BedDuty editing={editing} id={id} />}
-          <LimitField editing={editing} id={id} field="minDuty" label="Least duty" unit="0–1" machine={channel?.minDuty} />
-          <LimitField editing={editing} id={id} field="maxDuty" label="Most duty" unit="0–1" machine={channel?.maxDuty} />
+          <LimitField
+            editing={editing}
+            id={id}
+            field="minDuty"
+            label="Least duty"
+            unit="0–1"
+            machine={channel?.minDuty}
+          />
+          <LimitField
+            editing={editing}
+            id={id}
+            field="maxDuty"
+            label="Most duty"
+            unit="0–1"
+            machine={channel?.maxDuty}
+          />
           <LimitField editing={editing} id={id} field="maxDutyPerLayer" label="Change" unit="a layer" />
           <LimitField
             editing={editing}
