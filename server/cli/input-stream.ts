@@ -101,8 +101,8 @@ async function openFile(name: string, passes: Passes): Promise<FileHandle> {
   }
 }
 
-/** Two buffers take turns: while one is looked at the other is being filled. */
-async function* fileChunks(handle: FileHandle, seekable: boolean): AsyncGenerator<Uint8Array, void, undefined> {
+/** The bytes of a file. Two buffers take turns: while one is looked at the other is being filled. */
+export async function* fileChunks(handle: FileHandle, seekable: boolean): AsyncGenerator<Uint8Array, void, undefined> {
   const buffers = [new Uint8Array(CHUNK_BYTES), new Uint8Array(CHUNK_BYTES)];
   let position = 0;
   const fill = (buffer: Uint8Array) => handle.read(buffer, 0, buffer.length, seekable ? position : null);

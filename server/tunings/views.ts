@@ -17,6 +17,9 @@ export function tuningView(row: TuningRow, acknowledged: boolean): Tuning {
     profileId: tuning.profileId,
     profileVersion: tuning.profileVersion,
     profileName: row.profileName,
+    ...(tuning.polymerId === null || tuning.polymerVersion === null
+      ? {}
+      : { polymerId: tuning.polymerId, polymerVersion: tuning.polymerVersion }),
     status: tuning.status,
     state: job.state,
     jobId: job.id,

@@ -18,6 +18,9 @@ export const Tuning = z.object({
   profileId: Id,
   profileVersion: VersionNumber,
   profileName: z.string(),
+  /** the card it was tuned with; left out where there was none */
+  polymerId: Id.optional(),
+  polymerVersion: VersionNumber.optional(),
   /** `approved` when the profile version was at the time */
   status: z.enum(["trial-only", "approved"]),
   state: JobState,

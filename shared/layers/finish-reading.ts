@@ -4,6 +4,7 @@ import type { Findings } from "#shared/layers/findings.ts";
 import type { LayerBuilder } from "#shared/layers/layer-builder.ts";
 import type { OutputLines } from "#shared/layers/output-lines.ts";
 import type { FileFacts, Layer, Reading } from "#shared/layers/reading.ts";
+import { sharedOutputText } from "#shared/layers/shared-output.ts";
 import { Refusal } from "#shared/refusal.ts";
 
 interface Read {
@@ -31,6 +32,7 @@ export function finishReading({ machine, builder, outputs, findings, provenance,
   fillDutySeen(layers, outputs.controls, machine);
   crossCheck(builder, layers, findings);
   noteControls(outputs, machine, layers, findings);
+  noteSharedOutputs(outputs, machine, findings);
   noteForeign(outputs, machine, window.start.offset, window.end.offset, findings);
   if (builder.planner.forcedStops > 0)
     findings.add(
@@ -150,6 +152,14 @@ function noteControls({ controls }: OutputLines, machine: Machine, layers: reado
       `${lines} between the first and the last layer already ${inside.length === 1 ? "sets" : "set"} ${id} (${what}), to ${highest.toFixed(2)} at most`,
       { line: inside[0].line },
     );
+  }
+}
+
+/** Told on reading, so that it is known before anything is written. */
+function noteSharedOutputs({ use }: OutputLines, machine: Machine, findings: Findings): void {
+  for (const heater of machine.channels.filter(({ kind }) => kind === "heater")) {
+    const message = sharedOutputText(use, heater);
+    if (message !== undefined) findings.add("output-shared", "warning", message, { line: use.indexedFanLine });
   }
 }
 

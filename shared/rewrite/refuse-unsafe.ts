@@ -1,5 +1,6 @@
 import type { Channel, Machine } from "#shared/formats/machine.ts";
 import type { ControlLine, Reading } from "#shared/layers/reading.ts";
+import { sharedOutputText } from "#shared/layers/shared-output.ts";
 import type { Advice } from "#shared/plan/plan.ts";
 import { Refusal } from "#shared/refusal.ts";
 
@@ -84,11 +85,8 @@ function refuseSharedOutput({ outputs }: Reading, heater: Channel, advice: Advic
       `Drive ${heater.id} by a named pin in the machine document (drive.by "named-pin"), or use a file made for this machine.`,
       { line: namedCommand.line },
     );
-  advice.push({
-    layer: 1,
-    code: "output-shared",
-    message: `Line ${namedCommand.line} (${namedCommand.name}) belongs to a firmware family that by itself ignores the P of M106, but line ${indexedFanLine} uses P, so a macro must handle it. Check on the machine, lamp unplugged, that M106 P${drive.index} drives ${heater.id} and nothing else.`,
-  });
+  const message = sharedOutputText(outputs, heater);
+  if (message !== undefined) advice.push({ layer: 1, code: "output-shared", message });
 }
 
 function refuseOnAfterEnd({ controls }: Reading, heater: Channel, index: number): void {

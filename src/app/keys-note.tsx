@@ -6,11 +6,13 @@ const GROUPS: { where: string; keys: [keys: string, does: string][] }[] = [
   {
     where: "Layer log",
     keys: [
-      ["↑ ↓", "pin the next or the last layer"],
-      ["Page ↑ ↓", "ten layers at once"],
+      ["↑ ↓", "pin the layer above or below"],
+      ["Page ↑ ↓", "a tenth of what is shown at once"],
       ["Home End", "the lowest, the highest layer"],
       ["+ −", "zoom in, zoom out"],
-      ["Esc", "back to the whole part"],
+      ["Shift with ↑ ↓", "mark a band of layers"],
+      ["Enter", "show only the marked layers"],
+      ["Esc", "one step back: band, zoom, pinned layer"],
     ],
   },
   {

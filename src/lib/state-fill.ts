@@ -23,12 +23,12 @@ export const PREDICTED_NAMES: Record<PredictedState, string> = {
 export const STATE_FILLS: Record<TargetState | PredictedState, { background: string; backgroundSize?: string }> = {
   amorphous: {
     background:
-      "radial-gradient(circle at 1.5px 1.5px, var(--amber-ink) 0.6px, transparent 0.9px), radial-gradient(circle at 5.5px 5.5px, var(--amber-ink) 0.6px, transparent 0.9px), color-mix(in srgb, var(--amber) 50%, transparent)",
+      "radial-gradient(circle at 1.5px 1.5px, var(--amber-hatch) 0.6px, transparent 0.9px), radial-gradient(circle at 5.5px 5.5px, var(--amber-hatch) 0.6px, transparent 0.9px), color-mix(in srgb, var(--amber) 50%, transparent)",
     backgroundSize: "8px 8px",
   },
   "semi-crystalline": {
     background:
-      "repeating-linear-gradient(to bottom, transparent 0 1px, color-mix(in srgb, var(--bone-edge) 55%, transparent) 1px 2px, transparent 2px 4px), var(--bone)",
+      "repeating-linear-gradient(to bottom, transparent 0 1px, color-mix(in srgb, var(--bone-hatch) 55%, transparent) 1px 2px, transparent 2px 4px), var(--bone)",
   },
   undecided: {
     background:

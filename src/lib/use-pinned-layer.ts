@@ -4,17 +4,21 @@ import { useNavigation, useSearchParams } from "react-router-dom";
 /** Arrow keys walk fast; the address follows when they rest. */
 const REST_MS = 250;
 
-/** The pinned layer, by index, kept in the address so that a link leads to the same layer. */
-export function usePinnedLayer(): [layer: number | undefined, pin: (layer: number | undefined) => void] {
+/**
+ * The pinned layer, by index, kept in the address so that a link leads to the same layer.
+ *
+ * @param first pinned to begin with where the address names none; it is not written there
+ */
+export function usePinnedLayer(first?: number): [layer: number | undefined, pin: (layer: number | undefined) => void] {
   const [search, setSearch] = useSearchParams();
   // While the next page is fetched this one still stands: writing its address then would call the way there off.
   const leaving = useNavigation().state !== "idle";
-  const [layer, pin] = useState(() => layerIn(search));
+  const [layer, pin] = useState(() => layerIn(search) ?? first);
   const written = layerIn(search);
   const setLater = useRef(setSearch);
   setLater.current = setSearch;
   useEffect(() => {
-    if (leaving || layer === written) return;
+    if (leaving || layer === written || (written === undefined && layer === first)) return;
     const timer = setTimeout(() => {
       const keep = (now: URLSearchParams) => {
         const next = new URLSearchParams(now);
@@ -25,7 +29,7 @@ export function usePinnedLayer(): [layer: number | undefined, pin: (layer: numbe
       setLater.current(keep, { replace: true, preventScrollReset: true });
     }, REST_MS);
     return () => clearTimeout(timer);
-  }, [layer, written, leaving]);
+  }, [layer, written, leaving, first]);
   return [layer, pin];
 }
 

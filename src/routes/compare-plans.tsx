@@ -38,6 +38,7 @@ function Compare({ reading }: { reading: Reading }) {
   const document = useQuery({ ...readingDocumentQuery(reading.id), enabled: reading.state === "done" });
   const machine = useQuery(versionQuery(MACHINES, reading.machineId, reading.machineVersion));
   const [first, second] = [useSide("a"), useSide("b")];
+  const on = { id: reading.machineId, name: reading.machineName };
   const name = toolpath.data?.name ?? "Toolpath";
   usePageTitle(`Two profiles on ${name}`);
   return (
@@ -50,12 +51,12 @@ function Compare({ reading }: { reading: Reading }) {
       />
       <Section title="Before" note="full lines">
         <div className="grid gap-4 md:grid-cols-[minmax(0,1fr)_14rem]">
-          <ProfileChoice {...first} />
+          <ProfileChoice {...first} machine={on} />
         </div>
       </Section>
       <Section title="After" note="broken lines">
         <div className="grid gap-4 md:grid-cols-[minmax(0,1fr)_14rem]">
-          <ProfileChoice {...second} />
+          <ProfileChoice {...second} machine={on} />
         </div>
       </Section>
       {reading.state !== "done" ? (

@@ -70,6 +70,7 @@ export function NewPage<D extends { name: string }>({ kind, start, editor }: Edi
     <>
       <PageHead
         title={`New ${kind.noun}`}
+        note="What is filled in is only there to begin with. Go through every value before you save."
         actions={<ButtonLink to={paths.documents(kind.plural)}>Back without saving</ButtonLink>}
       />
       <MayEdit>

@@ -5,7 +5,6 @@ import type { ReadingDocument } from "#shared/formats/reading.ts";
 import { durationText } from "#shared/units/words.ts";
 import { MACHINES, versionQuery } from "#src/features/documents/kinds.ts";
 import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
-import { findingMarks } from "#src/features/layer-log/log-marks.ts";
 import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
 import { readingTracks } from "#src/features/layer-log/reading-tracks.ts";
 import { Findings } from "#src/features/toolpaths/findings.tsx";
@@ -14,6 +13,7 @@ import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
 import { Waits } from "#src/features/toolpaths/waits.tsx";
 import { counted } from "#src/lib/format.ts";
 import { fixedText } from "#src/lib/number-text.ts";
+import { findingRemarks, placedRemarks } from "#src/lib/remarks.ts";
 import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
 import { LogBeside } from "#src/routes/log-beside.tsx";
 import { Button } from "#src/ui/button.tsx";
@@ -41,15 +41,20 @@ export function ReadingView({ reading }: Props) {
 }
 
 function Read({ readingId, document, machine }: { readingId: string; document: ReadingDocument; machine: Machine }) {
-  const [pinned, pin] = usePinnedLayer();
   const [linesShown, showLines] = useState(false);
-  const [marked, setMarked] = useState<number>();
+  const [marked, mark] = useState<{ line: number; layer: number }>();
   const { layers, findings, totals } = document;
   const tracks = useMemo(() => readingTracks(layers, machine.channels), [layers, machine]);
-  const marks = useMemo(() => findingMarks(findings, layers), [findings, layers]);
+  const marks = useMemo(() => placedRemarks(findingRemarks(findings, layers)), [findings, layers]);
+  const [pinned, pin] = usePinnedLayer(marks[0]?.layer ?? layers[0]?.index);
   const layer = layers.find(({ index }) => index === pinned);
   const top = layers.at(-1);
   const layerWith = (line: number) => layers.find(({ firstLine, lastLine }) => firstLine <= line && line <= lastLine);
+  const show = (line: number, inLayer: number) => {
+    pin(inLayer);
+    showLines(true);
+    mark({ line, layer: inLayer });
+  };
   return (
     <>
       <Facts
@@ -64,7 +69,16 @@ function Read({ readingId, document, machine }: { readingId: string; document: R
         ]}
       />
       <LogBeside
-        log={<LayerLog layers={layers} tracks={tracks} marks={marks} pinnedLayer={pinned ?? null} onPin={pin} />}
+        log={
+          <LayerLog
+            layers={layers}
+            tracks={tracks}
+            marks={marks}
+            pinnedLayer={pinned ?? null}
+            onPin={pin}
+            onUnpin={() => pin(undefined)}
+          />
+        }
         beside={<PlanInspector layer={layer} channels={machine.channels} />}
       />
       {layer && (
@@ -78,7 +92,13 @@ function Read({ readingId, document, machine }: { readingId: string; document: R
           }
         >
           {linesShown ? (
-            <LayerLines readingId={readingId} layer={layer.index} marked={marked} />
+            <LayerLines
+              key={layer.index}
+              readingId={readingId}
+              layer={layer.index}
+              marked={marked?.layer === layer.index ? marked.line : undefined}
+              onBehind={() => marked && layer.index < layers.length && show(marked.line, layer.index + 1)}
+            />
           ) : (
             <p className="text-soft">
               From line <span className="font-mono">{layer.firstLine}</span> to line{" "}
@@ -92,11 +112,7 @@ function Read({ readingId, document, machine }: { readingId: string; document: R
           findings={findings}
           onPin={pin}
           hasLine={(line) => layerWith(line) !== undefined}
-          onLine={(line) => {
-            pin(layerWith(line)?.index);
-            showLines(true);
-            setMarked(line);
-          }}
+          onLine={(line) => show(line, layerWith(line)?.index ?? 1)}
         />
       </Section>
       <Section title="Dwells and pauses" note="what has no known length is not in the print time">

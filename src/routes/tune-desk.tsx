@@ -9,22 +9,23 @@ import { paths } from "#src/app/paths.ts";
 import { useMay } from "#src/features/auth/session-context.tsx";
 import { historyQuery, MACHINES, PROFILES, type Version, versionQuery } from "#src/features/documents/kinds.ts";
 import { LayerLog } from "#src/features/layer-log/layer-log.tsx";
-import { adviceMarks, findingMarks } from "#src/features/layer-log/log-marks.ts";
-import { PlanInspector } from "#src/features/layer-log/plan-inspector.tsx";
+import { PlanInspector, reasonsOf } from "#src/features/layer-log/plan-inspector.tsx";
 import { readingTracks, withPlan } from "#src/features/layer-log/reading-tracks.ts";
 import { ProfileForm } from "#src/features/profiles/editor/profile-form.tsx";
 import { useProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { ZoneBands } from "#src/features/profiles/editor/zone-bands.tsx";
 import { ProfileSheet } from "#src/features/profiles/profile-sheet.tsx";
 import { readingDocumentQuery } from "#src/features/toolpaths/queries.ts";
-import { AdviceList } from "#src/features/tunings/advice-list.tsx";
 import { savePlanCsv } from "#src/features/tunings/plan-csv.ts";
+import { RemarkList } from "#src/features/tunings/remark-list.tsx";
 import { moment } from "#src/lib/format.ts";
+import { placedRemarks, remarksOf } from "#src/lib/remarks.ts";
 import { documentFileName } from "#src/lib/save-file.ts";
 import { undoKeys } from "#src/lib/undo-keys.ts";
 import { useDraft } from "#src/lib/use-draft.ts";
 import { usePinnedLayer } from "#src/lib/use-pinned-layer.ts";
 import { useWindowHeight } from "#src/lib/use-window-height.ts";
+import { Unfit } from "#src/routes/unfit.tsx";
 import { usePlanned } from "#src/routes/use-planned.ts";
 import { usePolymerOf } from "#src/routes/use-polymers.ts";
 import { WriteTuned } from "#src/routes/write-tuned.tsx";
@@ -81,10 +82,10 @@ interface DeskProps {
   latest: number;
 }
 
-const BANDS_PX = 132;
+const BANDS_PX = 144;
 
 /** What stands beside the log. */
-type Beside = "profile" | "layer" | "levers" | "advice";
+type Beside = "profile" | "layer" | "levers" | "remarks";
 
 function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   const mayEdit = useMay()("edit");
@@ -100,7 +101,8 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
   const read = useMemo(() => readingTracks(layers, machine.channels), [layers, machine]);
   const planned = useMemo(() => withPlan(read, plan), [read, plan]);
   const tracks = useMemo(() => [...planned, ...prediction.tracks], [planned, prediction.tracks]);
-  const marks = useMemo(() => [...findingMarks(findings, layers), ...adviceMarks(advice)], [findings, layers, advice]);
+  const remarks = useMemo(() => remarksOf(findings, advice, layers), [findings, advice, layers]);
+  const marks = useMemo(() => placedRemarks(remarks), [remarks]);
   const heightPx = useDeskHeight();
   const log = (
     <LayerLog
@@ -111,11 +113,18 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
       states={prediction.states}
       pinnedLayer={pinned ?? null}
       onPin={pin}
+      onUnpin={() => pin(undefined)}
+      spoken={reasonsOf(plan, pinned)}
       heightPx={heightPx}
       aside={
         mayEdit
           ? {
-              title: "Zones",
+              title:
+                editing.scale.unit === "mm"
+                  ? "Zones, mm"
+                  : editing.scale.unit === "layer"
+                    ? "Zones, layer"
+                    : "Zones, 0–1",
               widthPx: BANDS_PX,
               render: (axis) => <ZoneBands editing={editing} axis={axis} selected={selected} onSelect={setSelected} />,
             }
@@ -141,6 +150,8 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
           draft={draft}
           checked={editing.checked}
           ready={plan !== undefined && desk.problem === undefined && editing.checked !== undefined}
+          remarks={remarks}
+          unfit={<Unfit editing={editing} mayEdit={mayEdit} />}
         />
         <div className="border border-rule">{log}</div>
         <div className="flex flex-wrap gap-x-5 py-1">
@@ -160,6 +171,7 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
             Plan as CSV
           </Button>
         </div>
+        {prediction.absent}
         {desk.problem && <RefusalNotice title="This can't be planned yet" refusal={desk.problem} />}
       </div>
       <div className="min-w-0">
@@ -187,9 +199,9 @@ function Desk({ reading, document, machine, chosen, latest }: DeskProps) {
             },
             { id: "levers", name: "Levers", panel: prediction.leversOf(layer, plan) },
             {
-              id: "advice",
-              name: advice.length > 0 ? `Advice, ${advice.length}` : "Advice",
-              panel: <AdviceList advice={advice} onPin={pin} />,
+              id: "remarks",
+              name: remarks.length > 0 ? `Warnings and advice, ${remarks.length}` : "Warnings and advice",
+              panel: <RemarkList remarks={remarks} predicted={desk.predicted !== undefined} onPin={pin} />,
             },
           ]}
         />

@@ -40,9 +40,9 @@ function Tune({ reading }: { reading: Reading }) {
         actions={<ButtonLink to={paths.toolpath(reading.toolpathId, reading.id)}>Back to the toolpath</ButtonLink>}
       />
       <Section title="With" note="what it is written for">
-        <div className="grid gap-4 md:grid-cols-[14rem_minmax(0,1fr)_14rem]">
+        <div className="grid gap-4 sm:grid-cols-2 lg:grid-cols-[14rem_minmax(0,1fr)_14rem] max-lg:[&>:nth-child(2)]:order-3 max-lg:[&>:nth-child(2)]:col-span-full">
           <MachineChoice reading={reading} />
-          <ProfileChoice {...choice} />
+          <ProfileChoice {...choice} machine={{ id: reading.machineId, name: reading.machineName }} />
         </div>
       </Section>
       <Ready reading={reading} choice={choice} />

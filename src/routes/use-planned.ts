@@ -30,7 +30,7 @@ interface Planned {
  */
 export function usePlanned({ layers, machine, polymer, profile }: Input): Planned {
   const solved = profile !== undefined && polymer !== undefined && holds(profile);
-  const live = useLivePlan(layers, machine, solved ? undefined : profile);
+  const live = useLivePlan(layers, machine, solved ? undefined : profile, polymer);
   const prediction = usePrediction({ layers, machine, polymer, profile });
   const { forecast, pale, obstacle } = prediction;
   const refused = obstacle && "refusal" in obstacle ? obstacle.refusal : undefined;

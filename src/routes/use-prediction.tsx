@@ -32,6 +32,8 @@ export interface PagePrediction extends LiveForecast {
   tracks: Track[];
   /** of every layer, once they are predicted */
   states: PredictedState[] | undefined;
+  /** said under the log where nothing is predicted and nothing is on its way */
+  absent: ReactNode;
   /** what is predicted of a layer, and why, for beside the log */
   ofLayer(layer: LayerReading | undefined): ReactNode;
   /** what fan and lamp do to a layer; the duties are those planned for it, where there is a plan */
@@ -59,12 +61,14 @@ export function usePrediction({ layers, machine, polymer, profile, plan }: Input
   );
   const positionOf = (layer: LayerReading) => layers.indexOf(layer);
 
+  const absent = part ? (
+    obstacle && <ObstacleNotice obstacle={obstacle} />
+  ) : (
+    <p className="text-small">{`Nothing is predicted: there is no card of ${known?.polymer ?? "the polymer"}. Colours and zones show what is wanted.`}</p>
+  );
   const ofLayer = (layer: LayerReading | undefined) => {
     if (!layer) return null;
-    if (!part)
-      return (
-        <p className="text-small text-soft">{`Nothing is predicted: there is no card of ${known?.polymer ?? "the polymer"}.`}</p>
-      );
+    if (!part) return absent;
     if (obstacle) return <ObstacleNotice obstacle={obstacle} />;
     if (!prediction) return <p className="text-small text-soft">Being predicted …</p>;
     const position = positionOf(layer);
@@ -94,7 +98,7 @@ export function usePrediction({ layers, machine, polymer, profile, plan }: Input
     ) : (
       <p className="text-soft">Without a polymer card there is nothing to compute with.</p>
     );
-  return { ...live, part, tracks, states, ofLayer, leversOf };
+  return { ...live, part, tracks, states, absent, ofLayer, leversOf };
 }
 
 /** While a draft has problems, what was last without stays. */

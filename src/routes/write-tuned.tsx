@@ -1,5 +1,5 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
-import { useRef, useState } from "react";
+import { type ReactNode, useRef, useState } from "react";
 import { useNavigate } from "react-router-dom";
 import type { Profile } from "#shared/formats/profile.ts";
 import { paths } from "#src/app/paths.ts";
@@ -8,8 +8,10 @@ import { PROFILES, type Version } from "#src/features/documents/kinds.ts";
 import { SaveDialog } from "#src/features/documents/save-dialog.tsx";
 import { writeTuning } from "#src/features/tunings/queries.ts";
 import { asProblem, isProblem } from "#src/lib/problem.ts";
+import { type Remark, SEVERITY_NAMES } from "#src/lib/remarks.ts";
 import type { Draft } from "#src/lib/use-draft.ts";
 import { Button } from "#src/ui/button.tsx";
+import { Actions, Dialog } from "#src/ui/dialog.tsx";
 import { ProblemNotice } from "#src/ui/notice.tsx";
 
 interface Props {
@@ -22,10 +24,14 @@ interface Props {
   checked: Profile | undefined;
   /** a plan could be made */
   ready: boolean;
+  /** warnings among them are told again before the file is written */
+  remarks?: readonly Remark[];
+  /** stands beside the button: why nothing can be written yet */
+  unfit?: ReactNode;
 }
 
 /** Writes the tuned file. A profile that was changed here becomes a version first: a file is never made from less. */
-export function WriteTuned({ readingId, profile, draft, checked, ready }: Props) {
+export function WriteTuned({ readingId, profile, draft, checked, ready, remarks = [], unfit }: Props) {
   const client = useQueryClient();
   const navigate = useNavigate();
   const [asking, setAsking] = useState(false);
@@ -49,6 +55,7 @@ export function WriteTuned({ readingId, profile, draft, checked, ready }: Props)
       navigate(paths.tuning(id));
     },
   });
+  const warnings = remarks.filter(({ severity }) => severity === "warning");
   const conflict = isProblem(write.error, "version-conflict");
   const fault = write.error && !conflict && <ProblemNotice problem={asProblem(write.error)} />;
   return (
@@ -70,20 +77,41 @@ export function WriteTuned({ readingId, profile, draft, checked, ready }: Props)
         <Button
           weight="main"
           disabled={!ready || write.isPending}
-          onClick={() => (draft.changed ? setAsking(true) : write.mutate(undefined))}
+          onClick={() => (draft.changed || warnings.length > 0 ? setAsking(true) : write.mutate(undefined))}
         >
           {write.isPending ? "Handing it over …" : "Write tuned file"}
         </Button>
         {draft.changed && <Button onClick={draft.discard}>Discard changes</Button>}
+        {unfit}
         <p className="text-small text-soft">
-          {draft.changed
-            ? `Changed from version ${profile.number}: it is saved as version ${draft.basedOn + 1} first, and the file is for trials until that is approved.`
-            : profile.approvedAt
-              ? "With an approved version."
-              : "This version is not approved: the file is for trials only."}
+          {!ready && !draft.changed
+            ? ""
+            : draft.changed
+              ? `Changed from version ${profile.number}: it is saved as version ${draft.basedOn + 1} first, and the file is for trials until that is approved.`
+              : profile.approvedAt
+                ? "With an approved version."
+                : "This version is not approved: the file is for trials only."}
         </p>
       </div>
-      {asking && !conflict && (
+      {asking && !conflict && !draft.changed && (
+        <Dialog
+          title="Before the file is written"
+          onClose={() => {
+            setAsking(false);
+            write.reset();
+          }}
+        >
+          <Warnings warnings={warnings} />
+          {fault}
+          <Actions>
+            <Button weight="main" disabled={write.isPending} onClick={() => write.mutate(undefined)}>
+              Write tuned file
+            </Button>
+            <Button onClick={() => setAsking(false)}>Go back</Button>
+          </Actions>
+        </Dialog>
+      )}
+      {asking && !conflict && draft.changed && (
         <SaveDialog
           title="Save the changed profile, then write"
           action="Write tuned file"
@@ -98,8 +126,22 @@ export function WriteTuned({ readingId, profile, draft, checked, ready }: Props)
           <p>
             <span className="font-semibold">{draft.document.name}</span> becomes version {draft.basedOn + 1}.
           </p>
+          <Warnings warnings={warnings} />
         </SaveDialog>
       )}
     </div>
+  );
+}
+
+function Warnings({ warnings }: { warnings: readonly Remark[] }) {
+  if (warnings.length === 0) return null;
+  return (
+    <ul aria-label="Warnings" className="flex flex-col gap-2">
+      {warnings.map(({ message, layer }) => (
+        <li key={`${layer} ${message}`} className="border-l-2 border-ink pl-2">
+          <span className="font-semibold">{SEVERITY_NAMES.warning}</span> {message}
+        </li>
+      ))}
+    </ul>
   );
 }

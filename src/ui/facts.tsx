@@ -11,7 +11,10 @@ export function Facts({ facts }: { facts: Fact[] }) {
   return (
     <dl className="flex flex-wrap gap-y-3 border-y border-hair">
       {facts.map(({ label, value, unit }) => (
-        <div key={label} className="min-w-28 border-l border-hair py-2 pr-6 pl-3 first:border-l-0 first:pl-0">
+        <div
+          key={label}
+          className="min-w-20 border-l border-hair py-2 pr-4 pl-3 first:border-l-0 first:pl-0 lg:min-w-28 lg:pr-6"
+        >
           <dt className="text-small text-soft">{label}</dt>
           <dd className="font-mono text-base whitespace-nowrap">
             {value}
@@ -26,13 +29,19 @@ export function Facts({ facts }: { facts: Fact[] }) {
 /** Labels and values under each other; values start in one line. */
 export function FactList({ facts }: { facts: Fact[] }) {
   return (
-    <dl className="grid grid-cols-[auto_minmax(0,1fr)] content-start gap-x-4">
+    <dl className="grid grid-cols-[minmax(0,1fr)_fit-content(60%)] content-start gap-x-4">
       {facts.map(({ label, value, unit }) => (
         <div key={label} className="col-span-2 grid grid-cols-subgrid border-b border-hair py-1">
           <dt className="text-small text-soft">{label}</dt>
           <dd className="min-w-0 text-right font-mono text-small wrap-break-word">
-            {value}
-            {unit && <span className="inline-block min-w-9 pl-1.5 text-left text-soft">{unit}</span>}
+            {unit ? (
+              <span className="whitespace-nowrap">
+                {value}
+                <span className="inline-block min-w-9 pl-1.5 text-left text-soft">{unit}</span>
+              </span>
+            ) : (
+              value
+            )}
           </dd>
         </div>
       ))}

@@ -1,7 +1,8 @@
 /**
  * The colours of the two sheets, one table for the style sheet, the layer log and the diff. Surfaces and type are paper
  * and graphite. Colour is kept for what it says: material state (amorphous amber, semi-crystalline bone), cooling slate
- * and heating ember. `*Ink` is the shade of a colour that is dark (or light) enough for text.
+ * and heating ember. `*Ink` is the shade of a colour that is dark (or light) enough for text,
+ * `*Hatch` the one that shows on the state's own fill: dark on both sheets, for the fills are light on both.
  */
 const light = {
   /** the page, what lies on it, and what is pressed into it */
@@ -16,8 +17,10 @@ const light = {
   rule: "#85827a",
   amber: "#c98a1e",
   amberInk: "#7a4e08",
+  amberHatch: "#7a4e08",
   bone: "#e2d7bd",
   boneEdge: "#8c8061",
+  boneHatch: "#8c8061",
   cool: "#44698c",
   coolInk: "#37597a",
   heat: "#b9491f",
@@ -34,8 +37,10 @@ const dark: typeof light = {
   rule: "#7d8085",
   amber: "#d79f45",
   amberInk: "#e9bb6c",
+  amberHatch: "#1f1503",
   bone: "#d6ccb3",
   boneEdge: "#a59a7c",
+  boneHatch: "#544a30",
   cool: "#7ea3c6",
   coolInk: "#9bbbd8",
   heat: "#e2764a",

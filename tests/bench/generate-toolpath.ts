@@ -7,8 +7,9 @@ export const DIALECTS: readonly Dialect[] = ["plain", "lower-case", "numbered", 
 
 const SIDES = 120;
 const INFILL_LINES = 90;
-/** islands a layer, so that a layer of a large file has the size it has in practice */
-const ISLANDS = 12;
+/** Islands a layer, of half a megabyte together: 1 GB is then some 380 mm high, as high as printers go. */
+const ISLANDS = 40;
+const IN_A_ROW = 8;
 
 const encoder = new TextEncoder();
 
@@ -45,8 +46,8 @@ function layerText(layer: number, format: Formatter, dialect: Dialect): string {
   const lines: string[] = [`;LAYER:${layer - 1}`, `M106 S${(layer * 7) % 256}`];
   const path = new Path(lines, dialect === "relative", z);
   for (let island = 0; island < ISLANDS; island++) {
-    const cx = 40 + (island % 4) * 50;
-    const cy = 40 + Math.floor(island / 4) * 50;
+    const cx = 40 + (island % IN_A_ROW) * 50;
+    const cy = 40 + Math.floor(island / IN_A_ROW) * 50;
     for (let wall = 0; wall < 3; wall++) path.ring(cx, cy, 18 - wall * 0.45 + Math.sin(layer / 40));
     path.zigzag(cx, cy, 15, layer);
   }

@@ -1,9 +1,10 @@
 // One job in a process of its own, as the bench's whole-process rows need it. Prints one line of JSON.
 import { createHash } from "node:crypto";
 import { closeSync, createReadStream, openSync, readFileSync, writeSync } from "node:fs";
-import type { Readable } from "node:stream";
+import { open } from "node:fs/promises";
 import { pipeline } from "node:stream/promises";
 import { GCodeLineStream } from "gcode-parser";
+import { fileChunks } from "#server/cli/input-stream.ts";
 import { parseMachine } from "#shared/formats/machine.ts";
 import { parseProfile } from "#shared/formats/profile.ts";
 import { ToolpathReader } from "#shared/layers/read-toolpath.ts";
@@ -15,7 +16,17 @@ import { countLines } from "#tests/bench/analysis.ts";
 
 const machine = parseMachine(JSON.parse(readFileSync("samples/machines/tern.json", "utf8")));
 const profile = parseProfile(JSON.parse(readFileSync("tests/bench/profile.json", "utf8")));
-const chunksOf = (file: string): Readable => createReadStream(file, { highWaterMark: 1 << 19 });
+
+/** As the command line reads a file. */
+async function* chunksOf(file: string): AsyncGenerator<Uint8Array, void, undefined> {
+  const handle = await open(file);
+  try {
+    yield* fileChunks(handle, true);
+  } finally {
+    await handle.close();
+  }
+}
+
 const sha256 = (text: string): string => createHash("sha256").update(text).digest("hex");
 
 async function analyse(file: string): Promise<Reading> {
@@ -102,9 +113,13 @@ const jobs: Record<string, (file: string, other: string) => Promise<Record<strin
   "gcode-parser": async (file) => {
     let lines = 0;
     const ms = await timed(() =>
-      pipeline(chunksOf(file), new GCodeLineStream({ batchSize: 1000 }), async (source: AsyncIterable<unknown>) => {
-        for await (const _ of source) lines++;
-      }),
+      pipeline(
+        createReadStream(file, { highWaterMark: 1 << 19 }),
+        new GCodeLineStream({ batchSize: 1000 }),
+        async (source: AsyncIterable<unknown>) => {
+          for await (const _ of source) lines++;
+        },
+      ),
     );
     return { ms, lines };
   },

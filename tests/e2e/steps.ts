@@ -53,6 +53,9 @@ export async function movePoint(page: Page): Promise<void> {
 }
 
 export async function findChange(page: Page): Promise<void> {
+  const log = page.getByRole("slider", { name: /pinned layer/ });
+  await log.focus();
+  await page.keyboard.press("Escape");
   await page.getByRole("button", { name: /^First changed layer/ }).click();
   await page.getByText(/\d+ places? changed/).waitFor();
   await page.getByRole("button", { name: "Next change" }).click();

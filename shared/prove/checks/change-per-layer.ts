@@ -18,6 +18,7 @@ export function checkChangePerLayer(evidence: Evidence, plan: Plan | string): Ch
     const { maxDutyPerLayer, minDuty } = evidence.limits(channel);
     if (!Number.isFinite(maxDutyPerLayer)) continue;
     let largest = 0;
+    let gaps = 0;
     for (let k = 1; k < plan.layers.length; k++) {
       const [before, duty] = [plan.layers[k - 1].duty[channel.id], plan.layers[k].duty[channel.id]];
       const change = Math.abs(duty - before);
@@ -29,8 +30,10 @@ export function checkChangePerLayer(evidence: Evidence, plan: Plan | string): Ch
           "",
         );
       if (!overGap) largest = Math.max(largest, change);
+      else if (change > 0) gaps++;
     }
-    said.push(`${channel.id} changes by up to ${dutyWords(largest)} (allowed: ${maxDutyPerLayer})`);
+    const apart = gaps > 0 ? `, ${gaps === 1 ? "a step" : `${gaps} steps`} between off and the least duty apart` : "";
+    said.push(`${channel.id} changes by up to ${dutyWords(largest)} (allowed: ${maxDutyPerLayer})${apart}`);
   }
   return verdict(
     "change-per-layer",

@@ -1,5 +1,6 @@
 import type { editor } from "monaco-editor/editor";
 import type { Machine } from "#shared/formats/machine.ts";
+import { ALIKE } from "#src/features/diff/join-hunks.ts";
 import { lineChannels } from "#src/features/diff/line-channel.ts";
 
 /** Lays slate over changed lines that drive a fan, ember over those that drive a heater, grey over any other. */
@@ -23,6 +24,13 @@ export function markByChannel(diff: editor.IStandaloneDiffEditor, machine: Machi
           options: { isWholeLine: true, className: `diff-${kind}`, marginClassName: `diff-${kind} diff-edge` },
         });
       }
+    }
+    for (let line = 1; line <= model.getLineCount(); line++) {
+      if (!ALIKE.test(model.getLineContent(line))) continue;
+      decorations.push({
+        range: { startLineNumber: line, startColumn: 1, endLineNumber: line, endColumn: 1 },
+        options: { isWholeLine: true, className: "diff-alike", marginClassName: "diff-alike" },
+      });
     }
     side.marks.set(decorations);
   };

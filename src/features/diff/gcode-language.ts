@@ -15,6 +15,7 @@ export function registerGcode(): void {
     ignoreCase: true,
     tokenizer: {
       root: [
+        [/^….*$/, "comment"],
         [/;ql[+=]?\s*$/, "tag"],
         [/;.*$/, "comment"],
         [/\([^)]*\)?/, "comment"],

@@ -1,8 +1,9 @@
-import { lazy, Suspense, useMemo, useRef, useState } from "react";
+import { lazy, Suspense, useEffect, useMemo, useRef, useState } from "react";
 import type { LayerDiff as Diff } from "#shared/contract/tunings.ts";
 import type { Machine } from "#shared/formats/machine.ts";
 import { joinHunks } from "#src/features/diff/join-hunks.ts";
-import type { DiffHandle } from "#src/features/diff/monaco-diff.tsx";
+import type { DiffChanges, DiffHandle } from "#src/features/diff/monaco-diff.tsx";
+import { counted } from "#src/lib/format.ts";
 import { Button } from "#src/ui/button.tsx";
 import { Loading } from "#src/ui/states.tsx";
 
@@ -13,20 +14,31 @@ interface Props {
   diff: Diff;
   machine: Machine;
   layer: number;
+  /** what becomes of the channels' duties in this layer */
+  duties: string;
+  /** it was asked for with the keyboard or a click elsewhere, which is gone by now */
+  takeFocus?: boolean;
   /** layers with changes, ascending */
   changedLayers: readonly number[];
   onPin(layer: number): void;
 }
 
 /** One layer of both files, and the ways from change to change. */
-export function LayerDiff({ diff, machine, layer, changedLayers, onPin }: Props) {
+export function LayerDiff({ diff, machine, layer, duties, takeFocus = false, changedLayers, onPin }: Props) {
   const handle = useRef<DiffHandle>(null);
   const { original, tuned } = useMemo(() => joinHunks(diff.hunks), [diff]);
-  const [count, setCount] = useState<number>();
+  const [changes, setChanges] = useState<DiffChanges>();
+  const count = changes?.places;
+  const top = useRef<HTMLDivElement>(null);
+  useEffect(() => {
+    if (takeFocus) top.current?.focus();
+  }, [takeFocus]);
   const below = changedLayers.filter((index) => index < layer).at(-1);
   const above = changedLayers.find((index) => index > layer);
   return (
-    <div>
+    // biome-ignore lint/a11y/useSemanticElements: a diff is no set of form fields
+    <div ref={top} role="group" tabIndex={-1} aria-label={`Layer ${layer} in both files`} className="outline-none">
+      <p className="pb-2">{duties}</p>
       <div className="flex flex-wrap items-center gap-3 pb-3">
         <Button disabled={!count} onClick={() => handle.current?.toChange("previous")}>
           Previous change
@@ -39,7 +51,7 @@ export function LayerDiff({ diff, machine, layer, changedLayers, onPin }: Props)
             ? ""
             : count === 0
               ? "Nothing changed in this layer."
-              : `${count} place${count === 1 ? "" : "s"} changed`}
+              : `${counted(count, "place")} changed: ${counted(changes?.out ?? 0, "line")} taken out, ${changes?.in ?? 0} put in`}
         </p>
         <span className="ml-auto flex flex-wrap gap-3">
           <Button disabled={below === undefined} onClick={() => below !== undefined && onPin(below)}>
@@ -55,17 +67,17 @@ export function LayerDiff({ diff, machine, layer, changedLayers, onPin }: Props)
           <span aria-hidden className="font-mono">
             −{" "}
           </span>
-          Original, from line <span className="font-mono">{original.lineNumbers[0]}</span>
+          Original, from line <span className="font-mono">{original.lineNumbers.find((number) => number !== "")}</span>
         </p>
         <p className="pb-1">
           <span aria-hidden className="font-mono">
             +{" "}
           </span>
-          Tuned, from line <span className="font-mono">{tuned.lineNumbers[0]}</span>
+          Tuned, from line <span className="font-mono">{tuned.lineNumbers.find((number) => number !== "")}</span>
         </p>
       </div>
       <Suspense fallback={<Loading what="Fetching the diff" />}>
-        <MonacoDiff {...{ original, tuned, machine, handle }} onChanges={setCount} />
+        <MonacoDiff {...{ original, tuned, machine, handle }} onChanges={setChanges} />
       </Suspense>
       <p className="flex flex-wrap gap-x-6 pt-2 text-small text-soft">
         <span>

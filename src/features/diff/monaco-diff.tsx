@@ -11,13 +11,21 @@ export interface DiffHandle {
   toChange(direction: "next" | "previous"): void;
 }
 
+export interface DiffChanges {
+  /** how many places differ */
+  places: number;
+  /** lines of the original that are gone, and lines that the tuned file has in addition */
+  out: number;
+  in: number;
+}
+
 interface Props {
   original: DiffSide;
   tuned: DiffSide;
   machine: Machine;
   handle: RefObject<DiffHandle | null>;
-  /** how many places differ; undefined while they are being looked for */
-  onChanges(count: number | undefined): void;
+  /** undefined while they are being looked for */
+  onChanges(changes: DiffChanges | undefined): void;
 }
 
 /** Both files side by side, with their own line numbers. */
@@ -57,16 +65,18 @@ export function MonacoDiff({ original, tuned, machine, handle, onChanges }: Prop
       original: editor.createModel(original.text, GCODE),
       modified: editor.createModel(tuned.text, GCODE),
     };
-    shown.getOriginalEditor().updateOptions(numbered(original, "Original file"));
-    shown.getModifiedEditor().updateOptions(numbered(tuned, "Tuned file"));
+    shown.getOriginalEditor().updateOptions(numbered(original));
+    shown.getModifiedEditor().updateOptions(numbered(tuned));
     shown.setModel(next);
     before?.original.dispose();
     before?.modified.dispose();
+    nameSide(shown.getOriginalEditor(), "Original file");
+    nameSide(shown.getModifiedEditor(), "Tuned file");
     const marks = markByChannel(shown, machine);
     const updated = shown.onDidUpdateDiff(() => {
       const changes = shown.getLineChanges() ?? [];
       marks.show(changes);
-      report.current(changes.length);
+      report.current(changesOf(changes));
       if (changes.length > 0) shown.revealFirstDiff();
     });
     return () => {
@@ -82,13 +92,39 @@ export function MonacoDiff({ original, tuned, machine, handle, onChanges }: Prop
     },
   }));
 
-  return <div ref={box} className="h-[28rem] overflow-hidden border border-rule" />;
+  return (
+    <div
+      ref={box}
+      className="max-h-[28rem] min-h-32 overflow-hidden border border-rule"
+      style={{ height: Math.max(linesIn(original), linesIn(tuned)) * LINE_PX + SPARE_PX }}
+    />
+  );
 }
 
-const numbered = ({ lineNumbers }: DiffSide, ariaLabel: string): editor.IEditorOptions => ({
+/** The editor names its own text box only while it takes a screen reader to be there. */
+function nameSide(side: editor.ICodeEditor, name: string): void {
+  side.updateOptions({ ariaLabel: name });
+  side.getDomNode()?.querySelector("[role=textbox], textarea")?.setAttribute("aria-label", name);
+}
+
+const LINE_PX = 20;
+/** A wrapped line or two, and the editor's own edges. */
+const SPARE_PX = 64;
+
+const linesIn = ({ lineNumbers }: DiffSide): number => lineNumbers.length;
+
+const numbered = ({ lineNumbers }: DiffSide): editor.IEditorOptions => ({
   lineNumbers: (line) => lineNumbers[line - 1] ?? "",
-  ariaLabel,
 });
+
+function changesOf(changes: readonly editor.ILineChange[]): DiffChanges {
+  const length = (from: number, to: number) => (to === 0 ? 0 : to - from + 1);
+  return {
+    places: changes.length,
+    out: changes.reduce((sum, each) => sum + length(each.originalStartLineNumber, each.originalEndLineNumber), 0),
+    in: changes.reduce((sum, each) => sum + length(each.modifiedStartLineNumber, each.modifiedEndLineNumber), 0),
+  };
+}
 
 const OPTIONS: editor.IStandaloneDiffEditorConstructionOptions = {
   automaticLayout: true,
@@ -102,13 +138,14 @@ const OPTIONS: editor.IStandaloneDiffEditorConstructionOptions = {
   renderIndicators: true,
   renderOverviewRuler: false,
   ignoreTrimWhitespace: false,
-  hideUnchangedRegions: { enabled: true, contextLineCount: 4, minimumLineCount: 6 },
+  diffWordWrap: "on",
+  renderLineHighlight: "none",
   minimap: { enabled: false },
   scrollBeyondLastLine: false,
   fontFamily: '"JetBrains Mono", ui-monospace, monospace',
   fontLigatures: false,
   fontSize: 13,
-  lineHeight: 20,
+  lineHeight: LINE_PX,
   lineNumbersMinChars: 7,
   // Room for the plus or minus between number and text.
   lineDecorationsWidth: 26,

@@ -36,10 +36,8 @@ function Latest({ number, createdAt, createdBy, note }: DocumentSummary["latest"
       <span className="font-mono text-small whitespace-nowrap">
         {number} · {moment(createdAt)}
       </span>
-      <span className="block max-w-72 text-small text-soft wrap-anywhere">
-        {createdBy}
-        {note && `: ${note}`}
-      </span>
+      <span className="block text-small text-soft">{createdBy}</span>
+      <span className="block max-w-72 text-small text-soft wrap-break-word empty:hidden">{note}</span>
     </>
   );
 }

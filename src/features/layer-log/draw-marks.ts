@@ -1,10 +1,12 @@
-import { fitting, hairline, LOG_FONT, label } from "#src/features/layer-log/draw-kit.ts";
+import { fitting, hairline, label } from "#src/features/layer-log/draw-kit.ts";
 import { yOf } from "#src/features/layer-log/height-view.ts";
 import { positionOfIndex } from "#src/features/layer-log/layer-stack.ts";
 import type { LogPicture } from "#src/features/layer-log/log-picture.ts";
 import { STATE_NAMES } from "#src/lib/state-fill.ts";
 
-/** Findings and advice at their height: a filled wedge for a warning, an open one for information. */
+const MARK_APART_PX = 10;
+
+/** Findings and advice at their height: a filled wedge for a warning, an open one for anything else. */
 export function drawMarks(context: CanvasRenderingContext2D, picture: LogPicture): void {
   const { marks, stack, view, palette, layout } = picture;
   const rows = new Map<number, boolean>();
@@ -12,7 +14,8 @@ export function drawMarks(context: CanvasRenderingContext2D, picture: LogPicture
     const i = positionOfIndex(stack, layer);
     if (i < 0 || stack.topMm[i] <= view.fromMm || stack.bottomMm[i] >= view.toMm) continue;
     const y = yOf(view, (stack.bottomMm[i] + stack.topMm[i]) / 2);
-    const row = Math.round(y / 4) * 4;
+    // Where marks would cover each other, one stands for them.
+    const row = Math.round(y / MARK_APART_PX) * MARK_APART_PX;
     rows.set(row, rows.get(row) || severity === "warning");
   }
   const x = layout.marks.x + 4;
@@ -46,8 +49,8 @@ export function drawBands(context: CanvasRenderingContext2D, picture: LogPicture
     context.strokeRect(x, top, strip, bottom - top);
     for (const y of [top, bottom]) hairline(context, ratio, palette.rule, [x, y, x + width, y]);
     drawRamp(context, picture, x + strip + 4, fromMm, Math.min(fromMm + rampMm, toMm));
-    context.font = LOG_FONT;
-    const room = width - strip - 14;
+    context.font = `12px ${getComputedStyle(context.canvas).fontFamily}`;
+    const room = width - strip - 18;
     const ramp = rampMm > 0 ? [`ramp ${rampMm} mm`] : [];
     const lines = [name, STATE_NAMES[target].toLowerCase(), ...ramp].slice(0, Math.floor((bottom - top) / 16));
     lines.forEach((text, n) => {

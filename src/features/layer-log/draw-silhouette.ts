@@ -108,6 +108,8 @@ function fillPredicted(
   for (let from = first; from <= last; ) {
     let to = from;
     while (to < last && states[to + 1] === states[from]) to++;
+    // States that change within a row of pixels can't be told apart: the row has that of its first layer.
+    while (to < last && yOf(view, stack.bottomMm[from]) - yOf(view, stack.topMm[to]) < 1) to++;
     const [top, bottom] = [
       Math.max(yOf(view, stack.topMm[to]), view.topPx),
       Math.min(yOf(view, stack.bottomMm[from]), view.bottomPx),

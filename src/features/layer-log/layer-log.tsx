@@ -44,6 +44,8 @@ export interface LayerLogProps {
   /** index of the pinned layer */
   pinnedLayer: number | null;
   onPin(layer: number): void;
+  /** Escape, with nothing else to step back from; left out: a pinned layer stays pinned */
+  onUnpin?(): void;
   /** index of the layer under the crosshair, null when it leaves */
   onHover?(layer: number | null): void;
   /** findings of the reading, advice of the plan */
@@ -55,21 +57,37 @@ export interface LayerLogProps {
   /** draws the column at the right in place of the bands, for instance to edit them */
   aside?: { title: string; widthPx: number; render(view: LogAsideView): ReactNode };
   label?: string;
+  /** read out behind the pinned layer's values, such as the reasons for its duties */
+  spoken?: string;
   /** height of the plot; the log is as wide as its box */
   heightPx?: number;
 }
 
+/** A band that is marked with the keys: positions of the layers it begins and ends with, in any order. */
+interface MarkedBand {
+  from: number;
+  to: number;
+}
+
+function bandOf({ bottomMm, topMm }: LayerStack, { from, to }: MarkedBand): HeightRange {
+  return { fromMm: Math.min(bottomMm[from], bottomMm[to]), toMm: Math.max(topMm[from], topMm[to]) };
+}
+
+const spokenBand = ({ index }: LayerStack, { from, to }: MarkedBand): string =>
+  `Layers ${index[Math.min(from, to)]} to ${index[Math.max(from, to)]}`;
+
 const NO_MARKS: readonly LogMark[] = [];
 const NO_ZONES: readonly BandZone[] = [];
-const BANDS_PX = 134;
+const BANDS_PX = 146;
 
 /**
  * The layer log: narrow tracks over one height axis, as a borehole log is drawn, with one crosshair through all of them.
- * Dragging over the silhouette zooms; a click or the arrow keys pin a layer.
+ * Dragging over the silhouette zooms; a click or the arrow keys pin a layer. With Shift the arrow keys mark a band, which
+ * Enter zooms to.
  */
 export function LayerLog(props: LayerLogProps) {
-  const { layers, tracks, pinnedLayer, onPin, onHover, aside, label = "Layer log", heightPx = 560 } = props;
-  const { marks = NO_MARKS, zones = NO_ZONES, states } = props;
+  const { layers, tracks, pinnedLayer, onPin, onUnpin, onHover, aside, label = "Layer log", heightPx = 560 } = props;
+  const { marks = NO_MARKS, zones = NO_ZONES, states, spoken } = props;
   const box = useRef<HTMLDivElement>(null);
   const [base, over] = [useRef<HTMLCanvasElement>(null), useRef<HTMLCanvasElement>(null)];
   const { width } = useBoxSize(box, { width: 960, height: heightPx });
@@ -78,6 +96,7 @@ export function LayerLog(props: LayerLogProps) {
   const [wanted, setWanted] = useState<HeightRange>();
   const [hovered, setHovered] = useState(-1);
   const [asTable, setAsTable] = useState(false);
+  const [marked, setMarked] = useState<MarkedBand>();
 
   const range = useMemo(() => (wanted ? fitRange(stack, wanted) : wholeRange(stack)), [stack, wanted]);
   const view = useMemo(() => viewOf(range, heightPx), [range, heightPx]);
@@ -88,6 +107,7 @@ export function LayerLog(props: LayerLogProps) {
 
   const pin = (position: number) => {
     if (position < 0) return;
+    setMarked(undefined);
     if (wanted) setWanted(rangeShowing(stack, range, stack.bottomMm[position], stack.topMm[position]));
     onPin(stack.index[position]);
   };
@@ -105,19 +125,30 @@ export function LayerLog(props: LayerLogProps) {
     onZoom: (zoom) => setWanted(fitRange(stack, zoom)),
     onHover: hover,
   });
-  const { band } = pointer;
+  const keyBand = useMemo(() => marked && bandOf(stack, marked), [stack, marked]);
+  const band = pointer.band ?? keyBand;
   const marker = useMemo(() => ({ pinned, hovered, band }), [pinned, hovered, band]);
   useLogCanvas(base, over, { content, layout, view, heightPx, bandColumn: aside === undefined, pointer: marker });
 
   const onKeyDown = (event: KeyboardEvent) => {
     if (event.ctrlKey || event.metaKey || event.altKey) return;
     const [first, last] = shownPositions(stack, view);
-    const step = logStep(event.key, pinned, stack.count, Math.max(1, Math.round((last - first + 1) / 10)));
+    const page = Math.max(1, Math.round((last - first + 1) / 10));
+    const step = logStep(event, { pinned, marked: marked?.to ?? -1, count: stack.count, page });
     if (!step) return;
     event.preventDefault();
     if ("pin" in step) return pin(step.pin);
+    if ("mark" in step) {
+      const [bottomMm, topMm] = [stack.bottomMm[step.mark], stack.topMm[step.mark]];
+      if (wanted) setWanted(rangeShowing(stack, range, bottomMm, topMm));
+      return setMarked({ from: marked?.from ?? (pinned < 0 ? step.mark : pinned), to: step.mark });
+    }
     pointer.drop();
-    if (step.zoom === "whole") return zoomOut();
+    if ("back" in step) return marked ? setMarked(undefined) : zoomed ? zoomOut() : onUnpin?.();
+    if (step.zoom === "band") {
+      if (keyBand) setWanted(fitRange(stack, keyBand));
+      return setMarked(undefined);
+    }
     const about = pinned < 0 ? (range.fromMm + range.toMm) / 2 : stack.topMm[pinned];
     setWanted(zoomedAbout(stack, range, about, step.zoom === "in" ? 0.5 : 2));
   };
@@ -130,13 +161,25 @@ export function LayerLog(props: LayerLogProps) {
           <LayerTable stack={stack} tracks={tracks} pinned={pinned} onPin={pin} heightPx={heightPx + 96} />
         ) : (
           <>
-            <LogHead
-              layout={layout}
-              tracks={tracks}
-              position={shown}
-              layerText={layerText(stack, shown)}
-              asideTitle={aside?.title ?? (zones.length > 0 ? "Zones" : undefined)}
-            />
+            <div className="relative">
+              <LogHead
+                layout={layout}
+                tracks={tracks}
+                position={shown}
+                layerText={layerText(stack, shown)}
+                asideTitle={aside?.title ?? (zones.length > 0 ? "Zones" : undefined)}
+              />
+              {zoomed && (
+                <Button
+                  weight="quiet"
+                  className="absolute bottom-1 text-small"
+                  style={{ left: layout.silhouette.x + 8 }}
+                  onClick={zoomOut}
+                >
+                  Whole part
+                </Button>
+              )}
+            </div>
             <div className="relative" style={{ width: layout.width, height: heightPx }}>
               <div
                 role="slider"
@@ -181,23 +224,35 @@ export function LayerLog(props: LayerLogProps) {
       </div>
       <footer className="flex flex-wrap items-start justify-between gap-x-6 gap-y-1 border-t border-hair px-2 py-1.5">
         <LogLegend tracks={tracks} zones={zones} states={states} marked={marks.length > 0} />
-        <span className="ml-auto flex gap-4">
-          {zoomed && !asTable && (
-            <Button weight="quiet" className="text-small" onClick={zoomOut}>
-              Whole part
-            </Button>
-          )}
-          <Button weight="quiet" className="text-small" aria-pressed={asTable} onClick={() => setAsTable(!asTable)}>
-            Layers as a table
-          </Button>
+        {/* biome-ignore lint/a11y/useSemanticElements: two buttons are no set of form fields */}
+        <span role="group" aria-label="Layers as" className="ml-auto flex gap-3 text-small">
+          {[
+            { name: "Log", table: false },
+            { name: "Table", table: true },
+          ].map(({ name, table }) => (
+            <button
+              key={name}
+              type="button"
+              aria-pressed={asTable === table}
+              onClick={() => setAsTable(table)}
+              className="min-h-6 border-b-2 border-transparent px-1 text-soft hover:text-ink aria-pressed:border-ink aria-pressed:font-semibold aria-pressed:text-ink"
+            >
+              {name}
+            </button>
+          ))}
         </span>
       </footer>
       <MarkNotes marks={marks} layer={shown < 0 ? undefined : stack.index[shown]} />
       <LayerAnnouncer
         text={
-          pinned < 0
-            ? ""
-            : `${spokenLayer(stack, pinned)}. ${tracks.map((track) => trackText(track, pinned)).join(". ")}.`
+          marked
+            ? `${spokenBand(stack, marked)} marked. Enter shows only these.`
+            : pinned < 0
+              ? ""
+              : [spokenLayer(stack, pinned), ...tracks.map((track) => trackText(track, pinned)), spoken]
+                  .filter((part) => part)
+                  .map((part) => `${part}.`)
+                  .join(" ")
         }
       />
     </section>

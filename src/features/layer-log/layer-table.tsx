@@ -36,7 +36,7 @@ export function LayerTable({ stack, tracks, pinned, onPin, heightPx }: Props) {
       // biome-ignore lint/a11y/noNoninteractiveTabindex: a region that scrolls must be reachable from the keyboard
       tabIndex={0}
       className="overflow-auto"
-      style={{ height: heightPx }}
+      style={{ maxHeight: heightPx }}
       onScroll={(event) => setScrolled(event.currentTarget.scrollTop)}
     >
       <table className="w-full border-collapse font-mono text-fine" aria-rowcount={stack.count + 1}>
@@ -68,7 +68,7 @@ export function LayerTable({ stack, tracks, pinned, onPin, heightPx }: Props) {
                   {stack.index[i]}
                 </button>
               </th>
-              <td className="px-3 text-right">{fixedText(stack.topMm[i] - objectAt(stack, i).baseMm, 3)}</td>
+              <td className="px-3 text-right">{fixedText(stack.topMm[i] - objectAt(stack, i).baseMm, 2)}</td>
               {columns.map(({ key, values, decimals }) => (
                 <td key={key} className="px-3 text-right">
                   {fixedText(values[i], decimals)}

@@ -1,5 +1,6 @@
 import { LineSample } from "#src/features/layer-log/line-sample.tsx";
 import type { Column, LogLayout } from "#src/features/layer-log/log-layout.ts";
+import { MEASURED } from "#src/features/layer-log/reading-tracks.ts";
 import type { Track } from "#src/features/layer-log/track.ts";
 import { unitAfter } from "#src/features/layer-log/value-text.ts";
 import { fixedText } from "#src/lib/number-text.ts";
@@ -23,11 +24,15 @@ export function LogHead({ layout, tracks, position, layerText, asideTitle }: Pro
         <span className="pl-2 font-semibold">Layer</span>
         <span className="flex flex-col pr-2 text-right font-mono">
           <span className="text-soft">{layerText.of}</span>
-          <span>{layerText.number}</span>
-          <span>
-            {layerText.height}
-            <span className="pl-1 text-soft">mm</span>
-          </span>
+          {position >= 0 && (
+            <>
+              <span>{layerText.number}</span>
+              <span>
+                {layerText.height}
+                <span className="pl-1 text-soft">mm</span>
+              </span>
+            </>
+          )}
         </span>
       </div>
       <div className="absolute top-2 bottom-1.5" style={across(layout.silhouette)}>
@@ -48,12 +53,12 @@ export function LogHead({ layout, tracks, position, layerText, asideTitle }: Pro
 const ROOM_FOR_TITLES_PX = 100;
 
 function TrackHead({ track, position, column }: { track: Track; position: number; column: Column }) {
-  const { title, shortTitle = title, unit, series, decimals = 1, caution } = track;
+  const { title, shortTitle = title, unit, series, decimals = 1, caution, scale } = track;
   return (
     <div className="absolute top-2 bottom-1.5 flex flex-col justify-between" style={across(column)}>
       <span className="leading-4">
-        <span className="font-semibold">{column.width < ROOM_FOR_TITLES_PX ? shortTitle : title}</span>{" "}
-        <span className="font-mono whitespace-nowrap text-soft">{unit}</span>
+        <span className="font-semibold">{column.width < ROOM_FOR_TITLES_PX ? shortTitle : title}</span>
+        {scale === "log" && <span className="text-soft">, log</span>}
         {caution && (
           <span className="block truncate border-b border-dashed border-rule text-[0.6875rem] tracking-tighter text-soft">
             {caution}
@@ -62,14 +67,11 @@ function TrackHead({ track, position, column }: { track: Track; position: number
       </span>
       <span className="flex flex-col">
         {series.map(({ label, style, values }) => (
-          <span key={label} className="flex items-center gap-1.5 whitespace-nowrap">
-            <LineSample style={style} />
-            <span className="min-w-0 grow truncate text-soft">
-              {column.width >= 116 && series.length > 1 ? label : ""}
-            </span>
+          <span key={label} className="flex items-center justify-between gap-1.5 whitespace-nowrap">
+            {label === MEASURED ? <span /> : <LineSample style={style} />}
             <span className="font-mono">
-              {position < 0 ? "" : fixedText(values[position], decimals)}
-              {position < 0 ? "" : <span className="text-soft">{unitAfter(unit) && ` ${unitAfter(unit)}`}</span>}
+              {position >= 0 && fixedText(values[position], decimals)}
+              {(position < 0 || unitAfter(unit)) && <span className="text-soft"> {unit}</span>}
             </span>
           </span>
         ))}

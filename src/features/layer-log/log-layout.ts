@@ -15,7 +15,7 @@ export interface Column {
 
 const AXIS_PX = 98;
 const MARKS_PX = 18;
-const TRACK_LEAST_PX = 66;
+const TRACK_LEAST_PX = 63;
 const GAP_PX = 10;
 
 /** Shares the width out: the axis and the marks have theirs, silhouette and tracks what is left. */

@@ -1,5 +1,6 @@
 import type { ReactNode } from "react";
 import { LineSample } from "#src/features/layer-log/line-sample.tsx";
+import { MEASURED } from "#src/features/layer-log/reading-tracks.ts";
 import type { Track } from "#src/features/layer-log/track.ts";
 import type { BandZone } from "#src/features/layer-log/zone-bands.ts";
 import { PREDICTED_NAMES, type PredictedState, STATE_FILLS, STATE_NAMES } from "#src/lib/state-fill.ts";
@@ -21,7 +22,7 @@ export function LogLegend({ tracks, zones, states, marked }: Props) {
   const uncertain = series.find(({ low, uncertain }) => low !== undefined && uncertain);
   const windowed = tracks.some(({ windows = [] }) => windows.length > 0);
   const lines = new Map(
-    series.filter(({ label }) => label !== "in the file").map(({ label, style }) => [label, style.line]),
+    series.filter(({ label }) => label !== MEASURED).map(({ label, style }) => [label, style.line]),
   );
   return (
     <ul aria-label="Legend" className="flex min-w-0 flex-1 flex-wrap items-center gap-x-5 gap-y-1 text-fine text-soft">
@@ -43,10 +44,17 @@ export function LogLegend({ tracks, zones, states, marked }: Props) {
               {PREDICTED_NAMES[state]}
             </Entry>
           ))}
-      {states && (
+      {states ? (
         <Entry sample={null}>
           part: <em>as predicted</em>, zones: <em>as wanted</em>
         </Entry>
+      ) : (
+        targets.length > 0 && (
+          <Entry sample={null}>
+            part and zones: <em>as wanted</em>
+            {lines.has("predicted") ? "" : ", nothing is predicted"}
+          </Entry>
+        )
       )}
       {[...lines].map(([label, line]) => (
         <Entry key={label} sample={<LineSample style={{ tone: "ink", line }} />}>
@@ -77,7 +85,12 @@ export function LogLegend({ tracks, zones, states, marked }: Props) {
           where the target wants it
         </Entry>
       )}
-      {marked && <Entry sample={<Wedge />}>finding or advice</Entry>}
+      {marked && (
+        <>
+          <Entry sample={<Wedge fill="var(--ink)" />}>warning</Entry>
+          <Entry sample={<Wedge fill="var(--sheet)" />}>advice or note</Entry>
+        </>
+      )}
     </ul>
   );
 }
@@ -98,10 +111,10 @@ function Entry({ sample, children }: { sample: ReactNode; children: ReactNode })
   );
 }
 
-function Wedge() {
+function Wedge({ fill }: { fill: string }) {
   return (
     <svg aria-hidden="true" width="10" height="10">
-      <path d="M1 5 L9 1 L9 9 Z" fill="var(--ink)" stroke="var(--ink)" />
+      <path d="M1 5 L9 1 L9 9 Z" fill={fill} stroke="var(--ink)" />
     </svg>
   );
 }

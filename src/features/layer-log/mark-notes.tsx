@@ -1,4 +1,5 @@
 import type { LogMark } from "#src/features/layer-log/track.ts";
+import { SEVERITY_NAMES } from "#src/lib/remarks.ts";
 
 /** What was found at the layer one looks at. */
 export function MarkNotes({ marks, layer }: { marks: readonly LogMark[]; layer: number | undefined }) {
@@ -7,11 +8,11 @@ export function MarkNotes({ marks, layer }: { marks: readonly LogMark[]; layer: 
   return (
     <ul aria-label="At this layer" className="min-h-7 border-t border-hair px-2 py-1 text-small">
       {here.length === 0 && (
-        <li className="text-soft">{`${marks.length === 1 ? "1 finding or advice" : `${marks.length} findings and advice`}, marked at the layer`}</li>
+        <li className="text-soft">Nothing at this layer; a wedge in the log marks where there is.</li>
       )}
       {here.map(({ message, severity }) => (
         <li key={message}>
-          <span className="font-semibold">{severity === "warning" ? "Warning" : "Note"}</span> {message}
+          <span className="font-semibold">{SEVERITY_NAMES[severity]}</span> {message}
         </li>
       ))}
     </ul>

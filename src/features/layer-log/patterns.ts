@@ -44,12 +44,12 @@ export function makePatterns(context: CanvasRenderingContext2D, palette: Palette
   };
 }
 
-function stipple(tile: CanvasRenderingContext2D, { amber, amberInk }: Palette): void {
+function stipple(tile: CanvasRenderingContext2D, { amber, amberHatch }: Palette): void {
   tile.globalAlpha = 0.5;
   tile.fillStyle = amber;
   tile.fillRect(0, 0, TILE_PX, TILE_PX);
   tile.globalAlpha = 0.75;
-  tile.fillStyle = amberInk;
+  tile.fillStyle = amberHatch;
   for (const [x, y] of [
     [1, 1],
     [5, 5],
@@ -58,11 +58,11 @@ function stipple(tile: CanvasRenderingContext2D, { amber, amberInk }: Palette): 
   }
 }
 
-function lamellae(tile: CanvasRenderingContext2D, { bone, boneEdge }: Palette): void {
+function lamellae(tile: CanvasRenderingContext2D, { bone, boneHatch }: Palette): void {
   tile.fillStyle = bone;
   tile.fillRect(0, 0, TILE_PX, TILE_PX);
   tile.globalAlpha = 0.55;
-  tile.fillStyle = boneEdge;
+  tile.fillStyle = boneHatch;
   for (const y of [1, 5]) tile.fillRect(0, y, TILE_PX, 1);
 }
 

@@ -61,6 +61,14 @@ export function PlanInspector({ layer, channels, plan, children }: PlanInspector
   );
 }
 
+/** The reasons for a layer's duties as they are read out, channel by channel; nothing where there is no plan. */
+export function reasonsOf(plan: Pick<PlanDocument, "layers"> | undefined, index: number | undefined): string {
+  const planned = index === undefined ? undefined : plan?.layers.find((layer) => layer.index === index);
+  return Object.entries(planned?.reason ?? {})
+    .map(([id, reasons]) => `${id}: ${reasons.join(", ")}`)
+    .join(". ");
+}
+
 /** All with two decimals, so that the points stand in line. */
 function measures(layer: LogLayer) {
   const row = (label: string, value: number | null, unit: string) => ({
@@ -104,9 +112,10 @@ function ChannelDuties({ channel: { id, kind }, seen, hasPlan, planned, reasons 
           <dt className="grow text-soft">as sliced</dt>
           <dd className="font-mono">
             {seen && seen.max > seen.min && (
-              <span className="pr-3 text-soft">
+              <>
                 {fixedText(seen.min, 2)} to {fixedText(seen.max, 2)}
-              </span>
+                <span className="px-2 font-text text-soft">mean</span>
+              </>
             )}
             {seen ? fixedText(seen.mean, 3) : "–"}
           </dd>

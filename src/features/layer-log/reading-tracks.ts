@@ -1,7 +1,6 @@
 import type { PlanDocument } from "#shared/formats/plan.ts";
 import type { LayerReading } from "#shared/formats/reading.ts";
 import type { Tone, Track, TrackSeries } from "#src/features/layer-log/track.ts";
-import { spansDecades } from "#src/features/layer-log/track-scale.ts";
 
 /** A layer of the log: a layer of the reading. */
 export type LogLayer = LayerReading;
@@ -30,6 +29,8 @@ export function withPlan(tracks: readonly Track[], plan: LogPlan | undefined): T
 }
 
 const SLICED = "as sliced";
+/** The only line of its track: it needs no sample to be told from another. */
+export const MEASURED = "in the file";
 
 function measureTracks(layers: readonly LogLayer[]): Track[] {
   const measure = (
@@ -45,8 +46,9 @@ function measureTracks(layers: readonly LogLayer[]): Track[] {
       title,
       unit,
       decimals,
-      scale: spansDecades(values) ? "log" : "linear",
-      series: [{ label: "in the file", values, style: { tone: "ink", line: "solid", fill: "wash" } }],
+      // Layers of one part may differ a hundredfold, and of another hardly: one kind of axis for all of them.
+      scale: "log",
+      series: [{ label: MEASURED, values, style: { tone: "ink", line: "solid", fill: "wash" } }],
     };
   };
   return [

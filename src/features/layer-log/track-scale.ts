@@ -20,12 +20,6 @@ export function trackScale({ domain, scale = "linear", series, references = [] }
   return { kind: "linear", from: Math.floor(from / step) * step, to: Math.ceil((from + span) / step - 1e-9) * step };
 }
 
-/** Whether values spread so far that short layers would vanish on a linear scale. */
-export function spansDecades(values: ArrayLike<number>): boolean {
-  const { leastAboveZero, most } = extremes([values]);
-  return most / leastAboveZero >= 15;
-}
-
 /** 1, 2 or 5 times a power of ten, at least the value. */
 function niceAbove(value: number): number {
   const power = 10 ** Math.floor(Math.log10(value) + 1e-9);

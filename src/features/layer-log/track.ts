@@ -1,3 +1,5 @@
+import type { Severity } from "#src/lib/remarks.ts";
+
 /** What the colour of a line stands for: a measure, cooling, heating, or a state. */
 export type Tone = "ink" | "cool" | "heat" | "amber" | "bone";
 
@@ -58,6 +60,6 @@ export interface Track {
 export interface LogMark {
   /** index of the layer */
   layer: number;
-  severity: "info" | "warning";
+  severity: Severity;
   message: string;
 }

@@ -6,9 +6,8 @@ import type { Column } from "#src/ui/table.tsx";
 /** What tells profiles apart in a list: material, wanted states, the machines that can follow them, approval. */
 export function profileColumns(machines: readonly DocumentSummary[]): Column<DocumentSummary>[] {
   return [
-    { head: "Polymer", cell: ({ profile }) => <span className="whitespace-nowrap">{profile?.polymer}</span> },
+    { head: "For", cell: ({ profile }) => profile && <For profile={profile} machines={machines} /> },
     { head: "Targets", cell: ({ profile }) => profile && <Zones zones={profile.zones} /> },
-    { head: "Fits", cell: ({ profile }) => profile && <Fits profile={profile} machines={machines} /> },
     { head: "Approved", cell: approvedText },
   ];
 }
@@ -28,11 +27,20 @@ function Zones({ zones }: Pick<ProfileGist, "zones">) {
   );
 }
 
-function Fits({ profile, machines }: { profile: ProfileGist; machines: readonly DocumentSummary[] }) {
+/** The polymer, and the machines that have every channel it drives. */
+function For({ profile, machines }: { profile: ProfileGist; machines: readonly DocumentSummary[] }) {
   const fitting = machines.filter(({ machine }) => machine && lackingChannels(profile, machine).length === 0);
-  if (fitting.length > 0) return fitting.map(({ name }) => name).join(", ");
   const channels = profile.drives.map(({ id }) => id).join(", ");
-  return <span className="text-soft">no machine: drives {channels}</span>;
+  return (
+    <>
+      <span className="block whitespace-nowrap">{profile.polymer}</span>
+      <span className="block text-small text-soft">
+        {fitting.length > 0
+          ? `on ${fitting.map(({ name }) => name).join(", ")}`
+          : `fits no machine: drives ${channels}`}
+      </span>
+    </>
+  );
 }
 
 function approvedText({ approved = [], latest }: DocumentSummary): string {

@@ -11,7 +11,7 @@ const PATTERNS = { alternating: "Both by turns", graded: "From one to the other"
 export function TargetMark({ target }: { target: Target }) {
   const changing = target === "alternating" || target === "graded";
   return (
-    <span className="inline-flex items-center gap-2">
+    <span className="inline-flex items-center gap-2 whitespace-nowrap">
       <span
         aria-hidden
         className="inline-block size-3.5 shrink-0 border border-bone-edge"

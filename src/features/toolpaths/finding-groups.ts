@@ -4,7 +4,7 @@ export type Finding = ReadingDocument["findings"][number];
 
 /** Kinds of findings that concern one thing, in the order of what they may do to a print. */
 const GROUPS: { title: string; codes: readonly string[] }[] = [
-  { title: "Fan and lamp", codes: ["no-channel", "controls-inside", "scale-mixed", "window-full"] },
+  { title: "Fan and lamp", codes: ["no-channel", "output-shared", "controls-inside", "scale-mixed", "window-full"] },
   { title: "Macros", codes: ["macro"] },
   {
     title: "Layers and moves",

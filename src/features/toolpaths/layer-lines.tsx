@@ -8,15 +8,27 @@ interface Props {
   layer: number;
   /** a line of the file that is looked for */
   marked?: number;
+  /** it stands behind these lines: the last lines of a layer go with the next one, whose commands stand before them */
+  onBehind?(): void;
 }
 
 /** The G-code of one layer as it stands in the file, with its line numbers. */
-export function LayerLines({ readingId, layer, marked }: Props) {
+export function LayerLines({ readingId, layer, marked, onBehind }: Props) {
   const query = useQuery(layerLinesQuery(readingId, layer));
+  const behind =
+    query.data !== undefined &&
+    marked !== undefined &&
+    !query.data.truncated &&
+    marked >= query.data.firstLine + linesOf(query.data.text).length;
+  const tell = useRef(onBehind);
+  tell.current = onBehind;
+  useEffect(() => {
+    if (behind) tell.current?.();
+  }, [behind]);
   return (
     <Loaded query={query} what="Fetching lines">
       {({ firstLine, text, truncated }) => {
-        const lines = text.replace(/\r\n?/g, "\n").replace(/\n$/, "").split("\n");
+        const lines = linesOf(text);
         const at = marked === undefined ? -1 : marked - firstLine;
         return (
           <>
@@ -38,6 +50,8 @@ export function LayerLines({ readingId, layer, marked }: Props) {
     </Loaded>
   );
 }
+
+const linesOf = (text: string): string[] => text.replace(/\r\n?/g, "\n").replace(/\n$/, "").split("\n");
 
 interface SheetProps {
   label: string;

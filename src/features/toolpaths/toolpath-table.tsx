@@ -60,16 +60,14 @@ export function ToolpathTable({ toolpaths, hrefOf, nextOf, tunedOf }: Props) {
     {
       head: "Toolpath",
       cell: (toolpath) => (
-        <span className="block min-w-44">
+        <span className="block min-w-40">
           <Link to={hrefOf(toolpath)} className={`${LINK} font-semibold wrap-break-word`}>
             {toolpath.name}
           </Link>
-          <span className="block text-small text-soft empty:hidden">{notesOf(toolpath)}</span>
+          <span className="block text-small text-soft">{notesOf(toolpath, tunedOf(toolpath))}</span>
         </span>
       ),
     },
-    { head: "Read for", cell: ({ readings }) => machinesOf(readings) },
-    { head: "Tuned", number: true, cell: (toolpath) => timesText(tunedOf(toolpath)) },
     { head: "Layers", number: true, cell: (toolpath) => measure(toolpath, ({ layers }) => counted(layers)) },
     {
       head: "Height",
@@ -82,21 +80,32 @@ export function ToolpathTable({ toolpaths, hrefOf, nextOf, tunedOf }: Props) {
       number: true,
       cell: (toolpath) => measure(toolpath, ({ printTimeS }) => durationText(printTimeS)),
     },
-    { head: "Size", number: true, cell: (toolpath) => bytes(toolpath.bytes) },
-    { head: "Brought in", number: true, cell: (toolpath) => moment(toolpath.createdAt) },
+    {
+      head: "Brought in",
+      number: true,
+      cell: (toolpath) => (
+        <>
+          {moment(toolpath.createdAt)}
+          <span className="block text-soft">{bytes(toolpath.bytes)}</span>
+        </>
+      ),
+    },
   ];
   return <Table label="Toolpaths" columns={columns} rows={toolpaths} keyOf={({ id }) => id} />;
 }
 
-/** How the latest reading stands, where there is something to say about it. */
-function notesOf(toolpath: Toolpath): string {
-  const reading = latest(toolpath);
-  if (!reading) return "not read";
-  const warnings = reading.summary?.warnings ?? 0;
-  return STATES[reading.state] ?? (warnings === 0 ? "" : counted(warnings, "warning"));
+/** `for Tern, tuned once, 2 warnings`; how the latest reading stands, where that is not as usual. */
+function notesOf(toolpath: Toolpath, tuned: number): string {
+  const { readings } = toolpath;
+  if (readings.length === 0) return "not read";
+  const [{ state, summary }] = readings;
+  const machines = [...new Set(readings.map(({ machineName }) => machineName))].join(", ");
+  const warnings = summary?.warnings ?? 0;
+  const notes = [
+    `for ${machines}`,
+    tuned === 1 ? "tuned once" : tuned > 1 && `tuned ${counted(tuned)} times`,
+    STATES[state],
+    warnings > 0 && counted(warnings, "warning"),
+  ];
+  return notes.filter(Boolean).join(", ");
 }
-
-const machinesOf = (readings: readonly Reading[]): string =>
-  [...new Set(readings.map(({ machineName }) => machineName))].join(", ");
-
-const timesText = (times: number): string => (times === 0 ? "no" : times === 1 ? "once" : `${counted(times)} times`);

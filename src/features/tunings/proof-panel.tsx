@@ -1,4 +1,5 @@
 import type { ProofDocument } from "#shared/formats/proof.ts";
+import { CHECK_NAMES, checkGroups } from "#src/features/tunings/check-names.ts";
 import { bytes } from "#src/lib/format.ts";
 import { Facts } from "#src/ui/facts.tsx";
 
@@ -10,8 +11,8 @@ export function ProofPanel({ proof }: { proof: ProofDocument }) {
     <div className="flex flex-col gap-4">
       <p className="text-lead">
         {failed === 0
-          ? `All ${checks.length} checks passed.`
-          : `${failed} of ${checks.length} checks failed. This file must not be printed.`}
+          ? `The proof holds: ${checks.length} of ${checks.length}.`
+          : `The proof does not hold: ${failed} of ${checks.length} failed. This file must not be printed.`}
       </p>
       <Facts
         facts={[
@@ -23,21 +24,23 @@ export function ProofPanel({ proof }: { proof: ProofDocument }) {
           { label: "Tuned", value: bytes(output.bytes) },
         ]}
       />
-      <ul className="border-t border-ink">
-        {checks.map(({ id, passed, detail }) => (
-          <li
-            key={id}
-            className="grid grid-cols-[1.25rem_11rem_minmax(0,1fr)] gap-x-3 border-b border-hair py-1.5 max-md:grid-cols-[1.25rem_minmax(0,1fr)]"
-          >
-            <span className="text-center font-mono font-bold">
-              <span aria-hidden>{passed ? "✓" : "×"}</span>
-              <span className="sr-only">{passed ? "passed" : "failed"}</span>
-            </span>
-            <span className="font-semibold">{checkName(id)}</span>
-            <span className="wrap-anywhere max-md:col-start-2">{detail}</span>
-          </li>
-        ))}
-      </ul>
+      {checkGroups(checks).map(({ title, checks: some }) => (
+        <section key={title} aria-label={title}>
+          <h3 className="border-b border-ink pb-1 text-small font-semibold">{title}</h3>
+          <ul>
+            {some.map(({ id, passed, detail }) => (
+              <li
+                key={id}
+                className="grid grid-cols-[5rem_16rem_minmax(0,1fr)] gap-x-3 border-b border-hair py-1.5 max-md:grid-cols-[5rem_minmax(0,1fr)]"
+              >
+                <span className={passed ? "text-soft" : "font-semibold"}>{passed ? "holds" : "× fails"}</span>
+                <span className="font-semibold">{CHECK_NAMES[id] ?? id}</span>
+                <span className="wrap-anywhere max-md:col-start-2">{detail}</span>
+              </li>
+            ))}
+          </ul>
+        </section>
+      ))}
       <dl className="grid grid-cols-[auto_minmax(0,1fr)] gap-x-4 text-small">
         <Digest name="Original, SHA-256" digest={input.sha256} />
         <Digest name="Tuned, SHA-256" digest={output.sha256} />
@@ -57,6 +60,3 @@ function Digest({ name, digest }: { name: string; digest: string }) {
     </>
   );
 }
-
-/** "removed-only-driven" -> "Removed only driven" */
-const checkName = (id: string): string => id[0].toUpperCase() + id.slice(1).replaceAll("-", " ");

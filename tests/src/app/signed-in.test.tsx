@@ -62,7 +62,7 @@ test("an empty floor says what to do", async () => {
   open("/");
   await screen.findByText(/A toolpath is read for a machine, and there is none yet/);
   await screen.findByText(/No toolpath has come in yet/);
-  expect(screen.getByText("Nothing waits for you.")).toBeDefined();
+  expect(screen.getByText("Nothing for you to do.")).toBeDefined();
 });
 
 test("a list that can't be fetched says why and can be tried again", async () => {
@@ -109,4 +109,17 @@ test("a session that ends in the middle of an edit costs nothing: sign in over t
   await person.click(screen.getByRole("button", { name: "Sign in" }));
   await waitFor(() => expect(saved).toHaveLength(1));
   expect(saved[0]).toMatchObject({ email: "new@alderbay.example", password: "a first password" });
+});
+
+test("after a change of page its heading has the focus, and the keys are told from every page", async () => {
+  fakeServer({ "GET /api/session": () => SESSION, ...NOTHING, "GET /api/members": () => [] });
+  open("/");
+  const floor = await screen.findByRole("heading", { name: "Floor" });
+  expect(document.activeElement).not.toBe(floor);
+  const person = userEvent.setup();
+  await person.click(screen.getByRole("link", { name: "Members" }));
+  const heading = await screen.findByRole("heading", { name: "Members" });
+  await waitFor(() => expect(document.activeElement).toBe(heading));
+  await person.click(screen.getByRole("button", { name: "Keys" }));
+  expect(screen.getByRole("dialog", { name: "Keys" }).textContent).toContain("undo");
 });

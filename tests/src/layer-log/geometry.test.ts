@@ -46,7 +46,7 @@ test("columns fill the width, do not overlap, and keep a least width where there
       expect(columns[i].x).toBeGreaterThanOrEqual(columns[i - 1].x + columns[i - 1].width);
       expect(columns[i].width).toBeGreaterThan(0);
     }
-    expect(layout.tracks.every((track) => track.width >= 65)).toBe(true);
+    expect(layout.tracks.every((track) => track.width >= 62)).toBe(true);
     expect(layout.width).toBeGreaterThanOrEqual(width);
   }
 });

@@ -65,6 +65,25 @@ test("dragging over the silhouette zooms to the band, and Escape shows the whole
   expect([latest().fromMm, latest().toMm]).toEqual([0, 20]);
 });
 
+test("a band is marked with Shift and shown with Enter; Escape goes back step by step and unpins last", () => {
+  const views: LogAsideView[] = [];
+  const onUnpin = vi.fn();
+  render(<Log pin={50} onUnpin={onUnpin} aside={{ title: "Zones", widthPx: 100, render: seen(views) }} />);
+  const latest = () => views[views.length - 1];
+  for (let n = 0; n < 9; n++) fireEvent.keyDown(log(), { key: "ArrowUp", shiftKey: true });
+  expect(log().getAttribute("aria-valuenow")).toBe("50");
+  fireEvent.keyDown(log(), { key: "Enter" });
+  expect([latest().fromMm, latest().toMm]).toEqual([expect.closeTo(9.8), expect.closeTo(11.8)]);
+  fireEvent.keyDown(log(), { key: "ArrowDown", shiftKey: true });
+  fireEvent.keyDown(log(), { key: "Escape" });
+  expect(latest().toMm).toBeLessThan(12);
+  fireEvent.keyDown(log(), { key: "Escape" });
+  expect([latest().fromMm, latest().toMm]).toEqual([0, 20]);
+  expect(onUnpin).not.toHaveBeenCalled();
+  fireEvent.keyDown(log(), { key: "Escape" });
+  expect(onUnpin).toHaveBeenCalledTimes(1);
+});
+
 test("dragging over a track neither zooms nor pins", () => {
   const views: LogAsideView[] = [];
   render(<Log aside={{ title: "Zones", widthPx: 100, render: seen(views) }} />);
@@ -133,14 +152,14 @@ test("what was found at the layer is said below the log", () => {
 
 test("the table has the same layers in numbers, only those in sight, and pins too", async () => {
   render(<Log count={5000} />);
-  await userEvent.click(screen.getByRole("button", { name: "Layers as a table" }));
+  await userEvent.click(screen.getByRole("button", { name: "Table" }));
   const table = screen.getByRole("table");
   expect(table.getAttribute("aria-rowcount")).toBe("5001");
   expect(within(table).getAllByRole("row").length).toBeLessThan(80);
   await userEvent.click(within(table).getByRole("button", { name: "4" }));
   const row = within(table).getByRole("button", { name: "4" }).closest("tr");
   expect(row?.getAttribute("aria-current")).toBe("true");
-  expect(row?.textContent).toContain("0.800");
+  expect(row?.textContent).toContain("0.80");
 });
 
 test("the legend says that colours stand for state, not appearance", () => {
@@ -192,7 +211,7 @@ test("with a prediction the legend tells what is expected from what is wanted, a
     expect(legend).toContain(entry);
   expect(legend).not.toContain("changes within the layer");
   expect(container.querySelector("[aria-hidden=true]")?.textContent).toContain("uncalibrated");
-  fireEvent.click(screen.getByRole("button", { name: "Layers as a table" }));
+  fireEvent.click(screen.getByRole("button", { name: "Table" }));
   const row = screen.getAllByRole("row").find((each) => each.getAttribute("aria-current") === "true");
   const cells = within(row as HTMLElement).getAllByRole("cell");
   expect(cells.slice(1).map(({ textContent }) => textContent)).toEqual(["120", "100", "140"]);

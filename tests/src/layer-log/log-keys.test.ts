@@ -1,7 +1,8 @@
 import { expect, test } from "vitest";
 import { logStep } from "#src/features/layer-log/log-keys.ts";
 
-const pins = (key: string, position: number) => logStep(key, position, 100, 12);
+const pins = (key: string, pinned: number, { shiftKey = false, marked = -1 } = {}) =>
+  logStep({ key, shiftKey }, { pinned, marked, count: 100, page: 12 });
 
 test("arrow keys walk layer by layer, page keys further, Home and End to the ends", () => {
   expect(["ArrowUp", "ArrowDown", "PageUp", "PageDown", "Home", "End"].map((key) => pins(key, 50))).toEqual([
@@ -27,12 +28,20 @@ test("with nothing pinned the first step lands on an end of the part", () => {
   ]);
 });
 
-test("Escape shows the whole part, + and - zoom, other keys are left to the page", () => {
-  expect(pins("Escape", 5)).toEqual({ zoom: "whole" });
+test("with Shift the same keys mark a band, from the pinned layer or on from its end, and Enter shows it", () => {
+  expect(pins("ArrowUp", 50, { shiftKey: true })).toEqual({ mark: 51 });
+  expect(pins("ArrowUp", 50, { shiftKey: true, marked: 60 })).toEqual({ mark: 61 });
+  expect(pins("End", 50, { shiftKey: true, marked: 60 })).toEqual({ mark: 99 });
+  expect(pins("Enter", 50, { marked: 60 })).toEqual({ zoom: "band" });
+  expect(pins("Enter", 50)).toBeUndefined();
+});
+
+test("Escape steps back, + and - zoom, other keys are left to the page", () => {
+  expect(pins("Escape", 5)).toEqual({ back: true });
   expect([pins("+", 5), pins("-", 5)]).toEqual([{ zoom: "in" }, { zoom: "out" }]);
   expect(pins("Tab", 5)).toBeUndefined();
 });
 
 test("without layers nothing can be pinned", () => {
-  expect(logStep("ArrowUp", -1, 0, 1)).toBeUndefined();
+  expect(logStep({ key: "ArrowUp", shiftKey: false }, { pinned: -1, marked: -1, count: 0, page: 1 })).toBeUndefined();
 });

@@ -1,5 +1,4 @@
 import { expect, test } from "vitest";
-import { adviceMarks, findingMarks } from "#src/features/layer-log/log-marks.ts";
 import { readingTracks, withPlan } from "#src/features/layer-log/reading-tracks.ts";
 import { trackText } from "#src/features/layer-log/value-text.ts";
 import { layersOf } from "#tests/src/layer-log/layers.ts";
@@ -50,24 +49,6 @@ test("a range is drawn only where a duty changes within a layer", () => {
   }));
   expect(readingTracks(raised, CHANNELS)[2].series[0].high).toEqual(Float64Array.of(0.4, 0.9, 0.4));
   expect(readingTracks(layersOf(3), CHANNELS)[2].series[0].high).toBeUndefined();
-});
-
-test("findings stand at their layer, or at the layer that holds their line; those about the whole file nowhere", () => {
-  const found = findingMarks(
-    [
-      { code: "a", severity: "warning", layer: 2, message: "A" },
-      { code: "b", severity: "info", line: 34, message: "B" },
-      { code: "c", severity: "info", message: "C" },
-    ],
-    layersOf(5),
-  );
-  expect(found).toEqual([
-    { layer: 2, severity: "warning", message: "A" },
-    { layer: 3, severity: "info", message: "B" },
-  ]);
-  expect(adviceMarks([{ layer: 4, code: "saturated", message: "D" }])).toEqual([
-    { layer: 4, severity: "warning", message: "D" },
-  ]);
 });
 
 test("values are read out with their units, series by name where there are several", () => {

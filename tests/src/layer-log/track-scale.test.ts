@@ -1,6 +1,6 @@
 import { expect, test } from "vitest";
 import type { Track } from "#src/features/layer-log/track.ts";
-import { spansDecades, trackScale } from "#src/features/layer-log/track-scale.ts";
+import { trackScale } from "#src/features/layer-log/track-scale.ts";
 
 const trackOf = (values: number[], changes: Partial<Track> = {}): Track => ({
   id: "t",
@@ -34,9 +34,4 @@ test("a given domain holds whatever the data", () => {
 test("without a single value there is still a scale", () => {
   expect(trackScale(trackOf([]))).toEqual({ kind: "linear", from: 0, to: 1 });
   expect(trackScale(trackOf([Number.NaN]))).toEqual({ kind: "linear", from: 0, to: 1 });
-});
-
-test("layers alike stay linear; a foot of minutes under a post of seconds does not", () => {
-  expect(spansDecades([30, 36, 42])).toBe(false);
-  expect(spansDecades([240, 4])).toBe(true);
 });

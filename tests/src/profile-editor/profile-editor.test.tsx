@@ -79,7 +79,7 @@ test("a curve's point moves by keyboard and stays between its neighbours", () =>
 test("a curve's point is dragged on the plot", () => {
   render(<Editor />);
   const plot = screen.getByRole("group", { name: "Duty of part-fan over layer time, zone base" });
-  vi.spyOn(plot, "getBoundingClientRect").mockReturnValue(new DOMRect(0, 0, 380, 176));
+  vi.spyOn(plot, "getBoundingClientRect").mockReturnValue(new DOMRect(0, 0, 380, 188));
   const point = within(plot).getByRole("slider", { name: "Point 2 of 3" });
   fireEvent.pointerDown(point, { pointerId: 1 });
   // 34 to 368 px are 0 to 46 s, 148 to 10 px are duties 0 to 1.
@@ -127,7 +127,7 @@ test("what is wrong stands at its field, and the plan-ready profile comes back o
   expect(duty.getAttribute("aria-invalid")).toBe("true");
   const said = document.getElementById(duty.getAttribute("aria-describedby") ?? "");
   expect(said?.textContent).toMatch(/^Duty must be between 0 and 1, got 62\./);
-  expect(screen.getByText("1 place to correct")).toBeTruthy();
+  expect(screen.getByText("1 thing to correct")).toBeTruthy();
   await user.clear(duty);
   expect(screen.getByText(/^Duty is missing/)).toBeTruthy();
   await user.type(duty, "0.6");
@@ -159,10 +159,11 @@ test("points that are not sorted are a problem at the point that is out of order
 test("a limit wider than the machine's is a problem at that limit, with the machine's beside it", async () => {
   const user = userEvent.setup();
   render(<Editor />);
-  const lamp = screen.getByRole("group", { name: "Channel lamp" });
-  await user.type(within(lamp).getByRole("textbox", { name: "Most duty 0–1" }), "0.95");
-  expect(within(lamp).getByText(/Most is 0.95, above the machine's 0.85/)).toBeTruthy();
-  expect(within(lamp).getByText("machine: 0.85")).toBeTruthy();
+  await user.click(screen.getByText("Limits and timing"));
+  const table = screen.getByRole("table", { name: "Limits and timing" });
+  await user.type(within(table).getByRole("textbox", { name: "Most duty 0–1, lamp" }), "0.95");
+  expect(within(table).getByText(/Most duty 0–1 is 0.95, above the machine's 0.85/)).toBeTruthy();
+  expect(within(table).getByText("machine: 0.85")).toBeTruthy();
 });
 
 test("a problem in another zone leads to that zone", async () => {
@@ -171,8 +172,8 @@ test("a problem in another zone leads to that zone", async () => {
   start.zones[1].heating = [{ channel: "lamp", rule: "fixed", duty: 3 }];
   render(<Editor start={start} />);
   expect(screen.queryByRole("region", { name: "Zone lip" })).toBeNull();
-  await user.click(screen.getByText("1 place to correct"));
-  await user.click(screen.getByRole("button", { name: "zones[1].heating.duty" }));
+  await user.click(screen.getByText("1 thing to correct"));
+  await user.click(screen.getByRole("button", { name: /^Zone lip, heating/ }));
   expect(screen.getByRole("region", { name: "Zone lip" })).toBeTruthy();
 });
 
@@ -233,12 +234,31 @@ test("the rule's kind and quantity change without losing the channel", async () 
 test("lead, bed layers and what becomes of the file's own commands are part of the draft", async () => {
   const user = userEvent.setup();
   render(<Editor />);
-  const lamp = screen.getByRole("group", { name: "Channel lamp" });
-  expect(within(lamp).getByText("1 s ahead")).toBeTruthy();
-  await user.selectOptions(within(lamp).getByRole("combobox", { name: "Ahead" }), "seconds");
-  await user.clear(within(lamp).getByRole("textbox", { name: "Ahead by s" }));
-  await user.type(within(lamp).getByRole("textbox", { name: "Ahead by s" }), "1.5");
-  await user.clear(within(lamp).getByRole("textbox", { name: "Bed layers 0–1" }));
+  await user.click(screen.getByText("Limits and timing"));
+  const table = within(screen.getByRole("table", { name: "Limits and timing" }));
+  expect(table.getByText("1 s")).toBeTruthy();
+  await user.selectOptions(table.getByRole("combobox", { name: "Ahead, lamp" }), "seconds");
+  await user.clear(table.getByRole("textbox", { name: "Ahead by s, lamp" }));
+  await user.type(table.getByRole("textbox", { name: "Ahead by s, lamp" }), "1.5");
+  await user.clear(table.getByRole("textbox", { name: "Bed layers 0–1, lamp" }));
   await user.selectOptions(screen.getByRole("combobox", { name: "Fan commands inside a layer" }), "keep-raises");
   expect(latest).toMatchObject({ lead: { lamp: 1.5 }, bedLayers: { count: 2, duty: {} }, withinLayer: "keep-raises" });
+});
+
+test("a channel that the machine lacks is one thing to correct, however many zones name it", () => {
+  const start = profileOf();
+  for (const zone of start.zones) zone.heating = [{ channel: "halogen", rule: "fixed", duty: 0.5 }];
+  render(<Editor start={{ ...start, bedLayers: { count: 0, duty: {} }, limits: {}, lead: {} }} />);
+  expect(screen.getByText("1 thing to correct")).toBeTruthy();
+  expect(screen.getByText(/^halogen: the machine .* has no channel "halogen"/)).toBeTruthy();
+});
+
+test("zones that begin above the part are listed, since they have no band", async () => {
+  const start = profileOf();
+  start.zones[0].to = 20;
+  start.zones[1].from = 20;
+  render(<Editor start={start} />);
+  expect(screen.queryByRole("button", { name: /^Zone lip,/ })).toBeNull();
+  await userEvent.click(screen.getByRole("button", { name: "lip, from 20 mm" }));
+  expect(screen.getByRole("region", { name: "Zone lip" })).toBeTruthy();
 });

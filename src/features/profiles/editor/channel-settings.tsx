@@ -1,158 +1,118 @@
-import type { Lead, Limits, Profile } from "#shared/formats/profile.ts";
+import type { ReactNode } from "react";
+import type { Limits, Profile } from "#shared/formats/profile.ts";
+import { BedDutyCell, LeadCell, LimitCell } from "#src/features/profiles/editor/channel-cells.tsx";
 import type { EditedChannel } from "#src/features/profiles/editor/driven.ts";
 import type { ProfileEditing } from "#src/features/profiles/editor/use-profile-editing.ts";
 import { drivingChannel } from "#src/features/profiles/editor/zone-edits.ts";
-import { choiceText } from "#src/lib/document-words.ts";
-import { CheckField, SelectField } from "#src/ui/field.tsx";
-import { NumberField, problemText } from "#src/ui/number-field.tsx";
+import { CheckField } from "#src/ui/field.tsx";
 
-/** What holds for a channel in all zones: bed layers, limits, and how far ahead it is commanded. */
-export function ChannelSettings({ editing, edited }: { editing: ProfileEditing; edited: EditedChannel }) {
-  const { profile } = editing;
-  const { id, side, driven, channel } = edited;
-  const kind = channel?.kind ?? (side === "cooling" ? "fan" : "heater");
+const kindOf = ({ channel, side }: EditedChannel) => channel?.kind ?? (side === "cooling" ? "fan" : "heater");
+
+/** Which channels are driven, and what holds for each in all zones: bed layers, limits, how far ahead it is commanded. */
+export function ChannelSettings({ editing }: { editing: ProfileEditing }) {
+  const { profile, channels, problems } = editing;
+  const driven = channels.filter((edited) => edited.driven);
+  const wrong = problems.all.some(({ path }) => /^(limits|lead|bedLayers)\b/.test(path));
   return (
-    <fieldset className="flex flex-col gap-3 border-t border-hair pt-2 first:border-t-0 first:pt-0">
-      <legend className="sr-only">{`Channel ${id}`}</legend>
-      <CheckField
-        label={
-          <>
-            <code className="font-mono">{id}</code> <span className="text-soft">{kind}</span>
-            {driven ? "" : ", left as the file has it"}
-          </>
-        }
-        aria-label={`Drive ${id}`}
-        checked={driven}
-        onChange={({ target }) => editing.edit(drivingChannel(profile, side, id, target.checked))}
-      />
-      {driven && (
-        <div className="grid grid-cols-2 gap-3 pl-8 sm:grid-cols-3 @3xl:grid-cols-4">
-          {profile.bedLayers.count > 0 && <BedDuty editing={editing} id={id} />}
-          <LimitField
-            editing={editing}
-            id={id}
-            field="minDuty"
-            label="Least duty"
-            unit="0–1"
-            machine={channel?.minDuty}
-          />
-          <LimitField
-            editing={editing}
-            id={id}
-            field="maxDuty"
-            label="Most duty"
-            unit="0–1"
-            machine={channel?.maxDuty}
-          />
-          <LimitField editing={editing} id={id} field="maxDutyPerLayer" label="Change" unit="a layer" />
-          <LimitField
-            editing={editing}
-            id={id}
-            field="maxDutyPerS"
-            label="Change"
-            unit="a second"
-            machine={channel?.maxDutyPerS}
-          />
-          {kind === "heater" && (
-            <LimitField editing={editing} id={id} field="endRampMm" label="Step-down" unit="last mm" />
-          )}
-          <LeadFields editing={editing} id={id} settleS={channel?.settleS} />
-        </div>
-      )}
-    </fieldset>
-  );
-}
-
-function BedDuty({ editing, id }: { editing: ProfileEditing; id: string }) {
-  const { profile, problems } = editing;
-  return (
-    <NumberField
-      label="Bed layers"
-      unit="0–1"
-      hint="empty: as its zone"
-      step={0.01}
-      value={profile.bedLayers.duty[id]}
-      problem={problems.at(`bedLayers.duty.${id}`)}
-      onChange={(duty) =>
-        editing.edit(
-          { ...profile, bedLayers: { ...profile.bedLayers, duty: withEntry(profile.bedLayers.duty, id, duty) } },
-          `bedLayers.duty.${id}`,
-        )
-      }
-    />
-  );
-}
-
-interface LimitProps {
-  editing: ProfileEditing;
-  id: string;
-  field: keyof Limits;
-  label: string;
-  unit: string;
-  /** the machine's own limit, which the profile may only narrow */
-  machine?: number;
-}
-
-function LimitField({ editing, id, field, label, unit, machine }: LimitProps) {
-  const { profile, problems } = editing;
-  const path = `limits.${id}.${field}`;
-  return (
-    <NumberField
-      label={label}
-      unit={unit}
-      hint={machine === undefined ? (field === "endRampMm" ? "empty: none" : "empty: no limit") : `machine: ${machine}`}
-      step={field === "endRampMm" ? 0.5 : 0.01}
-      value={profile.limits[id]?.[field]}
-      problem={problems.at(path)}
-      onChange={(value) => editing.edit(withLimit(profile, id, field, value), path)}
-    />
-  );
-}
-
-/** An entry without any limit is left out of the document. */
-export function withLimit(profile: Profile, id: string, field: keyof Limits, value: number | undefined): Profile {
-  const limits = withEntry<number>({ ...profile.limits[id] }, field, value);
-  const empty = Object.keys(limits).length === 0;
-  return { ...profile, limits: withEntry<Limits>(profile.limits, id, empty ? undefined : limits) };
-}
-
-function withEntry<Value>(
-  entries: Record<string, Value>,
-  key: string,
-  value: Value | undefined,
-): Record<string, Value> {
-  const { [key]: _, ...rest } = entries;
-  return value === undefined ? rest : { ...rest, [key]: value };
-}
-
-function LeadFields({ editing, id, settleS }: { editing: ProfileEditing; id: string; settleS: number | undefined }) {
-  const { profile, problems } = editing;
-  const lead: Lead = profile.lead[id] ?? 0;
-  const settle = lead === "settle";
-  const set = (value: Lead | undefined, gesture?: string) =>
-    editing.edit({ ...profile, lead: withEntry(profile.lead, id, value) }, gesture);
-  return (
-    <>
-      <SelectField
-        label="Ahead"
-        hint={settle && settleS !== undefined ? `${settleS / 2} s ahead` : undefined}
-        error={settle ? problemText("Ahead", problems.at(`lead.${id}`)) : undefined}
-        value={settle ? "settle" : "seconds"}
-        onChange={({ target }) => set(target.value === "settle" ? "settle" : 0)}
-      >
-        <option value="seconds">in seconds</option>
-        <option value="settle">{choiceText("settle")}</option>
-      </SelectField>
-      {!settle && (
-        <NumberField
-          label="Ahead by"
-          unit="s"
-          step={0.1}
-          value={lead}
-          problem={problems.at(`lead.${id}`)}
-          onChange={(value) => set(value, `lead.${id}`)}
+    <div className="flex flex-col gap-2">
+      <h4 className="text-small font-semibold">Channels</h4>
+      {channels.map((edited) => (
+        <CheckField
+          key={edited.id}
+          label={
+            <>
+              <code className="font-mono">{edited.id}</code> <span className="text-soft">{kindOf(edited)}</span>
+              {edited.driven ? "" : ", left as the file has it"}
+            </>
+          }
+          aria-label={`Drive ${edited.id}`}
+          checked={edited.driven}
+          onChange={({ target }) => editing.edit(drivingChannel(profile, edited.side, edited.id, target.checked))}
         />
+      ))}
+      {driven.length > 0 && (
+        <details open={wrong || undefined}>
+          <summary className="min-h-6 text-small font-semibold">
+            Limits and timing <span className="font-normal text-soft">{summaryOf(profile)}</span>
+          </summary>
+          <div className="overflow-x-auto pt-2">
+            <LimitTable editing={editing} driven={driven} />
+          </div>
+        </details>
       )}
-    </>
+    </div>
+  );
+}
+
+function summaryOf({ limits, lead, bedLayers }: Profile): string {
+  const count = [...Object.values(limits).map((one) => Object.keys(one).length), Object.keys(lead).length]
+    .concat(bedLayers.count > 0 ? Object.keys(bedLayers.duty).length : 0)
+    .reduce((sum, each) => sum + each, 0);
+  return count === 0 ? "none given" : `${count} given`;
+}
+
+const ROWS: { field: keyof Limits; label: string; unit: string }[] = [
+  { field: "minDuty", label: "Least duty", unit: "0–1" },
+  { field: "maxDuty", label: "Most duty", unit: "0–1" },
+  { field: "maxDutyPerLayer", label: "Change", unit: "a layer" },
+  { field: "maxDutyPerS", label: "Change", unit: "a second" },
+  { field: "endRampMm", label: "Stepped down over the last", unit: "mm" },
+];
+
+/** Rows are limits, columns channels. */
+function LimitTable({ editing, driven }: { editing: ProfileEditing; driven: readonly EditedChannel[] }) {
+  const heater = driven.some((edited) => kindOf(edited) === "heater");
+  return (
+    <table aria-label="Limits and timing" className="border-collapse text-small">
+      <thead>
+        <tr className="border-b border-rule text-left">
+          <td />
+          {driven.map(({ id }) => (
+            <th key={id} scope="col" className="px-2 pb-1 font-mono font-normal">
+              {id}
+            </th>
+          ))}
+        </tr>
+      </thead>
+      <tbody>
+        {editing.profile.bedLayers.count > 0 && (
+          <Row label="Bed layers" unit="0–1" note="empty: as its zone">
+            {driven.map(({ id }) => (
+              <BedDutyCell key={id} editing={editing} id={id} />
+            ))}
+          </Row>
+        )}
+        {ROWS.filter(({ field }) => field !== "endRampMm" || heater).map(({ field, label, unit }) => (
+          <Row key={field} label={label} unit={unit} note="empty: no limit">
+            {driven.map((edited) =>
+              field === "endRampMm" && kindOf(edited) === "fan" ? (
+                <td key={edited.id} className="px-2 py-1 text-right text-soft">
+                  –
+                </td>
+              ) : (
+                <LimitCell key={edited.id} {...{ editing, edited, field, label: `${label} ${unit}` }} />
+              ),
+            )}
+          </Row>
+        ))}
+        <Row label="Ahead" unit="s" note="of the layer it is for">
+          {driven.map((edited) => (
+            <LeadCell key={edited.id} editing={editing} edited={edited} />
+          ))}
+        </Row>
+      </tbody>
+    </table>
+  );
+}
+
+function Row({ label, unit, note, children }: { label: string; unit: string; note: string; children: ReactNode }) {
+  return (
+    <tr className="border-b border-hair align-top">
+      <th scope="row" className="py-2 pr-3 text-left font-semibold">
+        {label} <span className="font-mono font-normal text-soft">{unit}</span>
+        <span className="block font-normal text-soft">{note}</span>
+      </th>
+      {children}
+    </tr>
   );
 }

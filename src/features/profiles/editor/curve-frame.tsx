@@ -15,8 +15,7 @@ export function CurveFrame({
   quantity,
   xOf,
   yOf,
-}: Placing & { quantity: { unit: string }; yOf(duty: number): number }) {
-  const marks = marksOf(scale, 6);
+}: Placing & { quantity: { name: string; unit: string }; yOf(duty: number): number }) {
   return (
     <g fill="var(--soft)">
       {marksOf(DUTY, 4).map(({ value, text }) => (
@@ -33,7 +32,7 @@ export function CurveFrame({
           </text>
         </g>
       ))}
-      {marks.map(({ value, text }, i) => (
+      {marksOf(scale, 6).map(({ value, text }) => (
         <g key={value}>
           <line
             x1={xOf(value)}
@@ -42,28 +41,44 @@ export function CurveFrame({
             y2={yOf(0)}
             stroke={value === 0 ? "var(--rule)" : "var(--hair)"}
           />
-          <text
-            x={i === marks.length - 1 ? Math.min(xOf(value) + 12, WIDTH) : xOf(value)}
-            y={HEIGHT - 10}
-            textAnchor={i === marks.length - 1 ? "end" : "middle"}
-          >
-            {i === marks.length - 1 ? `${text} ${quantity.unit}` : text}
+          <text x={xOf(value)} y={HEIGHT - 26} textAnchor="middle">
+            {text}
           </text>
         </g>
       ))}
+      <text x={(LEFT + WIDTH - RIGHT) / 2} y={HEIGHT - 8} textAnchor="middle" className="font-text">
+        {`${quantity.name}, ${quantity.unit}`}
+      </text>
     </g>
   );
 }
 
-const RUG_MOST = 400;
+const DOTS_MOST = 200;
 
-/** A tick for every layer, or for an even choice of them where there are very many. */
-export function CurveRug({ values, scale, xOf, y }: Placing & { values: ArrayLike<number>; y: number }) {
-  const every = Math.max(1, Math.ceil(values.length / RUG_MOST));
+/** The part's own layers on the curve: a dot for every one, or for an even choice of them where there are very many. */
+export function CurveLayers({
+  values,
+  scale,
+  xOf,
+  yAt,
+}: Placing & {
+  values: ArrayLike<number>;
+  /** where the curve lies over a value */
+  yAt(value: number): number;
+}) {
+  const every = Math.max(1, Math.ceil(values.length / DOTS_MOST));
   let path = "";
   for (let i = 0; i < values.length; i += every) {
     const share = shareOf(scale, values[i]);
-    if (share >= 0 && share <= 1) path += `M ${xOf(values[i]).toFixed(1)} ${y} v 5 `;
+    if (share >= 0 && share <= 1) path += `M ${xOf(values[i]).toFixed(1)} ${yAt(values[i]).toFixed(1)} h 0 `;
   }
-  return <path d={path || `M ${LEFT} ${y}`} stroke="var(--ink)" strokeOpacity={0.35} />;
+  return (
+    <path
+      d={path || `M ${LEFT} ${TOP}`}
+      stroke="var(--ink)"
+      strokeOpacity={0.45}
+      strokeWidth={4}
+      strokeLinecap="round"
+    />
+  );
 }

@@ -1,7 +1,13 @@
 import { type KeyboardEvent, type PointerEvent, useRef } from "react";
 import type { CurvePoint } from "#shared/formats/profile.ts";
-import { type CurveGrid, movedPoint, pointAdded, pointRemoved } from "#src/features/profiles/editor/curve-edits.ts";
-import { CurveFrame, CurveRug } from "#src/features/profiles/editor/curve-frame.tsx";
+import {
+  type CurveGrid,
+  curveDuty,
+  movedPoint,
+  pointAdded,
+  pointRemoved,
+} from "#src/features/profiles/editor/curve-edits.ts";
+import { CurveFrame, CurveLayers } from "#src/features/profiles/editor/curve-frame.tsx";
 import { curvePath, PLOT, quantityScale, steppedPoint, stepX } from "#src/features/profiles/editor/curve-view.ts";
 import { type Scale, shareOf, valueAt } from "#src/lib/scale.ts";
 
@@ -14,11 +20,14 @@ export interface CurvePlotProps {
   /** what x is, with its unit */
   quantity: { name: string; unit: string };
   tone: "cool" | "heat";
-  /** where the part's layers lie: a rug under the plot */
+  /** where the part's layers lie: dots on the curve */
   rug?: ArrayLike<number>;
+  /** ends of what the curve is read over, where they are known */
+  within?: readonly [number, number];
   /** where the pinned layer lies */
   at?: number;
-  /** highest duty that machine and profile let through */
+  /** lowest duty but 0, and highest, that machine and profile let through */
+  least?: number;
   most?: number;
   onChange(points: CurvePoint[], gesture?: string): void;
   onRest(): void;
@@ -26,12 +35,12 @@ export interface CurvePlotProps {
 
 /** A curve on a small plot: drag its points, double-click to add one, Delete takes one away. */
 export function CurvePlot(props: CurvePlotProps) {
-  const { label, points, grid, quantity, tone, rug, at, most = 1, onChange, onRest } = props;
+  const { label, points, grid, quantity, tone, rug, within, at, least = 0, most = 1, onChange, onRest } = props;
   const plot = useRef<SVGSVGElement>(null);
   const dragged = useRef(-1);
   // While a point is dragged the scale stands still: else it would run away under the hand.
   const held = useRef<Scale | undefined>(undefined);
-  const scale = held.current ?? quantityScale(points, rug);
+  const scale = held.current ?? quantityScale(points, rug, within);
   const xOf = (x: number) => LEFT + shareOf(scale, x) * (WIDTH - LEFT - RIGHT);
   const yOf = (duty: number) => HEIGHT - BOTTOM - duty * (HEIGHT - BOTTOM - TOP);
   const pointAt = (event: { clientX: number; clientY: number }): CurvePoint => {
@@ -73,6 +82,7 @@ export function CurvePlot(props: CurvePlotProps) {
     onBlur: onRest,
   });
   const colour = `var(--${tone})`;
+  const usable = points.filter(([x, duty]) => Number.isFinite(x) && Number.isFinite(duty));
   const path = curvePath(points, scale, xOf, yOf);
   return (
     // biome-ignore lint/a11y/useSemanticElements: a drawing with handles is no set of form fields
@@ -85,25 +95,19 @@ export function CurvePlot(props: CurvePlotProps) {
       onDoubleClick={(event) => onChange(pointAdded(points, pointAt(event), grid))}
     >
       <CurveFrame scale={scale} quantity={quantity} xOf={xOf} yOf={yOf} />
-      {rug && <CurveRug values={rug} scale={scale} xOf={xOf} y={yOf(0)} />}
-      {most < 1 && (
-        <g>
-          <line
-            x1={LEFT}
-            x2={WIDTH - RIGHT}
-            y1={yOf(most)}
-            y2={yOf(most)}
-            stroke="var(--ink)"
-            strokeDasharray="6 2 1 2"
-          />
-          <text x={WIDTH - RIGHT} y={yOf(most) - 4} textAnchor="end" fill="var(--ink)">{`at most ${most}`}</text>
-        </g>
-      )}
+      {most < 1 && <Limit text={`at most ${most}`} y={yOf(most)} />}
+      {least > 0 && <Limit text={`at least ${least}, or off`} y={yOf(least)} below />}
       {at !== undefined && shareOf(scale, at) >= 0 && shareOf(scale, at) <= 1 && (
         <line x1={xOf(at)} x2={xOf(at)} y1={TOP} y2={yOf(0)} stroke="var(--ink)" strokeDasharray="2 2" />
       )}
       <path d={`${path} L ${WIDTH - RIGHT} ${yOf(0)} L ${LEFT} ${yOf(0)} Z`} fill={colour} opacity={0.13} />
       <path d={path} fill="none" stroke={colour} strokeWidth={1.5} />
+      {rug && usable.length > 0 && (
+        <CurveLayers values={rug} scale={scale} xOf={xOf} yAt={(value) => yOf(curveDuty(usable, value))} />
+      )}
+      {at !== undefined && usable.length > 0 && shareOf(scale, at) >= 0 && shareOf(scale, at) <= 1 && (
+        <circle cx={xOf(at)} cy={yOf(curveDuty(usable, at))} r={5} fill="none" stroke="var(--ink)" strokeWidth={2} />
+      )}
       {points.map((point, i) => {
         const [x, duty] = point;
         if (!Number.isFinite(x) || !Number.isFinite(duty)) return null;
@@ -135,5 +139,17 @@ export function CurvePlot(props: CurvePlotProps) {
         );
       })}
     </svg>
+  );
+}
+
+/** A duty that machine or profile does not let through. */
+function Limit({ text, y, below = false }: { text: string; y: number; below?: boolean }) {
+  return (
+    <g>
+      <line x1={LEFT} x2={WIDTH - RIGHT} y1={y} y2={y} stroke="var(--ink)" strokeDasharray="6 2 1 2" />
+      <text x={WIDTH - RIGHT} y={below ? y + 12 : y - 4} textAnchor="end" fill="var(--ink)">
+        {text}
+      </text>
+    </g>
   );
 }

@@ -3,7 +3,7 @@ import type { CurveGrid } from "#src/features/profiles/editor/curve-edits.ts";
 import type { Scale } from "#src/lib/scale.ts";
 
 /** Size of the plot and room for its numbers, in its own units. */
-export const PLOT = { width: 380, height: 176, left: 34, bottom: 28, top: 10, right: 12 };
+export const PLOT = { width: 380, height: 188, left: 34, bottom: 40, top: 10, right: 12 };
 
 /** The next place of a point for an arrow key. */
 export function steppedPoint(
@@ -32,9 +32,21 @@ export function stepX(scale: Scale, grid: CurveGrid): number {
   return Math.max(grid.x, Math.round((scale.to - scale.from) / 200 / grid.x) * grid.x);
 }
 
-/** Room for the points and for most of the layers, but not for one layer that is very long. */
-export function quantityScale(points: readonly CurvePoint[], rug?: ArrayLike<number>): Scale {
+/**
+ * Room for the points and for most of the layers, but not for one layer that is very long. A curve over height has the
+ * zone's heights, with some room around them.
+ */
+export function quantityScale(
+  points: readonly CurvePoint[],
+  rug?: ArrayLike<number>,
+  within?: readonly [number, number],
+): Scale {
   const xs = points.map(([x]) => x).filter(Number.isFinite);
+  if (within && within[1] > within[0]) {
+    const [from, to] = [Math.min(...xs, within[0]), Math.max(...xs, within[1])];
+    const room = (to - from) * 0.06;
+    return { kind: "linear", from: Math.max(from - room, 0), to: to + room };
+  }
   const last = Math.max(...xs, 0) || 1;
   let most = 0;
   for (let i = 0; rug && i < rug.length; i++) most = Math.max(most, rug[i]);

@@ -41,17 +41,39 @@ export function ProfileForm({ editing, selected, onSelect, polymers, rugs, at }:
         >
           Add a zone on top
         </Button>
-        <ProblemList problems={editing.problems.all} onSelect={onSelect} />
+        <ProblemList profile={profile} problems={editing.problems.all} onSelect={onSelect} />
       </div>
+      <HigherZones editing={editing} selected={z} onSelect={onSelect} />
       {z >= 0 && <ZoneForm editing={editing} z={z} onSelect={onSelect} rugs={rugs} at={at} />}
       <WholeProfile editing={editing} polymers={polymers} />
     </div>
   );
 }
 
+/** Zones that begin above the part at hand have no band beside it. */
+function HigherZones({ editing, selected, onSelect }: Pick<ProfileFormProps, "editing" | "selected" | "onSelect">) {
+  const { profile, scale, part } = editing;
+  if (!part) return null;
+  const higher = profile.zones.flatMap(({ name, from }, z) =>
+    scale.heightOf(from) >= scale.topMm ? [{ name, from, z }] : [],
+  );
+  if (higher.length === 0) return null;
+  return (
+    <p className="flex flex-wrap items-center gap-x-3 gap-y-1 text-small">
+      <span className="text-soft">Above this part:</span>
+      {higher.map(({ name, from, z }) => (
+        <Button key={z} weight="quiet" className="text-small" aria-pressed={z === selected} onClick={() => onSelect(z)}>
+          {name}, from {from}
+          {scale.unit === "mm" ? " mm" : ""}
+        </Button>
+      ))}
+    </p>
+  );
+}
+
 /** What holds for the profile as a whole. */
 export function WholeProfile({ editing, polymers }: Pick<ProfileFormProps, "editing" | "polymers">) {
-  const { profile, problems, channels } = editing;
+  const { profile, problems } = editing;
   const change = (changes: Partial<Profile>, field: string) => editing.edit({ ...profile, ...changes }, field);
   return (
     <section aria-label="The whole profile" className="flex flex-col gap-4 border-t border-ink pt-4">
@@ -59,6 +81,7 @@ export function WholeProfile({ editing, polymers }: Pick<ProfileFormProps, "edit
       <div className="grid gap-3 sm:grid-cols-2">
         <TextField
           label="Name"
+          className="sm:col-span-2"
           value={profile.name}
           error={problemText("Name", problems.at("name"))}
           onChange={({ target }) => change({ name: target.value }, "name")}
@@ -84,10 +107,7 @@ export function WholeProfile({ editing, polymers }: Pick<ProfileFormProps, "edit
           onChange={(count) => change({ bedLayers: { ...profile.bedLayers, count: count ?? 0 } }, "bedLayers.count")}
         />
       </div>
-      <h4 className="text-small font-semibold">Channels</h4>
-      {channels.map((edited) => (
-        <ChannelSettings key={edited.id} editing={editing} edited={edited} />
-      ))}
+      <ChannelSettings editing={editing} />
       <MarginFields editing={editing} />
     </section>
   );

@@ -22,6 +22,7 @@ export interface RuleEditorProps {
   rugs: RuleRugs;
   /** the pinned layer's values, by quantity */
   at: Partial<Record<CurveOver, number>>;
+  leastDuty: number;
   mostDuty: number;
   onChange(rule: Rule, gesture?: string): void;
   onRest(): void;
@@ -29,10 +30,11 @@ export interface RuleEditorProps {
 
 /** One channel's rule in one zone: a fixed duty, a curve on a plot and in a table, or solved from the zone's target. */
 export function RuleEditor(props: RuleEditorProps) {
-  const { rule, channel, zoneName, path, problems, heightsMm, rugs, at, mostDuty, onChange, onRest } = props;
+  const { rule, channel, zoneName, path, problems, heightsMm, rugs, at, leastDuty, mostDuty, onChange, onRest } = props;
   const fan = channel.side === "cooling";
   const kind = fan ? "fan" : "heater";
-  const wrong = [problems.at(path), problems.at(`${path}.channel`)].find((message) => message !== undefined);
+  const misnamed = problems.at(`${path}.channel`);
+  const wrong = problemText(`This ${kind}`, problems.at(path)) ?? (misnamed && problemText(`${channel.id}:`, misnamed));
   return (
     <fieldset className="flex flex-col gap-3 border-t border-hair pt-3">
       <legend className="sr-only">{`${channel.id} in zone ${zoneName}`}</legend>
@@ -41,10 +43,8 @@ export function RuleEditor(props: RuleEditorProps) {
         <span className="font-semibold">{fan ? "Cooling" : "Heating"}</span>
         <code className="font-mono text-small text-soft">{channel.id}</code>
       </p>
-      {wrong && (
-        <p className="border-l-2 border-ink pl-2 text-small font-semibold">{problemText(`This ${kind}`, wrong)}</p>
-      )}
-      <div className="grid gap-3 sm:grid-cols-[11rem_minmax(0,14rem)]">
+      {wrong && <p className="border-l-2 border-ink pl-2 text-small font-semibold">{wrong}</p>}
+      <div className="grid gap-3 sm:grid-cols-2">
         <SelectField
           label="Rule"
           value={rule.rule}
@@ -110,6 +110,8 @@ export function RuleEditor(props: RuleEditorProps) {
             tone={fan ? "cool" : "heat"}
             rug={rugs[rule.over]}
             at={at[rule.over]}
+            within={rule.over === "height" ? heightsMm : undefined}
+            least={leastDuty}
             most={mostDuty}
             onChange={(points, gesture) => onChange({ ...rule, points }, gesture && `${path} ${gesture}`)}
             onRest={onRest}

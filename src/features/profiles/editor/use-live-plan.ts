@@ -1,5 +1,6 @@
 import { useEffect, useState } from "react";
 import type { Machine } from "#shared/formats/machine.ts";
+import type { Polymer } from "#shared/formats/polymer.ts";
 import type { Profile } from "#shared/formats/profile.ts";
 import type { Plan, PlanLayer } from "#shared/plan/plan.ts";
 import { planDuties } from "#shared/plan/plan-duties.ts";
@@ -17,14 +18,20 @@ export interface LivePlan {
  * costs one plan.
  *
  * @param profile a checked profile; undefined while the draft has problems
+ * @param polymer its card, for advice on whether the file was sliced for it
  */
-export function useLivePlan(layers: readonly PlanLayer[], machine: Machine, profile: Profile | undefined): LivePlan {
+export function useLivePlan(
+  layers: readonly PlanLayer[],
+  machine: Machine,
+  profile: Profile | undefined,
+  polymer?: Polymer,
+): LivePlan {
   const [live, setLive] = useState<LivePlan>({ plan: undefined, refusal: undefined });
   useEffect(() => {
     if (!profile) return;
     const frame = requestAnimationFrame(() => {
       try {
-        const plan = planDuties({ layers, machine, profile });
+        const plan = planDuties({ layers, machine, profile, polymer });
         setLive({ plan, refusal: undefined });
       } catch (error) {
         if (!(error instanceof Refusal)) throw error;
@@ -32,6 +39,6 @@ export function useLivePlan(layers: readonly PlanLayer[], machine: Machine, prof
       }
     });
     return () => cancelAnimationFrame(frame);
-  }, [layers, machine, profile]);
+  }, [layers, machine, profile, polymer]);
   return live;
 }

@@ -95,6 +95,21 @@ export function withRule(profile: Profile, z: number, side: "cooling" | "heating
   return withZone(profile, z, { [side]: next });
 }
 
+/** Lets another channel do in the whole profile what one that the machine lacks was to do. */
+export function withChannel(profile: Profile, from: string, to: string): Profile {
+  const renamed = <Value>({ [from]: value, ...rest }: Record<string, Value>): Record<string, Value> =>
+    value === undefined ? rest : { ...rest, [to]: value };
+  const rules = (list: readonly Rule[]) =>
+    list.map((rule) => (rule.channel === from ? { ...rule, channel: to } : rule));
+  return {
+    ...profile,
+    zones: profile.zones.map((zone) => ({ ...zone, cooling: rules(zone.cooling), heating: rules(zone.heating) })),
+    bedLayers: { ...profile.bedLayers, duty: renamed(profile.bedLayers.duty) },
+    limits: renamed(profile.limits),
+    lead: renamed(profile.lead),
+  };
+}
+
 /** Takes a channel into the profile, with a fixed duty of 0 in every zone, or out of it with all that is said of it. */
 export function drivingChannel(profile: Profile, side: "cooling" | "heating", id: string, driven: boolean): Profile {
   if (driven) {

@@ -107,6 +107,7 @@ export function ZoneForm({ editing, z, onSelect, rugs = {}, at = {} }: ZoneFormP
               heightsMm={[zone.unit === "mm" ? zone.from : scale.heightOf(zone.from), upper]}
               rugs={rugs}
               at={at}
+              leastDuty={Math.max(channel.channel?.minDuty ?? 0, profile.limits[id]?.minDuty ?? 0)}
               mostDuty={Math.min(channel.channel?.maxDuty ?? 1, profile.limits[id]?.maxDuty ?? 1)}
               onChange={(rule, gesture) => editing.edit(withRule(profile, z, side, rule), gesture)}
               onRest={editing.rest}

@@ -11,13 +11,15 @@ import { fakeServer, problem } from "#tests/src/fake-server.ts";
 const named = (name: string): Profile => ({ ...newProfile("PEEK"), name });
 
 /** An editor of the name alone is enough to see what becomes of a draft. */
-function open() {
+function open(
+  base: { id?: string; number: number; document: Profile } = { id: "p", number: 1, document: named("Cap") },
+) {
   const onSaved = vi.fn();
   render(
     <QueryClientProvider client={new QueryClient()}>
       <EditDocument
         kind={PROFILES}
-        base={{ id: "p", number: 1, document: named("Cap") }}
+        base={base}
         editor={(draft, change) => (
           <input
             aria-label="Name"
@@ -97,4 +99,17 @@ test("a draft that is no valid document can't be saved, and says where it is wro
   await person.clear(screen.getByLabelText("Name"));
   expect(screen.getByRole("alert").textContent).toContain("Name is empty. Give it a name");
   expect(screen.getByRole("button", { name: "Save as a new version" })).toHaveProperty("disabled", true);
+});
+
+test("of a new document nothing is said to be missing before it is to be saved", async () => {
+  fakeServer({});
+  const { person } = open({ number: 0, document: named("") });
+  expect(screen.queryByRole("alert")).toBeNull();
+  await person.click(screen.getByRole("button", { name: "Save" }));
+  expect(screen.getByRole("alert").textContent).toContain("Name is empty. Give it a name");
+  expect(screen.queryByLabelText("Why")).toBeNull();
+  await person.type(screen.getByLabelText("Name"), "Cap");
+  expect(screen.queryByRole("alert")).toBeNull();
+  await person.click(screen.getByRole("button", { name: "Save" }));
+  expect(screen.getByLabelText("Why")).toBeTruthy();
 });
