@@ -21,11 +21,6 @@ export interface LiveForecast {
 /** Worst cases cost three times as much: where they take longer than this, they wait until the hand rests. */
 const QUICK_MS = 150;
 const REST_MS = 250;
-/**
- * Where even one run takes longer than this, the answers of a drag would come too late to follow, and taking them in
- * would hold up the hand: nothing is asked before it rests.
- */
-const SLOW_MS = 200;
 
 interface Question {
   part: Part;
@@ -58,19 +53,17 @@ export function useForecast(
   useEffect(() => () => client.close(), [client]);
   const [shown, setShown] = useState<Shown>({});
   const bandMs = useRef(0);
-  const plainMs = useRef(0);
   const question = useMemo(() => part && profile && { part, profile, plan }, [part, profile, plan]);
 
   useEffect(() => {
     if (!question) return;
     const ask = async (band: boolean) => {
       const answer = await client.ask(question.part, { kind: "forecast", ...asked(question), band });
-      if (answer && "result" in answer) (band ? bandMs : plainMs).current = answer.result.tookMs;
+      if (band && answer && "result" in answer) bandMs.current = answer.result.tookMs;
       if (answer) setShown((old) => shownOf(answer, question, old));
     };
     const quick = bandMs.current <= QUICK_MS;
-    const slow = Math.max(plainMs.current, bandMs.current / 3) > SLOW_MS;
-    if (!slow) void ask(quick);
+    void ask(quick);
     if (quick) return;
     const timer = setTimeout(() => void ask(true), REST_MS);
     return () => clearTimeout(timer);

@@ -8,6 +8,7 @@ import { beforeAll, describe, expect, test } from "vitest";
 import type { Tuning } from "#shared/contract/tunings.ts";
 import { parsePlan } from "#shared/formats/plan.ts";
 import { parseProof } from "#shared/formats/proof.ts";
+import { samplePolymer } from "#tests/helpers/sample.ts";
 import { testServer } from "#tests/helpers/server.ts";
 import {
   acknowledgeMachine,
@@ -149,6 +150,17 @@ test("asking for the same tuning twice gives one tuning", async () => {
   const again = await server.as("engineer").post("/api/tunings").send(request).expect(201);
   expect(again.body.id).toBe(tuning.id);
   expect((await server.as("viewer").get("/api/tunings").expect(200)).body).toHaveLength(1);
+});
+
+test("a tuning says with which version of the polymer's card it was made", async () => {
+  const { reading, tuning } = await tuneSample(server, "seal-ring");
+  expect(tuning.polymerId).toBeUndefined();
+  const engineer = server.as("engineer");
+  const card = await engineer.post("/api/polymers").send({ document: samplePolymer() }).expect(201);
+  const request = { readingId: reading.id, profileId: tuning.profileId, profileVersion: 1 };
+  const { body } = await engineer.post("/api/tunings").send(request).expect(201);
+  expect(body).toMatchObject({ polymerId: card.body.id, polymerVersion: 1 });
+  await endedTuning(server, body.id);
 });
 
 test("a profile that does not fit the machine is refused at once, with its reason", async () => {
