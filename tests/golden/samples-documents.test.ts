@@ -19,7 +19,16 @@ const MACHINE_OF = { "mast-bracket": "Tern", "valve-plate": "Tern", "seal-ring":
 
 test("the demo's machines and polymers are all there, and read without a problem", () => {
   expect(machines.map(({ name }) => name)).toEqual(["Fulmar", "Tern"]);
-  expect(polymers.map(({ name }) => name)).toEqual(["PA 12", "PA 6", "PEEK", "PEI", "PEKK 60/40", "PEKK 80/20", "PP", "PPS"]);
+  expect(polymers.map(({ name }) => name)).toEqual([
+    "PA 12",
+    "PA 6",
+    "PEEK",
+    "PEI",
+    "PEKK 60/40",
+    "PEKK 80/20",
+    "PP",
+    "PPS",
+  ]);
 });
 
 test("every part has a profile", () => {
