@@ -33,7 +33,7 @@ async function countsOf(server: RunningServer): Promise<Record<string, number>> 
   }
   return counts;
 }
-const DEMO = { members: 4, machines: 2, polymers: 4, profiles: 6, toolpaths: 4, tunings: 1 };
+const DEMO = { members: 4, machines: 2, polymers: 8, profiles: 7, toolpaths: 4, tunings: 1 };
 
 test("a first start makes the demo team, going on where it was broken off; the next one finds it, and two at once are refused", async () => {
   const steps: string[] = [];

@@ -45,8 +45,7 @@ export function MonacoDiff({ original, tuned, machine, handle, onChanges }: Prop
       // The editor goes before its models, or it complains of being left without them.
       const models = made.getModel();
       made.dispose();
-      models?.original.dispose();
-      models?.modified.dispose();
+      disposeLater(models);
       diff.current = undefined;
     };
   }, []);
@@ -68,8 +67,7 @@ export function MonacoDiff({ original, tuned, machine, handle, onChanges }: Prop
     shown.getOriginalEditor().updateOptions(numbered(original));
     shown.getModifiedEditor().updateOptions(numbered(tuned));
     shown.setModel(next);
-    before?.original.dispose();
-    before?.modified.dispose();
+    disposeLater(before);
     nameSide(shown.getOriginalEditor(), "Original file");
     nameSide(shown.getModifiedEditor(), "Tuned file");
     const marks = markByChannel(shown, machine);
@@ -100,6 +98,17 @@ export function MonacoDiff({ original, tuned, machine, handle, onChanges }: Prop
     />
   );
 }
+
+/** A comparison that is under way asks its worker for both texts, and complains where they are gone: they go behind it. */
+function disposeLater(models: editor.IDiffEditorModel | null): void {
+  setTimeout(() => {
+    models?.original.dispose();
+    models?.modified.dispose();
+  }, COMPARED_MS);
+}
+
+/** Longer than comparing the lines of a layer ever takes. */
+const COMPARED_MS = 10_000;
 
 /** The editor names its own text box only while it takes a screen reader to be there. */
 function nameSide(side: editor.ICodeEditor, name: string): void {

@@ -5,7 +5,7 @@ import { bundleServer, RealServer } from "#tests/helpers/real-server.ts";
 import { eventually } from "#tests/helpers/workshop.ts";
 
 const MOST_MB = 600;
-const LISTS = { members: 4, machines: 2, polymers: 4, profiles: 6, toolpaths: 4, tunings: 1 };
+const LISTS = { members: 4, machines: 2, polymers: 8, profiles: 7, toolpaths: 4, tunings: 1 };
 let bundle: string;
 let server: RealServer;
 beforeAll(async () => {
