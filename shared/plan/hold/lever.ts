@@ -4,7 +4,7 @@ import { effectiveLimits } from "#shared/plan/limits.ts";
 import type { Surroundings } from "#shared/thermal/surroundings.ts";
 
 /** A fan's gentle baseline where the rule gives none; common practice, no source. */
-const GENTLE_FAN = 0.2;
+export const GENTLE_FAN = 0.2;
 /** Length of the lever's part in which fans go from their baseline to their least duty. */
 const CALMING = 0.5;
 

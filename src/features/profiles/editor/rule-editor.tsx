@@ -1,4 +1,5 @@
 import type { CurveOver, CurvePoint, Rule } from "#shared/formats/profile.ts";
+import { GENTLE_FAN } from "#shared/plan/hold/lever.ts";
 import { CURVE_GRIDS, curveDuty, OVER_NAMES, overRange } from "#src/features/profiles/editor/curve-edits.ts";
 import { CurvePlot } from "#src/features/profiles/editor/curve-plot.tsx";
 import { CurveTable } from "#src/features/profiles/editor/curve-table.tsx";
@@ -69,7 +70,11 @@ export function RuleEditor(props: RuleEditorProps) {
           <NumberField
             label="Base duty"
             unit="0–1"
-            hint="what it begins from; empty: 0"
+            hint={
+              fan
+                ? `its gentle baseline; empty: ${Math.max(GENTLE_FAN, leastDuty).toFixed(2)}`
+                : "never below it while held; empty: may be off"
+            }
             step={0.01}
             value={rule.baseDuty}
             problem={problems.at(`${path}.baseDuty`)}
