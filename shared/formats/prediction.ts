@@ -35,7 +35,16 @@ export const PredictedLayer = fields({
   /** share of the attainable crystallinity at the moment it was covered, 0-1 */
   relativeWhenCovered: Share,
   /** worst cases: all uncertain inputs at their hot, then at their cold end; null where no band was asked for */
-  band: fields({ interlayerC: FromTo, crystallinity: FromTo }).nullable(),
+  band: fields({
+    interlayerC: FromTo,
+    contactC: FromTo,
+    /** null as above */
+    timeAboveTgS: FromTo.nullable(),
+    /** soonest and latest; null: not before it was covered */
+    timeToSolidS: z.tuple([Finite.nullable(), Finite.nullable()], { error: "must be a pair [low, high]" }),
+    highestReheatC: FromTo.nullable(),
+    crystallinity: FromTo,
+  }).nullable(),
   verdicts: Verdicts,
 });
 export type PredictedLayer = z.infer<typeof PredictedLayer>;

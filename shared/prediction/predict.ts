@@ -64,7 +64,18 @@ export function predict(input: PredictInput): PredictionDocument {
       highestReheatC: nullable(typical.highestReheatC[p]),
       crystallinity: typical.crystallinity[p],
       relativeWhenCovered: typical.relativeWhenCovered[p],
-      band: band ? { interlayerC, crystallinity } : null,
+      band: band
+        ? {
+            interlayerC,
+            contactC: rangeAt(typical, ends, "contactC", p),
+            timeAboveTgS: tgBelowRoom ? null : rangeAt(typical, ends, "timeAboveTgS", p),
+            timeToSolidS: soonestAndLatest(typical, ends, p),
+            highestReheatC: Number.isNaN(typical.highestReheatC[p])
+              ? null
+              : rangeAt(typical, ends, "highestReheatC", p),
+            crystallinity,
+          }
+        : null,
       verdicts: verdictsOf(facts, wanted[p], model.material, margins),
     };
   });
@@ -91,11 +102,22 @@ function refuseOutOfReach(layers: readonly PredictionLayer[], polymer: Polymer, 
 function rangeAt(
   typical: LayerResults,
   ends: readonly LayerResults[],
-  name: "interlayerC" | "crystallinity",
+  name: "interlayerC" | "contactC" | "timeAboveTgS" | "highestReheatC" | "crystallinity",
   position: number,
 ): [number, number] {
   const values = [typical, ...ends].map((results) => results[name][position]);
   return [Math.min(...values), Math.max(...values)];
+}
+
+/** A run in which the layer is covered first counts as the latest. */
+function soonestAndLatest(
+  typical: LayerResults,
+  ends: readonly LayerResults[],
+  position: number,
+): [number | null, number | null] {
+  const seconds = [typical, ...ends].map(({ timeToSolidS }) => timeToSolidS[position]);
+  const known = seconds.filter((value) => !Number.isNaN(value));
+  return [known.length > 0 ? Math.min(...known) : null, known.length === seconds.length ? Math.max(...known) : null];
 }
 
 const nullable = (value: number): number | null => (Number.isNaN(value) ? null : value);

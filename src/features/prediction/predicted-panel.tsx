@@ -89,6 +89,11 @@ interface NumbersProps {
   unverified: boolean;
 }
 
+function solidRange([soonest, latest]: [number | null, number | null]): string | undefined {
+  if (soonest === null) return undefined;
+  return latest === null ? `${fixedText(soonest, 1)} and not in time` : rangeText([soonest, latest], 1);
+}
+
 function PredictedNumbers({ layer, crystallises, unverified }: NumbersProps) {
   const { interlayerC, contactC, timeAboveTgS, timeToSolidS, highestReheatC, crystallinity, band } = layer;
   const rows: { label: string; value: string; unit: string; range?: string }[] = [
@@ -98,21 +103,29 @@ function PredictedNumbers({ layer, crystallises, unverified }: NumbersProps) {
       unit: "°C",
       range: band ? rangeText(band.interlayerC, 0) : undefined,
     },
-    { label: "Contact with the layer below", value: fixedText(contactC, 0), unit: "°C" },
+    {
+      label: "Contact with the layer below",
+      value: fixedText(contactC, 0),
+      unit: "°C",
+      range: band ? rangeText(band.contactC, 0) : undefined,
+    },
     {
       label: "Above Tg for",
       value: timeAboveTgS === null ? "always" : fixedText(timeAboveTgS, 0),
       unit: timeAboveTgS === null ? "" : "s",
+      range: band?.timeAboveTgS ? rangeText(band.timeAboveTgS, 0) : undefined,
     },
     {
       label: "Solid after",
       value: timeToSolidS === null ? "not in time" : fixedText(timeToSolidS, 1),
       unit: timeToSolidS === null ? "" : "s",
+      range: band ? solidRange(band.timeToSolidS) : undefined,
     },
     {
       label: "Highest reheat",
       value: highestReheatC === null ? "never covered" : fixedText(highestReheatC, 0),
       unit: highestReheatC === null ? "" : "°C",
+      range: band?.highestReheatC ? rangeText(band.highestReheatC, 0) : undefined,
     },
     ...(crystallises
       ? [

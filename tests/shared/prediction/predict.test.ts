@@ -58,7 +58,10 @@ describe("a prediction", () => {
 describe("the band", () => {
   test("has no width where nothing is uncertain", () => {
     for (const { band, interlayerC, crystallinity } of ask().layers) {
-      expect(band).toEqual({ interlayerC: [interlayerC, interlayerC], crystallinity: [crystallinity, crystallinity] });
+      expect(band).toMatchObject({
+        interlayerC: [interlayerC, interlayerC],
+        crystallinity: [crystallinity, crystallinity],
+      });
     }
   });
 
@@ -75,6 +78,23 @@ describe("the band", () => {
 
   test("an unverified absorptivity widens it", () => {
     const { layers } = ask({ polymer: sampleCard("peek") });
+    // Every number has its band, and lies within it.
+    for (const layer of layers)
+      for (const name of [
+        "interlayerC",
+        "contactC",
+        "timeAboveTgS",
+        "timeToSolidS",
+        "highestReheatC",
+        "crystallinity",
+      ] as const) {
+        const value = layer[name];
+        const [from, to] = layer.band?.[name] ?? [value, value];
+        if (value === null) continue;
+        expect(from).not.toBeNull();
+        expect(from!).toBeLessThanOrEqual(value);
+        if (to !== null) expect(to).toBeGreaterThanOrEqual(value);
+      }
     const [low, high] = layers[20].band?.interlayerC ?? [0, 0];
     expect(high - low).toBeGreaterThan(15);
   });

@@ -20,7 +20,14 @@ export function predictedLayer(index: number, changes: Partial<PredictedLayer> =
     highestReheatC: 180,
     crystallinity: 0.01,
     relativeWhenCovered: 0.02,
-    band: { interlayerC: [80 + index, 130 + index], crystallinity: [0, 0.04] },
+    band: {
+      interlayerC: [80 + index, 130 + index],
+      contactC: [230, 260],
+      timeAboveTgS: [5, 60],
+      timeToSolidS: [1, 4],
+      highestReheatC: [150, 210],
+      crystallinity: [0, 0.04],
+    },
     ...changes,
     verdicts: { state: "amorphous", reaches: "yes", solid: true, welds: true, ...changes.verdicts },
   };
