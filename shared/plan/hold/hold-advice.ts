@@ -122,6 +122,15 @@ function allTheSame({ targets, margins }: HoldCase, { results }: Outcome, code: 
 
 const NEEDS_WARMTH: readonly HoldAdviceCode[] = ["hold-too-cold", "hold-no-weld", "hold-not-crystalline"];
 
+/** Whether lamps fall from here on, layer by layer, down to a layer that is to be colder. */
+function isSteppingAhead({ levers, zone, targets }: HoldCase, plan: Outcome["plan"], p: number): boolean {
+  const { lamps } = levers[zone[p]];
+  const falls = (q: number) => lamps.some(({ id }) => plan.layers[q + 1].duty[id] < plan.layers[q].duty[id]);
+  let q = p;
+  while (q + 1 < targets.length && targets[q + 1].share >= targets[p].share && falls(q)) q++;
+  return q + 1 < targets.length && targets[q + 1].share < targets[p].share && falls(q);
+}
+
 /** Why the lever could not do more. */
 function bindingReason(hold: HoldCase, { plan, wanted, results }: Outcome, code: HoldAdviceCode, p: number): string {
   const { levers, zone, goals } = hold;
@@ -131,6 +140,7 @@ function bindingReason(hold: HoldCase, { plan, wanted, results }: Outcome, code:
   const behind = [...fans, ...lamps].find(({ id }) => Math.abs(wanted.get(id)![p] - duty(id)) > 0.03);
   if (behind)
     return `its duties follow their limits or a ramp: ${behind.id} is at ${dutyText(duty(behind.id))} instead of ${dutyText(wanted.get(behind.id)![p])}`;
+  if (warmer && isSteppingAhead(hold, plan, p)) return "its duties step down ahead of a colder state above it";
   const ends = [
     ...lamps.map(({ id, low, high }) => ({ id, end: warmer ? high : low, word: warmer ? "highest" : "lowest" })),
     ...fans.map(({ id, low, high }) => ({ id, end: warmer ? low : high, word: warmer ? "lowest" : "highest" })),

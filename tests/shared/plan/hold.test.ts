@@ -4,6 +4,7 @@ import { describe, expect, test } from "vitest";
 import { parseMachine } from "#shared/formats/machine.ts";
 import { type Polymer, parsePolymer } from "#shared/formats/polymer.ts";
 import { type Profile, parseProfile } from "#shared/formats/profile.ts";
+import { ToolpathReader } from "#shared/layers/read-toolpath.ts";
 import { channelDuties } from "#shared/plan/channel-duties.ts";
 import type { Plan, PlanLayer } from "#shared/plan/plan.ts";
 import { planDuties } from "#shared/plan/plan-duties.ts";
@@ -173,6 +174,17 @@ describe("two states in one part", () => {
     const lamp = plan.layers.map(({ duty }) => duty.lamp);
     expect(lamp[29]).toBeLessThan(lamp[24] - 0.02);
     for (let p = 1; p < lamp.length; p++) expect(Math.abs(lamp[p] - lamp[p - 1])).toBeLessThan(0.1 + 1e-9);
+  });
+
+  test("layers that get too cold for it say so: the sample's last ones below the lip", () => {
+    const machine = parseMachine(json("machines/tern.json"));
+    const reader = new ToolpathReader(machine);
+    reader.push(readFileSync(new URL("../../../samples/seal-ring.gcode", import.meta.url)));
+    const { layers } = reader.end("");
+    const profile = parseProfile(json("profiles/seal-ring-held-stiff-and-tough.json"));
+    const { advice } = planDuties({ layers, machine, profile, polymer: peek });
+    const last = advice.find(({ code, layer }) => code === "hold-too-cold" && layer > 20);
+    expect(last?.message).toContain("step down ahead of a colder state above it");
   });
 
   test("bands that alternate go up and down, and a graded zone from one state to the other", () => {
