@@ -1,5 +1,5 @@
-import { useEffect, useRef, useState } from "react";
-import { useNavigation, useSearchParams } from "react-router-dom";
+import { useContext, useEffect, useRef, useState } from "react";
+import { UNSAFE_DataRouterContext, useNavigation, useSearchParams } from "react-router-dom";
 
 /** Arrow keys walk fast; the address follows when they rest. */
 const REST_MS = 250;
@@ -13,6 +13,7 @@ export function usePinnedLayer(first?: number): [layer: number | undefined, pin:
   const [search, setSearch] = useSearchParams();
   // While the next page is fetched this one still stands: writing its address then would call the way there off.
   const leaving = useNavigation().state !== "idle";
+  const router = useContext(UNSAFE_DataRouterContext)?.router;
   const [layer, pin] = useState(() => layerIn(search) ?? first);
   const written = layerIn(search);
   const setLater = useRef(setSearch);
@@ -26,6 +27,8 @@ export function usePinnedLayer(first?: number): [layer: number | undefined, pin:
         else next.set("layer", String(layer));
         return next;
       };
+      // The way to the next page may have begun and not be drawn yet.
+      if (router !== undefined && router.state.navigation.state !== "idle") return;
       setLater.current(keep, { replace: true, preventScrollReset: true });
     }, REST_MS);
     return () => clearTimeout(timer);
