@@ -13,7 +13,7 @@ export function usePinnedLayer(first?: number): [layer: number | undefined, pin:
   const [search, setSearch] = useSearchParams();
   // While the next page is fetched this one still stands: writing its address then would call the way there off.
   const leaving = useNavigation().state !== "idle";
-  const router = useContext(UNSAFE_DataRouterContext)?.router;
+  const router = useRef(useContext(UNSAFE_DataRouterContext)?.router);
   const [layer, pin] = useState(() => layerIn(search) ?? first);
   const written = layerIn(search);
   const setLater = useRef(setSearch);
@@ -28,7 +28,7 @@ export function usePinnedLayer(first?: number): [layer: number | undefined, pin:
         return next;
       };
       // The way to the next page may have begun and not be drawn yet.
-      if (router !== undefined && router.state.navigation.state !== "idle") return;
+      if (router.current && router.current.state.navigation.state !== "idle") return;
       setLater.current(keep, { replace: true, preventScrollReset: true });
     }, REST_MS);
     return () => clearTimeout(timer);
