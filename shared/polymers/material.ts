@@ -1,4 +1,5 @@
 import type { Polymer } from "#shared/formats/polymer.ts";
+import type { Margins } from "#shared/formats/profile.ts";
 import type { Range } from "#shared/formats/thermal.ts";
 import { fitHalfTimes } from "#shared/polymers/fit-half-times.ts";
 
@@ -13,7 +14,6 @@ export interface Material {
   solidAtRelativeCrystallinity: number | null;
   weldAboveC: number;
   amorphousReachable: boolean;
-  margins: MaterialMargins;
   densityKgM3: number;
   heatCapacityJKgK: number;
   conductivityWMK: number;
@@ -21,13 +21,6 @@ export interface Material {
   lampAbsorptivity: Range;
   /** null: an amorphous polymer */
   kinetics: Kinetics | null;
-}
-
-export interface MaterialMargins {
-  belowTgC: number;
-  aboveTgC: number;
-  maxCrystallinity: number;
-  minCrystallinity: number;
 }
 
 /** How a polymer crystallises: a bell of rate over temperature, cut off at Tg and Tm. */
@@ -52,7 +45,7 @@ export interface Kinetics {
  * @throws Refusal `half-times-unusable` where no bell fits them
  */
 export function materialOf(card: Polymer): Material {
-  const { margins, lampAbsorptivity: lamp } = card;
+  const { lampAbsorptivity: lamp } = card;
   return {
     name: card.variant === "" ? card.name : `${card.name} ${card.variant}`,
     tgC: card.tgC.value,
@@ -61,18 +54,22 @@ export function materialOf(card: Polymer): Material {
     solidAtRelativeCrystallinity: card.solidAtRelativeCrystallinity?.value ?? null,
     weldAboveC: card.weldAboveC.value,
     amorphousReachable: card.amorphousReachable,
-    margins: {
-      belowTgC: margins.belowTgC.value,
-      aboveTgC: margins.aboveTgC.value,
-      maxCrystallinity: margins.maxCrystallinity.value,
-      minCrystallinity: margins.minCrystallinity.value,
-    },
     densityKgM3: card.densityKgM3.value,
     heatCapacityJKgK: card.heatCapacityJKgK.value,
     conductivityWMK: card.conductivityWMK.value,
     emissivity: card.emissivity.value,
     lampAbsorptivity: { low: lamp.low.value, typical: lamp.typical.value, high: lamp.high.value },
     kinetics: kineticsOf(card),
+  };
+}
+
+/** The card's margins, those of a profile laid over them. */
+export function marginsOf({ margins }: Polymer, own: Margins = {}): Required<Margins> {
+  return {
+    belowTgC: own.belowTgC ?? margins.belowTgC.value,
+    aboveTgC: own.aboveTgC ?? margins.aboveTgC.value,
+    maxCrystallinity: own.maxCrystallinity ?? margins.maxCrystallinity.value,
+    minCrystallinity: own.minCrystallinity ?? margins.minCrystallinity.value,
   };
 }
 

@@ -2,11 +2,12 @@ import type { Machine } from "#shared/formats/machine.ts";
 import type { Polymer } from "#shared/formats/polymer.ts";
 import type { PredictedLayer, PredictionDocument } from "#shared/formats/prediction.ts";
 import type { Margins } from "#shared/formats/profile.ts";
+import { marginsOf } from "#shared/polymers/material.ts";
 import type { LayerResults } from "#shared/prediction/layer-results.ts";
 import { startMarch } from "#shared/prediction/march.ts";
 import { makeModel, type PredictionLayer } from "#shared/prediction/model.ts";
 import { predictionAdvice } from "#shared/prediction/prediction-advice.ts";
-import { effectiveMargins, verdictsOf, type WantedState } from "#shared/prediction/verdicts.ts";
+import { verdictsOf, type WantedState } from "#shared/prediction/verdicts.ts";
 import { Refusal } from "#shared/refusal.ts";
 import type { ChannelDuties } from "#shared/thermal/forcing.ts";
 import { assumedValues, type End } from "#shared/thermal/surroundings.ts";
@@ -42,7 +43,7 @@ export function predict(input: PredictInput): PredictionDocument {
   const typical = startMarch(model, duties).run();
   const runAt = (end: End) => startMarch(makeModel({ layers, machine, polymer, end }), duties).run();
   const ends = band ? [runAt("hot"), runAt("cold")] : [];
-  const margins = effectiveMargins(model.material, input.margins);
+  const margins = marginsOf(polymer, input.margins);
   const tgBelowRoom = model.material.tgC <= model.surroundings.roomAirC;
 
   const predicted = layers.map(({ index }, p): PredictedLayer => {

@@ -1,5 +1,5 @@
 import type { PredictedLayer, PredictionDocument } from "#shared/formats/prediction.ts";
-import type { MaterialMargins } from "#shared/polymers/material.ts";
+import type { Margins } from "#shared/formats/profile.ts";
 import type { Model } from "#shared/prediction/model.ts";
 import type { WantedState } from "#shared/prediction/verdicts.ts";
 
@@ -7,7 +7,7 @@ interface Subject {
   predicted: readonly PredictedLayer[];
   wanted: readonly WantedState[];
   model: Model;
-  margins: MaterialMargins;
+  margins: Required<Margins>;
 }
 
 interface Question {

@@ -1,20 +1,9 @@
 import type { Verdicts } from "#shared/formats/prediction.ts";
 import type { Margins } from "#shared/formats/profile.ts";
-import type { Material, MaterialMargins } from "#shared/polymers/material.ts";
+import type { Material } from "#shared/polymers/material.ts";
 
 /** What is wanted of a layer; `between`: a state between the two, about which nothing is said here. */
 export type WantedState = "amorphous" | "semi-crystalline" | "none" | "between";
-
-/** The card's margins, those of the profile laid over them. */
-export function effectiveMargins(material: Material, profile: Margins | undefined): MaterialMargins {
-  const { margins: card } = material;
-  return {
-    belowTgC: profile?.belowTgC ?? card.belowTgC,
-    aboveTgC: profile?.aboveTgC ?? card.aboveTgC,
-    maxCrystallinity: profile?.maxCrystallinity ?? card.maxCrystallinity,
-    minCrystallinity: profile?.minCrystallinity ?? card.minCrystallinity,
-  };
-}
 
 /** What a march found out about one layer. */
 export interface LayerFacts {
@@ -39,7 +28,7 @@ export function verdictsOf(
   facts: LayerFacts,
   wanted: WantedState,
   material: Material,
-  margins: MaterialMargins,
+  margins: Required<Margins>,
 ): Verdicts {
   const { crystallinity, lowCrystallinity, highCrystallinity, contactC, timeToSolidS } = facts;
   const { maxCrystallinity, minCrystallinity } = margins;

@@ -1,27 +1,17 @@
 import { readFileSync } from "node:fs";
-import type { Browser } from "playwright-core";
-import { afterAll, beforeAll, describe, expect, test } from "vitest";
+import { describe, expect, test } from "vitest";
 import { parseProfile, writeProfile } from "#shared/formats/profile.ts";
-import { hasBrowser, openBrowser, openPage, picture, signIn } from "#tests/e2e/browser.ts";
+import { hasBrowser, openPage, picture, signIn } from "#tests/e2e/browser.ts";
 import { everyPage, inBothSheets } from "#tests/e2e/every-page.ts";
-import { type RunningApp, runApp } from "#tests/e2e/running-app.ts";
 import { commandLine, download, dropFile, findChange, movePoint, pinByKey, SAMPLE, sample } from "#tests/e2e/steps.ts";
+import { useApp } from "#tests/e2e/use-app.ts";
 
 describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
-  let app: RunningApp;
-  let browser: Browser;
-  beforeAll(async () => {
-    app = await runApp();
-    browser = await openBrowser();
-  });
-  afterAll(async () => {
-    await browser?.close();
-    await app?.close();
-  });
+  const used = useApp();
 
   test("a toolpath is dropped, a curve point moved, the tuned file written, looked at and downloaded: the command line's bytes", async () => {
-    const { page, complaints } = await openPage(browser);
-    await signIn(page, app.url, "engineer");
+    const { page, complaints } = await openPage(used.browser);
+    await signIn(page, used.app.url, "engineer");
     await picture(page, "floor");
 
     await page.getByLabel("Machine").selectOption({ label: "Tern" });
@@ -48,15 +38,15 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
     await picture(page, "diff");
 
     const tuned = await download(page);
-    const expected = await commandLine(page, app);
+    const expected = await commandLine(page, used.app);
     expect(tuned.equals(expected)).toBe(true);
     expect(complaints).toEqual([]);
     await page.context().close();
   });
 
   test("documents live in versions: approved, compared, restored as a new one, saved as files and brought in", async () => {
-    const { page, complaints } = await openPage(browser);
-    await signIn(page, app.url, "lead");
+    const { page, complaints } = await openPage(used.browser);
+    await signIn(page, used.app.url, "lead");
     await page.getByRole("link", { name: "Profiles", exact: true }).click();
     await page.getByRole("link", { name: "Valve plate, flat and stiff" }).click();
     await page.getByRole("button", { name: "Approve" }).click();
@@ -107,8 +97,8 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
   });
 
   test("a toolpath is read again for another machine", async () => {
-    const { page, complaints } = await openPage(browser);
-    await signIn(page, app.url, "operator");
+    const { page, complaints } = await openPage(used.browser);
+    await signIn(page, used.app.url, "operator");
     await page.getByRole("link", { name: "valve-plate.gcode", exact: true }).click();
     await page.getByRole("button", { name: "Read for another machine" }).click();
     await page.getByRole("dialog").getByLabel("Machine").selectOption({ label: "Fulmar" });
@@ -122,12 +112,12 @@ describe.skipIf(!hasBrowser)("the whole job in a browser", () => {
   });
 
   test("no page puts up barriers, on the light sheet or the dark one, nor is wider than a tablet", async () => {
-    const { page, complaints } = await openPage(browser);
-    await page.goto(`${app.url}/sign-in`);
+    const { page, complaints } = await openPage(used.browser);
+    await page.goto(`${used.app.url}/sign-in`);
     const found: Record<string, string[]> = { "sign-in": await inBothSheets(page) };
-    await signIn(page, app.url, "lead");
-    for (const path of await everyPage(page, app.url)) {
-      await page.goto(app.url + path);
+    await signIn(page, used.app.url, "lead");
+    for (const path of await everyPage(page, used.app.url)) {
+      await page.goto(used.app.url + path);
       await page.getByRole("heading", { level: 1 }).waitFor();
       await expect.poll(() => page.getByRole("status").filter({ hasText: /…$/ }).count(), { timeout: 20_000 }).toBe(0);
       if (path.startsWith("/tunings/")) await page.locator(".view-line").first().waitFor();

@@ -1,9 +1,9 @@
 import { readFileSync } from "node:fs";
-import type { Browser, Page } from "playwright-core";
-import { afterAll, beforeAll, describe, expect, test } from "vitest";
-import { barriers, hasBrowser, openBrowser, openPage, picture, signIn } from "#tests/e2e/browser.ts";
-import { type RunningApp, runApp } from "#tests/e2e/running-app.ts";
+import type { Page } from "playwright-core";
+import { describe, expect, test } from "vitest";
+import { barriers, hasBrowser, openPage, picture, signIn } from "#tests/e2e/browser.ts";
 import { pinByKey } from "#tests/e2e/steps.ts";
+import { useApp } from "#tests/e2e/use-app.ts";
 
 /** The value beside a label of the pinned layer's predicted numbers. */
 const predicted = (page: Page, label: string) =>
@@ -14,27 +14,23 @@ const predicted = (page: Page, label: string) =>
     .locator("dd")
     .first();
 
+/** The seal ring about to be tuned, layer 20 pinned. */
+async function openSealRing(page: Page, url: string): Promise<void> {
+  await signIn(page, url, "engineer");
+  await page.getByRole("link", { name: "seal-ring.gcode", exact: true }).click();
+  await page.getByRole("link", { name: "Tune", exact: true }).click();
+  await page
+    .getByRole("combobox", { name: "Profile", exact: true })
+    .selectOption({ label: "PEEK: Seal ring, stiff base and tough lip" });
+  await pinByKey(page, 20);
+}
+
 describe.skipIf(!hasBrowser)("what will happen, in a browser", () => {
-  let app: RunningApp;
-  let browser: Browser;
-  beforeAll(async () => {
-    app = await runApp();
-    browser = await openBrowser();
-  });
-  afterAll(async () => {
-    await browser?.close();
-    await app?.close();
-  });
+  const used = useApp();
 
   test("a lamp that is turned up makes the predicted layer warmer; levers, table and comparison say the same", async () => {
-    const { page, complaints } = await openPage(browser);
-    await signIn(page, app.url, "engineer");
-    await page.getByRole("link", { name: "seal-ring.gcode", exact: true }).click();
-    await page.getByRole("link", { name: "Tune", exact: true }).click();
-    await page
-      .getByRole("combobox", { name: "Profile", exact: true })
-      .selectOption({ label: "PEEK: Seal ring, stiff base and tough lip" });
-    await pinByKey(page, 20);
+    const { page, complaints } = await openPage(used.browser);
+    await openSealRing(page, used.app.url);
 
     await page.getByRole("tab", { name: "Layer 20" }).click();
     const interlayer = predicted(page, "Interlayer temperature");
@@ -79,14 +75,8 @@ describe.skipIf(!hasBrowser)("what will happen, in a browser", () => {
   });
 
   test("a zone that is held gets its duties from the prediction, and its tuned file is written", async () => {
-    const { page, complaints } = await openPage(browser);
-    await signIn(page, app.url, "engineer");
-    await page.getByRole("link", { name: "seal-ring.gcode", exact: true }).click();
-    await page.getByRole("link", { name: "Tune", exact: true }).click();
-    await page
-      .getByRole("combobox", { name: "Profile", exact: true })
-      .selectOption({ label: "PEEK: Seal ring, stiff base and tough lip" });
-    await pinByKey(page, 20);
+    const { page, complaints } = await openPage(used.browser);
+    await openSealRing(page, used.app.url);
     await page.getByRole("button", { name: /^Zone base/ }).click();
     await page.getByRole("group", { name: "lamp in zone base" }).getByLabel("Rule").selectOption("hold");
     await page.getByRole("tab", { name: "Layer 20" }).click();

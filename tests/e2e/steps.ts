@@ -33,8 +33,6 @@ export async function pinByKey(page: Page, layer: number): Promise<void> {
   await page.keyboard.press("Home");
   for (let n = 1; n < layer; n++) await page.keyboard.press("ArrowUp");
   expect(await log.getAttribute("aria-valuenow")).toBe(String(layer));
-  // The address follows when the keys rest.
-  await page.waitForTimeout(500);
 }
 
 /** Raises the first point of the base's cooling curve with the keyboard; the plan follows at once. */

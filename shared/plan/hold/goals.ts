@@ -1,5 +1,6 @@
+import type { Margins } from "#shared/formats/profile.ts";
 import type { LayerTarget } from "#shared/plan/layer-targets.ts";
-import type { Material, MaterialMargins } from "#shared/polymers/material.ts";
+import type { Material } from "#shared/polymers/material.ts";
 import type { LayerTable } from "#shared/prediction/layer-table.ts";
 
 /** A layer is aimed at this far below the upper end of an amorphous window at most: warm layers weld better, K. */
@@ -21,7 +22,7 @@ export function goalsOf(
   targets: readonly LayerTarget[],
   table: LayerTable,
   material: Material,
-  margins: MaterialMargins,
+  margins: Required<Margins>,
 ): Goals {
   const column = () => new Float64Array(targets.length).fill(Number.NaN);
   const goals: Goals = { lowC: column(), highC: column(), aimC: column() };

@@ -1,6 +1,6 @@
 import type { Machine } from "#shared/formats/machine.ts";
 import type { Profile, Rule, Zone } from "#shared/formats/profile.ts";
-import { effectiveLimits } from "#shared/plan/limits.ts";
+import { type DutyLimits, effectiveLimits } from "#shared/plan/limits.ts";
 import type { Surroundings } from "#shared/thermal/surroundings.ts";
 
 /** A fan's gentle baseline where the rule gives none; common practice, no source. */
@@ -9,19 +9,18 @@ export const GENTLE_FAN = 0.2;
 const CALMING = 0.5;
 
 /** One channel that is held in a zone, and how far it may go. Duties 0-1. */
-export interface HeldChannel {
+interface HeldChannel {
   id: string;
   /** the least that it may have: 0 where it may be off */
   low: number;
-  /** a fan's gentle baseline */
-  base: number;
-  /** a fan's least duty other than off */
-  least: number;
   high: number;
 }
 
-/** Duties of fans and lamps, as shares of the way between two of their marks. */
-type Place = [id: string, duty: number];
+interface HeldFan extends HeldChannel {
+  /** its gentle baseline, and its least duty other than off */
+  base: number;
+  least: number;
+}
 
 /**
  * All channels that a zone holds, worked as one lever from coldest (0) to warmest (`length`):
@@ -37,7 +36,7 @@ type Place = [id: string, duty: number];
  * that have no channel are left out.
  */
 export class Lever {
-  readonly fans: readonly HeldChannel[];
+  readonly fans: readonly HeldFan[];
   readonly lamps: readonly HeldChannel[];
   readonly length: number;
   /** where fans are at their baseline and lamps at their lowest */
@@ -49,8 +48,8 @@ export class Lever {
 
   /** @param warmC a layer temperature at which a fan's least duty is weighed against the lamps, °C */
   constructor(zone: Zone, machine: Machine, profile: Profile, surroundings: Surroundings, warmC: number) {
-    this.fans = heldChannels(zone.cooling, machine, profile, true);
-    this.lamps = heldChannels(zone.heating, machine, profile, false);
+    this.fans = heldIn(zone.cooling, machine, profile).map(heldFan);
+    this.lamps = heldIn(zone.heating, machine, profile).map(heldLamp);
     this.rest = this.fans.length > 0 ? 1 : 0;
     this.lit = this.rest + (this.lamps.length > 0 ? 1 : 0);
     this.off = this.lit + (this.fans.length > 0 ? CALMING : 0);
@@ -59,7 +58,7 @@ export class Lever {
   }
 
   /** Duties by channel id at a place of the lever. */
-  *duties(at: number): Generator<Place> {
+  *duties(at: number): Generator<[id: string, duty: number]> {
     const { rest, lit, off, back } = this;
     for (const { id, base, least, high, low } of this.fans) {
       if (at < 1) yield [id, high + (base - high) * at];
@@ -87,19 +86,30 @@ export class Lever {
 
 const sum = (values: readonly number[]): number => values.reduce((total, value) => total + value, 0);
 
-function heldChannels(rules: readonly Rule[], machine: Machine, profile: Profile, fans: boolean): HeldChannel[] {
+/** A rule that holds, with the limits of its channel. */
+interface HeldRule {
+  id: string;
+  baseDuty: number | undefined;
+  limits: DutyLimits;
+}
+
+function heldIn(rules: readonly Rule[], machine: Machine, profile: Profile): HeldRule[] {
   return rules.flatMap((rule) => {
     const channel = machine.channels.find(({ id }) => id === rule.channel);
     if (rule.rule !== "hold" || channel === undefined) return [];
-    const { minDuty, maxDuty, mayBeOff } = effectiveLimits(channel, profile);
-    const { baseDuty } = rule;
-    const within = (duty: number) => Math.min(Math.max(duty, minDuty), maxDuty);
-    if (!fans) {
-      // A lamp's base is what it is never turned below while it is held.
-      const low = baseDuty === undefined && mayBeOff ? 0 : within(baseDuty ?? 0);
-      return [{ id: channel.id, low, least: low, base: low, high: maxDuty }];
-    }
-    const base = within(baseDuty ?? Math.max(GENTLE_FAN, minDuty));
-    return [{ id: channel.id, low: 0, least: Math.min(minDuty, base), base, high: maxDuty }];
+    return [{ id: channel.id, baseDuty: rule.baseDuty, limits: effectiveLimits(channel, profile) }];
   });
+}
+
+const within = (duty: number, { minDuty, maxDuty }: DutyLimits): number => Math.min(Math.max(duty, minDuty), maxDuty);
+
+function heldFan({ id, baseDuty = GENTLE_FAN, limits }: HeldRule): HeldFan {
+  const base = within(baseDuty, limits);
+  return { id, low: 0, least: Math.min(limits.minDuty, base), base, high: limits.maxDuty };
+}
+
+/** A lamp's base duty is what it is never turned below while it is held. */
+function heldLamp({ id, baseDuty, limits }: HeldRule): HeldChannel {
+  const low = baseDuty === undefined && limits.mayBeOff ? 0 : within(baseDuty ?? 0, limits);
+  return { id, low, high: limits.maxDuty };
 }

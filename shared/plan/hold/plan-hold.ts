@@ -8,8 +8,8 @@ import { type HoldCase, solveLevers } from "#shared/plan/hold/solver.ts";
 import { layerPlacer } from "#shared/plan/layer-placer.ts";
 import { layerTargets } from "#shared/plan/layer-targets.ts";
 import type { Plan, PlanLayer } from "#shared/plan/plan.ts";
+import { marginsOf } from "#shared/polymers/material.ts";
 import { makeModel } from "#shared/prediction/model.ts";
-import { effectiveMargins } from "#shared/prediction/verdicts.ts";
 
 export interface HoldInput {
   /** in print order */
@@ -29,7 +29,7 @@ export interface HoldInput {
  */
 export function planHold({ layers, machine, profile, polymer }: HoldInput): Plan {
   const model = makeModel({ layers: layers.map(known), machine, polymer });
-  const margins = effectiveMargins(model.material, profile.margins);
+  const margins = marginsOf(polymer, profile.margins);
   const warmC = model.material.tgC + margins.aboveTgC;
   const targets = layerTargets(layers, profile);
   const placeAt = layerPlacer(layers, profile.zones);

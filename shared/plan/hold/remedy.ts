@@ -1,7 +1,7 @@
 import type { Polymer } from "#shared/formats/polymer.ts";
 import type { HoldCase } from "#shared/plan/hold/solver.ts";
 import { type Steady, steadyLayer } from "#shared/plan/hold/steady.ts";
-import type { HoldAdviceCode, PlanLayer } from "#shared/plan/plan.ts";
+import type { HoldAdviceCode } from "#shared/plan/plan.ts";
 import { dutyText, tenthsText } from "#shared/plan/quantity-text.ts";
 
 /** Layer times are looked for from a tenth of the layer's own to thirty times as long. */
@@ -16,54 +16,42 @@ const BED_REACH_MM = 2.3;
 
 /**
  * The smallest change that would do, tried out on a part made of such layers: another layer time, or duties beyond what
- * machine and profile allow. Empty where neither helps alone.
+ * machine and profile allow.
  */
 export function findRemedy(hold: HoldCase, code: HoldAdviceCode, p: number, polymer: Polymer): string {
-  if (code === "hold-elsewhere") return "";
   const { layers, machine, model, levers, zone } = hold;
-  const layer = layers[p];
-  if (!(layer.timeS > 0)) return "";
+  const { timeS, zMm } = layers[p];
+  if (code === "hold-elsewhere" || !(timeS > 0)) return "";
   const lever = levers[zone[p]];
+  const colder = NEEDS_COLD.includes(code);
+  const end = colder ? 0 : lever.length;
   const reached = goalOf(hold, code, p);
-  const subject = { ...layer, areaMm2: model.layers.areaM2[p] * 1e6, outlineMm: model.layers.outlineM[p] * 1e3 };
-  const like = { ...subject, nozzleC: model.layers.depositC[p], bedC: model.layers.bedC[p], waits: [] };
-  const place = [...EXTREME[code]].map((end) => (end === "cold" ? 0 : end === "warm" ? lever.length : lever.rest));
-  const tryTime = (timeS: number): boolean =>
-    place.some((at) => reached(steadyLayer({ ...like, timeS }, new Map(lever.duties(at)), { machine, polymer })));
-  if (tryTime(layer.timeS))
-    return layer.zMm < BED_REACH_MM
-      ? ` Further from the bed such layers get there: a ${EXTREME[code][0] === "cold" ? "cooler" : "warmer"} bed would do.`
+  const like = { ...layers[p], ...asModelled(model, p), waits: [] };
+  const tryWith = (seconds: number, duties: ReadonlyMap<string, number>): boolean =>
+    reached(steadyLayer({ ...like, timeS: seconds }, duties, { machine, polymer }));
+  // Crystals grow fastest somewhere between: all the heat there is may be too much for them.
+  const places = code === "hold-not-crystalline" ? [end, lever.rest] : [end];
+  const tryTime = (seconds: number): boolean => places.some((at) => tryWith(seconds, new Map(lever.duties(at))));
+  if (tryTime(timeS))
+    return zMm < BED_REACH_MM
+      ? ` Further from the bed such layers get there: a ${colder ? "cooler" : "warmer"} bed would do.`
       : " A run of such layers would get there: allow larger changes from layer to layer, or begin the zone earlier.";
-  const found = [needsTime(layer, tryTime), needsDuty()].filter((text) => text !== "");
-  return found.length === 0 ? " No layer time and no duty alone would do." : ` ${found.join(" ")}`;
-
-  function needsDuty(): string {
-    const beyond = beyondLimits(hold, p, EXTREME[code][0] === "cold");
-    if (!beyond) return "";
-    const duties = new Map([...lever.duties(place[0]), [beyond.id, beyond.limit]]);
-    if (!reached(steadyLayer(like, duties, { machine, polymer }))) return "";
-    let [no, yes] = [beyond.now, beyond.limit];
-    for (let k = 0; k < HALVINGS; k++) {
-      const middle = (no + yes) / 2;
-      duties.set(beyond.id, middle);
-      if (reached(steadyLayer(like, duties, { machine, polymer }))) yes = middle;
-      else no = middle;
-    }
-    return `${beyond.id} at ${dutyText(yes)} would do, and may have at most ${dutyText(beyond.now)}.`;
-  }
+  const tryDuty = (id: string, duty: number): boolean => tryWith(timeS, new Map([...lever.duties(end), [id, duty]]));
+  const found = [needsTime(timeS, tryTime), needsDuty(colder ? lever.fans : lever.lamps, tryDuty)];
+  const said = found.filter((text) => text !== "");
+  return said.length === 0 ? " No layer time and no duty alone would do." : ` ${said.join(" ")}`;
 }
 
-/** Ends of the lever at which a remedy is looked for. */
-const EXTREME: Record<Exclude<HoldAdviceCode, "hold-elsewhere">, readonly ("cold" | "warm" | "rest")[]> &
-  Record<"hold-elsewhere", readonly "rest"[]> = {
-  "hold-too-warm": ["cold"],
-  "hold-not-solid": ["cold"],
-  "hold-crystalline": ["cold"],
-  "hold-too-cold": ["warm"],
-  "hold-no-weld": ["warm"],
-  "hold-not-crystalline": ["warm", "rest"],
-  "hold-elsewhere": ["rest"],
-};
+/** What is put right by less heat; all else by more of it. */
+const NEEDS_COLD: readonly HoldAdviceCode[] = ["hold-too-warm", "hold-not-solid", "hold-crystalline"];
+
+/** The layer with what the model assumes where the file is silent. */
+const asModelled = ({ layers }: HoldCase["model"], p: number) => ({
+  areaMm2: layers.areaM2[p] * 1e6,
+  outlineMm: layers.outlineM[p] * 1e3,
+  nozzleC: layers.depositC[p],
+  bedC: layers.bedC[p],
+});
 
 function goalOf({ goals, margins, model }: HoldCase, code: HoldAdviceCode, p: number): (steady: Steady) => boolean {
   const { weldAboveC } = model.material;
@@ -83,25 +71,49 @@ function goalOf({ goals, margins, model }: HoldCase, code: HoldAdviceCode, p: nu
   }
 }
 
-function needsTime({ timeS }: PlanLayer, reaches: (timeS: number) => boolean): string {
+function needsTime(timeS: number, reaches: (timeS: number) => boolean): string {
   const end = [LONGEST, SHORTEST].find((multiple) => reaches(timeS * multiple));
   if (end === undefined) return "";
-  let [no, yes] = [1, end];
-  for (let k = 0; k < HALVINGS; k++) {
-    const middle = Math.sqrt(no * yes);
-    if (reaches(timeS * middle)) yes = middle;
-    else no = middle;
-  }
-  const needed = tenthsText(timeS * yes);
+  const multiple = least(
+    1,
+    end,
+    (no, yes) => Math.sqrt(no * yes),
+    (middle) => reaches(timeS * middle),
+  );
+  const needed = tenthsText(timeS * multiple);
   const own = tenthsText(timeS);
-  if (yes < 1)
+  if (multiple < 1)
     return `A layer time of at most ${needed} s instead of ${own} s would do: print fewer parts at once, or faster.`;
-  return `A layer time of at least ${needed} s instead of ${own} s would do: print ${Math.ceil(yes)} parts at once, or slow the layer down.`;
+  return `A layer time of at least ${needed} s instead of ${own} s would do: print ${Math.ceil(multiple)} parts at once, or slow the layer down.`;
 }
 
-/** A channel whose limit lies within what an output can do: up to full for a fan that cools or a lamp that heats. */
-function beyondLimits({ levers, zone }: HoldCase, p: number, colder: boolean) {
-  const { fans, lamps } = levers[zone[p]];
-  const channel = (colder ? fans : lamps).find(({ high }) => high < 1);
-  return channel && { id: channel.id, now: channel.high, limit: 1 };
+/** A channel that may have less than full: how much more of it would do. */
+function needsDuty(
+  channels: readonly { id: string; high: number }[],
+  reaches: (id: string, duty: number) => boolean,
+): string {
+  const limited = channels.find(({ high }) => high < 1);
+  if (!limited || !reaches(limited.id, 1)) return "";
+  const duty = least(
+    limited.high,
+    1,
+    (no, yes) => (no + yes) / 2,
+    (middle) => reaches(limited.id, middle),
+  );
+  return `${limited.id} at ${dutyText(duty)} would do, and may have at most ${dutyText(limited.high)}.`;
+}
+
+/** The value nearest to `no` that still does, between one that doesn't and one that does. */
+function least(
+  no: number,
+  yes: number,
+  middleOf: (no: number, yes: number) => number,
+  does: (value: number) => boolean,
+): number {
+  for (let k = 0; k < HALVINGS; k++) {
+    const middle = middleOf(no, yes);
+    if (does(middle)) yes = middle;
+    else no = middle;
+  }
+  return yes;
 }

@@ -1,5 +1,5 @@
 import type { Machine } from "#shared/formats/machine.ts";
-import type { Profile } from "#shared/formats/profile.ts";
+import type { Margins, Profile } from "#shared/formats/profile.ts";
 import { channelDuties } from "#shared/plan/channel-duties.ts";
 import type { Goals } from "#shared/plan/hold/goals.ts";
 import type { Lever } from "#shared/plan/hold/lever.ts";
@@ -8,7 +8,6 @@ import type { LayerTarget } from "#shared/plan/layer-targets.ts";
 import { effectiveLimits } from "#shared/plan/limits.ts";
 import type { Plan, PlanLayer } from "#shared/plan/plan.ts";
 import type { Held, HeldRule } from "#shared/plan/rules.ts";
-import type { MaterialMargins } from "#shared/polymers/material.ts";
 import type { LayerResults } from "#shared/prediction/layer-results.ts";
 import { startMarch } from "#shared/prediction/march.ts";
 import type { Model } from "#shared/prediction/model.ts";
@@ -19,7 +18,7 @@ export interface HoldCase {
   machine: Machine;
   profile: Profile;
   model: Model;
-  margins: MaterialMargins;
+  margins: Required<Margins>;
   targets: readonly LayerTarget[];
   /** index into the profile's zones */
   zone: readonly number[];
@@ -39,9 +38,8 @@ export interface Outcome {
 const MOST_ROUNDS = 18;
 /** Closer to the aim than this is close enough, K. */
 const CLOSE_C = 0.75;
-/** The lever is moved by at most this in one round, and by this share of what the slope suggests. */
+/** The lever is moved by at most this in one round. */
 const MOST_STEP = 0.8;
-const STEP_SHARE = 1;
 /** A slope below this says that the lever hardly matters here, K for the lever's unit. */
 const LEAST_SLOPE_C = 4;
 /** The aim moves by this when the crystallinity is not what it should be, K; not before the temperatures have settled. */
@@ -75,7 +73,7 @@ export function solveLevers(hold: HoldCase): Outcome {
       if (!isHeld(p)) continue;
       const offC = goals.aimC[p] - before.tempC[p];
       if (Math.abs(offC) < CLOSE_C || isBehind(hold, outcome, p, offC)) continue;
-      const step = Math.min(Math.max((STEP_SHARE * offC) / slope[p], -MOST_STEP), MOST_STEP);
+      const step = Math.min(Math.max(offC / slope[p], -MOST_STEP), MOST_STEP);
       const next = Math.min(Math.max(at[p] + step, 0), levers[zone[p]].length);
       moved ||= Math.abs(next - at[p]) > 1e-4;
       at[p] = next;

@@ -14,7 +14,8 @@ export interface Steady {
 }
 
 /**
- * A layer far from all ends, printed over and over with the same duties.
+ * A layer far from all ends, printed over and over with the same duties. The two-lever map goes through hundreds of such
+ * states at once, faster, but does not follow how a layer solidifies.
  *
  * @param duties by channel id, 0-1; others are off
  */

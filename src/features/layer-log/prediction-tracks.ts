@@ -2,6 +2,7 @@ import type { Polymer } from "#shared/formats/polymer.ts";
 import type { PredictedLayer, PredictionDocument } from "#shared/formats/prediction.ts";
 import type { Margins } from "#shared/formats/profile.ts";
 import type { LayerTarget } from "#shared/plan/layer-targets.ts";
+import { marginsOf } from "#shared/polymers/material.ts";
 import type { Track, TrackSeries, TrackWindow } from "#src/features/layer-log/track.ts";
 import { multiples, niceStep } from "#src/lib/scale.ts";
 
@@ -19,16 +20,6 @@ export interface PredictionTracksInput {
 export function predictionTracks(input: PredictionTracksInput): Track[] {
   const tracks = [interlayerTrack(input)];
   return input.polymer.crystallinity === null ? tracks : [...tracks, crystallinityTrack(input)];
-}
-
-/** The card's margins with the profile's laid over them, as plain numbers. */
-export function marginsOf({ margins }: Polymer, own: Margins = {}): Required<Margins> {
-  return {
-    belowTgC: own.belowTgC ?? margins.belowTgC.value,
-    aboveTgC: own.aboveTgC ?? margins.aboveTgC.value,
-    maxCrystallinity: own.maxCrystallinity ?? margins.maxCrystallinity.value,
-    minCrystallinity: own.minCrystallinity ?? margins.minCrystallinity.value,
-  };
 }
 
 function interlayerTrack({ polymer, margins, targets, prediction }: PredictionTracksInput): Track {

@@ -12,7 +12,6 @@ export function substance(numbers: Partial<Material>): Material {
     solidAtRelativeCrystallinity: null,
     weldAboveC: 0,
     amorphousReachable: true,
-    margins: { belowTgC: 0, aboveTgC: 0, maxCrystallinity: 0, minCrystallinity: 0 },
     densityKgM3: 1,
     heatCapacityJKgK: 1,
     conductivityWMK: 1,

@@ -1,6 +1,7 @@
 import { expect, test } from "vitest";
 import type { LayerTarget } from "#shared/plan/layer-targets.ts";
-import { marginsOf, predictionTracks } from "#src/features/layer-log/prediction-tracks.ts";
+import { marginsOf } from "#shared/polymers/material.ts";
+import { predictionTracks } from "#src/features/layer-log/prediction-tracks.ts";
 import { trackText } from "#src/features/layer-log/value-text.ts";
 import { cardOf, predictionOf } from "#tests/src/features/prediction/predictions.ts";
 
