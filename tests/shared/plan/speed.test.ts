@@ -35,7 +35,7 @@ function curvePoints(width: number): [number, number][] {
 }
 
 // Other work on the computer only ever adds time, so the fastest run tells most.
-test("5,000 layers with three channels are planned within 20 ms, or three times that beside other work", {
+test("5,000 layers with three channels are planned within 20 ms", {
   retry: 3,
 }, () => {
   const task = largeTask();
@@ -45,5 +45,5 @@ test("5,000 layers with three channels are planned within 20 ms, or three times 
     planDuties(task);
     return performance.now() - start;
   });
-  expect(Math.min(...timesMs)).toBeLessThanOrEqual(60);
+  expect(Math.min(...timesMs)).toBeLessThanOrEqual(20);
 });
