@@ -6,7 +6,7 @@ const USAGES: Record<Command, string> = {
   read: "read FILE --machine M.json [--json]",
   tune: `tune FILE --machine M.json --profile P.json (--out OUT | --in-place)
            [--polymer Q.json] [--plan PLAN.json] [--proof PROOF.json]`,
-  predict: "predict FILE --machine M.json --profile P.json --polymer Q.json [--json]",
+  predict: "predict FILE --machine M.json --profile P.json [--polymer Q.json] [--json]",
   prove: "prove ORIGINAL TUNED --machine M.json [--profile P.json] [--polymer Q.json] [--json]",
 };
 
@@ -55,8 +55,8 @@ Options
   --profile P.json    the profile: zones by height, cooling and heating rules, limits
   --out OUT           the tuned toolpath; its folder must be there
   --in-place          put the tuned toolpath in FILE's place instead (the form for a slicer's post-processing hook)
-  --polymer Q.json    the polymer's card: checks that the profile was written for it; a profile that holds layers on a
-                      state needs it, since duties are then solved from what the polymer will do
+  --polymer Q.json    the polymer's card: checks that the profile was written for it. A profile that holds layers on a
+                      state is solved with it; without it with the card of that name that comes with Quenchline
   --plan PLAN.json    also write the plan: every duty with its reasons
   --proof PROOF.json  also write the proof; it is written when the proof fails, too
 
@@ -75,7 +75,7 @@ ${FILE}
 Options
   --machine M.json   the machine, and what surrounds the part; what its document leaves out is taken as typical
   --profile P.json   the profile: zones by height with their targets, cooling and heating rules, limits
-  --polymer Q.json   the polymer's card; none is looked for, since which card was meant decides the result
+  --polymer Q.json   the polymer's card; without it the card of that name that comes with Quenchline, which is told
   --json             one quenchline.prediction/1 document on standard output and nothing else;
                      where the input is refused, a quenchline.refusal/1 object
 

@@ -155,8 +155,8 @@ function channelLimitMisfits(limits: Limits, channel: Channel): Misfit[] {
 
 function polymerMisfits(profile: Profile, polymer: Polymer): Misfit[] {
   const misfits: Misfit[] = [];
-  const fullName = polymer.variant === "" ? polymer.name : `${polymer.name} ${polymer.variant}`;
-  if (![polymer.name, fullName].some((name) => sameName(name, profile.polymer))) {
+  const fullName = fullNameOf(polymer);
+  if (!isCardFor(polymer, profile)) {
     const message = `is "${profile.polymer}", but the polymer card is for "${fullName}". Choose the card the profile was written for, or another profile`;
     misfits.push({ code: "polymer-mismatch", path: "polymer", message });
   }
@@ -180,6 +180,12 @@ function statesAskedFor({ target, pattern }: Zone): { states: string[]; field: "
   if (pattern === undefined) return { states: [target], field: "target" };
   return { states: ["amorphous", "semi-crystalline"], field: "pattern" };
 }
+
+const fullNameOf = ({ name, variant }: Polymer): string => (variant === "" ? name : `${name} ${variant}`);
+
+/** Whether a card is of the polymer that a profile names, with its variant or without. */
+export const isCardFor = (polymer: Polymer, profile: Profile): boolean =>
+  [polymer.name, fullNameOf(polymer)].some((name) => sameName(name, profile.polymer));
 
 /** Names of polymers are typed by hand: case and runs of spaces do not distinguish them. */
 function sameName(one: string, other: string): boolean {

@@ -54,5 +54,5 @@ export type HoldAdviceCode =
 /** What shows only when the plan is laid over the file. */
 export type TuningAdviceCode = "boost-left-out" | "raises-kept" | "output-shared";
 
-/** Set-points of the file that do not go with the polymer. */
-export type MaterialAdviceCode = "nozzle-below-melting" | "nozzle-unknown";
+/** Set-points of the file that do not go with the polymer, and a polymer card that nobody chose. */
+export type MaterialAdviceCode = "nozzle-below-melting" | "nozzle-unknown" | "card-shipped";

@@ -1,14 +1,13 @@
 import { parseArguments, required } from "#server/cli/arguments.ts";
-import { loadMachine, loadPolymer, loadProfile } from "#server/cli/documents.ts";
+import { loadMachine, loadProfile } from "#server/cli/documents.ts";
 import { aboutFile, EXIT, type ExitStatus, InputRefused } from "#server/cli/exit.ts";
 import { ToolpathInput } from "#server/cli/input-stream.ts";
+import { cardFor } from "#server/cli/polymer-card.ts";
 import { predictionTable } from "#server/cli/prediction-table.ts";
 import { readInput } from "#server/cli/read-input.ts";
 import { print, printable } from "#server/cli/terminal.ts";
 import { checkFit } from "#shared/formats/fit.ts";
-import type { Polymer } from "#shared/formats/polymer.ts";
 import { writePrediction } from "#shared/formats/prediction.ts";
-import type { Profile } from "#shared/formats/profile.ts";
 import { planDuties } from "#shared/plan/plan-duties.ts";
 import { predictPlan } from "#shared/plan/predict-plan.ts";
 import { Refusal } from "#shared/refusal.ts";
@@ -19,7 +18,7 @@ export async function predict(argv: string[]): Promise<ExitStatus> {
   const machine = await loadMachine(required(values.machine, "machine", "predict"));
   const profileName = required(values.profile, "profile", "predict");
   const profile = await loadProfile(profileName);
-  const polymer = await cardFor(profile, profileName, values.polymer);
+  const { polymer, notice } = await cardFor(profile, profileName, values.polymer);
   await aboutFile(profileName, () => checkFit(machine, profile, polymer));
   const input = await ToolpathInput.open(files[0], "once");
   try {
@@ -28,6 +27,7 @@ export async function predict(argv: string[]): Promise<ExitStatus> {
     const text = about(() => {
       const plan = planDuties({ layers, machine, profile, polymer });
       const prediction = predictPlan({ layers, machine, profile, polymer, plan });
+      if (notice !== undefined) prediction.advice.unshift({ layer: 1, code: "card-shipped", message: notice });
       if (values.json) return writePrediction(prediction);
       return printable(predictionTable({ name: input.name, layers, machine, profile, polymer, plan, prediction }));
     });
@@ -36,18 +36,6 @@ export async function predict(argv: string[]): Promise<ExitStatus> {
   } finally {
     await input.close();
   }
-}
-
-/** No card is looked for: two cards of one name may differ, and which one was meant decides the result. */
-async function cardFor(profile: Profile, profileName: string, polymerName: string | undefined): Promise<Polymer> {
-  if (polymerName !== undefined) return loadPolymer(polymerName);
-  const refusal = new Refusal(
-    "polymer-missing",
-    `A prediction needs the polymer's card, and the profile "${profile.name}" only names it: ${profile.polymer}.`,
-    "Give the card with --polymer.",
-    { path: "polymer" },
-  );
-  throw new InputRefused(refusal, profileName);
 }
 
 /** A refusal that names a place in a document is about the profile; the others are about the toolpath. */

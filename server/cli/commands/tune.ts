@@ -1,8 +1,9 @@
 import { parseArguments, required } from "#server/cli/arguments.ts";
 import { type TuneTargets, tuneTargets } from "#server/cli/commands/tune-targets.ts";
-import { documentDigest, loadMachine, loadPolymer, loadProfile } from "#server/cli/documents.ts";
+import { documentDigest, loadMachine, loadProfile } from "#server/cli/documents.ts";
 import { aboutFile, EXIT, type ExitStatus, InputRefused } from "#server/cli/exit.ts";
 import { ToolpathInput } from "#server/cli/input-stream.ts";
+import { cardFor, type FoundCard } from "#server/cli/polymer-card.ts";
 import { failedChecks } from "#server/cli/proof-text.ts";
 import { proveInputs } from "#server/cli/prove-inputs.ts";
 import { readInput } from "#server/cli/read-input.ts";
@@ -16,7 +17,7 @@ import { checkFit } from "#shared/formats/fit.ts";
 import type { Machine } from "#shared/formats/machine.ts";
 import { writePlan } from "#shared/formats/plan.ts";
 import type { Polymer } from "#shared/formats/polymer.ts";
-import type { Profile } from "#shared/formats/profile.ts";
+import { holds, type Profile } from "#shared/formats/profile.ts";
 import { type ProofDocument, writeProof } from "#shared/formats/proof.ts";
 import type { Reading } from "#shared/layers/reading.ts";
 import { Refusal } from "#shared/refusal.ts";
@@ -29,6 +30,8 @@ interface Documents {
   machine: Machine;
   profile: Profile;
   polymer?: Polymer;
+  /** what has to be said of a card that nobody chose */
+  notice?: string;
   /** as the caller named it: most refusals of a tuning point into it */
   profileName: string;
 }
@@ -93,15 +96,23 @@ async function tuneInput(
 async function loadDocuments(machineName: string, profileName: string, polymerName?: string): Promise<Documents> {
   const machine = await loadMachine(machineName);
   const profile = await loadProfile(profileName);
-  const polymer = polymerName === undefined ? undefined : await loadPolymer(polymerName);
+  // Duties that are not solved don't depend on a card, so none is looked for.
+  const { polymer, notice }: Partial<FoundCard> =
+    polymerName !== undefined || holds(profile) ? await cardFor(profile, profileName, polymerName) : {};
   // Before the toolpath is read, which may take a while.
   await aboutFile(profileName, () => checkFit(machine, profile, polymer));
-  return { machine, profile, polymer, profileName };
+  return { machine, profile, polymer, notice, profileName };
 }
 
-async function prepare(fileName: string, reading: Reading, { profileName, ...documents }: Documents): Promise<Tuning> {
+async function prepare(
+  fileName: string,
+  reading: Reading,
+  { profileName, notice, ...documents }: Documents,
+): Promise<Tuning> {
   try {
-    return prepareTuning({ ...documents, reading, digest: documentDigest, engine: version, status: STATUS });
+    const tuning = prepareTuning({ ...documents, reading, digest: documentDigest, engine: version, status: STATUS });
+    if (notice !== undefined) tuning.plan.advice.unshift({ layer: 1, code: "card-shipped", message: notice });
+    return tuning;
   } catch (error) {
     if (!(error instanceof Refusal)) throw error;
     throw new InputRefused(error, error.place.path === undefined ? fileName : profileName);

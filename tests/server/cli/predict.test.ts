@@ -1,6 +1,16 @@
+import { readFileSync, writeFileSync } from "node:fs";
+import { join } from "node:path";
 import { describe, expect, test } from "vitest";
 import { parsePrediction } from "#shared/formats/prediction.ts";
-import { quenchline, SEAL_RING, SEAL_RING_PROFILE, sample, smallPart, TERN } from "#tests/server/cli/command-line.ts";
+import {
+  quenchline,
+  SEAL_RING,
+  SEAL_RING_PROFILE,
+  sample,
+  scratchFolder,
+  smallPart,
+  TERN,
+} from "#tests/server/cli/command-line.ts";
 
 const PEEK = sample("polymers/peek.json");
 const ON_TERN = ["--machine", TERN, "--profile", SEAL_RING_PROFILE, "--polymer", PEEK];
@@ -35,12 +45,29 @@ test("the table has a row for every layer, units in its head, and at most 120 co
   expect(stdout).toContain("never a certificate");
 });
 
+test("without a card the one that comes with Quenchline is taken, and that is told", async () => {
+  const call = ["predict", SEAL_RING, "--machine", TERN, "--profile", SEAL_RING_PROFILE, "--json"];
+  const given = await quenchline([...call, "--polymer", sample("polymers/peek.json")]);
+  const { status, stdout } = await quenchline(call);
+  expect(status).toBe(0);
+  const { advice, ...prediction } = JSON.parse(stdout);
+  const { advice: ownAdvice, ...expected } = JSON.parse(given.stdout);
+  expect(prediction).toEqual(expected);
+  expect(advice).toEqual([
+    { layer: 1, code: "card-shipped", message: expect.stringContaining("peek.json") },
+    ...ownAdvice,
+  ]);
+});
+
 describe("refused is", () => {
-  test("a call without the polymer's card: none is looked for", async () => {
-    const call = ["predict", "-", "--machine", TERN, "--profile", SEAL_RING_PROFILE];
+  test("a polymer of which no card is given and none comes with Quenchline", async () => {
+    const profile = { ...JSON.parse(readFileSync(SEAL_RING_PROFILE, "utf8")), polymer: "Buoy resin 7" };
+    const path = join(scratchFolder(), "profile.json");
+    writeFileSync(path, JSON.stringify(profile));
+    const call = ["predict", "-", "--machine", TERN, "--profile", path];
     const { status, stdout, stderr } = await quenchline([...call, "--json"], { input: smallPart() });
     expect(status).toBe(3);
-    expect(stderr).toContain("PEEK");
+    expect(stderr).toContain("Buoy resin 7");
     expect(stderr).toContain("--polymer");
     expect(JSON.parse(stdout)).toMatchObject({ code: "polymer-missing" });
   });
